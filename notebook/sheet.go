@@ -1,0 +1,161 @@
+package notebook
+
+import (
+	"github.com/yuin/goldmark/ast"
+
+	"gusset/notebook/check"
+	"gusset/notebook/diag"
+	"gusset/notebook/eval"
+	"gusset/notebook/syntax"
+	"gusset/units"
+)
+
+// What a compiled calc is made of, under the door's own names.
+type (
+	Step  = eval.Step
+	Value = eval.Value
+	Rows  = check.Rows
+	Type  = check.Type
+)
+
+// Sheet is a compiled calc file: the prose as goldmark's tree, whose fences of
+// ours are FenceNodes and whose values in text are ValueNodes, and beside it
+// everything that was computed. A sheet never changes.
+type Sheet struct {
+	Path        string // within the root, slashes
+	Source      *diag.Source
+	Front       Front
+	Doc         ast.Node
+	Blocks      []*Block   // by FenceNode.Index
+	Refs        []*Ref     // by ValueNode.Index
+	Headings    []*Heading // in order
+	Remarks     []*Remark  // in order
+	Steps       []*Step    // every step of the calc's own blocks, in order: the blocks' steps joined
+	Diagnostics []diag.Diagnostic
+	Files       []string // the files that it names and was made from, within the root, sorted: carried, helpers, CSV, images, register
+
+	byHeading map[ast.Node]*Heading
+	byRemark  map[ast.Node]*Remark
+}
+
+// Failed tells whether the calc has errors: then no page is written of it.
+func (s *Sheet) Failed() bool { return diag.HasErrors(s.Diagnostics) }
+
+// HeadingOf returns what is known of a heading of the tree.
+func (s *Sheet) HeadingOf(n ast.Node) *Heading { return s.byHeading[n] }
+
+// RemarkOf returns the remark a block quote of the tree is, nil where it is an ordinary quote.
+func (s *Sheet) RemarkOf(n ast.Node) *Remark { return s.byRemark[n] }
+
+// Front is the front matter, what the register sets for all its calcs filled in.
+type Front struct {
+	Calc, Title, Project, Client, Firm, Job, Rev, Status, Date string
+	By, Checked, Approved                                      Person
+	Logo                                                       string // an image, within the root; "" for none
+	Paper                                                      string // "A4" or "Letter"
+	Printing                                                   units.Printing
+	From                                                       []Link // carried files, in order
+	Helpers                                                    []Link // helper files, in order
+}
+
+// Person is who prepared, checked or approved, and when.
+type Person struct{ Name, Date string }
+
+// Link is a file named in the front matter under a key.
+type Link struct {
+	Key, Path string // Path is within the root
+	At        diag.Span
+}
+
+// Block is a fence of ours with its steps.
+type Block struct {
+	Kind   syntax.BlockKind
+	Tree   *syntax.Block
+	Brief  bool
+	Full   bool
+	Name   string // of a schedule, cases or helper
+	Note   string
+	Source string
+	Number string // of a figure or plot: "1", "2", …
+	Anchor string
+	Steps  []*Step // calc: the lines; schedule and cases: one for each column
+	Rows   *Rows   // schedule and cases
+	Marks  int     // index of the column of marks, -1 where there is none
+	Plot   *Plot
+	Figure *Figure
+}
+
+// Plot is what a plot block draws, already recomputed over the range.
+type Plot struct {
+	Title   string
+	X       Axis
+	Y       Axis
+	At      float64 // the swept value's present entry, in X's unit
+	Curves  []Curve
+	Limits  []Curve // constant or swept limits
+	Present []float64
+	Bars    []*Step // for `plot checks`: the checks, in order
+}
+
+// Axis is one axis: the quantity's name, its symbol and the printed unit.
+type Axis struct {
+	Symbol string
+	Unit   units.Unit
+}
+
+// Curve is one line of a plot, in the axes' units.
+type Curve struct {
+	ID, Symbol string
+	X, Y       []float64
+}
+
+// Figure is a sketch: its kind and the steps whose values it draws, by parameter.
+type Figure struct {
+	Kind string
+	Args []*Step // in the order of the kind's parameters; nil where an optional one is absent
+}
+
+// Ref is a value named in text, resolved.
+type Ref struct {
+	Step  *Step // nil where it failed
+	Unit  units.Unit
+	Text  string // plain text as printed: `48.89 MPa`, or for rows the range and the governing mark
+	Parts []RefPart
+}
+
+// RefPart is a printed value of a Ref with the words around it.
+type RefPart struct {
+	Words  string
+	Pieces []eval.Piece
+}
+
+// Heading is a heading of the prose with its number and anchor.
+type Heading struct {
+	Node   ast.Node
+	Level  int    // 1 for the outermost level in use
+	Number string // "1", "1.2"
+	Text   string // plain
+	Anchor string
+	Line   int
+}
+
+// Remark is a block quote that is collected.
+type Remark struct {
+	Node   ast.Node
+	Kind   RemarkKind
+	Number string // "A1", "H1"; "" for cautions and notes
+	Text   string // plain, without the leading word
+	Anchor string
+	Line   int
+}
+
+// RemarkKind is the leading word of a remark.
+type RemarkKind string
+
+// The remarks that are collected.
+const (
+	Assumption RemarkKind = "Assumption"
+	Caution    RemarkKind = "Caution"
+	Hold       RemarkKind = "Hold"
+	Note       RemarkKind = "Note"
+)
