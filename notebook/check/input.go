@@ -1,0 +1,64 @@
+package check
+
+import (
+	"gusset/notebook/diag"
+	"gusset/notebook/syntax"
+	"gusset/units"
+)
+
+// Input is a calc file, parsed, with everything that its formulas may refer to
+// outside itself. Nothing in it is changed.
+type Input struct {
+	Source   *diag.Source
+	Blocks   []*syntax.Block   // in order
+	Texts    []syntax.ValueRef // the values named in prose, in order
+	Printing units.Printing
+	Carried  []*Carry      // by the front matter's `from`, in order
+	Helpers  []*HelperFile // by the front matter's `helpers`, in order
+	Library  Library
+	// ReadTable reads a CSV file that a schedule names: nil and the reason where it cannot be had.
+	ReadTable func(path string) (*diag.Source, error)
+}
+
+// Carry is another calc file's results under a key. Values holds the types
+// of everything it defines by name; Failed tells that it has errors, so that it
+// carries nothing.
+type Carry struct {
+	Key, Path string
+	Failed    bool
+	Values    map[string]Type // `P_u`, `bolts.x`, `jnt.F_v_Rk`
+	Rows      map[string]*Rows
+}
+
+// HelperFile is a file of the author's own helpers under a key.
+type HelperFile struct {
+	Key, Path string
+	Helpers   []*syntax.Helper
+}
+
+// Library is what ships with the program.
+type Library struct {
+	Helpers map[string]*syntax.Helper
+	// Natives are functions written in Go that only the library's own helpers
+	// may call, where iteration, a series or an eigenvalue is required.
+	Natives map[string]*Native
+	// Tables are the shipped tables by path, `library/bolts_metric.csv`.
+	Tables map[string]*diag.Source
+}
+
+// Native is a function in Go that library helpers call by position. F gets one
+// slice for each argument (of length 1 but for columns), in coherent SI units; it returns
+// NaN for a value that does not exist and an error where it does not converge.
+type Native struct {
+	Name   string
+	Params []NativeParam
+	Result units.Dimension
+	F      func(args [][]float64) (float64, error)
+}
+
+// NativeParam is the dimension of one argument; Column tells that it takes a
+// column of values.
+type NativeParam struct {
+	Dim    units.Dimension
+	Column bool
+}
