@@ -1,0 +1,538 @@
+package maths
+
+import "unicode/utf8"
+
+// CSS is the style sheet that the MathML of this package is written for. It
+// expects the families "Plex Serif" and "Plex Math".
+//
+// Letters and figures come from the text face, everything that grows from the
+// math face. A chain is a row of boxes that wraps before relations, and a box
+// too long for the column wraps before its operators, hung under its first
+// right side. The tip of a link stands at the foot of the window, where no
+// scrolling formula can cut it off.
+const CSS = `math{font-family:"Plex Math","Plex Serif",serif}
+math :is(mi,mn,mtext){font-family:"Plex Serif",serif}
+math mi{font-style:italic;text-transform:none}
+math mi.f{font-style:normal}
+math .g{font-weight:600}
+math mtext.l{line-height:0}
+math a{color:inherit;text-decoration:none}
+math a:is(:hover,:focus){text-decoration:underline;text-decoration-thickness:.06em;text-underline-offset:.2em}
+math mtd{text-align:left;padding:.15em .5em .15em 0}
+.chain,.chain>span,.chain>span>span{display:flex;align-items:baseline}
+.chain>span,.chain>span>span{flex-wrap:wrap;row-gap:.35em;min-width:0}
+.chain>span{flex:1}
+.chain>span>span{padding-left:1.5em}
+.chain>span>span>:first-child{margin-left:-1.5em}
+@media screen{.chain{overflow-x:auto;overflow-y:hidden}
+[data-tip]:is(:hover,:focus)::after{content:attr(data-tip);position:fixed;left:1em;bottom:1em;max-width:calc(100vw - 2em);padding:.4em .8em;background:#16202c;color:#fff;font:normal 14px/1.4 "Plex Serif",serif;white-space:pre-line;border-radius:3px;z-index:9}}
+`
+
+// AppendMathML appends a node as one formula within a line of text.
+func AppendMathML(dst []byte, n Node) []byte {
+	w := markup{dst}
+	w.raw("<math>")
+	w.row(n, Open)
+	w.raw("</math>")
+	return w.b
+}
+
+// AppendChain appends a formula on a line of its own, made of parts between
+// which a browser can break it.
+func AppendChain(dst []byte, c Chain) []byte {
+	w := markup{dst}
+	w.raw(`<span class="chain">`)
+	steps := c.Steps
+	if leads(c.Left) {
+		w.math(atoms(nil, c.Left), Open)
+		w.raw("<span>")
+	} else {
+		w.raw("<span>")
+		if c.Left != nil {
+			w.step(atoms(nil, c.Left))
+		}
+	}
+	var room [16]Node
+	for _, s := range steps {
+		w.step(atoms(append(room[:0], Relation(s.Sign)), s.Right))
+	}
+	w.raw("</span></span>")
+	return w.b
+}
+
+// leads reports whether a left side is short enough to set the rest beside it.
+func leads(left Node) bool {
+	switch left := left.(type) {
+	case Symbol, Number, Word, Text, Script:
+		return true
+	case Row: // a call of a function
+		return len(left) == 2 && left[0] != nil
+	}
+	return false
+}
+
+// A markup writes MathML Core.
+type markup struct{ b []byte }
+
+func (w *markup) raw(s string) { w.b = append(w.b, s...) }
+
+// text appends character data or a part of an attribute.
+func (w *markup) text(s string) {
+	from := 0
+	for i := 0; i < len(s); {
+		c := s[i]
+		size, with := 1, ""
+		switch {
+		case c == '&':
+			with = "&amp;"
+		case c == '<':
+			with = "&lt;"
+		case c == '>':
+			with = "&gt;"
+		case c == '"':
+			with = "&quot;"
+		case c < ' ' && c != '\n' && c != '\t':
+			with = "\uFFFD"
+		case c >= utf8.RuneSelf:
+			var r rune
+			if r, size = utf8.DecodeRuneInString(s[i:]); r == utf8.RuneError && size == 1 {
+				with = "\uFFFD"
+			}
+		}
+		if with != "" {
+			w.raw(s[from:i])
+			w.raw(with)
+			from = i + size
+		}
+		i += size
+	}
+	w.raw(s[from:])
+}
+
+// shortStep is the length up to which a step is not parted: it has room on a
+// telephone's screen.
+const shortStep = 24
+
+// step writes one box of a chain, parted before its loosest operators.
+func (w *markup) step(list []Node) {
+	w.raw("<span>")
+	rank := rankNone
+	if length(list) > shortStep {
+		rank = loosest(list)
+	}
+	from := 0
+	prev := Open
+	for i, n := range list {
+		left, right := n.edges()
+		if o, ok := n.(Op); ok && i > 0 && rank < rankNone && rankOf(o) == rank && left != Punct && !signs(o, prev) {
+			w.math(list[from:i], edgeBefore(list, from))
+			from = i
+		}
+		prev = right
+	}
+	w.math(list[from:], edgeBefore(list, from))
+	w.raw("</span>")
+}
+
+// edgeBefore is the class that the atom at i sees to its left; a part that
+// starts with an operator is no sign.
+func edgeBefore(list []Node, i int) Class {
+	if i == 0 {
+		return Open
+	}
+	_, right := list[i-1].edges()
+	return right
+}
+
+func (w *markup) math(list []Node, prev Class) {
+	w.raw(`<math displaystyle="true">`)
+	w.list(list, prev, true)
+	w.raw("</math>")
+}
+
+// row writes a node as children of an element that groups by itself.
+func (w *markup) row(n Node, prev Class) {
+	if r, ok := n.(Row); ok {
+		w.list(atoms(nil, r), prev, false)
+	} else if n != nil {
+		w.list([]Node{n}, prev, false)
+	}
+}
+
+// list writes atoms side by side. Where the list goes on a formula that was
+// parted, its first operator keeps the form it has between two terms.
+func (w *markup) list(list []Node, prev Class, parted bool) {
+	for i, n := range list {
+		if o, ok := n.(Op); ok {
+			switch {
+			case signs(o, prev):
+				w.op(o, "prefix")
+			case i == 0 && parted && o.Class != Ord:
+				w.op(o, "infix")
+			default:
+				w.op(o, "")
+			}
+		} else {
+			w.node(n)
+		}
+		_, prev = n.edges()
+	}
+}
+
+func (w *markup) op(o Op, form string) {
+	if o.Sign == Beside.Sign {
+		w.space(Thin)
+		return
+	}
+	w.raw("<mo")
+	if o.Class == Func {
+		w.raw(` lspace="0" rspace=".17em"`)
+	}
+	if form != "" {
+		w.raw(` form="`)
+		w.raw(form)
+		w.raw(`"`)
+	}
+	w.raw(">")
+	w.text(o.Sign)
+	w.raw("</mo>")
+}
+
+var thins = [...]string{Thin: ".17em", Blank: ".28em", Quad: "1em"}
+
+func (w *markup) space(s Space) {
+	w.raw(`<mspace width="`)
+	if int(s) < len(thins) && s >= 0 && thins[s] != "" {
+		w.raw(thins[s])
+	} else {
+		hundredths := (int(s)*100 + 9) / 18
+		w.raw(digits(hundredths / 100))
+		w.raw(".")
+		w.raw(digits(hundredths / 10 % 10))
+		w.raw(digits(hundredths % 10))
+		w.raw("em")
+	}
+	w.raw(`"/>`)
+}
+
+// single writes a node as exactly one element, as scripts and fractions need.
+func (w *markup) single(n Node) {
+	switch n := n.(type) {
+	case nil:
+		w.raw("<mrow></mrow>")
+	case Row:
+		if len(n) == 1 {
+			w.single(n[0])
+			return
+		}
+		w.raw("<mrow>")
+		w.row(n, Open)
+		w.raw("</mrow>")
+	default:
+		w.node(n)
+	}
+}
+
+// node writes one atom as one element.
+func (w *markup) node(n Node) {
+	switch n := n.(type) {
+	case Row:
+		w.single(n)
+	case Symbol:
+		w.symbol(n, nil)
+	case Number:
+		w.link(n.Ref)
+		w.number(n)
+		w.unlink(n.Ref)
+	case Unit:
+		w.raw("<mrow>")
+		w.unit(n)
+		w.raw("</mrow>")
+	case Word:
+		w.link(n.Ref)
+		w.tag(`<mi class="f`, n.Governs, n.Text, "</mi>")
+		w.unlink(n.Ref)
+	case Text:
+		w.link(n.Ref)
+		w.tag(`<mtext class="t`, n.Governs, n.Text, "</mtext>")
+		w.unlink(n.Ref)
+	case Op:
+		w.op(n, "")
+	case Space:
+		w.space(n)
+	case Fraction:
+		w.raw("<mfrac>")
+		w.single(n.Num)
+		w.single(n.Den)
+		w.raw("</mfrac>")
+	case Script:
+		w.script(n)
+	case Root:
+		w.root(n)
+	case Fence:
+		w.fence(n)
+	case Choice:
+		w.choice(n)
+	}
+}
+
+// tag writes a token whose first tag is open, up to the class.
+func (w *markup) tag(open string, governs bool, text, end string) {
+	w.raw(open)
+	if governs {
+		w.raw(" g")
+	}
+	w.raw(`">`)
+	w.text(text)
+	w.raw(end)
+}
+
+// link opens a link, if there is one. MathML Core has no links of its own, but
+// mtext may hold HTML, and that a formula again.
+func (w *markup) link(r Ref) {
+	if r.Target == "" && r.Tip == "" {
+		return
+	}
+	w.raw(`<mtext class="l"><a`)
+	if r.Target != "" {
+		w.raw(` href="#`)
+		w.text(r.Target)
+		w.raw(`"`)
+	} else {
+		w.raw(` tabindex="0"`)
+	}
+	if r.Tip != "" {
+		w.raw(` data-tip="`)
+		w.text(r.Tip)
+		w.raw(`"`)
+	}
+	w.raw("><math>")
+}
+
+func (w *markup) unlink(r Ref) {
+	if r.Target == "" && r.Tip == "" {
+		return
+	}
+	w.raw("</math></a></mtext>")
+}
+
+// symbol writes a quantity's name, with the superscript of a script about it.
+func (w *markup) symbol(s Symbol, sup Node) {
+	w.link(s.Ref)
+	up := sup != nil || s.Primes > 0
+	switch {
+	case len(s.Sub) > 0 && up:
+		w.raw("<msubsup>")
+	case len(s.Sub) > 0:
+		w.raw("<msub>")
+	case up:
+		w.raw("<msup>")
+	}
+	w.head(s, up)
+	if len(s.Sub) > 0 {
+		w.raw("<mtext>")
+		for i, p := range s.Sub {
+			if i > 0 {
+				w.raw(",")
+			}
+			w.text(p)
+		}
+		w.raw("</mtext>")
+	}
+	switch {
+	case s.Primes > 0 && sup != nil:
+		w.raw("<mrow><mo>")
+		w.raw(primes(s.Primes))
+		w.raw("</mo>")
+		w.row(sup, Open)
+		w.raw("</mrow>")
+	case s.Primes > 0:
+		w.raw("<mo>")
+		w.raw(primes(s.Primes))
+		w.raw("</mo>")
+	case sup != nil:
+		w.single(sup)
+	}
+	switch {
+	case len(s.Sub) > 0 && up:
+		w.raw("</msubsup>")
+	case len(s.Sub) > 0:
+		w.raw("</msub>")
+	case up:
+		w.raw("</msup>")
+	}
+	w.unlink(s.Ref)
+}
+
+// head writes the letters of a name, and where a superscript follows the room
+// that a slanted letter needs to stay clear of it.
+func (w *markup) head(s Symbol, up bool) {
+	letters, figs := split(s.Head)
+	lean := 0
+	if up && figs == "" {
+		lean = overhang(letters)
+	}
+	if figs != "" || lean > 0 {
+		w.raw("<mrow>")
+	}
+	w.raw("<mi")
+	if s.Governs {
+		w.raw(` class="g"`)
+	}
+	w.raw(">")
+	w.text(letters)
+	w.raw("</mi>")
+	if figs != "" {
+		w.raw("<mn>")
+		w.raw(figs)
+		w.raw("</mn>")
+	}
+	if lean > 0 {
+		w.space(Space(lean * 18 / 1000))
+	}
+	if figs != "" || lean > 0 {
+		w.raw("</mrow>")
+	}
+}
+
+func (w *markup) number(n Number) {
+	negative, mantissa, power := figures(n.Value)
+	parts := power != "" || len(n.Unit) > 0
+	if parts {
+		w.raw("<mrow>")
+	}
+	w.raw("<mn")
+	if n.Governs {
+		w.raw(` class="g"`)
+	}
+	w.raw(">")
+	if negative {
+		w.raw("−")
+	}
+	w.text(mantissa)
+	w.raw("</mn>")
+	if power != "" {
+		w.raw("<mo>×</mo><msup><mn>10</mn><mn>")
+		if power[0] == '-' {
+			w.raw("−")
+			power = power[1:]
+		}
+		w.text(power)
+		w.raw("</mn></msup>")
+	}
+	if len(n.Unit) > 0 {
+		if !n.Unit.close() {
+			w.space(Thin)
+		}
+		w.unit(n.Unit)
+	}
+	if parts {
+		w.raw("</mrow>")
+	}
+}
+
+func (w *markup) unit(u Unit) {
+	if u.flat() {
+		var room [64]byte
+		w.raw("<mtext>")
+		w.text(string(appendFlat(room[:0], u)))
+		w.raw("</mtext>")
+		return
+	}
+	for _, t := range u {
+		e := exponent(t)
+		var room [32]byte
+		if e != "" {
+			w.raw("<msup>")
+		}
+		w.raw("<mtext>")
+		w.text(string(appendTerm(room[:0], t)))
+		w.raw("</mtext>")
+		if e != "" {
+			w.raw("<mn>")
+			w.raw(e)
+			w.raw("</mn></msup>")
+		}
+		if t.Close {
+			w.raw("<mtext>)</mtext>")
+		}
+	}
+}
+
+func (w *markup) script(s Script) {
+	if base, ok := s.Base.(Symbol); ok && s.Sub == nil {
+		w.symbol(base, s.Sup)
+		return
+	}
+	tag := "msubsup>"
+	if s.Sub == nil {
+		tag = "msup>"
+	} else if s.Sup == nil {
+		tag = "msub>"
+	}
+	w.raw("<")
+	w.raw(tag)
+	w.single(s.Base)
+	if s.Sub != nil {
+		w.single(s.Sub)
+	}
+	if s.Sup != nil {
+		w.single(s.Sup)
+	}
+	w.raw("</")
+	w.raw(tag)
+}
+
+func (w *markup) root(r Root) {
+	if r.Index == nil {
+		w.raw("<msqrt>")
+		w.row(r.Body, Open)
+		w.raw("</msqrt>")
+		return
+	}
+	w.raw("<mroot>")
+	w.single(r.Body)
+	w.single(r.Index)
+	w.raw("</mroot>")
+}
+
+func (w *markup) fence(f Fence) {
+	w.raw("<mrow>")
+	if f.Open != "" {
+		w.raw(`<mo form="prefix" fence="true" stretchy="true">`)
+		w.text(f.Open)
+		w.raw("</mo>")
+	}
+	w.row(f.Body, Open)
+	if f.Close != "" {
+		w.raw(`<mo form="postfix" fence="true" stretchy="true">`)
+		w.text(f.Close)
+		w.raw("</mo>")
+	}
+	w.raw("</mrow>")
+}
+
+func (w *markup) choice(c Choice) {
+	w.raw(`<mrow><mo form="prefix" fence="true" stretchy="true">{</mo><mtable>`)
+	for _, b := range c.Branches {
+		if b.Taken {
+			w.raw(`<mtr class="taken">`)
+		} else {
+			w.raw("<mtr>")
+		}
+		w.raw("<mtd>")
+		w.row(b.Value, Open)
+		w.raw("</mtd><mtd>")
+		if b.Cond != nil {
+			w.raw("<mtext>if\u00a0</mtext>")
+			w.row(b.Cond, Open)
+		} else {
+			w.raw("<mtext>otherwise</mtext>")
+		}
+		if b.Taken {
+			w.raw("<mtext>\u2002←</mtext>")
+		}
+		w.raw("</mtd></mtr>")
+	}
+	w.raw("</mtable></mrow>")
+}
