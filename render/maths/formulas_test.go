@@ -1,14 +1,16 @@
 package maths
 
+import "gusset/units"
+
 // The formulas that the tests of every writer share.
 
 func sym(head string, sub ...string) Symbol { return Symbol{Head: head, Sub: sub} }
 
-func term(sep, name string, num int) Term {
-	return Term{Sep: sep, Name: name, Num: num, Den: 1}
+func term(sep, name string, num int) units.Term {
+	return units.Term{Sep: sep, Name: name, Num: num, Den: 1}
 }
 
-func num(value string, unit ...Term) Number { return Number{Value: value, Unit: unit} }
+func num(value string, unit ...units.Term) Number { return Number{Value: value, Unit: unit} }
 
 var (
 	mm   = term("", "mm", 1)
@@ -16,7 +18,7 @@ var (
 	kN   = term("", "kN", 1)
 	mPa  = term("", "MPa", 1)
 	two  = num("2")
-	perM = []Term{term("", "kN", 1), term("/", "m", 2)}
+	perM = []units.Term{term("", "kN", 1), term("/", "m", 2)}
 )
 
 func linked(n Number, target, tip string) Number {
@@ -73,8 +75,8 @@ var writerCases = []struct {
 		[]Step{{"<=", num("1")}}}, "(N/N_d)² + (V/V_d)² ≤ 1"},
 	{"prime-and-figures", Chain{Symbol{Head: "x1", Primes: 1}, []Step{eq(power(Symbol{Head: "f", Primes: 2}, two))}}, "x1′ = f″²"},
 	{"text", Chain{sym("grade"), []Step{eq(Text{Text: `"S355"`})}}, `grade = "S355"`},
-	{"unit-forms", Chain{sym("q"), []Step{eq(num("5", perM...)), eq(num("2", Term{Name: "MPa", Num: 1, Den: 1}, Term{Sep: "·", Name: "m", Num: 1, Den: 2})),
-		eq(num("1", Term{Name: "kg", Num: 1, Den: 1}, Term{Sep: "/", Open: true, Name: "m", Num: 1, Den: 1}, Term{Sep: "·", Name: "s", Num: -2, Den: 1, Close: true}))}},
+	{"unit-forms", Chain{sym("q"), []Step{eq(num("5", perM...)), eq(num("2", units.Term{Name: "MPa", Num: 1, Den: 1}, units.Term{Sep: "·", Name: "m", Num: 1, Den: 2})),
+		eq(num("1", units.Term{Name: "kg", Num: 1, Den: 1}, units.Term{Sep: "/", Open: true, Name: "m", Num: 1, Den: 1}, units.Term{Sep: "·", Name: "s", Num: -2, Den: 1, Close: true}))}},
 		"q = 5 kN/m² = 2 MPa·m^(1/2) = 1 kg/(m·s⁻²)"},
 	{"logic", Chain{Row{sym("a"), Relation("<"), sym("b"), And, Not, sym("c"), Relation("=="), sym("d"), Or, sym("e")}, nil}, "a < b and not c = d or e"},
 	{"nested-fraction", Chain{sym("x"), []Step{eq(Row{sym("a"), Beside, Fraction{Row{sym("b"), Plus, Fraction{num("1"), sym("c")}}, Fraction{sym("d"), sym("e")}}, Beside, sym("f")})}},

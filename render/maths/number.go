@@ -1,6 +1,10 @@
 package maths
 
-import "strings"
+import (
+	"strings"
+
+	"gusset/units"
+)
 
 // figures takes the text of a number apart: its sign, its figures and its
 // power of ten, which is empty for none.
@@ -80,7 +84,7 @@ func appendFlat(dst []byte, u Unit) []byte {
 }
 
 // appendTerm appends what stands before a term's exponent.
-func appendTerm(dst []byte, t Term) []byte {
+func appendTerm(dst []byte, t units.Term) []byte {
 	dst = append(dst, t.Sep...)
 	if t.Open {
 		dst = append(dst, '(')
@@ -89,7 +93,7 @@ func appendTerm(dst []byte, t Term) []byte {
 }
 
 // exponent is the exponent of a term as figures: "", "2", "−1", "1/2".
-func exponent(t Term) string {
+func exponent(t units.Term) string {
 	if t.Num == 1 && t.Den <= 1 {
 		return ""
 	}

@@ -1,5 +1,7 @@
 package maths
 
+import "gusset/units"
+
 // Node is one part of a formula: Row, Symbol, Number, Unit, Word, Text, Op,
 // Space, Fraction, Script, Root, Fence or Choice. The set is closed, and nil
 // stands for nothing at all.
@@ -51,17 +53,9 @@ type Number struct {
 	Ref
 }
 
-// Unit is a unit in the order it is written. As a node it is a unit that
-// stands alone.
-type Unit []Term
-
-// Term is one factor of a unit.
-type Term struct {
-	Sep         string // what stands before it: "" (the first), "·", "/" or "-"
-	Open, Close bool   // a bracket opens before or closes after it
-	Name        string // as printed: "mm", "°C", "%"
-	Num, Den    int    // exponent; Den is positive
-}
+// Unit is a unit's factors in the order they are written, as units.Unit.Terms
+// gives them. As a node it is a unit that stands alone.
+type Unit []units.Term
 
 // Word is upright text of the formula's own language: a function's name, and not
 // (followed by its bracket) or a word like otherwise.
