@@ -36,7 +36,7 @@ var unitRows = []unitRow{
 	{quantity: "ratio", name: "%", define: "1/100", both: true, source: siBrochure},
 	{quantity: "ratio", name: "permille", aliases: "‰", printed: "‰", define: "1/1000", both: true, source: common},
 	{quantity: "ratio", name: "ppm", define: "1/1000000", both: true, source: "ISO 80000-1"},
-	{quantity: "ratio", name: "ustrain", aliases: "µstrain μstrain", printed: "µstrain", define: "1/1000000", both: true, source: common},
+	{quantity: "ratio", name: "ustrain", aliases: "µstrain", printed: "µstrain", define: "1/1000000", both: true, source: common},
 
 	{quantity: "length", name: "m", prefixes: "n u m c d k", source: siBrochure},
 	{quantity: "length", name: "in", define: "25.4 mm", system: US, source: nistB8},
@@ -94,11 +94,14 @@ var unitRows = []unitRow{
 
 	{quantity: "electric current", name: "A", prefixes: "m k", both: true, source: siBrochure},
 	{quantity: "voltage", name: "V", define: "1 W/A", prefixes: "m k", both: true, source: siBrochure},
-	// U+03A9 is the letter, U+2126 the sign; both are typed
-	{quantity: "electric resistance", name: "ohm", aliases: "\u03a9 \u2126", printed: "Ω", define: "1 V/A", prefixes: "m k M", both: true, source: siBrochure},
+	{quantity: "electric resistance", name: "ohm", aliases: "Ω", printed: "Ω", define: "1 V/A", prefixes: "m k M", both: true, source: siBrochure},
 	{quantity: "amount of substance", name: "mol", prefixes: "m k", both: true, source: siBrochure},
 	{quantity: "luminous intensity", name: "cd", both: true, source: siBrochure},
 }
+
+// lookalikes are the signs that have two code points each: micro (U+00B5, and the Greek letter
+// U+03BC) and ohm (the Greek letter U+03A9, and U+2126). Both are typed; the table has the first.
+var lookalikes = strings.NewReplacer("\u00b5", "\u03bc", "\u03a9", "\u2126")
 
 // prefix is an SI prefix with the spellings that are accepted; the first names it in the table
 // and the last is printed.
@@ -107,10 +110,9 @@ type prefix struct {
 	factor    factor
 }
 
-// µ has a sign of its own (U+00B5) beside the Greek letter (U+03BC), and u is typed for it.
 var prefixes = []prefix{
 	{[]string{"n"}, factor{num: 1, den: 1e9}},
-	{[]string{"u", "\u03bc", "\u00b5"}, factor{num: 1, den: 1e6}},
+	{[]string{"u", "\u00b5"}, factor{num: 1, den: 1e6}},
 	{[]string{"m"}, factor{num: 1, den: 1e3}},
 	{[]string{"c"}, factor{num: 1, den: 100}},
 	{[]string{"d"}, factor{num: 1, den: 10}},
@@ -165,6 +167,13 @@ func (t *table) addRow(row unitRow) {
 }
 
 func (t *table) addAtom(a atom, name string) *atom {
+	if other := lookalikes.Replace(name); other != name {
+		t.addName(a, other)
+	}
+	return t.addName(a, name)
+}
+
+func (t *table) addName(a atom, name string) *atom {
 	if t.atoms[name] != nil {
 		panic("two units are called " + name)
 	}

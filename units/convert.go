@@ -22,7 +22,11 @@ func Convert(x *big.Rat, from, to Unit) (value float64, exact string, err error)
 		if from.String() != "" {
 			exact += " " + from.String()
 		}
-		exact += strings.TrimRight(" = "+ratio.String()+" "+to.String(), " ")
+		equals := " = "
+		if ratio.irrational {
+			equals = " "
+		}
+		exact += strings.TrimRight(equals+ratio.String()+" "+to.String(), " ")
 		return ratio.scale(x), exact, nil
 	}
 	shift := new(big.Rat).Sub(f.zero, g.zero)

@@ -63,7 +63,7 @@ func (f factor) mul(g factor) factor {
 	}
 	h := newFactor(new(big.Rat).Mul(f.big(), g.big()), f.pi+g.pi)
 	if f.irrational || g.irrational {
-		h.rat, h.irrational = h.big(), true
+		h.rat, h.irrational = approximate(h.big()), true
 	}
 	return h
 }
@@ -101,18 +101,42 @@ func (f factor) root(q int) factor {
 	if f.pi%q != 0 { // a root of π: fold it into the approximation
 		r, f.pi, f.irrational = new(big.Rat).Mul(r, piPower(f.pi)), 0, true
 	}
-	n, nExact := integerRoot(r.Num(), q)
-	d, dExact := integerRoot(r.Denom(), q)
-	if nExact && dExact && !f.irrational {
-		return newFactor(new(big.Rat).SetFrac(n, d), f.pi/q)
+	if !f.irrational {
+		n, nExact := integerRoot(r.Num(), q)
+		d, dExact := integerRoot(r.Denom(), q)
+		if nExact && dExact {
+			return newFactor(new(big.Rat).SetFrac(n, d), f.pi/q)
+		}
 	}
-	// (n/d)^(1/q) = (n·d^(q-1)·2^(q·k))^(1/q) / (d·2^k)
-	const k = 140
-	scaled := new(big.Int).Exp(r.Denom(), big.NewInt(int64(q-1)), nil)
-	scaled.Mul(scaled, r.Num()).Lsh(scaled, uint(q*k))
-	n, _ = integerRoot(scaled, q)
-	approx := new(big.Rat).SetFrac(n, new(big.Int).Lsh(r.Denom(), k))
-	return factor{rat: approx, pi: f.pi / q, irrational: true}
+	return factor{rat: approximateRoot(r, q), pi: f.pi / q, irrational: true}
+}
+
+// approximate rounds to approximatePrec bits, so that products of approximations do not grow.
+func approximate(r *big.Rat) *big.Rat {
+	rounded, _ := new(big.Float).SetPrec(approximatePrec).SetRat(r).Rat(nil)
+	return rounded
+}
+
+// approximatePrec is three times what a float64 holds.
+const approximatePrec = 160
+
+// approximateRoot returns r^(1/q) by Newton's method: x ← x + x·(r/x^q - 1)/q. It starts from a
+// float64, whose 50 good bits double at each step.
+func approximateRoot(r *big.Rat, q int) *big.Rat {
+	float := func() *big.Float { return new(big.Float).SetPrec(approximatePrec + 32) }
+	want := float().SetRat(r)
+	x := float().SetFloat64(math.Pow(ratFloat(r), 1/float64(q)))
+	for range 3 {
+		power := float().SetInt64(1)
+		for range q {
+			power.Mul(power, x)
+		}
+		step := float().Quo(want, power)
+		step.Sub(step, float().SetInt64(1)).Quo(step, float().SetInt64(int64(q)))
+		x.Add(x, step.Mul(step, x))
+	}
+	root, _ := x.Rat(nil)
+	return approximate(root)
 }
 
 // integerRoot returns the whole part of the q-th root of n, by Newton's method from above, and
@@ -164,13 +188,15 @@ func (f factor) pair() pair {
 		hi := n / d
 		return pair{hi, math.FMA(-hi, d, n) / d} // the remainder is exact
 	}
-	r := new(big.Rat).Mul(f.big(), piPower(f.pi))
+	return ratPair(new(big.Rat).Mul(f.big(), piPower(f.pi)))
+}
+
+func ratPair(r *big.Rat) pair {
 	hi, exact := r.Float64()
 	if exact || math.IsInf(hi, 0) {
 		return pair{hi, 0}
 	}
-	lo, _ := r.Sub(r, new(big.Rat).SetFloat64(hi)).Float64()
-	return pair{hi, lo}
+	return pair{hi, ratFloat(new(big.Rat).Sub(r, new(big.Rat).SetFloat64(hi)))}
 }
 
 // times multiplies and rounds once.
@@ -179,6 +205,20 @@ func (p pair) times(x float64) float64 {
 		return x * p.hi
 	}
 	return math.FMA(x, p.hi, x*p.lo)
+}
+
+// timesPlus multiplies, adds and rounds once, by carrying what product and sum lose.
+func (p pair) timesPlus(x float64, q pair) float64 {
+	product := x * p.hi
+	productLoss := math.FMA(x, p.hi, -product)
+	sum := product + q.hi
+	if math.IsInf(sum, 0) || math.IsNaN(sum) {
+		return sum
+	}
+	// Knuth's two-sum
+	part := sum - product
+	sumLoss := (product - (sum - part)) + (q.hi - part)
+	return sum + (sumLoss + productLoss + x*p.lo + q.lo)
 }
 
 // scale returns r times the factor, rounded once.

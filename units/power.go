@@ -71,7 +71,7 @@ func (p *parser) decimalPower(start int) *ParseError {
 	}
 	text := strings.Trim(p.s[start:end], "^()")
 	err := fault("wrong-unit-spelling", start, end, "a fractional power is written as a fraction in brackets, as in `m^(1/2)`")
-	if len(text) <= 6 && !strings.HasSuffix(text, ".") {
+	if len(text) <= 6 && !strings.HasSuffix(text, ".") && !strings.HasPrefix(p.s[end:], ".") {
 		if e, ok := decimalExponent(text); ok {
 			if err.Fix = powerText(e); err.Fix == "" {
 				err.Fix = "^1"

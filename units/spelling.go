@@ -66,7 +66,7 @@ func (t *table) longName(lower string) []string {
 		if !ok {
 			continue
 		}
-		for _, base := range listed(singular(rest)) {
+		for _, base := range append(listed(singular(rest)), singular(rest)) {
 			if t.atoms[p.short+base] != nil {
 				return []string{p.short + base}
 			}
@@ -156,7 +156,7 @@ func Misspelled(name string) (fix string, ok bool) {
 const maxName = 32
 
 // Suggest returns the known unit nearest to name, at most two letters away (one in a name of up
-// to three), or "".
+// to four), or "".
 func Suggest(name string) string {
 	if len(name) > maxName {
 		return ""
@@ -170,7 +170,7 @@ func (t *table) nearest(name string) string {
 	switch {
 	case len(letters) < 2:
 		return ""
-	case len(letters) < 4:
+	case len(letters) < 5:
 		limit = 1
 	}
 	best := ""
@@ -210,6 +210,25 @@ func distance(a, b []rune, limit int) int {
 	return row[len(b)]
 }
 
+// alone are letters that stand for a unit where they are the whole of it; elsewhere a letter is
+// rather a value's name.
+var alone = map[string]string{"C": "degC", "F": "degF", "l": "L"}
+
+// joinable keeps the forces and lengths of several spellings, since a hyphen joins nothing else:
+// ft-lb can only mean lbf.
+func (t *table) joinable(names []string) []string {
+	var kept []string
+	for _, n := range names {
+		if a := t.atoms[n]; a != nil && (a.dim == dimForce || a.dim == dimLength) {
+			kept = append(kept, n)
+		}
+	}
+	if len(kept) == 0 {
+		return names
+	}
+	return kept
+}
+
 // unknown answers a name that is no unit.
 func (t *table) unknown(name string, start int, whole string) *ParseError {
 	end := start + len(name)
@@ -217,8 +236,11 @@ func (t *table) unknown(name string, start int, whole string) *ParseError {
 		return fault("unknown-unit", start, end, "a name of %d bytes is no unit", len(name))
 	}
 	right := t.misspelled(name)
-	if name == whole && (name == "C" || name == "F") { // 20 C can only be a temperature
-		right = []string{"deg" + name}
+	if name == whole && alone[name] != "" {
+		right = []string{alone[name]}
+	}
+	if strings.HasSuffix(whole[:start], "-") || strings.HasPrefix(whole[end:], "-") {
+		right = t.joinable(right)
 	}
 	switch {
 	case len(right) == 1:

@@ -38,7 +38,7 @@ type parsed struct {
 	factor         factor
 	toSI, fromSI   pair
 	zero           *big.Rat // set for a point of temperature
-	zeroSI         float64
+	zeroSI         pair
 	angular        bool
 	starAfterSlash bool
 }
@@ -79,7 +79,7 @@ func (u Unit) StarAfterSlash() bool { return u.get().starAfterSlash }
 func (u Unit) ToSI(x float64) float64 {
 	p := u.get()
 	if p.zero != nil {
-		return p.toSI.times(x) + p.zeroSI
+		return p.toSI.timesPlus(x, p.zeroSI)
 	}
 	return p.toSI.times(x)
 }
@@ -92,7 +92,7 @@ func (u Unit) FromSI(x float64) float64 {
 	}
 	// A float64 near 300 K is good to 6e-14 K. What the subtraction lays bare below 1e-11 is no
 	// temperature but rounding, so it is taken off: 293.25 K is 20.1 degC.
-	y := p.fromSI.times(x - p.zeroSI)
+	y := p.fromSI.times(x - p.zeroSI.hi)
 	if math.Abs(y) < 1e4 {
 		return math.Round(y*1e11) / 1e11
 	}
@@ -261,7 +261,7 @@ func newParsed(text string, terms []term) (*parsed, error) {
 	p.angular = angle && p.dim == dimFrequency
 	if len(terms) == 1 && terms[0].atom != nil && terms[0].atom.zero != nil && terms[0].pow == (exponent{num: 1}) {
 		p.zero = terms[0].atom.zero
-		p.zeroSI = ratFloat(p.zero)
+		p.zeroSI = ratPair(p.zero)
 	}
 	return p, nil
 }

@@ -35,7 +35,7 @@ func (d Dimension) Words() string {
 
 // wordStarts are the quantities that a description may start from; of equals the first wins.
 var wordStarts = []string{
-	"number", "force", "stress", "moment", "mass", "power", "speed", "acceleration", "density", "voltage",
+	"number", "force", "stress", "speed", "acceleration", "moment", "mass", "power", "density", "voltage",
 }
 
 type wordFactor struct {
@@ -44,14 +44,18 @@ type wordFactor struct {
 }
 
 // startingFrom writes d as a power of the named quantity and of what is left, base by base. The
-// power is the one that takes in all of d's mass, or else 1.
+// power is the one that takes in all of d's mass, or all of its length where neither has mass, or else 1.
 func (d Dimension) startingFrom(name string) ([]wordFactor, bool) {
 	var factors []wordFactor
 	rest := d
 	if start := quantitiesByName[name]; !start.IsNumber() {
 		pow := exponent{num: 1}
-		if m := d.exp[baseMass]; m.num != 0 && start.exp[baseMass].num != 0 {
-			pow = m
+		mass, length := d.exp[baseMass], d.exp[baseLength]
+		switch startMass := start.exp[baseMass]; {
+		case mass.num != 0 && startMass.num != 0:
+			pow = mass
+		case mass.num == 0 && startMass.num == 0 && length.num != 0:
+			pow = length
 		}
 		power, err := start.Pow(int64(pow.num), pow.den())
 		if err != nil {
