@@ -24,6 +24,7 @@ math mtd{text-align:left;padding:.15em .5em .15em 0}
 .chain>span{flex:1}
 .chain>span>span{padding-left:1.5em}
 .chain>span>span>:first-child{margin-left:-1.5em}
+.chain .b{flex-basis:100%}
 @media screen{.chain{overflow-x:auto;overflow-y:hidden}
 [data-tip]:is(:hover,:focus)::after{content:attr(data-tip);position:fixed;left:1em;bottom:1em;max-width:calc(100vw - 2em);padding:.4em .8em;background:#16202c;color:#fff;font:normal 14px/1.4 "Plex Serif",serif;white-space:pre-line;border-radius:3px;z-index:9}}
 `
@@ -42,19 +43,19 @@ func AppendMathML(dst []byte, n Node) []byte {
 func AppendChain(dst []byte, c Chain) []byte {
 	w := markup{dst}
 	w.raw(`<span class="chain">`)
-	steps := c.Steps
 	if leads(c.Left) {
 		w.math(atoms(nil, c.Left), Open)
 		w.raw("<span>")
 	} else {
 		w.raw("<span>")
 		if c.Left != nil {
-			w.step(atoms(nil, c.Left))
+			w.step(atoms(nil, c.Left), false)
 		}
 	}
 	var room [16]Node
-	for _, s := range steps {
-		w.step(atoms(append(room[:0], Relation(s.Sign)), s.Right))
+	for i, s := range c.Steps {
+		after := i > 0 && endsInChoice(c.Steps[i-1].Right)
+		w.step(atoms(append(room[:0], Relation(s.Sign)), s.Right), after)
 	}
 	w.raw("</span></span>")
 	return w.b
@@ -114,8 +115,13 @@ func (w *markup) text(s string) {
 const shortStep = 24
 
 // step writes one box of a chain, parted before its loosest operators.
-func (w *markup) step(list []Node) {
-	w.raw("<span>")
+// One after a choice has a line of its own.
+func (w *markup) step(list []Node, after bool) {
+	if after {
+		w.raw(`<span class="b">`)
+	} else {
+		w.raw("<span>")
+	}
 	rank := rankNone
 	if length(list) > shortStep {
 		rank = loosest(list)
@@ -201,18 +207,23 @@ func (w *markup) op(o Op, form string) {
 var thins = [...]string{Thin: ".17em", Blank: ".28em", Quad: "1em"}
 
 func (w *markup) space(s Space) {
-	w.raw(`<mspace width="`)
-	if int(s) < len(thins) && s >= 0 && thins[s] != "" {
+	if s > 0 && int(s) < len(thins) && thins[s] != "" {
+		w.raw(`<mspace width="`)
 		w.raw(thins[s])
-	} else {
-		hundredths := (int(s)*100 + 9) / 18
-		w.raw(digits(hundredths / 100))
-		w.raw(".")
-		w.raw(digits(hundredths / 10 % 10))
-		w.raw(digits(hundredths % 10))
-		w.raw("em")
+		w.raw(`"/>`)
+		return
 	}
-	w.raw(`"/>`)
+	w.blank((max(int(s), 0)*100 + 9) / 18)
+}
+
+// blank writes a space in hundredths of an em.
+func (w *markup) blank(hundredths int) {
+	w.raw(`<mspace width="`)
+	w.raw(digits(hundredths / 100))
+	w.raw(".")
+	w.raw(digits(hundredths / 10 % 10))
+	w.raw(digits(hundredths % 10))
+	w.raw(`em"/>`)
 }
 
 // single writes a node as exactly one element, as scripts and fractions need.
@@ -364,15 +375,19 @@ func (w *markup) symbol(s Symbol, sup Node) {
 	w.unlink(s.Ref)
 }
 
+// leastLean is the least overhang that is worth room of its own, in hundredths
+// of an em.
+const leastLean = 3
+
 // head writes the letters of a name, and where a superscript follows the room
 // that a slanted letter needs to stay clear of it.
 func (w *markup) head(s Symbol, up bool) {
 	letters, figs := split(s.Head)
 	lean := 0
 	if up && figs == "" {
-		lean = overhang(letters)
+		lean = overhang(letters) / 10
 	}
-	if figs != "" || lean > 0 {
+	if figs != "" || lean >= leastLean {
 		w.raw("<mrow>")
 	}
 	w.raw("<mi")
@@ -387,10 +402,10 @@ func (w *markup) head(s Symbol, up bool) {
 		w.raw(figs)
 		w.raw("</mn>")
 	}
-	if lean > 0 {
-		w.space(Space(lean * 18 / 1000))
+	if lean >= leastLean {
+		w.blank(lean)
 	}
-	if figs != "" || lean > 0 {
+	if figs != "" || lean >= leastLean {
 		w.raw("</mrow>")
 	}
 }

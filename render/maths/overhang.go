@@ -1,5 +1,16 @@
 package maths
 
+import (
+	"unicode/utf8"
+
+	"gusset/render/fonts"
+)
+
 // overhang is how far, in thousandths of an em, the last letter of an italic
 // name leans out over the room it takes.
-func overhang(letters string) int { return 0 }
+func overhang(letters string) int {
+	r, _ := utf8.DecodeLastRuneInString(letters)
+	glyph := fonts.SerifItalic.Glyph(r)
+	_, _, right, _ := fonts.SerifItalic.Bounds(glyph)
+	return max(0, right-fonts.SerifItalic.GlyphAdvance(glyph))
+}

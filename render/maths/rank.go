@@ -11,6 +11,7 @@ const (
 	rankComma
 	rankSum
 	rankProduct
+	rankBeside
 	rankNone
 )
 

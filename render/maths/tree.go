@@ -237,3 +237,14 @@ func signs(o Op, prev Class) bool {
 	}
 	return false
 }
+
+// endsInChoice reports whether the last atom of a node is a choice.
+func endsInChoice(n Node) bool {
+	switch n := n.(type) {
+	case Choice:
+		return true
+	case Row:
+		return len(n) > 0 && endsInChoice(n[len(n)-1])
+	}
+	return false
+}

@@ -1,0 +1,386 @@
+package maths
+
+import "gusset/render/fonts"
+
+// Break sets a chain for paper in lines no wider than width.
+//
+// What fits stays on one line. Else the line breaks before relations, each
+// standing under the first one; a right side that is longer than a line breaks
+// before its loosest operators, then before tighter ones, then inside of
+// brackets, and goes on under the first right side. Fractions and roots are
+// never split: one that is wider than a line is set smaller, down to leastScale,
+// and below that written out with a slash, which breaks again. A line without a
+// place to break, such as an endless name, is cut.
+func Break(c Chain, size, width float64) []Box {
+	s := &setter{size: size, text: fonts.Serif, metrics: fonts.MathMetrics()}
+	b := breaker{setter: s, width: width, st: style{display: true}, right: Open}
+	b.chain(c)
+	b.finish()
+	return b.lines
+}
+
+// leastScale is how small a fraction may be set so as not to be split, and
+// hang how far lines are set in, in ems, whose left side takes more than
+// longLeft of the width.
+const (
+	leastScale = 0.7
+	hang       = 2
+	longLeft   = 0.45
+)
+
+// A breaker fills lines with pieces.
+type breaker struct {
+	*setter
+	width float64
+	st    style
+	lines []Box
+	line  Box
+	x     float64 // where the next piece goes
+	right Class   // of the piece before it on the line
+	full  bool    // there is one
+	limit int     // pieces that may still be opened; a bound on absurd input
+}
+
+// A piece is an atom between two places where a line may break.
+type piece struct {
+	part
+	node        Node
+	left, right Class
+	rank        int // of the break before it
+}
+
+// pieces sets atoms one by one; prev is the class of what comes before them.
+func (b *breaker) pieces(list []Node, prev Class) []piece {
+	ps := make([]piece, 0, len(list)+2)
+	comma := false
+	for i, n := range list {
+		left, right := classes(n, prev)
+		p := piece{part: b.atom(n, prev, b.st), node: n, left: left, right: right, rank: rankNone}
+		o, ok := n.(Op)
+		switch {
+		case i == 0:
+		case comma:
+			p.rank = rankComma
+		case ok && o.Sign == Beside.Sign:
+			p.rank = rankBeside
+		case ok && o.Class != Punct && !signs(o, prev):
+			p.rank = rankOf(o)
+		}
+		comma = ok && o.Class == Punct
+		ps = append(ps, p)
+		prev = right
+	}
+	return ps
+}
+
+// gapBefore is the space before a piece at the present place.
+func (b *breaker) gapBefore(right, left Class) float64 {
+	return b.mu(gap(right, left, false), b.st)
+}
+
+// extent is the width of pieces from the present place on.
+func (b *breaker) extent(ps []piece) float64 {
+	x, right := 0.0, b.right
+	for i, p := range ps {
+		if i > 0 || b.full {
+			x += b.gapBefore(right, p.left)
+		}
+		x += p.width
+		right = p.right
+	}
+	return x
+}
+
+// bare is the width of pieces at the start of a line.
+func (b *breaker) alone(ps []piece) float64 {
+	fresh := breaker{setter: b.setter, st: b.st}
+	return fresh.extent(ps)
+}
+
+func (b *breaker) fits(ps []piece) bool { return b.x+b.extent(ps) <= b.width+1e-6 }
+
+func (b *breaker) place(ps ...piece) {
+	for _, p := range ps {
+		if b.full {
+			b.x += b.gapBefore(b.right, p.left)
+		} else if o, ok := p.node.(Op); ok && o.Sign == Beside.Sign {
+			// A multiplication that starts a line is written.
+			p = b.pieces([]Node{Dot}, Ord)[0]
+		}
+		b.add(p.part, b.x, 0)
+		b.x += p.width
+		b.right, b.full = p.right, true
+	}
+}
+
+// add copies a part into the line.
+func (b *breaker) add(p part, x, y float64) {
+	for _, item := range b.items[p.from:p.to] {
+		item.X += x
+		item.Y += y
+		b.line.Items = append(b.line.Items, item)
+	}
+	b.line.Width = max(b.line.Width, x+p.width)
+	b.line.Ascent = max(b.line.Ascent, p.ascent-y)
+	b.line.Descent = max(b.line.Descent, p.descent+y)
+}
+
+func (b *breaker) finish() {
+	if b.full {
+		b.lines = append(b.lines, b.line)
+	}
+	b.line, b.full, b.right = Box{}, false, Open
+}
+
+func (b *breaker) newLine(at float64) {
+	b.finish()
+	b.x = at
+}
+
+func (b *breaker) chain(c Chain) {
+	em := b.em(b.st)
+	var room [8]Node
+	b.limit = 10_000
+	if c.Left != nil {
+		left := b.pieces(atoms(room[:0], c.Left), Open)
+		b.fill(left, hang*em)
+	}
+	relation, hanging := b.x+b.gapBefore(b.right, Rel), false
+	if c.Left == nil {
+		relation = 0
+	} else if len(b.lines) > 0 || relation > longLeft*b.width {
+		relation, hanging = hang*em, true
+	}
+	var under float64 // where the first right side starts
+	for i, step := range c.Steps {
+		ps := b.pieces(atoms(append(room[:0], Relation(step.Sign)), step.Right), Open)
+		if i == 0 {
+			under = relation + ps[0].width + b.gapBefore(Rel, Ord)
+		}
+		// A choice is the last thing on its line: its mark reads to the right.
+		chosen := i > 0 && endsInChoice(c.Steps[i-1].Right)
+		if b.fits(ps) && !chosen {
+			b.place(ps...)
+			continue
+		}
+		if i > 0 || hanging {
+			b.newLine(relation)
+		}
+		if b.fits(ps) {
+			b.place(ps...)
+			continue
+		}
+		b.place(ps[0])
+		b.fill(ps[1:], under)
+	}
+}
+
+// fill sets pieces from the present place on; lines that follow start at at.
+func (b *breaker) fill(ps []piece, at float64) {
+	if len(ps) == 0 {
+		return
+	}
+	if b.fits(ps) {
+		b.place(ps...)
+		return
+	}
+	rank := rankNone
+	for _, p := range ps[1:] {
+		rank = min(rank, p.rank)
+	}
+	if rank == rankNone {
+		b.unbroken(ps, at)
+		return
+	}
+	from := 0
+	for i := 1; i <= len(ps); i++ {
+		if i < len(ps) && ps[i].rank != rank {
+			continue
+		}
+		chunk := ps[from:i]
+		from = i
+		if !b.fits(chunk) && b.x > at && b.worthALine(chunk, at) {
+			b.newLine(at)
+		}
+		b.fill(chunk, at)
+	}
+}
+
+// worthALine reports whether pieces that do not fit here go to a line of their
+// own: they fit there, or little is left of this line.
+func (b *breaker) worthALine(ps []piece, at float64) bool {
+	return at+b.alone(ps) <= b.width+1e-6 || b.width-b.x < (b.width-at)/3
+}
+
+// unbroken sets pieces that have no operator to break at.
+func (b *breaker) unbroken(ps []piece, at float64) {
+	if b.x > at && at+b.alone(ps) <= b.width+1e-6 {
+		b.newLine(at)
+		b.place(ps...)
+		return
+	}
+	widest := -1
+	for i, p := range ps {
+		if opens(p.node) && (widest < 0 || p.width > ps[widest].width) {
+			widest = i
+		}
+	}
+	if widest >= 0 && b.limit > 0 {
+		b.limit--
+		opened := append([]piece(nil), ps[:widest]...)
+		opened = append(opened, b.open(ps[widest])...)
+		b.fill(append(opened, ps[widest+1:]...), at)
+		return
+	}
+	if b.x > at {
+		b.newLine(at)
+	}
+	for i, p := range ps {
+		switch {
+		case b.fits(ps[i : i+1]):
+			b.place(p)
+		case b.room(p.left) < (b.width-at)/2:
+			b.newLine(at)
+			b.unbroken(ps[i:], at)
+			return
+		default:
+			b.reduce(p, at)
+		}
+	}
+}
+
+// opens reports whether a line may break inside of an atom.
+func opens(n Node) bool {
+	switch n := n.(type) {
+	case Fence:
+		return n.Body != nil
+	case Script:
+		f, ok := n.Base.(Fence)
+		return ok && f.Body != nil
+	}
+	return false
+}
+
+// open takes a fence apart: the brackets, as tall as the body asks, and the
+// body's atoms. Scripts of the fence stay at its closing bracket.
+func (b *breaker) open(p piece) []piece {
+	script, scripted := p.node.(Script)
+	f, ok := p.node.(Fence)
+	if scripted {
+		f, ok = script.Base.(Fence)
+	}
+	if !ok {
+		return []piece{p}
+	}
+	body := b.row(f.Body, b.st)
+	shut := b.bracket(f.Close, body, b.st)
+	if scripted {
+		shut.ascent = max(shut.ascent, body.ascent)
+		shut = b.attach(shut, scripts{subNode: script.Sub, supNode: script.Sup}, b.st)
+	}
+	open := piece{part: b.bracket(f.Open, body, b.st), left: p.left, right: Open, rank: p.rank}
+	list := append([]piece{open}, b.pieces(atoms(nil, f.Body), Open)...)
+	return append(list, piece{part: shut, left: Close, right: p.right, rank: rankNone})
+}
+
+// reduce sets a piece that is wider than a line, from the start of one.
+func (b *breaker) reduce(p piece, at float64) {
+	room := b.room(p.left)
+	if c, ok := p.node.(Choice); ok {
+		p.part = b.choice(c, b.st, room)
+		b.place(p)
+		return
+	}
+	if scale := room / p.width; scale >= leastScale && p.node != nil {
+		full := b.size
+		b.size *= scale * (1 - 1e-9)
+		p.part = b.atom(p.node, Open, b.st)
+		b.size = full
+		b.place(p)
+		return
+	}
+	if list := written(p.node); list != nil && b.limit > 0 {
+		b.limit--
+		b.fill(b.pieces(list, Open), at)
+		return
+	}
+	b.cut(p, at)
+}
+
+// room is what is left of the line for a piece of a left class.
+func (b *breaker) room(left Class) float64 {
+	if b.full {
+		return b.width - b.x - b.gapBefore(b.right, left)
+	}
+	return b.width - b.x
+}
+
+// written is an atom written out in one line of text; nil for one that has
+// no such form.
+func written(n Node) []Node {
+	switch n := n.(type) {
+	case Fraction:
+		return atoms(atoms(append(atoms(nil, grouped(n.Num)), Slash), grouped(n.Den)), nil)
+	case Root:
+		list := []Node{Op{"√", Ord}, grouped(n.Body)}
+		if n.Index != nil {
+			list = append([]Node{Script{Sup: n.Index}}, list...)
+		}
+		return list
+	case Script:
+		if n.Base == nil || n.Sup == nil {
+			return nil
+		}
+		return atoms([]Node{grouped(n.Base), Op{"^", Ord}}, grouped(n.Sup))
+	case Row:
+		return atoms(nil, n)
+	}
+	return nil
+}
+
+// grouped is a node in brackets, unless it needs none in a line of text.
+func grouped(n Node) Node {
+	if n == nil || simple(n) {
+		return n
+	}
+	return Paren(n)
+}
+
+// cut sets the text of a piece character by character.
+func (b *breaker) cut(p piece, at float64) {
+	face := b.text
+	if _, ok := p.node.(Symbol); ok {
+		face = fonts.SerifItalic
+	}
+	text := string(AppendPlain(nil, p.node))
+	from := 0
+	for from < len(text) {
+		room := b.room(Ord)
+		to, width := from, 0.0
+		for i, r := range text[from:] {
+			char := string(r)
+			w := b.run(char, face, b.st, "").width
+			if width+w > room && from+i > from {
+				break
+			}
+			width += w
+			to = from + i + len(char)
+			if r == '\uFFFD' {
+				to = min(from+i+1, len(text)) // a byte that is no text
+			}
+		}
+		b.place(piece{part: b.run(text[from:to], face, b.st, ""), left: Ord, right: Ord})
+		if from = to; from < len(text) {
+			b.newLine(at)
+		}
+	}
+}
+
+// flow sets a node in lines within a width, for what stands inside of something
+// else.
+func (s *setter) flow(n Node, width float64, st style) []Box {
+	b := breaker{setter: s, width: width, st: st, right: Open, limit: 1000}
+	b.fill(b.pieces(atoms(nil, n), Open), min(hang*s.em(st), width/4))
+	b.finish()
+	return b.lines
+}

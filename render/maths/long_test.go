@@ -1,0 +1,134 @@
+package maths
+
+import (
+	"fmt"
+	"strings"
+	"testing"
+)
+
+// long are 30 long and deep formulas, for lines of 120 mm at 11 pt.
+func long() []Chain {
+	v := func(name string) Symbol {
+		head, sub, ok := strings.Cut(name, "_")
+		if !ok {
+			return sym(head)
+		}
+		return sym(head, strings.Split(sub, "_")...)
+	}
+	sum := func(terms ...Node) Row {
+		var r Row
+		for i, t := range terms {
+			if i > 0 {
+				r = append(r, Plus)
+			}
+			r = append(r, t)
+		}
+		return r
+	}
+	product := func(factors ...Node) Row {
+		var r Row
+		for i, t := range factors {
+			if i > 0 {
+				r = append(r, Beside)
+			}
+			r = append(r, t)
+		}
+		return r
+	}
+	times := func(factors ...Node) Row {
+		var r Row
+		for i, t := range factors {
+			if i > 0 {
+				r = append(r, Dot)
+			}
+			r = append(r, t)
+		}
+		return r
+	}
+	sq := func(n Node) Node { return Script{Base: n, Sup: two} }
+	max := func(args ...Node) Node { return Call(Word{Text: "max"}, args...) }
+	min := func(args ...Node) Node { return Call(Word{Text: "min"}, args...) }
+	kNm := num("12.75", term("", "kN", 1), term("·", "m", 1))
+	f := func(n, d Node) Node { return Fraction{n, d} }
+	terms := func(n int, pattern string) (list []Node) {
+		for i := range n {
+			list = append(list, v(fmt.Sprintf(pattern, i+1)))
+		}
+		return list
+	}
+	var nested Node = v("x_0")
+	for i := range 12 {
+		nested = Paren(sum(nested, product(num("1.5"), v(fmt.Sprintf("x_%d", i+1)))))
+	}
+	var continued Node = num("1")
+	for range 8 {
+		continued = sum(num("1"), f(num("1"), continued))
+	}
+	johansen := product(v("f_h_1_k"), v("t_1"), v("d"))
+	return []Chain{
+		{v("τ"), []Step{eq(f(v("P"), product(two, v("A")))), eq(f(num("48", kN), times(two, num("490.9", mm2))))}},
+		{v("A"), []Step{eq(f(product(v("π"), sq(v("d"))), num("4"))), eq(f(product(v("π"), sq(Paren(num("25", mm)))), num("4")))}},
+		{v("σ_v"), []Step{eq(Root{Body: sum(sq(v("σ_x")), sq(v("σ_y")), product(num("3"), sq(v("τ_xy"))))}),
+			eq(Root{Body: sum(sq(Paren(num("120.4", mPa))), sq(Paren(num("-35.25", mPa))), times(num("3"), sq(Paren(num("48.89", mPa)))))})}},
+		{v("S"), []Step{eq(sum(terms(20, "F_%d")...)), eq(sum(terms(6, "G_%d")...))}},
+		{v("S"), []Step{eq(sum(num("1", kN), num("2.5", kN), num("3.75", kN), num("12", kN), num("7.5", kN), num("9", kN), num("11.25", kN), num("8", kN), num("1.5", kN), num("2.5", kN)))}},
+		{v("F_v_Rk"), []Step{eq(min(
+			f(times(num("24.3", mPa), num("38", mm), num("3.75", mm)), sum(num("1"), num("0.5"))),
+			f(times(num("24.3", mPa), num("50", mm), num("3.75", mm)), sum(num("1"), num("0.5"))),
+			f(times(num("1.05"), num("24.3", mPa), num("38", mm), num("3.75", mm)), sum(two, num("1"))),
+			f(times(num("1.15"), num("6112", term("", "N", 1), term("·", "mm", 1))), num("3.2")))),
+			eq(num("812.5", term("", "N", 1)))}},
+		{v("F_c"), []Step{eq(Row{f(johansen, sum(num("1"), v("β"))), Paren(Row{Root{Body: sum(v("β"), product(two, sq(v("β")), sum(num("1"), f(v("t_2"), v("t_1")), sq(Paren(f(v("t_2"), v("t_1")))))), product(Script{v("β"), nil, num("3")}, sq(Paren(f(v("t_2"), v("t_1"))))))}, Minus, v("β"), Paren(sum(num("1"), f(v("t_2"), v("t_1"))))}), Plus, f(v("F_ax_Rk"), num("4"))})}},
+		{v("F_d"), []Step{eq(Row{num("1.05"), Beside, f(johansen, sum(two, v("β"))), Fence{"[", Row{Root{Body: sum(product(two, v("β"), Paren(sum(num("1"), v("β")))), f(product(num("4"), v("β"), Paren(sum(two, v("β"))), v("M_y_Rk")), product(v("f_h_1_k"), v("d"), sq(v("t_1")))))}, Minus, v("β")}, "]"}, Plus, f(v("F_ax_Rk"), num("4"))})}},
+		{Row{sq(Paren(f(v("N_Ed"), v("N_Rd")))), Plus, sq(Paren(f(v("V_Ed"), v("V_Rd")))), Plus, sq(Paren(f(v("M_Ed"), v("M_Rd"))))},
+			[]Step{eq(sum(sq(Paren(f(num("120.5", kN), num("355", kN)))), sq(Paren(f(num("48.25", kN), num("136.6", kN)))), sq(Paren(f(kNm, num("25.5", term("", "kN", 1), term("·", "m", 1))))))), {"<=", num("1")}}},
+		{v("k"), []Step{eq(Choice{[]Branch{{num("0.85"), Row{v("t"), Relation("<="), num("25", mm)}, false}, {num("0.75"), Row{v("t"), Relation("<="), num("40", mm)}, true}, {num("0.65"), nil, false}}}), eq(num("0.75"))}},
+		{v("M"), []Step{eq(Choice{[]Branch{
+			{f(product(v("q"), sq(v("L"))), num("8")), Row{v("x_left"), Relation("<"), f(v("L"), two), And, v("q"), Relation(">"), num("0", perM...)}, true},
+			{sum(terms(16, "m_%d")...), Row{v("x_left"), Relation("<"), product(two, v("L")), And, v("grade"), Relation("=="), Text{Text: `"S355"`}, Or, v("q"), Relation(">"), num("5", perM...)}, false},
+			{num("0", perM...), nil, false}}})}},
+		{v("y"), []Step{eq(nested)}},
+		{v("φ"), []Step{eq(continued)}},
+		{v("p"), []Step{eq(f(sum(terms(20, "a_%d")...), v("b")))}},
+		{v("p"), []Step{eq(sum(v("c"), f(sum(terms(40, "a_%d")...), v("b"))))}},
+		{v("r"), []Step{eq(Root{Body: sum(terms(24, "a_%d")...)}), eq(Root{Body: sum(terms(60, "a_%d")...), Index: num("3")})}},
+		{v("p"), []Step{eq(product(terms(30, "k_%d")...))}},
+		{v("p"), []Step{eq(times(terms(30, "k_%d")...))}},
+		{sym("aVeryLongNameOfAQuantity", "with", "many", "parts", "below", "it"), []Step{eq(sum(terms(12, "F_%d")...)), eq(num("12.5", kN))}},
+		{sym(strings.Repeat("long", 60)), []Step{eq(sym(strings.Repeat("name", 80)))}},
+		{v("u"), []Step{eq(Fraction{num("1"), sym(strings.Repeat("name", 80))})}},
+		{v("x"), []Step{eq(max(sum(terms(6, "a_%d")...), sum(terms(6, "b_%d")...), max(sum(terms(6, "c_%d")...), sum(terms(6, "d_%d")...))))}},
+		{v("δ"), []Step{eq(sum(f(product(num("5"), v("q"), Script{v("L"), nil, num("4")}), product(num("384"), v("E"), v("I"))), f(product(v("q"), sq(v("L"))), product(num("8"), v("G"), v("A_s"))))),
+			eq(sum(f(times(num("5"), num("12.5", term("", "kN", 1), term("/", "m", 1)), Script{Paren(num("6", term("", "m", 1))), nil, num("4")}), times(num("384"), num("210", term("", "GPa", 1)), num("8.356e7", term("", "mm", 4)))), f(times(num("12.5", term("", "kN", 1), term("/", "m", 1)), sq(Paren(num("6", term("", "m", 1))))), times(num("8"), num("80.77", term("", "GPa", 1)), num("2567", mm2))))), eq(num("12.19", mm))}},
+		{v("R_u"), []Step{eq(Row{v("R_ult"), Beside, Script{Paren(Row{num("1"), Minus, Script{Base: v("e"), Sup: Row{Minus, num("10"), Beside, v("Δ")}}}), nil, num("0.55")}})}},
+		{v("θ_p"), []Step{eq(Row{f(num("1"), two), Beside, Call(Word{Text: "atan2"}, product(two, v("τ_xy")), Row{v("σ_x"), Minus, v("σ_y")})}), eq(Row{f(num("1"), two), Dot, Call(Word{Text: "atan2"}, times(two, num("48.89", mPa)), Row{num("120.4", mPa), Minus, Paren(num("-35.25", mPa))})}), eq(num("16.07", term("", "°", 1)))}},
+		{nil, []Step{{">=", sum(terms(30, "F_%d")...)}}},
+		{v("K_w"), []Step{eq(sum(f(Row{times(num("4"), v("C")), Minus, num("1")}, Row{times(num("4"), v("C")), Minus, num("4")}), f(num("0.615"), v("C"))))}},
+		{v("k_1"), []Step{eq(Row{f(num("1"), num("3")), Fence{"{", Row{num("1"), Minus, f(product(num("192"), v("b")), product(Script{v("π"), nil, num("5")}, v("a"))), Abs(sum(Call(Word{Text: "tanh"}, f(product(v("π"), v("a")), product(two, v("b")))), Row{f(num("1"), num("243")), Beside, Call(Word{Text: "tanh"}, f(product(num("3"), v("π"), v("a")), product(two, v("b"))))}))}, "}"}})}},
+		{v("a"), []Step{{"<", v("b")}, {"<=", num("1.2e-5")}, {"<", sum(terms(8, "F_%d")...)}, {"<", sum(terms(8, "G_%d")...)}, {"<", num("-3.5e12", kN)}, {"<", v("z")}}},
+		{v("v_Rd_c"), []Step{eq(max(Row{f(num("0.18"), v("γ_c")), Beside, v("k"), Beside, Script{Paren(product(num("100"), v("ρ_l"), v("f_ck"))), nil, Fraction{num("1"), num("3")}}}, Row{num("0.035"), Beside, Script{v("k"), nil, Fraction{num("3"), two}}, Beside, Root{Body: v("f_ck")}})),
+			eq(max(times(f(num("0.18"), num("1.5")), num("1.943"), Script{Paren(times(num("100"), num("0.012"), num("30"))), nil, Fraction{num("1"), num("3")}}), times(num("0.035"), Script{num("1.943"), nil, Fraction{num("3"), two}}, Root{Body: num("30")}))), eq(num("0.770", mPa))}},
+	}
+}
+
+const column = 120 * 72 / 25.4
+
+func TestLongFormulas(t *testing.T) {
+	if n := len(long()); n < 30 {
+		t.Fatalf("%d formulas, want 30", n)
+	}
+	for i, c := range long() {
+		for _, width := range []float64{column, column / 2, column / 4} {
+			for j, b := range Break(c, 11, width) {
+				if b.Width > width+1e-6 {
+					t.Errorf("formula %d in %.0f: line %d is %.1f wide", i+1, width, j+1, b.Width)
+				}
+				for _, it := range b.Items {
+					if it.X < -1e-6 || it.X+it.Width > width+1e-6 {
+						t.Errorf("formula %d in %.0f: line %d has %q from %.1f to %.1f", i+1, width, j+1, it.Text, it.X, it.X+it.Width)
+					}
+				}
+			}
+		}
+	}
+}
