@@ -84,6 +84,7 @@ type Unary struct {
 
 // Binary is an arithmetic operation, or `and` and `or`.
 type Binary struct {
+	At   diag.Span
 	Op   Op
 	OpAt diag.Span
 	X, Y Expr
@@ -91,6 +92,7 @@ type Binary struct {
 
 // Compare is a chain of one or more comparisons: len(Operands) is len(Ops)+1.
 type Compare struct {
+	At       diag.Span
 	Operands []Expr
 	Ops      []Op
 	OpsAt    []diag.Span
@@ -119,6 +121,7 @@ type Arg struct {
 
 // AtMark is `steels.f_y at grade`.
 type AtMark struct {
+	At   diag.Span
 	OpAt diag.Span
 	X, Y Expr
 }
@@ -135,17 +138,15 @@ type FirstOf struct {
 type Bad struct{ At diag.Span }
 
 // Span returns the source range of an expression.
-func (n *Name) Span() diag.Span   { return n.At }
-func (n *Number) Span() diag.Span { return n.At }
-func (n *Text) Span() diag.Span   { return n.At }
-func (n *Unary) Span() diag.Span  { return n.At }
-func (n *Binary) Span() diag.Span { return n.X.Span().To(n.Y.Span()) }
-func (n *Compare) Span() diag.Span {
-	return n.Operands[0].Span().To(n.Operands[len(n.Operands)-1].Span())
-}
+func (n *Name) Span() diag.Span    { return n.At }
+func (n *Number) Span() diag.Span  { return n.At }
+func (n *Text) Span() diag.Span    { return n.At }
+func (n *Unary) Span() diag.Span   { return n.At }
+func (n *Binary) Span() diag.Span  { return n.At }
+func (n *Compare) Span() diag.Span { return n.At }
 func (n *Paren) Span() diag.Span   { return n.At }
 func (n *Call) Span() diag.Span    { return n.At }
-func (n *AtMark) Span() diag.Span  { return n.X.Span().To(n.Y.Span()) }
+func (n *AtMark) Span() diag.Span  { return n.At }
 func (n *FirstOf) Span() diag.Span { return n.At }
 func (n *Bad) Span() diag.Span     { return n.At }
 
@@ -193,6 +194,7 @@ type Branch struct {
 	Value     Expr
 	Cond      Expr // nil where there is none
 	Otherwise bool
+	Note      Note // of the branch's own line, where the definition has its note from another
 }
 
 // WhereItem is one `f_u [MPa]` behind `where`.
@@ -330,7 +332,9 @@ type Row struct {
 
 // Cell is one cell. Expr is nil where the cell is empty or cannot be read as
 // an expression; whether a column is text is for the checker to say. Quoted
-// tells that the author put the text in quotes. Slots counts the names used.
+// tells that the author put the text in quotes, which then are not part of Text.
+// Slots counts the names used. Err is an error where Expr is nil, and may be a
+// warning beside an Expr.
 type Cell struct {
 	At     diag.Span
 	Text   string
