@@ -280,7 +280,7 @@ func (row unitRow) entry(a *atom) Entry {
 	case row.define == "":
 		e.Definition = "base unit"
 	case row.zero != "":
-		e.Definition += ", from " + row.zero + " " + a.printed + " above absolute zero"
+		e.Definition += "; 0 " + a.printed + " is " + row.zero + " " + a.printed + " above absolute zero"
 	}
 	if !row.both {
 		e.System = row.system.String()

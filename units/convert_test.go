@@ -103,6 +103,9 @@ func TestNotationsUnitsAreKnown(t *testing.T) {
 			t.Errorf("%s is not known", name)
 		}
 	}
+	if u, ok := Lookup("lb"); ok {
+		t.Errorf("lb is %s", u)
+	}
 	for _, name := range []string{"lb", "ton", "mPa", "Mm", "kips", "kin", "mft", "", "1", "N*m"} {
 		if IsUnitName(name) {
 			t.Errorf("%q is a unit's name", name)

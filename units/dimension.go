@@ -41,7 +41,8 @@ func (e exponent) String() string {
 
 // newExponent reduces num/den; it reports false where the bound is exceeded. den is positive.
 func newExponent(num, den int64) (exponent, bool) {
-	if g := int64(gcd(magnitude(num), uint64(den))); g > 1 {
+	if den != 1 {
+		g := int64(gcd(magnitude(num), uint64(den)))
 		num, den = num/g, den/g
 	}
 	if num < -maxExponent || num > maxExponent || den > maxExponent {
@@ -58,6 +59,9 @@ func magnitude(n int64) uint64 {
 }
 
 func gcd(a, b uint64) uint64 {
+	if a == 1 || b == 1 {
+		return 1
+	}
 	for b != 0 {
 		a, b = b, a%b
 	}

@@ -1,6 +1,8 @@
 package units
 
 import (
+	"math/big"
+	"regexp"
 	"strings"
 	"unicode/utf8"
 )
@@ -56,44 +58,25 @@ func (p *parser) power() (exponent, *ParseError) {
 	return e, nil
 }
 
-func (p *parser) badPower(start int) *ParseError {
-	if strings.HasPrefix(p.s[p.pos:], ".") {
-		return p.decimalPower(start)
-	}
-	return fault("syntax", start, len(p.s), "a power is a whole number, or a fraction in brackets, as in `m^2` and `m^(1/2)`")
-}
+// decimal power, in brackets or not, and what follows it directly
+var decimalPower = regexp.MustCompile(`^\^(?:([-−]?[0-9]{0,3}\.[0-9]{1,4})|\(([-−]?[0-9]{0,3}\.[0-9]{1,4})\))([0-9.]?)`)
 
-// decimalPower answers m^0.5 and m^1.5 with the fraction.
-func (p *parser) decimalPower(start int) *ParseError {
-	end := p.pos + 1
-	for end < len(p.s) && plainDigit(rune(p.s[end])) >= 0 {
-		end++
+// badPower answers a power that cannot be read; m^0.5 and m^1.5 get the fraction.
+func (p *parser) badPower(start int) *ParseError {
+	match := decimalPower.FindStringSubmatch(p.s[start:])
+	if match == nil || match[3] != "" {
+		return fault("syntax", start, len(p.s), "a power is a whole number, or a fraction in brackets, as in `m^2` and `m^(1/2)`")
 	}
-	text := strings.Trim(p.s[start:end], "^()")
-	err := fault("wrong-unit-spelling", start, end, "a fractional power is written as a fraction in brackets, as in `m^(1/2)`")
-	if len(text) <= 6 && !strings.HasSuffix(text, ".") && !strings.HasPrefix(p.s[end:], ".") {
-		if e, ok := decimalExponent(text); ok {
+	err := fault("wrong-unit-spelling", start, start+len(match[0]), "a fractional power is written as a fraction in brackets, as in `m^(1/2)`")
+	r, ok := new(big.Rat).SetString(strings.Replace(match[1]+match[2], "−", "-", 1))
+	if ok && r.Sign() != 0 {
+		if e, ok := newExponent(r.Num().Int64(), r.Denom().Int64()); ok {
 			if err.Fix = powerText(e); err.Fix == "" {
 				err.Fix = "^1"
 			}
 		}
 	}
-	if end < len(p.s) && p.s[end] == ')' && strings.HasPrefix(p.s[start:], "^(") {
-		err.End = end + 1
-	}
 	return err
-}
-
-func decimalExponent(text string) (exponent, bool) {
-	r := factorOf(strings.TrimPrefix(text, "-"))
-	if r.rat != nil || r.num == 0 {
-		return exponent{}, false
-	}
-	num := int64(r.num)
-	if strings.HasPrefix(text, "-") {
-		num = -num
-	}
-	return newExponent(num, int64(r.den))
 }
 
 func plainDigit(r rune) int {

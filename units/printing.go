@@ -97,11 +97,11 @@ func (p Printing) UnitFor(d Dimension, point bool) Unit {
 	if text == "" {
 		return Unit{}
 	}
-	if u, err := Parse(text); err == nil {
-		return u
+	u, err := Parse(text)
+	if err != nil { // lbf^60 has s^-120, out of bounds; a product of base units never is
+		u, _ = Parse(d.Base())
 	}
-	// Bounds on text and factor can only be met by exponents that no calc has; SI always fits.
-	return coherent(d)
+	return u
 }
 
 // usBase writes a dimension as a product of lbf, in, s and °R: 1 kg goes with 1 lbf*s^2/in.
@@ -119,23 +119,6 @@ func (d Dimension) usBase() string {
 	names := baseNames
 	names[baseMass], names[baseLength], names[baseTemperature] = "lbf", "in", "degR"
 	return product(rest, names)
-}
-
-// coherent is the product of SI base units, with the factor 1, made without parsing.
-func coherent(d Dimension) Unit {
-	p := *plain
-	p.text, p.dim = d.Base(), d
-	for _, i := range baseOrder {
-		if d.exp[i].num == 0 {
-			continue
-		}
-		t := term{atom: catalogue.atoms[baseNames[i]], pow: d.exp[i]}
-		if len(p.terms) > 0 {
-			t.sep = '*'
-		}
-		p.terms = append(p.terms, t)
-	}
-	return Unit{p: &p}
 }
 
 func (u Unit) hasJoule() bool {

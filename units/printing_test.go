@@ -122,7 +122,7 @@ func TestEveryDimensionIsPrinted(t *testing.T) {
 	if !check(far) {
 		t.Error(far.Base())
 	}
-	for _, text := range []string{"in^100", "kg^100", "s^-100", "kg^50"} {
+	for _, text := range []string{"in^100", "kg^100", "s^-100", "kg^50", "kg^60/s^20", "kg^100"} {
 		if d := dimOf(text); !check(d) {
 			t.Error(d.Base())
 		}
