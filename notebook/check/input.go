@@ -28,6 +28,8 @@ type Carry struct {
 	Failed    bool
 	Values    map[string]Type // `P_u`, `bolts.x`, `jnt.F_v_Rk`
 	Rows      map[string]*Rows
+	Texts     map[string][]string // the entries of texts
+	Picked    map[string]*Rows    // the schedule a `first of` picked a value from
 }
 
 // HelperFile is a file of the author's own helpers under a key.

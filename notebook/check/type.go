@@ -27,17 +27,30 @@ type Rows struct {
 	Name  string   // as the defining file calls it: `bolts`, `cases`
 	Marks []string // one for each row; row numbers where the schedule has no column of marks
 	File  string   // the file that defines it, as diagnostics show it
+	Seq   int      // its place among the sets of that file
+	Named bool     // the marks are the author's, no row numbers
 }
+
+// Freq tells rotations per second from radians per second, which have one
+// dimension and differ by 2π. Arithmetic drops it.
+type Freq int8
+
+// The ways a value of dimension 1/time may have been given or declared.
+const (
+	NoFreq  Freq = iota
+	Hertz        // Hz or rpm
+	Radians      // rad/s
+)
 
 // N is the number of rows.
 func (r *Rows) N() int { return len(r.Marks) }
 
 // Type is what is known of a value before it is computed.
 type Type struct {
-	Kind    Kind
-	Dim     units.Dimension
-	Angular bool    // a literal or declared rad/s, which is not Hz
-	Rows    []*Rows // the sets of rows it runs over, outermost first; none for a plain value
+	Kind Kind
+	Dim  units.Dimension
+	Freq Freq    // how a frequency was written
+	Rows []*Rows // the sets of rows it runs over, outermost first; none for a plain value
 }
 
 // Count is the number of entries of a value of this type.

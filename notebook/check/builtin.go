@@ -1,0 +1,502 @@
+package check
+
+import (
+	"fmt"
+	"strings"
+
+	"gusset/notebook/diag"
+	"gusset/notebook/syntax"
+	"gusset/units"
+)
+
+// builtin is the rule of one built-in function: how many arguments it takes
+// (most < 0 for any number) and what its dimensions are.
+type builtin struct {
+	least, most int
+	usage       string
+	rule        rule
+}
+
+type rule int
+
+const (
+	sameDim  rule = iota // all arguments of one dimension, which is the result's
+	number               // plain numbers or angles to a plain number
+	angled               // as number, and a bare literal is warned of
+	rooted               // the dimension to the power 1/2 or 1/3
+	stepped              // x and an optional step of x's dimension
+	reducing             // reduces rows
+	minmax               // reduces the rows of one argument, else entry by entry
+	ratio                // two of one dimension to a plain number: atan2
+	interpol
+)
+
+var builtins = map[string]builtin{
+	"sqrt": {1, 1, "sqrt(x)", rooted}, "cbrt": {1, 1, "cbrt(x)", rooted},
+	"abs": {1, 1, "abs(x)", sameDim}, "hypot": {2, 3, "hypot(x, y)", sameDim},
+	"min": {1, -1, "min(x, y, …)", minmax}, "max": {1, -1, "max(x, y, …)", minmax},
+	"extreme": {1, 1, "extreme(x)", reducing}, "sum": {1, 1, "sum(x)", reducing},
+	"mean": {1, 1, "mean(x)", reducing}, "count": {1, 1, "count(x)", reducing},
+	"round": {1, 2, "round(x, step)", stepped}, "floor": {1, 2, "floor(x, step)", stepped}, "ceil": {1, 2, "ceil(x, step)", stepped},
+	"exp": {1, 1, "exp(x)", number}, "ln": {1, 1, "ln(x)", number}, "log10": {1, 1, "log10(x)", number},
+	"sin": {1, 1, "sin(x)", angled}, "cos": {1, 1, "cos(x)", angled}, "tan": {1, 1, "tan(x)", angled},
+	"asin": {1, 1, "asin(x)", number}, "acos": {1, 1, "acos(x)", number}, "atan": {1, 1, "atan(x)", number},
+	"sinh": {1, 1, "sinh(x)", number}, "cosh": {1, 1, "cosh(x)", number}, "tanh": {1, 1, "tanh(x)", number},
+	"atan2":       {2, 2, "atan2(y, x)", ratio},
+	"interpolate": {3, 3, "interpolate(table.x, table.y, x)", interpol},
+}
+
+// Builtins lists the names of the built-in functions, as NOTATION gives them.
+func Builtins() []string {
+	return strings.Fields("sqrt cbrt abs min max extreme sum mean count round floor ceil exp ln log10 sin cos tan asin acos atan atan2 sinh cosh tanh hypot interpolate")
+}
+
+// call lowers a call: of an author's function, of a helper, of a built-in function.
+func (l *lower) call(x *syntax.Call) *Node {
+	id := x.Fun.ID
+	if space, name, dotted := head(id); dotted {
+		return l.callDotted(x, space, name)
+	}
+	if f := l.e.function(id); f != nil {
+		return l.callFunction(x, f)
+	}
+	if h := l.e.helper(id); h != nil {
+		return l.callHelper(x, h)
+	}
+	if b, ok := builtins[id]; ok {
+		return l.callBuiltin(x, b)
+	}
+	if l.e.library {
+		if n, ok := l.e.c.in.Library.Natives[id]; ok {
+			return l.callNative(x, n)
+		}
+	}
+	if h, ok := l.e.c.in.Library.Helpers[id]; ok {
+		return l.callHelper(x, &helper{tree: h, library: true})
+	}
+	return l.unknownFunction(x)
+}
+
+func (l *lower) unknownFunction(x *syntax.Call) *Node {
+	for _, a := range x.Args {
+		l.expr(a.Value)
+	}
+	id := x.Fun.ID
+	if line, ok := l.e.c.laterFunction(id); ok && l.site == nil {
+		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is not yet defined: its definition stands at line %d", x.Fun.Text, line),
+			"a function is defined above its first use, and cannot call itself")
+	}
+	if d := l.e.lookup(id); d != nil {
+		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is a value (line %d), no function", x.Fun.Text, d.Line),
+			fmt.Sprintf("write `%s*(…)` for a product", x.Fun.Text))
+	}
+	var known []string
+	known = append(known, Builtins()...)
+	known = append(known, l.e.functionNames()...)
+	hint := "`gusset notation expressions` lists the functions, `gusset helpers` the helpers"
+	if near := diag.Nearest(id, known); near != "" {
+		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("there is no function or helper `%s`", x.Fun.Text), "did you mean `"+near+"`?", hint)
+	}
+	return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("there is no function or helper `%s`", x.Fun.Text), hint)
+}
+
+// callDotted lowers a call of a helper of the author's own file: `shop.bracket(…)`.
+func (l *lower) callDotted(x *syntax.Call, key, name string) *Node {
+	s, ok := l.e.c.spaces[key]
+	if !ok || s.file == nil || l.site != nil {
+		var keys []string
+		for _, f := range l.e.c.in.Helpers {
+			keys = append(keys, f.Key)
+		}
+		hint := "name the file in the front matter: `helpers: {" + key + ": " + key + ".md}`"
+		if near := diag.Nearest(key, keys); near != "" {
+			hint = "did you mean `" + near + "`?"
+		}
+		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("there is no helper file `%s`", key), hint)
+	}
+	var names []string
+	for _, h := range s.helpers {
+		if h.tree.Name.ID == name {
+			return l.callHelper(x, h)
+		}
+		names = append(names, key+"."+h.tree.Name.ID)
+	}
+	hint := "it has " + list(names)
+	if len(names) == 0 {
+		hint = "the file defines no helper"
+	}
+	return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s has no helper `%s`", s.file.Path, name), hint)
+}
+
+func (l *lower) callBuiltin(x *syntax.Call, b builtin) *Node {
+	name := x.Fun.ID
+	over := false
+	for _, a := range x.Args {
+		if a.Name != nil {
+			return l.fail(diag.Syntax, a.Name.At, fmt.Sprintf("%s takes its arguments by position", name), "write `"+b.usage+"`")
+		}
+		over = over || a.Over != nil
+	}
+	if n := len(x.Args); n < b.least || b.most >= 0 && n > b.most {
+		return l.fail(diag.Syntax, x.At, fmt.Sprintf("%s takes %s, but %s given", name, arguments(b.least, b.most), count(n, "is", "are")), "write `"+b.usage+"`")
+	}
+	reduces := b.rule == reducing || b.rule == minmax && len(x.Args) == 1
+	if over && !reduces {
+		return l.fail(diag.Syntax, x.At, "`over` stands only inside a reduction of one value, such as `max(F over bolts)`")
+	}
+	args := make([]*Node, len(x.Args))
+	bad := false
+	for i, a := range x.Args {
+		args[i] = l.value(a.Value)
+		bad = bad || !args[i].ok()
+	}
+	if bad {
+		return invalid
+	}
+	if reduces {
+		return l.reduce(x, args[0])
+	}
+	n := &Node{Op: Builtin, Fn: name, Expr: x, Args: args, plain: true}
+	n.Type = Type{Kind: Number}
+	for i, a := range args {
+		n.plain = n.plain && a.plain
+		rows, err := l.e.c.union(n.Type.Rows, a.Type.Rows)
+		if err != nil {
+			return l.failRows(x.Args[i].Value.Span(), err)
+		}
+		n.Type.Rows = rows
+	}
+	if b.rule == interpol {
+		return l.interpolate(x, args)
+	}
+	if !l.builtinDims(x, n, b) {
+		return invalid
+	}
+	return n
+}
+
+// builtinDims checks the dimensions of a built-in function's arguments and
+// sets its result's.
+func (l *lower) builtinDims(x *syntax.Call, n *Node, b builtin) bool {
+	for i, a := range n.Args {
+		if a.Type.Kind == Text || a.Type.Kind == Point && b.rule != minmax {
+			l.fail(diag.DimensionMismatch, x.Args[i].Value.Span(), fmt.Sprintf("%s takes numbers, but `%s` is %s", n.Fn, l.print(x.Args[i].Value), l.e.c.describe(a.Type)))
+			return false
+		}
+	}
+	first := n.Args[0].Type
+	switch b.rule {
+	case number, angled:
+		if !first.Dim.IsNumber() {
+			l.fail(diag.DimensionMismatch, x.Args[0].Value.Span(), fmt.Sprintf("%s takes a plain number or an angle, but `%s` is %s", n.Fn, l.print(x.Args[0].Value), l.e.c.describe(first)),
+				"divide it by a value of its own dimension first")
+			return false
+		}
+		if lit := x.Args[0].Value; b.rule == angled && n.Args[0].bare && n.Args[0].Num != 0 {
+			l.report(diag.Warning, diag.BareAngle, lit.Span(), fmt.Sprintf("the bare number %s is read as radians", l.print(lit)),
+				fmt.Sprintf("write `%s(%s deg)` for degrees, `%s(%s rad)` to say radians", n.Fn, l.print(lit), n.Fn, l.print(lit)))
+		}
+	case rooted:
+		den := int64(2)
+		if n.Fn == "cbrt" {
+			den = 3
+		}
+		dim, err := first.Dim.Pow(1, den)
+		if err != nil {
+			l.fail(diag.BoundExceeded, x.At, err.Error())
+			return false
+		}
+		n.Type.Dim = dim
+	default:
+		return l.oneDimension(x, n, b)
+	}
+	return true
+}
+
+// oneDimension holds all arguments to one dimension; a literal 0 fits any.
+func (l *lower) oneDimension(x *syntax.Call, n *Node, b builtin) bool {
+	lead := -1
+	for i, a := range n.Args {
+		if a.zero {
+			continue
+		}
+		if lead < 0 {
+			lead = i
+			n.Type.Dim, n.Type.Kind = a.Type.Dim, a.Type.Kind
+			continue
+		}
+		first := n.Args[lead].Type
+		if a.Type.Dim != first.Dim || (a.Type.Kind == Point) != (first.Kind == Point) {
+			l.mismatch(x.Args[i].Value.Span(), fmt.Sprintf("%s takes values of one dimension: `%s` is %s, but `%s` is %s", n.Fn,
+				l.print(x.Args[lead].Value), l.e.c.describe(first), l.print(x.Args[i].Value), l.e.c.describe(a.Type)), first, a.Type)
+			return false
+		}
+	}
+	if n.Type.Kind == Point {
+		for i, a := range n.Args {
+			if a.zero {
+				l.fail(diag.DimensionMismatch, x.Args[i].Value.Span(), "0 is a plain number, and the others are temperature points", "write `0 degC` or `32 degF`")
+				return false
+			}
+		}
+	}
+	if b.rule == ratio {
+		n.Type.Dim = units.Dimension{}
+	}
+	return true
+}
+
+// reduce lowers a reduction of rows: all of them, or those named by `over`.
+func (l *lower) reduce(x *syntax.Call, arg *Node) *Node {
+	fn := x.Fun.ID
+	a := x.Args[0]
+	if len(arg.Type.Rows) == 0 {
+		hints := []string{"a value has rows where it comes from a schedule or from load cases"}
+		if fn == "min" || fn == "max" {
+			hints = append(hints, fmt.Sprintf("`%s(a, b)` compares several plain values", fn))
+		}
+		return l.fail(diag.RowMismatch, a.Value.Span(), fmt.Sprintf("`%s` is a plain value: it has no rows for %s to reduce", l.print(a.Value), fn), hints...)
+	}
+	if arg.Type.Kind == Text && fn != "count" || arg.Type.Kind == Condition {
+		return l.fail(diag.DimensionMismatch, a.Value.Span(), fmt.Sprintf("%s reduces numbers, but `%s` is %s", fn, l.print(a.Value), l.e.c.describe(arg.Type)))
+	}
+	if arg.Type.Kind == Point && (fn == "sum" || fn == "extreme") {
+		return l.fail(diag.DimensionMismatch, a.Value.Span(), fmt.Sprintf("temperature points have no %s", fn), "points go through min, max, mean and interpolate")
+	}
+	n := &Node{Op: Reduce, Fn: fn, Expr: x, Args: []*Node{arg}, Type: arg.Type, Over: arg.Type.Rows}
+	n.Type.Freq, n.Type.Rows = NoFreq, nil
+	if fn == "count" {
+		n.Type.Kind, n.Type.Dim = Number, units.Dimension{}
+	}
+	if a.Over == nil {
+		return n
+	}
+	rows := l.rowsNamed(a.Over, arg.Type.Rows)
+	if rows == nil {
+		return invalid
+	}
+	n.Over = []*Rows{rows}
+	for _, r := range arg.Type.Rows {
+		if r != rows {
+			n.Type.Rows = append(n.Type.Rows[:len(n.Type.Rows):len(n.Type.Rows)], r)
+		}
+	}
+	return n
+}
+
+// rowsNamed finds the rows that `over` names among those a value has.
+func (l *lower) rowsNamed(name *syntax.Name, among []*Rows) *Rows {
+	rows := l.e.c.rowsByName(name.ID)
+	for _, r := range among {
+		if r == rows || rows == nil && l.site != nil && r.Name == name.ID {
+			return r
+		}
+	}
+	var names []string
+	for _, r := range among {
+		names = append(names, l.e.c.rowsName(r))
+	}
+	if rows == nil {
+		hint := "the value runs over " + list(names)
+		l.fail(diag.UnknownName, name.At, fmt.Sprintf("there are no rows called `%s`", name.Text), hint)
+		return nil
+	}
+	l.fail(diag.RowMismatch, name.At, fmt.Sprintf("the value has no rows of %s: it has one entry for each of %s", name.Text, list(names)))
+	return nil
+}
+
+func (l *lower) interpolate(x *syntax.Call, args []*Node) *Node {
+	xs, ys, at := args[0], args[1], args[2]
+	if len(xs.Type.Rows) != 1 || len(ys.Type.Rows) != 1 || xs.Type.Rows[0] != ys.Type.Rows[0] {
+		return l.fail(diag.RowMismatch, x.At, fmt.Sprintf("interpolate takes two columns of one table, but `%s` is %s and `%s` is %s",
+			l.print(x.Args[0].Value), l.e.c.rowWords(xs.Type), l.print(x.Args[1].Value), l.e.c.rowWords(ys.Type)),
+			"write `"+builtins["interpolate"].usage+"`")
+	}
+	for i, a := range args {
+		if a.Type.Kind == Text {
+			return l.fail(diag.DimensionMismatch, x.Args[i].Value.Span(), fmt.Sprintf("interpolate takes numbers, but `%s` is a text", l.print(x.Args[i].Value)))
+		}
+	}
+	if !at.zero && (at.Type.Dim != xs.Type.Dim || (at.Type.Kind == Point) != (xs.Type.Kind == Point)) {
+		l.mismatch(x.Args[2].Value.Span(), fmt.Sprintf("`%s` is looked up among values of another dimension: it is %s, but `%s` holds %s",
+			l.print(x.Args[2].Value), l.e.c.describe(at.Type), l.print(x.Args[0].Value), l.e.c.describe(xs.Type)), xs.Type, at.Type)
+		return invalid
+	}
+	t := ys.Type
+	t.Rows, t.Freq = at.Type.Rows, NoFreq
+	return &Node{Op: Interp, Expr: x, Args: args, Type: t}
+}
+
+// atMark lowers `column at mark`.
+func (l *lower) atMark(x *syntax.AtMark) *Node {
+	col := l.value(x.X)
+	if !col.ok() {
+		l.value(x.Y)
+		return invalid
+	}
+	mark := l.mark(x.Y)
+	if !mark.ok() {
+		return invalid
+	}
+	if len(col.Type.Rows) == 0 {
+		return l.fail(diag.RowMismatch, x.X.Span(), fmt.Sprintf("`%s` is a plain value: `at` picks a row of a value with rows", l.print(x.X)))
+	}
+	n := &Node{Op: At, Expr: x, Args: []*Node{col, mark}, Type: col.Type}
+	n.Type.Freq = col.Type.Freq
+	if mark.Type.Kind != Text {
+		if mark.Op == Load && mark.Def.Picked != nil {
+			return l.atPicked(x, n, mark)
+		}
+		return l.fail(diag.DimensionMismatch, x.Y.Span(), fmt.Sprintf("a row is picked by its mark, a text, but `%s` is %s", l.print(x.Y), l.e.c.describe(mark.Type)),
+			`a mark stands in quotes, `+"`"+l.print(x.X)+` at "`+l.print(x.Y)+`"`+"`"+`, or in a text value`)
+	}
+	rows := l.rowsWithMark(x, col, mark)
+	if rows == nil {
+		return invalid
+	}
+	return l.without(x, n, rows, mark)
+}
+
+// mark lowers what stands behind `at`; a bare mark gets its quotes offered.
+func (l *lower) mark(y syntax.Expr) *Node {
+	name, ok := y.(*syntax.Name)
+	if !ok || l.e.lookup(name.ID) != nil || strings.Contains(name.ID, ".") {
+		return l.value(y)
+	}
+	for _, r := range l.e.c.ownRows() {
+		for _, m := range r.Marks {
+			if m == name.Text {
+				return l.fail(diag.UnknownName, name.At, fmt.Sprintf("`%s` is no value; it is a mark of %s", name.Text, r.Name), fmt.Sprintf("write the mark in quotes: `at \"%s\"`", name.Text))
+			}
+		}
+	}
+	return l.value(y)
+}
+
+// without takes the rows that were looked up out of the result, and puts the
+// rows of the mark in.
+func (l *lower) without(x *syntax.AtMark, n *Node, rows *Rows, mark *Node) *Node {
+	var rest []*Rows
+	for _, r := range n.Type.Rows {
+		if r != rows {
+			rest = append(rest, r)
+		}
+	}
+	all, err := l.e.c.union(rest, mark.Type.Rows)
+	if err != nil {
+		return l.failRows(x.Span(), err)
+	}
+	n.Over = []*Rows{rows}
+	n.Type.Rows = all
+	return n
+}
+
+// atPicked lowers `plates.w at t`, where t was itself picked from plates.
+func (l *lower) atPicked(x *syntax.AtMark, n, picked *Node) *Node {
+	rows := picked.Def.Picked
+	for _, r := range n.Type.Rows {
+		if r == rows {
+			n.Op = AtRow
+			return l.without(x, n, rows, picked)
+		}
+	}
+	return l.fail(diag.RowMismatch, x.Span(), fmt.Sprintf("%s was picked from %s, but `%s` is %s", picked.Def.ID, l.e.c.rowsName(rows), l.print(x.X), l.e.c.rowWords(n.Type)))
+}
+
+// rowsWithMark says which of the value's sets of rows has the mark. With one
+// set there is no question; with two the marks must be known before anything
+// is computed.
+func (l *lower) rowsWithMark(x *syntax.AtMark, col, mark *Node) *Rows {
+	if len(col.Type.Rows) == 1 {
+		return col.Type.Rows[0]
+	}
+	texts := mark.texts()
+	if texts == nil {
+		l.fail(diag.RowMismatch, x.Span(), fmt.Sprintf("`%s` is %s, and the mark is not known before it is computed", l.print(x.X), l.e.c.rowWords(col.Type)),
+			"reduce one of the two sets of rows first")
+		return nil
+	}
+	var found []*Rows
+	for _, r := range col.Type.Rows {
+		if hasMark(r, texts[0]) {
+			found = append(found, r)
+		}
+	}
+	if len(found) == 1 {
+		return found[0]
+	}
+	var names []string
+	for _, r := range col.Type.Rows {
+		names = append(names, l.e.c.rowsName(r))
+	}
+	if len(found) == 0 {
+		l.fail(diag.UnknownMark, x.Y.Span(), fmt.Sprintf("neither of %s has a row `%s`", list(names), texts[0]))
+		return nil
+	}
+	l.fail(diag.UnknownMark, x.Y.Span(), fmt.Sprintf("%s both have a row `%s`", list(names), texts[0]), "give the rows of one of them other marks")
+	return nil
+}
+
+// texts are the texts of a node that are known before anything is computed.
+func (n *Node) texts() []string {
+	switch n.Op {
+	case TextLit:
+		return []string{n.Str}
+	case Load:
+		return n.Def.Texts
+	}
+	return nil
+}
+
+func hasMark(r *Rows, mark string) bool {
+	for _, m := range r.Marks {
+		if m == mark {
+			return true
+		}
+	}
+	return false
+}
+
+// callNative lowers a library helper's call of a function in Go.
+func (l *lower) callNative(x *syntax.Call, f *Native) *Node {
+	n := &Node{Op: CallGo, Native: f, Expr: x, Type: Type{Kind: Number, Dim: f.Result}}
+	if len(x.Args) != len(f.Params) {
+		return l.fail(diag.Syntax, x.At, fmt.Sprintf("%s takes %s", f.Name, arguments(len(f.Params), len(f.Params))))
+	}
+	for i, a := range x.Args {
+		arg := l.value(a.Value)
+		if !arg.ok() {
+			return invalid
+		}
+		p := f.Params[i]
+		if arg.Type.Dim != p.Dim && !arg.zero {
+			return l.fail(diag.DimensionMismatch, a.Value.Span(), fmt.Sprintf("%s takes %s here, but `%s` is %s", f.Name, p.Dim.Article(), l.print(a.Value), l.e.c.describe(arg.Type)))
+		}
+		if !p.Column {
+			rows, err := l.e.c.union(n.Type.Rows, arg.Type.Rows)
+			if err != nil {
+				return l.failRows(x.At, err)
+			}
+			n.Type.Rows = rows
+		}
+		n.Args = append(n.Args, arg)
+	}
+	return n
+}
+
+func arguments(least, most int) string {
+	switch {
+	case most < 0:
+		return fmt.Sprintf("at least %s", count(least, "argument", "arguments"))
+	case least == most:
+		return count(least, "argument", "arguments")
+	}
+	return fmt.Sprintf("%d or %d arguments", least, most)
+}
+
+func count(n int, one, many string) string {
+	if n == 1 {
+		return "1 " + one
+	}
+	return fmt.Sprintf("%d %s", n, many)
+}

@@ -1,0 +1,160 @@
+package check
+
+import (
+	"bytes"
+	"encoding/csv"
+	"errors"
+	"fmt"
+	"io"
+	"io/fs"
+
+	"gusset/notebook/diag"
+	"gusset/notebook/syntax"
+)
+
+// readCSV reads the file that a schedule names. Comment lines starting with
+// `#` may stand above its header; faults point into the file itself.
+func (c *checker) readCSV(t *syntax.Table) (*syntax.Table, *diag.Source, bool) {
+	l := &lower{e: c.top}
+	src, err := c.csvSource(t.From)
+	if err != nil {
+		message := fmt.Sprintf("%s cannot be read: %v", t.From, err)
+		if errors.Is(err, fs.ErrNotExist) {
+			message = fmt.Sprintf("there is no file %s", t.From)
+		}
+		l.fail(diag.MissingFile, t.FromAt, message, "the path is taken from the calc file's folder, or `library/…` for a table that ships with the program")
+		return t, nil, false
+	}
+	out := &syntax.Table{At: diag.Span{Start: 0, End: len(src.Text)}, Name: t.Name, From: t.From, FromAt: t.FromAt}
+	start := skipComments(src.Text)
+	r := csv.NewReader(bytes.NewReader(src.Text[start:]))
+	r.FieldsPerRecord = -1
+	r.TrimLeadingSpace = true
+	f := &csvFile{l: &lower{e: &env{c: c, src: src, scope: c.top.scope, names: map[string]*Def{}, parent: c.top}}, src: src, r: r, first: src.LineAt(start) - 1}
+	ok := f.read(out)
+	if len(out.Columns) == 0 && ok {
+		f.l.fail(diag.Syntax, diag.Span{Start: 0, End: 0}, "the file has no header", "the first line names the columns, with units: `mark,x [mm],y [mm]`")
+		ok = false
+	}
+	return out, src, ok
+}
+
+func (c *checker) csvSource(path string) (*diag.Source, error) {
+	if s, ok := c.in.Library.Tables[path]; ok {
+		return s, nil
+	}
+	if c.in.ReadTable == nil {
+		return nil, fs.ErrNotExist
+	}
+	return c.in.ReadTable(path)
+}
+
+func skipComments(text []byte) int {
+	at := 0
+	for at < len(text) && text[at] == '#' {
+		end := bytes.IndexByte(text[at:], '\n')
+		if end < 0 {
+			return len(text)
+		}
+		at += end + 1
+	}
+	return at
+}
+
+// csvFile reads records to a table, keeping where each field stands.
+type csvFile struct {
+	l     *lower
+	src   *diag.Source
+	r     *csv.Reader
+	first int // lines above the header
+}
+
+func (f *csvFile) read(t *syntax.Table) bool {
+	ok := true
+	for {
+		record, err := f.r.Read()
+		if err == io.EOF {
+			return ok
+		}
+		if err != nil {
+			f.broken(err)
+			return false
+		}
+		switch {
+		case t.Columns == nil:
+			ok = f.header(t, record) && ok
+		case len(t.Rows) > maxRows:
+			return ok // the bound is reported once for the table
+		default:
+			ok = f.row(t, record) && ok
+		}
+	}
+}
+
+// broken reports a record that is no CSV, at its line.
+func (f *csvFile) broken(err error) {
+	var pe *csv.ParseError
+	line, message := 1, err.Error()
+	if errors.As(err, &pe) {
+		line, message = pe.Line+f.first, pe.Err.Error()
+		switch pe.Err {
+		case csv.ErrQuote:
+			message = "a quote stands in the middle of a field"
+		case csv.ErrBareQuote:
+			message = "a quote stands in a field that does not begin with one"
+		}
+	}
+	start := f.src.LineStart(line)
+	f.l.fail(diag.Syntax, diag.Span{Start: start, End: start + len(f.src.Line(line))}, message, "a field with a comma or a quote stands in quotes, and a quote inside is doubled")
+}
+
+// field returns where a field's text stands, and whether it is quoted.
+func (f *csvFile) field(i int, text string) (diag.Span, bool) {
+	line, column := f.r.FieldPos(i)
+	start := f.src.LineStart(line+f.first) + column - 1
+	quoted := start < len(f.src.Text) && f.src.Text[start] == '"'
+	if quoted {
+		start++
+	}
+	return diag.Span{Start: start, End: min(start+len(text), len(f.src.Text))}, quoted
+}
+
+func (f *csvFile) header(t *syntax.Table, record []string) bool {
+	ok := true
+	for i, text := range record {
+		at, _ := f.field(i, text)
+		if len(record) == 1 && bytes.ContainsAny([]byte(text), ";\t") {
+			f.l.fail(diag.Syntax, at, "the columns are separated by commas", "save the file with commas as separators and points as decimal marks")
+			return false
+		}
+		col, d := syntax.ParseHeaderCell(f.src, at)
+		if d != nil {
+			d.Source = f.src
+			f.l.e.c.report(*d)
+			ok = false
+		}
+		t.Columns = append(t.Columns, col)
+	}
+	return ok
+}
+
+func (f *csvFile) row(t *syntax.Table, record []string) bool {
+	line, _ := f.r.FieldPos(0)
+	start := f.src.LineStart(line + f.first)
+	at := diag.Span{Start: start, End: start + len(f.src.Line(line+f.first))}
+	if len(record) != len(t.Columns) {
+		f.l.fail(diag.Syntax, at, fmt.Sprintf("the row has %s, but the header has %d", count(len(record), "field", "fields"), len(t.Columns)))
+		return false
+	}
+	row := syntax.Row{At: at}
+	for i, text := range record {
+		where, quoted := f.field(i, text)
+		cell := syntax.ParseCell(f.src, where, quoted)
+		if quoted {
+			cell.Text = text // a doubled quote inside stands for one
+		}
+		row.Cells = append(row.Cells, cell)
+	}
+	t.Rows = append(t.Rows, row)
+	return true
+}

@@ -1,0 +1,240 @@
+package check
+
+import (
+	"fmt"
+
+	"gusset/notebook/diag"
+	"gusset/notebook/syntax"
+)
+
+// PlotPlan is a plot ready to be computed. What lies between the swept name and the
+// curves is lowered anew, with the swept name a value over the points of the
+// range: every statement that does not depend on it is computed once.
+type PlotPlan struct {
+	Tree   *syntax.Plot
+	Swept  *Def  // the calc's own value
+	Point  *Def  // what stands for it over the range
+	Rows   *Rows // the points; their marks are set when the range is known
+	From   *Node
+	To     *Node
+	Scope  *Scope
+	Plans  []*Plan // what is computed again, in order
+	Curves []PlotCurve
+	Limits []PlotCurve
+	Failed bool
+}
+
+// PlotCurve is one curve: the calc's own value and what it is over the range.
+type PlotCurve struct {
+	Def   *Def
+	Swept *Def // Def itself where it does not depend on the swept name
+}
+
+// The points of a plot.
+const (
+	plotSteps    = 200
+	maxPlotSteps = 10_000
+)
+
+func (c *checker) plot(block int, t *syntax.Plot) {
+	plan := &PlotPlan{Tree: t}
+	c.prog.Plots[block] = plan
+	if t.Checks {
+		return
+	}
+	l := &lower{e: c.top, uses: make([]*Def, t.Slots), declared: true}
+	c.sweep(l, plan, t)
+	plan.Failed = l.failed
+}
+
+func (c *checker) sweep(l *lower, plan *PlotPlan, t *syntax.Plot) {
+	plan.Swept = l.sweptName(t)
+	if plan.Swept == nil {
+		return
+	}
+	d := plan.Swept
+	plan.From, plan.To = l.bound(t.From, d), l.bound(t.To, d)
+	if l.failed {
+		return
+	}
+	steps := t.Steps
+	if steps == 0 {
+		steps = plotSteps
+	}
+	if steps > maxPlotSteps {
+		l.fail(diag.BoundExceeded, t.At, fmt.Sprintf("a plot has at most %d steps", maxPlotSteps))
+		return
+	}
+	plan.Rows = &Rows{Name: d.Symbol, File: c.in.Source.Name, Seq: len(c.order), Marks: make([]string, steps+1)}
+	c.order[plan.Rows] = len(c.order)
+	s := &sweeper{c: c, plan: plan, dirty: map[*Def]bool{d: true}, funcs: map[string]bool{}}
+	s.overlay(t)
+	if !s.relower() {
+		l.failed = true
+		return
+	}
+	for _, n := range t.Curves {
+		l.curve(n, s, true, &plan.Curves)
+	}
+	for _, n := range t.Limits {
+		l.curve(n, s, false, &plan.Limits)
+	}
+}
+
+// sweptName finds the value that a plot runs along its axis.
+func (l *lower) sweptName(t *syntax.Plot) *Def {
+	n := l.name(t.Against)
+	if !n.ok() {
+		return nil
+	}
+	switch {
+	case n.Type.Kind != Number || n.Def.IsConst:
+		l.fail(diag.DimensionMismatch, t.Against.At, fmt.Sprintf("a plot runs along a number, but %s is %s", t.Against.Text, l.e.c.describe(n.Type)))
+	case len(n.Type.Rows) > 0:
+		l.fail(diag.RowMismatch, t.Against.At, fmt.Sprintf("a plot runs along a plain value, but %s is %s", t.Against.Text, l.e.c.rowWords(n.Type)))
+	default:
+		return n.Def
+	}
+	return nil
+}
+
+func (l *lower) bound(x syntax.Expr, d *Def) *Node {
+	n := l.value(x)
+	if !n.ok() {
+		return n
+	}
+	if len(n.Type.Rows) > 0 {
+		return l.fail(diag.RowMismatch, x.Span(), fmt.Sprintf("a bound of the range is a plain value, but `%s` is %s", l.print(x), l.e.c.rowWords(n.Type)))
+	}
+	if !n.zero && (n.Type.Dim != d.Type.Dim || n.Type.Kind != d.Type.Kind) {
+		l.mismatch(x.Span(), fmt.Sprintf("the range of %s is %s, but `%s` is %s", d.Symbol, l.e.c.describe(d.Type), l.print(x), l.e.c.describe(n.Type)), d.Type, n.Type)
+		return invalid
+	}
+	return n
+}
+
+// curve enters one curve or limit, all of one dimension.
+func (l *lower) curve(x *syntax.Name, s *sweeper, mustMove bool, out *[]PlotCurve) {
+	n := l.name(x)
+	if !n.ok() {
+		return
+	}
+	if n.Type.Kind != Number {
+		l.fail(diag.DimensionMismatch, x.At, fmt.Sprintf("a plot draws numbers, but %s is %s", x.Text, l.e.c.describe(n.Type)))
+		return
+	}
+	if first := s.plan.Curves; len(first) > 0 && first[0].Def.Type.Dim != n.Type.Dim {
+		l.mismatch(x.At, fmt.Sprintf("one axis carries one dimension: %s is %s, but %s is %s", first[0].Def.Symbol, l.e.c.describe(first[0].Def.Type), x.Text, l.e.c.describe(n.Type)),
+			first[0].Def.Type, n.Type)
+		return
+	}
+	swept := n.Def
+	if d := s.e.names[n.Def.ID]; d != nil {
+		swept = d
+	} else if mustMove && n.Def != s.plan.Swept {
+		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s does not depend on %s: there is nothing to plot", x.Text, s.plan.Swept.Symbol),
+			"a value that stays the same is drawn with `limit "+x.Text+"`")
+		return
+	}
+	if swept.Failed {
+		l.depend(swept.Because)
+		return
+	}
+	*out = append(*out, PlotCurve{Def: n.Def, Swept: swept})
+}
+
+// sweeper lowers anew what depends on the swept name.
+type sweeper struct {
+	c     *checker
+	plan  *PlotPlan
+	e     *env
+	body  *body
+	dirty map[*Def]bool   // the calc's own values that depend on it
+	funcs map[string]bool // the author's functions that do
+}
+
+func (s *sweeper) overlay(t *syntax.Plot) {
+	c, d := s.c, s.plan.Swept
+	s.plan.Scope = &Scope{Parent: c.prog.Scope}
+	s.e = &env{c: c, src: c.in.Source, scope: s.plan.Scope, names: map[string]*Def{}, funcs: map[string]*function{}, parent: c.top}
+	p := *d
+	p.Scope, p.Slot, p.Type.Rows = s.plan.Scope, s.plan.Scope.newSlot(), []*Rows{s.plan.Rows}
+	p.Literal, p.Plan, p.exact, p.plain = nil, nil, nil, false
+	s.plan.Point = &p
+	s.e.names[d.ID] = &p
+	s.body = &body{c: c, e: s.e, site: &t.At, siteIn: c.top, inside: "the plot"}
+}
+
+// relower lowers the statements below the swept name that depend on it.
+func (s *sweeper) relower() bool {
+	c := s.c
+	before := len(c.prog.Diagnostics)
+	for _, p := range c.prog.Plans {
+		def, ok := p.Stmt.(*syntax.Definition)
+		if p.Failed || p.Def == s.plan.Swept || !ok && p.Column == nil || ok && !s.depends(p, def) {
+			continue
+		}
+		if p.Column != nil {
+			s.column(p)
+			continue
+		}
+		if p.Func {
+			s.funcs[def.Name.ID] = true
+			s.e.funcs[def.Name.ID] = &function{def: def, env: s.e, line: p.Line, uses: map[string]*Function{}}
+			continue
+		}
+		s.dirty[p.Def] = true
+		for _, r := range p.Def.Results {
+			s.dirty[r] = true
+		}
+		s.body.definition(def)
+	}
+	// Warnings about these lines were given where they stand.
+	kept := c.prog.Diagnostics[:before]
+	sound := true
+	for _, d := range c.prog.Diagnostics[before:] {
+		if d.Severity == diag.Error {
+			kept = append(kept, d)
+			sound = false
+		}
+	}
+	c.prog.Diagnostics = kept
+	s.plan.Plans = s.body.plans
+	return sound
+}
+
+// column refuses a schedule whose cells depend on the swept name.
+func (s *sweeper) column(p *Plan) {
+	for _, uses := range p.Column.Uses {
+		for _, d := range uses {
+			if d != nil && s.dirty[d] {
+				l := s.body.lower(0)
+				l.fail(diag.RowMismatch, s.plan.Tree.At, fmt.Sprintf("the column %s depends on %s in its cells, and a schedule's cells are not swept", p.Def.Symbol, s.plan.Swept.Symbol))
+				return
+			}
+		}
+	}
+}
+
+func (s *sweeper) depends(p *Plan, def *syntax.Definition) bool {
+	for _, d := range p.Uses {
+		if d != nil && s.dirty[d] {
+			return true
+		}
+	}
+	found := false
+	for i := range def.Branches {
+		for _, x := range []syntax.Expr{def.Branches[i].Value, def.Branches[i].Cond} {
+			if x == nil || found {
+				continue
+			}
+			syntax.Walk(x, func(e syntax.Expr) bool {
+				if call, ok := e.(*syntax.Call); ok && s.funcs[call.Fun.ID] {
+					found = true
+				}
+				return !found
+			})
+		}
+	}
+	return found
+}

@@ -1,0 +1,214 @@
+package check
+
+import (
+	"fmt"
+	"sort"
+	"strings"
+
+	"gusset/notebook/diag"
+	"gusset/notebook/syntax"
+	"gusset/units"
+)
+
+// resolve finds what a name stands for and notes the use, or reports why it
+// stands for nothing.
+func (l *lower) resolve(x *syntax.Name) *Def {
+	d := l.e.lookup(x.ID)
+	if d == nil && l.site == nil {
+		d = l.carried(x)
+	}
+	if d == nil {
+		if !l.failed || !l.carriedFailed(x) {
+			l.unknown(x)
+		}
+		return nil
+	}
+	d.used = true
+	if x.Slot >= 0 && x.Slot < len(l.uses) {
+		l.uses[x.Slot] = d
+	}
+	return d
+}
+
+// carried finds `loads.P_u` in the carried file and gives it a place in the
+// calc's own scope.
+func (l *lower) carried(x *syntax.Name) *Def {
+	key, name, dotted := head(x.ID)
+	s, ok := l.e.c.spaces[key]
+	if !dotted || !ok || s.from == nil {
+		return nil
+	}
+	if s.from.Failed {
+		l.depend(s.line)
+		return nil
+	}
+	t, ok := s.from.Values[name]
+	if !ok {
+		return nil
+	}
+	c := l.e.c
+	d := &Def{ID: x.ID, Symbol: x.Text, Slot: c.prog.Scope.newSlot(), Scope: c.prog.Scope, Type: t, Line: s.line, Carry: s.from, Key: name}
+	d.Texts = s.from.Texts[name]
+	d.Picked = s.from.Picked[name]
+	c.top.names[x.ID] = d
+	c.prog.Loads = append(c.prog.Loads, d)
+	if t.Kind == Bundle {
+		for _, full := range sortedKeys(s.from.Values) {
+			if strings.HasPrefix(full, name+".") {
+				d.Results = append(d.Results, &Def{ID: key + "." + full})
+			}
+		}
+	}
+	return d
+}
+
+func (l *lower) carriedFailed(x *syntax.Name) bool {
+	key, _, dotted := head(x.ID)
+	s, ok := l.e.c.spaces[key]
+	return dotted && ok && s.from != nil && s.from.Failed
+}
+
+func sortedKeys[V any](m map[string]V) []string {
+	keys := make([]string, 0, len(m))
+	for k := range m {
+		keys = append(keys, k)
+	}
+	sort.Strings(keys)
+	return keys
+}
+
+// unknown reports a name that stands for nothing, with the likeliest reason.
+func (l *lower) unknown(x *syntax.Name) {
+	c := l.e.c
+	if space, name, dotted := head(x.ID); dotted {
+		l.unknownDotted(x, space, name)
+		return
+	}
+	if line, ok := c.later[x.ID]; ok && l.site == nil {
+		if l.e.c.defining == x.ID {
+			l.fail(diag.UsedBefore, x.At, fmt.Sprintf("%s is used in its own definition", x.Text), "a name is defined once, above its first use; give the new value a name of its own")
+			return
+		}
+		l.fail(diag.UsedBefore, x.At, fmt.Sprintf("%s is used here, but defined below, at line %d", x.Text, line), "move its definition above this line")
+		return
+	}
+	if l.e.function(x.ID) != nil || l.e.helper(x.ID) != nil || c.in.Library.Helpers[x.ID] != nil {
+		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is a function; it has a value only with its arguments", x.Text), fmt.Sprintf("write `%s(…)`", x.Text))
+		return
+	}
+	if b, ok := builtins[x.ID]; ok {
+		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is a function; it has a value only with its arguments", x.Text), "write `"+b.usage+"`")
+		return
+	}
+	if s, ok := c.spaces[x.ID]; ok {
+		hint := "a value of it is named behind a dot: `" + x.Text + ".…`"
+		if s.rows != nil {
+			hint = "its columns are " + list(l.e.inScope(func(d *Def) bool { h, _, _ := head(d.ID); return h == x.ID }))
+		}
+		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is %s, no value", x.Text, s.what), hint)
+		return
+	}
+	near := diag.Nearest(x.ID, l.e.inScope(func(*Def) bool { return true }))
+	if units.IsUnitName(x.Text) && (near == "" || len(x.Text) > 1) {
+		l.fail(diag.MissingUnit, x.At, fmt.Sprintf("`%s` stands here as a value, but no value of that name is defined; it is a unit", x.Text),
+			fmt.Sprintf("a unit stands directly after a number: write `1 %s`", x.Text))
+		return
+	}
+	var hints []string
+	if near != "" {
+		hints = append(hints, "did you mean `"+near+"`?")
+	} else {
+		hints = append(hints, "a name is defined above its first use: `"+x.Text+" = …`")
+	}
+	l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is not defined", x.Text), hints...)
+}
+
+// unknownDotted reports `bolts.z`, `loads.Q`, `jnt.F_x` that do not exist.
+func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
+	c := l.e.c
+	if d := l.e.lookup(space); d != nil {
+		switch {
+		case d.Failed:
+			l.depend(d.Because)
+		case d.Type.Kind == Bundle:
+			l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s has no result `%s`", d.Symbol, name), "its results are "+list(resultNames(d)))
+		default:
+			l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is %s, and has nothing behind a dot", d.Symbol, c.describe(d.Type)))
+		}
+		return
+	}
+	if line, ok := c.later[x.ID]; ok && l.site == nil {
+		l.fail(diag.UsedBefore, x.At, fmt.Sprintf("%s is used here, but defined below, at line %d", x.Text, line), "move the schedule above this line")
+		return
+	}
+	s, ok := c.spaces[space]
+	if !ok || l.site != nil {
+		hint := "`a.b` is a schedule's column, a value carried from another calc, or one of a helper's results"
+		if near := diag.Nearest(space, sortedKeys(c.spaces)); near != "" {
+			hint = "did you mean `" + near + "." + name + "`?"
+		}
+		l.fail(diag.UnknownName, x.At, fmt.Sprintf("there is no schedule, carried file or helper's result `%s`", space), hint)
+		return
+	}
+	var known []string
+	what := ""
+	switch {
+	case s.from != nil:
+		known, what = sortedKeys(s.from.Values), s.from.Path+" defines no value"
+	case s.rows != nil:
+		if s.failed {
+			l.depend(s.line)
+			return
+		}
+		for _, id := range l.e.inScope(func(d *Def) bool { h, _, _ := head(d.ID); return h == space }) {
+			_, col, _ := head(id)
+			known = append(known, col)
+		}
+		what = "the schedule " + space + " has no column"
+	default:
+		for _, h := range s.file.Helpers {
+			known = append(known, h.Name.ID)
+		}
+		what = s.file.Path + " has no helper"
+	}
+	hint := "it has " + list(known)
+	if near := diag.Nearest(name, known); near != "" {
+		hint = "did you mean `" + space + "." + near + "`?"
+	}
+	l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s `%s`", what, name), hint)
+}
+
+// rowsByName finds the rows that a name stands for behind `over`: a schedule,
+// `cases`, or a carried set under its file's key.
+func (c *checker) rowsByName(id string) *Rows {
+	if s, ok := c.spaces[id]; ok && s.rows != nil {
+		return s.rows
+	}
+	key, name, dotted := head(id)
+	if s, ok := c.spaces[key]; dotted && ok && s.from != nil {
+		return s.from.Rows[name]
+	}
+	return nil
+}
+
+// ownRows are the sets of rows the file itself defines, in order.
+func (c *checker) ownRows() []*Rows {
+	var out []*Rows
+	for _, r := range c.prog.BlockRows {
+		if r != nil {
+			out = append(out, r)
+		}
+	}
+	return out
+}
+
+// functionNames lists what may be called, for a suggestion.
+func (e *env) functionNames() []string {
+	var out []string
+	c := e.c
+	for ; e != nil; e = e.parent {
+		out = append(out, sortedKeys(e.funcs)...)
+		out = append(out, sortedKeys(e.helpers)...)
+	}
+	return append(out, sortedKeys(c.in.Library.Helpers)...)
+}

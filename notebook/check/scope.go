@@ -1,0 +1,146 @@
+package check
+
+import (
+	"slices"
+	"sort"
+	"strings"
+
+	"gusset/notebook/diag"
+	"gusset/notebook/syntax"
+	"gusset/units"
+)
+
+// env is where names are looked up: the calc itself, the parameters of a
+// function with the calc behind them, or the closed world of a helper's body.
+type env struct {
+	c       *checker
+	src     *diag.Source
+	scope   *Scope
+	names   map[string]*Def
+	funcs   map[string]*function
+	helpers map[string]*helper
+	parent  *env
+	library bool // a library helper's body, which may call functions in Go
+}
+
+// function is an author's function before it is used.
+type function struct {
+	def    *syntax.Definition
+	env    *env
+	line   int
+	failed bool
+	uses   map[string]*Function // instances by the types of the arguments
+}
+
+// helper is a helper block with where it may be called from.
+type helper struct {
+	tree    *syntax.Helper
+	library bool
+	earlier []*helper // those of its own file that stand above it
+	failed  bool
+	line    int
+}
+
+func (e *env) lookup(id string) *Def {
+	c := e.c
+	for ; e != nil; e = e.parent {
+		if d, ok := e.names[id]; ok {
+			return d
+		}
+	}
+	return c.consts[id]
+}
+
+func (e *env) function(id string) *function {
+	for ; e != nil; e = e.parent {
+		if f, ok := e.funcs[id]; ok {
+			return f
+		}
+	}
+	return nil
+}
+
+func (e *env) helper(id string) *helper {
+	for ; e != nil; e = e.parent {
+		if h, ok := e.helpers[id]; ok {
+			return h
+		}
+	}
+	return nil
+}
+
+// define gives a name a place in the environment's scope.
+func (e *env) define(n *syntax.Name, t Type) *Def {
+	d := &Def{ID: n.ID, Symbol: n.Text, Slot: e.scope.newSlot(), Scope: e.scope, Type: t, At: n.At, Line: e.src.LineAt(n.At.Start)}
+	e.names[n.ID] = d
+	return d
+}
+
+// inScope lists the names in scope, sorted, that pass the test; names of
+// schedules' columns and helpers' results included.
+func (e *env) inScope(pass func(*Def) bool) []string {
+	var out []string
+	for ; e != nil; e = e.parent {
+		for id, d := range e.names {
+			if pass(d) && !slices.Contains(out, id) {
+				out = append(out, id)
+			}
+		}
+	}
+	sort.Strings(out)
+	return out
+}
+
+// constants are the names that are defined without the author.
+func constants() map[string]*Def {
+	out := map[string]*Def{}
+	for _, k := range []struct {
+		id, symbol, unit string
+		value            float64
+	}{
+		{"pi", "π", "", pi},
+		{"g_n", "g_n", "m/s^2", 9.80665},
+	} {
+		u, _ := units.Parse(k.unit)
+		out[k.id] = &Def{ID: k.id, Symbol: k.symbol, Unit: &u, Type: Type{Kind: Number, Dim: u.Dim()}, Const: k.value, IsConst: true, used: true}
+	}
+	return out
+}
+
+const pi = 3.14159265358979323846264338327950288
+
+// occupied tells what a top-level name already stands for, "" for nothing:
+// values, functions, and the names before a dot share one namespace.
+func (c *checker) occupied(id string) (what string, line int) {
+	if d, ok := c.top.names[id]; ok {
+		return "a value", d.Line
+	}
+	if c.consts[id] != nil {
+		return "a constant", 0
+	}
+	if h, ok := c.top.helpers[id]; ok {
+		return "a helper", h.line
+	}
+	if f, ok := c.top.funcs[id]; ok {
+		return "a function", f.line
+	}
+	if s, ok := c.spaces[id]; ok {
+		return s.what, s.line
+	}
+	return "", 0
+}
+
+// space is a name that stands before a dot.
+type space struct {
+	what   string
+	line   int
+	rows   *Rows
+	failed bool // a schedule that could not be read
+	from   *Carry
+	file   *HelperFile
+}
+
+// head returns what stands before the first dot, and what follows it.
+func head(id string) (string, string, bool) {
+	return strings.Cut(id, ".")
+}
