@@ -23,7 +23,6 @@ type unitRow struct {
 const (
 	siBrochure = "SI Brochure, 9th ed."
 	nistB8     = "NIST SP 811, B.8"
-	nistUS     = "NIST SP 811, B.6 to B.8"
 	common     = "common practice"
 )
 
@@ -71,14 +70,14 @@ var unitRows = []unitRow{
 	{quantity: "stress", name: "Pa", define: "1 N/m^2", prefixes: "h k M G", source: siBrochure},
 	{quantity: "stress", name: "bar", define: "100000 Pa", prefixes: "m", source: nistB8},
 	{quantity: "stress", name: "atm", define: "101325 Pa", both: true, source: nistB8},
-	{quantity: "stress", name: "psi", define: "1 lbf/in^2", system: US, source: nistUS},
-	{quantity: "stress", name: "ksi", define: "1 kip/in^2", system: US, source: nistUS},
-	{quantity: "stress", name: "psf", define: "1 lbf/ft^2", system: US, source: nistUS},
+	{quantity: "stress", name: "psi", define: "1 lbf/in^2", system: US, source: nistB8},
+	{quantity: "stress", name: "ksi", define: "1 kip/in^2", system: US, source: nistB8},
+	{quantity: "stress", name: "psf", define: "1 lbf/ft^2", system: US, source: nistB8},
 	{quantity: "stress", name: "ksf", define: "1 kip/ft^2", system: US, source: common},
 
-	{quantity: "line load", name: "plf", define: "1 lbf/ft", system: US, source: nistUS},
+	{quantity: "line load", name: "plf", define: "1 lbf/ft", system: US, source: nistB8},
 	{quantity: "line load", name: "klf", define: "1 kip/ft", system: US, source: common},
-	{quantity: "line load", name: "pli", define: "1 lbf/in", system: US, source: nistUS},
+	{quantity: "line load", name: "pli", define: "1 lbf/in", system: US, source: nistB8},
 	{quantity: "weight density", name: "pcf", define: "1 lbf/ft^3", system: US, source: common},
 
 	{quantity: "energy", name: "J", define: "1 N*m", prefixes: "m k M G", source: siBrochure},
