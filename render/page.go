@@ -56,7 +56,7 @@ const (
 	NoteLine               // a line that is only a note
 	Gap                    // space between groups of lines
 	Definition             // a function of the author's own: its formula, without numbers
-	HelperHead             // the head of a helper's lines: its title (Note) and its arguments or signature (Formula)
+	HelperHead             // the head of a helper's lines: its title (Note) and its arguments or its signature (Formula)
 	Limit                  // a limit of validity that a helper was held to
 	Tabular                // nothing but Tables (and a Note as caption): schedules, and values over rows
 	DrawingOf              // a plot or a figure

@@ -57,6 +57,3 @@ type column struct {
 	cell    func(dst []byte, row int) []byte
 	governs int // -1 for none
 }
-
-// NewPage decides what a compiled calc prints. The sheet has no errors.
-func NewPage(s *notebook.Sheet) *Page { return &Page{Sheet: s} }

@@ -1,0 +1,119 @@
+package render
+
+import (
+	"gusset/notebook"
+	"gusset/notebook/eval"
+	"gusset/notebook/syntax"
+	"gusset/render/maths"
+)
+
+// call appends the lines of a helper as it was called: its title, its source and
+// the values that it was given, then its own formulas and limits.
+func (c *composer) call(dst []Entry, call *eval.Call, indent int) []Entry {
+	h := call.Helper
+	head := Entry{Kind: HelperHead, Indent: indent, Note: helperTitle(h), Refs: sources(h.Note.Source), Mark: call.Mark}
+	for _, text := range call.Cautions {
+		if line := c.caution(text); line != nil {
+			head.Refs = append(head.Refs, Ref{Text: "caution " + line.Number, Target: line.Anchor})
+		}
+	}
+	head.Formula.Left = c.arguments(call.Args)
+	dst = append(dst, head)
+	dst = append(dst, c.steps(call.Steps, indent, false)...)
+	if call.Residual != "" {
+		dst = append(dst, Entry{Kind: NoteLine, Indent: indent, Note: call.Residual})
+	}
+	return dst
+}
+
+// helperTitle is a helper's title, else its name.
+func helperTitle(h *syntax.Helper) string {
+	if h.Note.Text != "" {
+		return h.Note.Text
+	}
+	return h.Name.Text
+}
+
+// arguments sets parameters with the values they took, side by side.
+func (c *composer) arguments(args []*eval.Step) maths.Node {
+	var row maths.Row
+	for _, a := range args {
+		if len(row) > 0 {
+			row = append(row, maths.Comma)
+		}
+		row = append(row, c.maths.Plain(a), maths.Relation("="))
+		if len(a.Value.Type.Rows) > 0 {
+			row = append(row, c.column(a))
+		} else {
+			row = append(row, c.maths.Output(a, 0))
+		}
+	}
+	if row == nil {
+		return nil
+	}
+	return row
+}
+
+// column sets the entries of a column in brackets: all of a few, else the first
+// and the last.
+func (c *composer) column(a *eval.Step) maths.Node {
+	const all = 8
+	var row maths.Row
+	n := a.Value.Len()
+	for i := range n {
+		if n > all && i >= all-2 && i < n-1 {
+			if i == all-2 {
+				row = append(row, maths.Comma, maths.Text{Text: "…"})
+			}
+			continue
+		}
+		if i > 0 {
+			row = append(row, maths.Comma)
+		}
+		row = append(row, c.maths.Output(a, i))
+	}
+	return maths.Paren(row)
+}
+
+// helperBlock lists a helper of the author's own as it is defined: its
+// parameters and its formulas, without numbers.
+func (c *composer) helperBlock(b *notebook.Block) []Entry {
+	h := b.Tree.Helper
+	if h == nil {
+		return nil
+	}
+	params := make([]maths.Node, len(h.Params))
+	for i, p := range h.Params {
+		params[i] = c.maths.Name(p.Name.Text)
+		if p.Default != nil {
+			params[i] = maths.Row{params[i], maths.Relation("="), c.maths.Write(p.Default, nil)}
+		}
+	}
+	entries := []Entry{{
+		Kind: HelperHead, Anchor: b.Anchor, Note: helperTitle(h), Refs: sources(h.Note.Source),
+		Formula: maths.Chain{Left: maths.Call(maths.Word{Text: h.Name.Text}, params...)},
+	}}
+	for _, s := range h.Stmts {
+		e := Entry{Kind: Definition, Indent: 1}
+		switch s := s.(type) {
+		case *syntax.Gap:
+			e.Kind = Gap
+		case *syntax.NoteLine:
+			e.Kind, e.Note, e.Refs = NoteLine, s.Note.Text, sources(s.Note.Source)
+		case *syntax.Needs:
+			e.Kind, e.Note, e.Refs = Limit, s.Note.Text, sources(s.Note.Source)
+			e.Formula.Left = c.maths.Write(s.Cond, nil)
+		case *syntax.Definition:
+			e.Note, e.Refs = s.Note.Text, sources(s.Note.Source)
+			e.Formula = maths.Chain{Left: c.maths.Name(s.Name.Text), Steps: equal(c.maths.Function(s, nil))}
+			if s.Func {
+				e.Formula.Left = c.signature(s.Name, s.Params)
+			}
+			e.Below = c.whereUnits(s, s.Unit)
+		default:
+			continue
+		}
+		entries = append(entries, e)
+	}
+	return entries
+}

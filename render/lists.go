@@ -1,0 +1,216 @@
+package render
+
+import (
+	"cmp"
+	"slices"
+	"strings"
+
+	"gusset/notebook"
+	"gusset/notebook/check"
+	"gusset/notebook/eval"
+	"gusset/notebook/syntax"
+	"gusset/render/maths"
+)
+
+// standingNotes stand at the end of every calc.
+var standingNotes = []string{
+	"Values are carried in full precision; figures are rounded for print.",
+	"The results depend on the stated inputs and assumptions.",
+	"The governing code and a licensed engineer decide.",
+}
+
+// lists makes the closing lists.
+func (c *composer) lists() Lists {
+	l := Lists{
+		Checks:    c.summary(),
+		Unsourced: c.unsourced(),
+		Symbols:   c.symbols(),
+		Sources:   c.sources(),
+		Cautions:  c.cautions,
+		Notes:     standingNotes,
+	}
+	for _, r := range c.sheet.Remarks {
+		switch r.Kind {
+		case notebook.Assumption:
+			l.Assumptions = append(l.Assumptions, r)
+		case notebook.Hold:
+			l.Holds = append(l.Holds, r)
+		}
+	}
+	return l
+}
+
+// summary lists the checks: NG first, then by utilisation, those without one,
+// and those not required.
+func (c *composer) summary() []Summary {
+	var list []Summary
+	for _, s := range c.sheet.Steps {
+		if s.Check == nil || s.Kind != eval.Check || s.Failed {
+			continue
+		}
+		line := Summary{
+			Number: s.Number, Anchor: s.Anchor, Note: s.Note,
+			Formula: c.asWritten(s, s.Check),
+			Mark:    s.Check.Type.Mark(s.Check.Governs), Verdict: verdict(s.Check),
+		}
+		if !line.Verdict.Required {
+			line.Reason, line.Mark = c.needed(s), ""
+		}
+		list = append(list, line)
+	}
+	slices.SortStableFunc(list, func(a, b Summary) int {
+		if d := cmp.Compare(a.Verdict.standing(), b.Verdict.standing()); d != 0 {
+			return d
+		}
+		if a.Verdict.Utilisation == "" || b.Verdict.Utilisation == "" {
+			return 0
+		}
+		return -cmp.Compare(a.Verdict.Ratio, b.Verdict.Ratio)
+	})
+	return list
+}
+
+// standing is the place of a verdict's group in the summary.
+func (v *Verdict) standing() int {
+	group := 0
+	switch {
+	case !v.Required:
+		return 4
+	case v.OK:
+		group = 2
+	}
+	if v.Utilisation == "" {
+		group++
+	}
+	return group
+}
+
+// unsourced lists the givens that do not say where they come from.
+func (c *composer) unsourced() []Unsourced {
+	var list []Unsourced
+	for _, b := range c.sheet.Blocks {
+		switch b.Kind {
+		case syntax.ScheduleBlock, syntax.CasesBlock:
+			if b.Source == "" {
+				list = append(list, Unsourced{Symbol: maths.Text{Text: b.Name}, Anchor: b.Anchor, Note: b.Note})
+			}
+		case syntax.CalcBlock:
+			for _, s := range b.Steps {
+				if s.Kind == eval.Given && s.Source == "" {
+					list = append(list, Unsourced{c.maths.Plain(s), s.Anchor, c.maths.Output(s, s.Entry), s.Note})
+				}
+			}
+		}
+	}
+	return list
+}
+
+// defined are all steps that define a symbol, in order, the columns of
+// schedules included.
+func (c *composer) defined() []*eval.Step {
+	var list []*eval.Step
+	for _, b := range c.sheet.Blocks {
+		for _, s := range b.Steps {
+			if s.ID == "" || s.Failed {
+				continue
+			}
+			if s.Value.Type.Kind != check.Bundle {
+				list = append(list, s)
+			}
+			list = append(list, s.Results...)
+		}
+	}
+	return list
+}
+
+// symbols explains every symbol, Latin letters before Greek ones.
+func (c *composer) symbols() []SymbolLine {
+	steps := c.defined()
+	slices.SortStableFunc(steps, func(a, b *eval.Step) int { return compareSymbols(c.maths.Plain(a), c.maths.Plain(b)) })
+	list := make([]SymbolLine, len(steps))
+	for i, s := range steps {
+		line := SymbolLine{Symbol: c.maths.Plain(s), Meaning: s.Note, Anchor: s.Anchor, Where: c.where(s)}
+		if k := s.Value.Type.Kind; k == check.Number || k == check.Point {
+			line.Unit = c.maths.Unit(s.Unit)
+		}
+		list[i] = line
+	}
+	return list
+}
+
+// where is the number of a step, else of the section it stands in.
+func (c *composer) where(s *eval.Step) string {
+	if s.Number != "" {
+		return "(" + s.Number + ")"
+	}
+	section := ""
+	for _, h := range c.sheet.Headings {
+		if h.Line > s.Line {
+			break
+		}
+		if h.Number != "" {
+			section = "section " + h.Number
+		}
+	}
+	return section
+}
+
+// compareSymbols orders symbols by their letters, small and large ones of a
+// letter together, then by their subscripts.
+func compareSymbols(a, b maths.Symbol) int {
+	return cmp.Or(
+		strings.Compare(strings.ToLower(a.Head), strings.ToLower(b.Head)),
+		strings.Compare(a.Head, b.Head),
+		slices.Compare(a.Sub, b.Sub),
+		cmp.Compare(a.Primes, b.Primes),
+	)
+}
+
+// sources lists what is cited, in order, with what rests on it.
+func (c *composer) sources() []SourceLine {
+	var list []SourceLine
+	at := map[string]int{}
+	rest := func(source string, on Resting) {
+		if source == "" {
+			return
+		}
+		i, ok := at[source]
+		if !ok {
+			i = len(list)
+			at[source] = i
+			list = append(list, SourceLine{Source: source})
+		}
+		for _, r := range list[i].On {
+			if r.Anchor == on.Anchor && r.Number == on.Number {
+				return
+			}
+		}
+		list[i].On = append(list[i].On, on)
+	}
+	for _, b := range c.sheet.Blocks {
+		if b.Kind != syntax.CalcBlock {
+			name := b.Name
+			if b.Kind == syntax.PlotBlock || b.Kind == syntax.FigureBlock {
+				name = "figure " + b.Number
+			}
+			rest(b.Source, Resting{Symbol: maths.Text{Text: name}, Anchor: b.Anchor})
+			continue
+		}
+		for _, s := range b.Steps {
+			on := Resting{Anchor: s.Anchor}
+			switch {
+			case s.Number != "":
+				on.Number = "(" + s.Number + ")"
+			case s.ID != "":
+				on.Symbol = c.maths.Plain(s)
+			default:
+				continue
+			}
+			rest(s.Source, on)
+			eachCall([]*eval.Step{s}, func(_ *eval.Step, call *eval.Call) {
+				rest(call.Helper.Note.Source, on)
+			})
+		}
+	}
+	return list
+}

@@ -1,0 +1,366 @@
+package maths
+
+import (
+	"math"
+	"strings"
+
+	"gusset/notebook/check"
+	"gusset/notebook/eval"
+	"gusset/notebook/syntax"
+	"gusset/units"
+)
+
+// Builder builds the display trees of expressions: as they were written, and
+// with the values put in. It remembers what it has built, so that a value used
+// in ten formulas is set once. One goroutine uses it at a time; the trees are
+// for everyone.
+type Builder struct {
+	symbols map[string]Symbol
+	units   map[string]Unit
+	values  map[valueKey]Node
+	written map[*eval.Step]Node
+}
+
+type valueKey struct {
+	step  *eval.Step
+	entry int
+}
+
+// NewBuilder returns a builder that has built nothing yet.
+func NewBuilder() *Builder {
+	return &Builder{
+		symbols: map[string]Symbol{},
+		units:   map[string]Unit{},
+		values:  map[valueKey]Node{},
+		written: map[*eval.Step]Node{},
+	}
+}
+
+// Name returns a name as a symbol. The names before a dot, a schedule's or
+// another calc's, stand last in its subscript.
+func (b *Builder) Name(name string) Symbol {
+	if s, ok := b.symbols[name]; ok {
+		return s
+	}
+	var s Symbol
+	qualifier, last, dotted := "", name, false
+	if i := strings.LastIndexByte(name, '.'); i >= 0 {
+		qualifier, last, dotted = name[:i], name[i+1:], true
+	}
+	for i, p := range syntax.DisplayParts(last) {
+		s.Primes += p.Primes
+		if i == 0 {
+			s.Head = p.Text
+		} else if p.Text != "" {
+			s.Sub = append(s.Sub, p.Text)
+		}
+	}
+	if dotted {
+		s.Sub = append(s.Sub, qualifier)
+	}
+	b.symbols[name] = s
+	return s
+}
+
+// Symbol returns the symbol of a step, which leads to where it stands.
+func (b *Builder) Symbol(s *eval.Step) Symbol {
+	symbol := b.Plain(s)
+	symbol.Target = s.Anchor
+	return symbol
+}
+
+// Plain returns the symbol of a step without a link.
+func (b *Builder) Plain(s *eval.Step) Symbol {
+	name := s.Symbol
+	if name == "" {
+		name = s.ID
+	}
+	return b.Name(name)
+}
+
+// Unit returns a unit as it is set.
+func (b *Builder) Unit(u units.Unit) Unit {
+	text := u.String()
+	if text == "" {
+		return nil
+	}
+	if set, ok := b.units[text]; ok {
+		return set
+	}
+	set := Unit(u.Terms())
+	b.units[text] = set
+	return set
+}
+
+// Pieces sets a value as printed; an entry that does not exist is a dash.
+func (b *Builder) Pieces(pieces []eval.Piece, ref Ref) Node {
+	if len(pieces) == 0 {
+		return Text{"–", ref}
+	}
+	if len(pieces) == 1 {
+		return b.piece(pieces[0], ref)
+	}
+	var row Row
+	for i, p := range pieces {
+		if i > 0 {
+			row = append(row, Blank)
+		}
+		row = append(row, b.piece(p, ref))
+	}
+	return row
+}
+
+func (b *Builder) piece(p eval.Piece, ref Ref) Node {
+	if p.Figures == "" {
+		return Text{p.Text, ref}
+	}
+	return Number{p.Figures, b.Unit(p.Unit), ref}
+}
+
+// Value returns an entry of a step's value as printed. It leads to where the
+// value was defined and tells how it came about.
+func (b *Builder) Value(s *eval.Step, entry int) Node {
+	key := valueKey{s, entry}
+	if n, ok := b.values[key]; ok {
+		return n
+	}
+	n := b.Pieces(s.Printed(entry), Ref{Target: s.Anchor, Tip: b.Tip(s, entry)})
+	if IsCarried(s) {
+		n = Script{Base: n, Sup: Text{Text: CarriedMark}}
+	}
+	b.values[key] = n
+	return n
+}
+
+// CarriedMark stands behind a value that was carried from another calc right
+// where it is used.
+const CarriedMark = "†"
+
+// IsCarried tells whether a value used in a formula comes from another calc
+// without a line of its own.
+func IsCarried(s *eval.Step) bool { return s.Origin != nil && s.Stmt == nil }
+
+// Output returns an entry of a step's value as printed, without a link.
+func (b *Builder) Output(s *eval.Step, entry int) Node { return b.Pieces(s.Printed(entry), Ref{}) }
+
+// Tip is a value's derivation one level deep as plain text:
+// `τ = P/(2·A) = 48.89 MPa (1.2)`.
+func (b *Builder) Tip(s *eval.Step, entry int) string {
+	t := AppendPlain(nil, b.Plain(s))
+	if n := b.rightSide(s, entry); n != nil {
+		t = append(t, " = "...)
+		t = AppendPlain(t, n)
+	}
+	t = append(t, " = "...)
+	t = AppendPlain(t, b.Pieces(s.Printed(entry), Ref{}))
+	if mark := s.Value.Type.Mark(entry); mark != "" {
+		t = append(append(t, ", "...), mark...)
+	}
+	if s.Number != "" {
+		t = append(append(append(t, " ("...), s.Number...), ')')
+	}
+	if s.Note != "" {
+		t = append(append(t, '\n'), s.Note...)
+	}
+	if o := s.Origin; o != nil {
+		t = append(append(t, "\ncarried from "...), Origin(o)...)
+	}
+	if s.Source != "" {
+		t = append(append(append(t, " ["...), s.Source...), ']')
+	}
+	return string(t)
+}
+
+// Origin names the calc that a value was carried from: C-101 rev B, Load takedown.
+func Origin(o *eval.Origin) string {
+	name := o.Calc
+	if o.Rev != "" {
+		name += " rev " + o.Rev
+	}
+	if o.Title != "" {
+		name += ", " + o.Title
+	}
+	return name
+}
+
+// rightSide is the formula of a step for its tip: of several branches the one
+// taken.
+func (b *Builder) rightSide(s *eval.Step, entry int) Node {
+	d, ok := s.Stmt.(*syntax.Definition)
+	if !ok || s.Kind != eval.Computed && s.Kind != eval.Carried || len(d.Branches) == 0 {
+		return nil
+	}
+	if len(d.Branches) == 1 {
+		return b.Written(s)
+	}
+	return b.write(d.Branches[Taken(s, entry)].Value, s)
+}
+
+// Taken is the branch that an entry of a step took.
+func Taken(s *eval.Step, entry int) int {
+	if entry < len(s.Taken) {
+		return s.Taken[entry]
+	}
+	return 0
+}
+
+// Written returns the right side of a definition as it was written, a choice
+// with its brace; the branch taken by the step's entry is marked.
+func (b *Builder) Written(s *eval.Step) Node {
+	if n, ok := b.written[s]; ok {
+		return n
+	}
+	d := s.Stmt.(*syntax.Definition)
+	n := b.branches(d, s)
+	b.written[s] = n
+	return n
+}
+
+func (b *Builder) branches(d *syntax.Definition, s *eval.Step) Node {
+	if len(d.Branches) == 1 && d.Branches[0].Cond == nil {
+		return b.write(d.Branches[0].Value, s)
+	}
+	choice := Choice{make([]Branch, len(d.Branches))}
+	for i, br := range d.Branches {
+		set := Branch{Value: b.write(br.Value, s)}
+		if br.Cond != nil {
+			set.Cond = b.write(br.Cond, s)
+		}
+		set.Taken = s != nil && s.Kind == eval.Computed && Taken(s, s.Entry) == i
+		choice.Branches[i] = set
+	}
+	return choice
+}
+
+// Function returns the right side of a definition that is not computed
+// itself, as it was written.
+func (b *Builder) Function(d *syntax.Definition, s *eval.Step) Node { return b.branches(d, s) }
+
+// Write returns an expression of a step as it was written.
+func (b *Builder) Write(e syntax.Expr, s *eval.Step) Node { return b.write(e, s) }
+
+func (b *Builder) write(e syntax.Expr, s *eval.Step) Node {
+	w := &builder{Builder: b, step: s}
+	return w.side(e)
+}
+
+// Put returns an expression of a step with the values of an entry put in, for
+// values of type t; nil where that is no different from how it was written.
+func (b *Builder) Put(e syntax.Expr, s *eval.Step, t check.Type, entry int) Node {
+	w := &builder{Builder: b, step: s, values: true}
+	for i := len(t.Rows) - 1; i >= 0; i-- {
+		n := t.Rows[i].N()
+		w.at = append(w.at, place{t.Rows[i], entry % n})
+		entry /= n
+	}
+	if d, ok := s.Stmt.(*syntax.Definition); ok {
+		w.where = d.Where
+	}
+	if at, ok := unbracketed(e).(*syntax.AtMark); ok {
+		return w.lookup(at)
+	}
+	n := w.side(e)
+	if !w.changed {
+		return nil
+	}
+	return n
+}
+
+// builder builds one expression. With values, names become the values that
+// they have at the rows of at.
+type builder struct {
+	*Builder
+	step    *eval.Step
+	values  bool
+	at      []place
+	where   []syntax.WhereItem
+	changed bool // a value was put in
+	inline  int  // inside an exponent: fractions are set with a slash
+	depth   int  // of fractions
+}
+
+// place is a row that is being written out.
+type place struct {
+	rows  *check.Rows
+	index int
+}
+
+// used is what a name stands for, nil where nothing is known of it.
+func (w *builder) used(n *syntax.Name) *eval.Step {
+	if w.step == nil || n.Slot < 0 || n.Slot >= len(w.step.Uses) {
+		return nil
+	}
+	return w.step.Uses[n.Slot]
+}
+
+// entry is the entry of a value at the rows being written out, -1 where it has
+// rows besides.
+func (w *builder) entry(t check.Type) int {
+	out := 0
+	for _, r := range t.Rows {
+		i := w.index(r)
+		if i < 0 {
+			return -1
+		}
+		out = out*r.N() + i
+	}
+	return out
+}
+
+func (w *builder) index(r *check.Rows) int {
+	for _, p := range w.at {
+		if p.rows == r {
+			return p.index
+		}
+	}
+	return -1
+}
+
+// name sets a name: its symbol, or its value.
+func (w *builder) name(n *syntax.Name) Node {
+	s := w.used(n)
+	if s == nil {
+		return w.Name(n.Text)
+	}
+	if !w.values || n.ID == "pi" && s.Kind == eval.Constant || s.Value.Type.Kind == check.Bundle {
+		return w.symbol(n, s)
+	}
+	entry := w.entry(s.Value.Type)
+	if entry < 0 || entry >= s.Value.Len() {
+		return w.symbol(n, s)
+	}
+	w.changed = true
+	for _, item := range w.where {
+		if item.Name.ID == n.ID && item.Unit != nil {
+			return w.measured(s, entry, item.Unit.Unit)
+		}
+	}
+	return w.Value(s, entry)
+}
+
+// symbol is a name as a symbol that leads to its definition.
+func (w *builder) symbol(n *syntax.Name, s *eval.Step) Symbol {
+	symbol := w.Name(n.Text)
+	if n.ID != "pi" {
+		symbol.Target = s.Anchor
+	}
+	return symbol
+}
+
+// measured is a value as the plain number of a unit, as an empirical rule takes it.
+func (w *builder) measured(s *eval.Step, entry int, u units.Unit) Node {
+	pieces := s.Value.Printed(entry, u, s.Figures)
+	if own := s.Printed(entry); len(own) == 1 && own[0].Unit.Equal(u) {
+		pieces = own
+	}
+	ref := Ref{Target: s.Anchor, Tip: w.Tip(s, entry)}
+	if len(pieces) == 1 {
+		return Number{Value: pieces[0].Figures, Ref: ref}
+	}
+	return w.Pieces(pieces, ref)
+}
+
+// exists tells whether an entry of a value exists.
+func exists(v eval.Value, entry int) bool {
+	return entry >= 0 && entry < len(v.Num) && !math.IsNaN(v.Num[entry])
+}

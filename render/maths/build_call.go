@@ -1,0 +1,237 @@
+package maths
+
+import (
+	"gusset/notebook/check"
+	"gusset/notebook/eval"
+	"gusset/notebook/syntax"
+)
+
+// functions are the built-in functions that are set under another name than
+// the one they are called by.
+var functionNames = map[string]string{
+	"asin": "arcsin", "acos": "arccos", "atan": "arctan", "sum": "Σ",
+}
+
+// angular are the functions that need no brackets round a single symbol.
+func angular(name string) bool {
+	switch name {
+	case "sin", "cos", "tan", "sinh", "cosh", "tanh", "ln":
+		return true
+	}
+	return false
+}
+
+// reduces tells whether a call makes one value of the rows of its argument.
+func reduces(c *syntax.Call) bool {
+	switch c.Fun.ID {
+	case "sum", "mean", "count", "extreme":
+		return true
+	case "min", "max":
+		return len(c.Args) == 1
+	}
+	return false
+}
+
+func (w *builder) call(c *syntax.Call) (Node, rank) {
+	if s := w.used(c.Fun); s != nil && s.Kind == eval.Function {
+		f := w.Name(c.Fun.Text)
+		f.Target = s.Anchor
+		return Call(f, w.args(c)...), rankedAtom
+	}
+	if run := w.run(c); run != nil {
+		return w.helper(c, run), rankedAtom
+	}
+	switch c.Fun.ID {
+	case "sqrt", "cbrt", "abs", "hypot":
+		if n := w.drawn(c); n != nil {
+			return n, rankedAtom
+		}
+	case "interpolate":
+		return Call(Word{Text: "interpolate"}, w.args(c)...), rankedAtom
+	case "log10":
+		return Call(Script{Base: Word{Text: "log"}, Sub: Number{Value: "10"}}, w.args(c)...), rankedAtom
+	}
+	if reduces(c) {
+		return w.reduction(c)
+	}
+	if angular(c.Fun.ID) && len(c.Args) == 1 {
+		return w.applied(Word{Text: c.Fun.ID}, c)
+	}
+	return Call(word(c.Fun.ID), w.marked(c)...), rankedAtom
+}
+
+// word is a built-in function's name as it is set.
+func word(id string) Word {
+	if name, ok := functionNames[id]; ok {
+		id = name
+	}
+	return Word{Text: id}
+}
+
+// args sets the arguments of a call, with their names where the author gave them.
+func (w *builder) args(c *syntax.Call) []Node {
+	args := make([]Node, len(c.Args))
+	for i, a := range c.Args {
+		args[i] = w.side(a.Value)
+		if a.Name != nil {
+			args[i] = Row{w.Name(a.Name.Text), Relation("="), args[i]}
+		}
+	}
+	return args
+}
+
+// applied sets sin θ, with brackets round all but a symbol or a value.
+func (w *builder) applied(name Node, c *syntax.Call) (Node, rank) {
+	arg := w.side(c.Args[0].Value)
+	switch arg.(type) {
+	case Symbol, Number:
+		if !signed(arg) {
+			return Row{name, arg}, rankedPower
+		}
+	}
+	return Call(name, arg), rankedAtom
+}
+
+// open tells whether a function stands before its argument without brackets.
+func open(n Node) bool {
+	row, ok := n.(Row)
+	if !ok || len(row) != 2 {
+		return false
+	}
+	_, fence := row[1].(Fence)
+	_, name := row[0].(Word)
+	if s, ok := row[0].(Script); ok {
+		_, name = s.Base.(Word)
+	}
+	return name && !fence
+}
+
+// functionPower sets sin² θ; nil for other powers.
+func (w *builder) functionPower(e *syntax.Binary) Node {
+	c, ok := unbracketed(e.X).(*syntax.Call)
+	exponent, whole := unbracketed(e.Y).(*syntax.Number)
+	if !ok || !whole || !angular(c.Fun.ID) || len(c.Args) != 1 || w.run(c) != nil {
+		return nil
+	}
+	if s := w.used(c.Fun); s != nil && s.Kind == eval.Function {
+		return nil
+	}
+	sup, ok := w.literal(exponent).(Number)
+	if !ok || len(sup.Unit) > 0 || !figuresOnly(sup.Value) {
+		return nil
+	}
+	n, _ := w.applied(Script{Base: Word{Text: c.Fun.ID}, Sup: sup}, c)
+	return n
+}
+
+func figuresOnly(value string) bool {
+	for _, r := range value {
+		if r < '0' || r > '9' {
+			return false
+		}
+	}
+	return value != ""
+}
+
+// drawn sets the functions that have signs of their own: roots, bars, and the
+// root of a sum of squares.
+func (w *builder) drawn(c *syntax.Call) Node {
+	switch {
+	case c.Fun.ID == "hypot" && len(c.Args) >= 2:
+		var sum Row
+		for i, a := range c.Args {
+			if i > 0 {
+				sum = append(sum, Plus)
+			}
+			base, r := w.expr(a.Value)
+			if signed(base) {
+				r = rankedSum
+			}
+			sum = append(sum, Script{Base: bracketed(base, r, rankedAtom, true), Sup: Number{Value: "2"}})
+		}
+		return Root{Body: sum}
+	case len(c.Args) != 1:
+		return nil
+	case c.Fun.ID == "sqrt":
+		return Root{Body: w.side(c.Args[0].Value)}
+	case c.Fun.ID == "cbrt":
+		return Root{Body: w.side(c.Args[0].Value), Index: Number{Value: "3"}}
+	case c.Fun.ID == "abs":
+		return Abs(w.side(c.Args[0].Value))
+	}
+	return nil
+}
+
+// run is the call of a helper as it was run, nil for other calls.
+func (w *builder) run(c *syntax.Call) *eval.Call {
+	if w.step == nil {
+		return nil
+	}
+	for _, run := range w.step.Calls {
+		if run.Expr == c {
+			return run
+		}
+	}
+	return nil
+}
+
+// helper sets the call of a helper: as written, or as the value it gave where
+// it is part of a bigger formula.
+func (w *builder) helper(c *syntax.Call, run *eval.Call) Node {
+	if w.values && len(run.Results) == 1 {
+		w.changed = true
+		return w.Value(run.Results[0], 0)
+	}
+	return Call(Word{Text: c.Fun.Text}, w.args(c)...)
+}
+
+// marked sets the arguments of a function; of min and max the argument that
+// decides is marked, where the values of all are at hand.
+func (w *builder) marked(c *syntax.Call) []Node {
+	args := w.args(c)
+	if !w.values || c.Fun.ID != "min" && c.Fun.ID != "max" {
+		return args
+	}
+	best, at := 0.0, -1
+	for i, a := range c.Args {
+		v, ok := w.number(a.Value)
+		if !ok {
+			return args
+		}
+		if at < 0 || c.Fun.ID == "min" && v < best || c.Fun.ID == "max" && v > best {
+			best, at = v, i
+		}
+	}
+	args[at] = governing(args[at])
+	return args
+}
+
+// number is the value of an argument that is a single name.
+func (w *builder) number(e syntax.Expr) (float64, bool) {
+	n, ok := unbracketed(e).(*syntax.Name)
+	if !ok {
+		return 0, false
+	}
+	s := w.used(n)
+	if s == nil || s.Value.Type.Kind == check.Text {
+		return 0, false
+	}
+	i := w.entry(s.Value.Type)
+	if !exists(s.Value, i) {
+		return 0, false
+	}
+	return s.Value.Num[i], true
+}
+
+// governing marks a value as the one that decides.
+func governing(n Node) Node {
+	switch n := n.(type) {
+	case Number:
+		n.Governs = true
+		return n
+	case Script:
+		n.Base = governing(n.Base)
+		return n
+	}
+	return n
+}

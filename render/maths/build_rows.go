@@ -1,0 +1,274 @@
+package maths
+
+import (
+	"slices"
+
+	"gusset/notebook/check"
+	"gusset/notebook/syntax"
+)
+
+// Of many terms the first ones and the last are written out.
+const (
+	allTerms   = 4
+	firstTerms = 2
+)
+
+// reduction sets sum, mean, min, max, count and extreme over rows. With values
+// the terms are written out, all of a few, else the first and the last, and
+// the one that decides.
+func (w *builder) reduction(c *syntax.Call) (Node, rank) {
+	arg := c.Args[0]
+	rows := w.reduced(arg)
+	var name Node = word(c.Fun.ID)
+	if arg.Over != nil {
+		name = Script{Base: name, Sub: Text{Text: arg.Over.Text}}
+	} else if c.Fun.ID == "sum" && len(rows) == 1 {
+		name = Script{Base: name, Sub: Text{Text: rows[0].Name}}
+	}
+	if !w.values || len(rows) != 1 || rows[0].N() == 0 || c.Fun.ID == "count" {
+		return Call(name, w.side(arg.Value)), rankedAtom
+	}
+	n := rows[0].N()
+	governs := w.decides(c, rows[0])
+	least, first := rankedProduct, false
+	if c.Fun.ID != "sum" {
+		least, first = rankedOr, true
+	}
+	var terms []Node
+	skipped := false
+	for i := range n {
+		if n > allTerms && i >= firstTerms && i < n-1 && i != governs {
+			skipped = true
+			continue
+		}
+		if skipped {
+			terms = append(terms, Text{Text: "…"})
+			skipped = false
+		}
+		w.at = append(w.at, place{rows[0], i})
+		t := w.part(arg.Value, least, first || i == 0)
+		w.at = w.at[:len(w.at)-1]
+		if i == governs {
+			t = governing(t)
+		}
+		terms = append(terms, t)
+	}
+	if c.Fun.ID != "sum" {
+		return Call(name, terms...), rankedAtom
+	}
+	sum := make(Row, 0, 2*len(terms))
+	for i, t := range terms {
+		if i > 0 {
+			sum = append(sum, Plus)
+		}
+		sum = append(sum, t)
+	}
+	if len(terms) == 1 {
+		return sum, rankedProduct
+	}
+	return sum, rankedSum
+}
+
+// decides is the row that min, max or extreme of a name takes, else -1.
+func (w *builder) decides(c *syntax.Call, rows *check.Rows) int {
+	at, best := -1, 0.0
+	if c.Fun.ID == "sum" || c.Fun.ID == "mean" {
+		return -1
+	}
+	for i := range rows.N() {
+		w.at = append(w.at, place{rows, i})
+		v, ok := w.number(c.Args[0].Value)
+		w.at = w.at[:len(w.at)-1]
+		if !ok {
+			return -1
+		}
+		if at < 0 || beyond(c.Fun.ID, v, best) {
+			at, best = i, v
+		}
+	}
+	return at
+}
+
+func beyond(function string, v, best float64) bool {
+	switch function {
+	case "min":
+		return v < best
+	case "max":
+		return v > best
+	}
+	return max(v, -v) > max(best, -best)
+}
+
+// reduced is the sets of rows that a reduction takes in: the one named behind
+// over, else all those of the argument that are not being written out.
+func (w *builder) reduced(a syntax.Arg) []*check.Rows {
+	var rows []*check.Rows
+	for _, r := range w.rowsOf(nil, a.Value) {
+		if w.index(r) >= 0 || a.Over != nil && !w.named(r, a.Over) {
+			continue
+		}
+		rows = append(rows, r)
+	}
+	return rows
+}
+
+// named tells whether a set of rows is the one that a name behind over means.
+func (w *builder) named(r *check.Rows, over *syntax.Name) bool {
+	if s := w.used(over); s != nil {
+		for _, o := range s.Value.Type.Rows {
+			if o == r {
+				return true
+			}
+		}
+		return false
+	}
+	name := over.ID
+	for i := len(name) - 1; i >= 0; i-- {
+		if name[i] == '.' {
+			name = name[i+1:]
+			break
+		}
+	}
+	return r.Name == over.ID || r.Name == name
+}
+
+// rowsOf collects the sets of rows that an expression runs over.
+func (w *builder) rowsOf(dst []*check.Rows, e syntax.Expr) []*check.Rows {
+	switch e := e.(type) {
+	case *syntax.Paren:
+		return w.rowsOf(dst, e.X)
+	case *syntax.Unary:
+		return w.rowsOf(dst, e.X)
+	case *syntax.Binary:
+		return w.rowsOf(w.rowsOf(dst, e.X), e.Y)
+	case *syntax.Compare:
+		for _, x := range e.Operands {
+			dst = w.rowsOf(dst, x)
+		}
+	case *syntax.AtMark:
+		return w.rowsOf(dst, e.Y)
+	case *syntax.Name:
+		if s := w.used(e); s != nil {
+			for _, r := range s.Value.Type.Rows {
+				dst = addRows(dst, r)
+			}
+		}
+	case *syntax.Call:
+		return w.rowsOfCall(dst, e)
+	}
+	return dst
+}
+
+func (w *builder) rowsOfCall(dst []*check.Rows, c *syntax.Call) []*check.Rows {
+	if reduces(c) {
+		a := c.Args[0]
+		for _, r := range w.rowsOf(nil, a.Value) {
+			if a.Over != nil && !w.named(r, a.Over) {
+				dst = addRows(dst, r)
+			}
+		}
+		return dst
+	}
+	for i, a := range c.Args {
+		if c.Fun.ID == "interpolate" && i < 2 {
+			continue
+		}
+		dst = w.rowsOf(dst, a.Value)
+	}
+	return dst
+}
+
+func addRows(dst []*check.Rows, r *check.Rows) []*check.Rows {
+	for _, o := range dst {
+		if o == r {
+			return dst
+		}
+	}
+	return append(dst, r)
+}
+
+// atMark sets the entry at a mark, or its value.
+func (w *builder) atMark(e *syntax.AtMark) (Node, rank) {
+	if w.values {
+		if n := w.found(e); n != nil {
+			return n, rankOfValue(n)
+		}
+	}
+	return w.looked(e, w.part(e.Y, rankedMeasure, true))
+}
+
+// looked sets the entry of a column at a mark in words.
+func (w *builder) looked(e *syntax.AtMark, mark Node) (Node, rank) {
+	symbols := *w
+	symbols.values = false
+	x := symbols.part(e.X, rankedAtom, true)
+	return Row{x, Blank, Text{Text: "at"}, Blank, mark}, rankedMeasure
+}
+
+// lookup is a whole side that only looks an entry up. Its value stands in the
+// output, so the mark alone is put in; nil where that stood there already.
+func (w *builder) lookup(e *syntax.AtMark) Node {
+	mark := w.side(e.Y)
+	if !w.changed {
+		return nil
+	}
+	n, _ := w.looked(e, mark)
+	return n
+}
+
+// found is the value of a name at a mark, nil where it is not at hand.
+func (w *builder) found(e *syntax.AtMark) Node {
+	n, ok := unbracketed(e.X).(*syntax.Name)
+	if !ok {
+		return nil
+	}
+	s := w.used(n)
+	mark, known := w.text(e.Y)
+	if s == nil || !known {
+		return nil
+	}
+	for _, r := range s.Value.Type.Rows {
+		i := slices.Index(r.Marks, mark)
+		if i < 0 || w.index(r) >= 0 {
+			continue
+		}
+		w.at = append(w.at, place{r, i})
+		entry := w.entry(s.Value.Type)
+		w.at = w.at[:len(w.at)-1]
+		if entry >= 0 {
+			w.changed = true
+			return w.Value(s, entry)
+		}
+	}
+	return nil
+}
+
+// text is the value of an expression that is a text.
+func (w *builder) text(e syntax.Expr) (string, bool) {
+	switch e := unbracketed(e).(type) {
+	case *syntax.Text:
+		return e.Value, true
+	case *syntax.Name:
+		s := w.used(e)
+		if s == nil || s.Value.Type.Kind != check.Text {
+			return "", false
+		}
+		if i := w.entry(s.Value.Type); i >= 0 && i < len(s.Value.Text) {
+			return s.Value.Text[i], true
+		}
+	}
+	return "", false
+}
+
+// firstOf sets a choice from stock as it was written.
+func (w *builder) firstOf(e *syntax.FirstOf) Node {
+	row := Row{Text{Text: "first of"}, Blank}
+	for i, v := range e.Values {
+		if i > 0 {
+			row = append(row, Comma)
+		}
+		row = append(row, w.side(v))
+	}
+	row = append(row, Blank, Text{Text: "with"}, Blank)
+	return append(row, w.side(e.Cond))
+}
