@@ -12,10 +12,14 @@ import (
 
 // What a compiled calc is made of, under the door's own names.
 type (
-	Step  = eval.Step
-	Value = eval.Value
-	Rows  = check.Rows
-	Type  = check.Type
+	Step   = eval.Step
+	Value  = eval.Value
+	Rows   = check.Rows
+	Type   = check.Type
+	Plot   = eval.Plot
+	Axis   = eval.Axis
+	Curve  = eval.Curve
+	Figure = eval.Figure
 )
 
 // Sheet is a compiled calc file: the prose as goldmark's tree, whose fences of
@@ -26,16 +30,22 @@ type Sheet struct {
 	Source      *diag.Source
 	Front       Front
 	Doc         ast.Node
-	Blocks      []*Block   // by FenceNode.Index
-	Refs        []*Ref     // by ValueNode.Index
-	Headings    []*Heading // in order
-	Remarks     []*Remark  // in order
-	Steps       []*Step    // every step of the calc's own blocks, in order: the blocks' steps joined
+	Blocks      []*Block          // by FenceNode.Index
+	Refs        []*Ref            // by ValueNode.Index
+	Headings    []*Heading        // in order
+	Remarks     []*Remark         // in order
+	Images      map[string]*Image // by path within the root: those of the prose and the logo
+	Steps       []*Step           // every step of the calc's own blocks, in order: the blocks' steps joined
 	Diagnostics []diag.Diagnostic
-	Files       []string // the files that it names and was made from, within the root, sorted: carried, helpers, CSV, images, register
+	// Files are the files that it was made from or looked for in vain, within the
+	// root, sorted: itself, carried files and theirs, helpers, CSV, images, registers.
+	Files []string
 
 	byHeading map[ast.Node]*Heading
 	byRemark  map[ast.Node]*Remark
+	picked    map[string]*check.Rows
+	// carriedRows names the sets of rows that come from other files.
+	carriedRows map[*check.Rows]string
 }
 
 // Failed tells whether the calc has errors: then no page is written of it.
@@ -65,6 +75,7 @@ type Person struct{ Name, Date string }
 type Link struct {
 	Key, Path string // Path is within the root
 	At        diag.Span
+	keyAt     diag.Span
 }
 
 // Block is a fence of ours with its steps.
@@ -83,36 +94,6 @@ type Block struct {
 	Marks  int     // index of the column of marks, -1 where there is none
 	Plot   *Plot
 	Figure *Figure
-}
-
-// Plot is what a plot block draws, already recomputed over the range.
-type Plot struct {
-	Title   string
-	X       Axis
-	Y       Axis
-	At      float64 // the swept value's present entry, in X's unit
-	Curves  []Curve
-	Limits  []Curve // constant or swept limits
-	Present []float64
-	Bars    []*Step // for `plot checks`: the checks, in order
-}
-
-// Axis is one axis: the quantity's name, its symbol and the printed unit.
-type Axis struct {
-	Symbol string
-	Unit   units.Unit
-}
-
-// Curve is one line of a plot, in the axes' units.
-type Curve struct {
-	ID, Symbol string
-	X, Y       []float64
-}
-
-// Figure is a sketch: its kind and the steps whose values it draws, by parameter.
-type Figure struct {
-	Kind string
-	Args []*Step // in the order of the kind's parameters; nil where an optional one is absent
 }
 
 // Ref is a value named in text, resolved.

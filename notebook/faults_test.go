@@ -1,0 +1,83 @@
+package notebook
+
+import (
+	"flag"
+	"fmt"
+	"os"
+	"path/filepath"
+	"strings"
+	"testing"
+	"testing/fstest"
+
+	"github.com/google/go-cmp/cmp"
+	"github.com/rogpeppe/go-internal/txtar"
+
+	"gusset/notebook/diag"
+)
+
+var update = flag.Bool("update", false, "write the golden files anew")
+
+// files is a root in memory.
+func files(pairs ...string) fstest.MapFS {
+	root := fstest.MapFS{}
+	for i := 0; i < len(pairs); i += 2 {
+		root[pairs[i]] = &fstest.MapFile{Data: []byte(pairs[i+1])}
+	}
+	return root
+}
+
+// compile compiles a file of a root and lets panics through.
+func compile(root fstest.MapFS, path string) *Sheet {
+	return Compile(&Context{FS: root, Panics: true}, path)
+}
+
+// calc puts front matter before a text.
+func calc(body string) string { return "---\ncalc: C-1\n---\n" + body }
+
+// report lists diagnostics with what their text does not show.
+func report(list []diag.Diagnostic) string {
+	var b strings.Builder
+	for _, d := range list {
+		j := d.JSON()
+		fmt.Fprintf(&b, "%s %s, columns %d to %d\n%s", j.Severity, j.ID, j.Column, j.EndColumn, d.Text())
+	}
+	return b.String()
+}
+
+// Each file of testdata/faults is a root whose calc.md has the mistakes that its
+// name says; the part `want` is what is reported.
+func TestFaults(t *testing.T) {
+	cases, err := filepath.Glob("testdata/faults/*.txtar")
+	if err != nil || len(cases) == 0 {
+		t.Fatal("no cases", err)
+	}
+	for _, name := range cases {
+		t.Run(strings.TrimSuffix(filepath.Base(name), ".txtar"), func(t *testing.T) {
+			archive, err := txtar.ParseFile(name)
+			if err != nil {
+				t.Fatal(err)
+			}
+			root, want := fstest.MapFS{}, ""
+			kept := archive.Files[:0:0]
+			for _, f := range archive.Files {
+				if f.Name == "want" {
+					want = string(f.Data)
+					continue
+				}
+				kept = append(kept, f)
+				root[f.Name] = &fstest.MapFile{Data: f.Data}
+			}
+			got := report(compile(root, "calc.md").Diagnostics)
+			if *update {
+				archive.Files = append(kept, txtar.File{Name: "want", Data: []byte(got)})
+				if err := os.WriteFile(name, txtar.Format(archive), 0o644); err != nil {
+					t.Fatal(err)
+				}
+				return
+			}
+			if d := cmp.Diff(want, got); d != "" {
+				t.Error(d)
+			}
+		})
+	}
+}

@@ -1,0 +1,96 @@
+package notebook
+
+import (
+	"math"
+	"slices"
+	"strconv"
+	"strings"
+
+	"gusset/notebook/check"
+	"gusset/notebook/eval"
+	"gusset/units"
+)
+
+// maxWords bounds how many different texts of a column a sentence lists.
+const maxWords = 5
+
+// newRef prints a value named in text. inUnit tells that the author asked for
+// another unit.
+func newRef(r eval.RefResult, inUnit bool) *Ref {
+	ref := &Ref{Unit: r.Unit}
+	if r.Failed || r.Step == nil {
+		ref.Text = "not computed"
+		ref.Parts = []RefPart{{Words: ref.Text}}
+		return ref
+	}
+	ref.Step = r.Step
+	ref.Parts = refParts(r.Step, r.Unit, inUnit)
+	var b strings.Builder
+	for _, p := range ref.Parts {
+		b.WriteString(p.Words)
+		if p.Words == "" {
+			b.WriteString(eval.PlainText(p.Pieces))
+		}
+	}
+	ref.Text = b.String()
+	return ref
+}
+
+func refParts(s *Step, unit units.Unit, inUnit bool) []RefPart {
+	printed := func(entry int) []eval.Piece {
+		if inUnit {
+			return s.Value.Printed(entry, unit, s.Figures)
+		}
+		return s.Printed(entry)
+	}
+	switch {
+	case len(s.Results) > 0:
+		var parts []RefPart
+		for i, r := range s.Results {
+			if i > 0 {
+				parts = append(parts, RefPart{Words: ", "})
+			}
+			parts = append(parts, refParts(r, r.Unit, false)...)
+		}
+		return parts
+	case len(s.Value.Type.Rows) == 0:
+		return []RefPart{{Pieces: printed(0)}}
+	case s.Value.Type.Kind == check.Text:
+		return []RefPart{{Words: distinct(s.Value.Text)}}
+	}
+	least, most := -1, -1
+	for i, x := range s.Value.Num {
+		if math.IsNaN(x) {
+			continue
+		}
+		if least < 0 || x < s.Value.Num[least] {
+			least = i
+		}
+		if most < 0 || x > s.Value.Num[most] {
+			most = i
+		}
+	}
+	if least < 0 {
+		return []RefPart{{Pieces: nil}}
+	}
+	from, to := printed(least), printed(most)
+	if eval.PlainText(from) == eval.PlainText(to) {
+		return []RefPart{{Pieces: from}}
+	}
+	mark := s.Value.Type.Mark(s.Entry)
+	return []RefPart{{Pieces: from}, {Words: " to "}, {Pieces: to}, {Words: " (" + mark + " governs)"}}
+}
+
+// distinct lists the different texts of a column in order.
+func distinct(texts []string) string {
+	var list []string
+	for _, t := range texts {
+		if t != "" && !slices.Contains(list, t) {
+			if len(list) == maxWords {
+				return strings.Join(list, ", ") + " and others of " + strconv.Itoa(len(texts)) + " rows"
+			}
+			list = append(list, t)
+		}
+	}
+	return strings.Join(list, ", ")
+}
