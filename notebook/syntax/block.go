@@ -123,7 +123,7 @@ func (p *parser) flags(b *Block, seg Line, brief bool) {
 func (p *parser) blockName(seg Line, kind, example string) *Name {
 	if seg.Start >= seg.End {
 		p.report(diag.Error, p.span(seg.Start, seg.Start), diag.Syntax, fmt.Sprintf("the %s has no name", kind),
-			fmt.Sprintf("write it behind the word, as in `%s %s`", kind, example))
+			fmt.Sprintf("put it behind the word, as in `%s %s`", kind, example))
 		return nil
 	}
 	p.segs = append(p.segs[:0], seg)

@@ -11,7 +11,7 @@ import (
 func (p *parser) rightSide(def *Definition) Stmt {
 	def.Note = p.note
 	from, until := def.Name.At.Start, 0
-	bad := false
+	bad, last := false, Note{}
 	branches := p.branches.take(1, p.size)
 	at := p.bounds()
 	for n := 0; ; n++ {
@@ -48,14 +48,14 @@ func (p *parser) rightSide(def *Definition) Stmt {
 		until = p.bounds().End
 		p.where(def)
 		p.finish()
-		if !def.Note.isSet() {
-			def.Note = p.note
-		}
+		last = p.note
 		bad = bad || p.failed
 	}
 	def.At = diag.Span{Start: from, End: until}
 	def.Branches, def.Slots = branches, p.slots
-	def.firstNote()
+	if def.firstNote(); !def.Note.isSet() {
+		def.Note = last
+	}
 	if !bad {
 		bad = p.checkBranches(def)
 	}
@@ -114,7 +114,7 @@ func (p *parser) strayBranch(before *Branch, where bool) {
 	case before.Otherwise:
 		p.syntax(p.start, p.pos, "a branch behind `otherwise` is never taken")
 	default:
-		p.syntax(p.start, p.pos, "a further branch needs a condition on the one above", "write it behind `if`, as in `k = 0.85 if t <= 25 mm`")
+		p.syntax(p.start, p.pos, "a further branch needs a condition on the one above", "put it behind `if`, as in `k = 0.85 if t <= 25 mm`")
 	}
 }
 

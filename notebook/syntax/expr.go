@@ -47,9 +47,7 @@ func (p *parser) expression(level uint8) Expr {
 		if l < level || l == 0 {
 			return x
 		}
-		if p.ops++; p.ops > maxOperators {
-			p.fail(p.span(p.start, p.pos), diag.BoundExceeded,
-				fmt.Sprintf("one statement has more operators than the bound of %d", maxOperators), "define parts of it on lines of their own")
+		if l != levelCompare && !p.oneMore() {
 			return x
 		}
 		switch l {
@@ -89,6 +87,17 @@ func (p *parser) deeper() bool {
 	return false
 }
 
+// oneMore counts an operator; it is false over the bound.
+func (p *parser) oneMore() bool {
+	p.ops++
+	if p.ops <= maxOperators {
+		return true
+	}
+	p.fail(p.span(p.start, p.pos), diag.BoundExceeded,
+		fmt.Sprintf("one statement has more operators than the bound of %d", maxOperators), "define parts of it on lines of their own")
+	return false
+}
+
 // prefix reads an operand with the signs and words before it.
 func (p *parser) prefix(level uint8) Expr {
 	switch p.tok {
@@ -108,7 +117,7 @@ func (p *parser) prefix(level uint8) Expr {
 	p.advance()
 	switch tok {
 	case tNot:
-		x := p.needCondition(p.expression(levelCompare))
+		x := p.needCondition(p.expression(levelNot))
 		return p.unary(Not, start, x)
 	case tPlus:
 		return p.needValue(p.expression(levelMinus))
@@ -196,7 +205,9 @@ func (p *parser) comparison(x Expr) Expr {
 		}
 		c.Ops = append(c.Ops, operators[p.tok])
 		c.OpsAt = append(c.OpsAt, p.span(p.start, p.pos))
-		p.ops++
+		if !p.oneMore() {
+			return x
+		}
 		p.advance()
 		c.Operands = append(c.Operands, p.needValue(p.expression(levelSum)))
 	}

@@ -103,8 +103,8 @@ func (p *parser) parameter() (param *Param, ok bool) {
 		p.advance()
 		param.Default = p.value()
 	} else if param.Unit == nil && p.tok == tEnd {
-		p.fail(param.At, diag.Syntax, fmt.Sprintf("the parameter %s needs its quantity or unit", quoted(param.Name.Text)),
-			"write the quantity in brackets, as in "+quoted(param.Name.Text+" [length]"))
+		p.fail(param.At, diag.Syntax, fmt.Sprintf("the parameter %s needs its quantity or unit in brackets", quoted(param.Name.Text)),
+			"as in "+quoted(param.Name.Text+" [length]"))
 	}
 	p.finish()
 	return param, !p.failed

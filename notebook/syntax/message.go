@@ -82,9 +82,9 @@ func (p *parser) strayComma() {
 func (p *parser) sideBySide() {
 	from, end := p.operandStart(), p.operandEnd(p.start)
 	left, right := p.s[from:p.last], p.s[p.start:end]
-	if from > p.last { // they stand on different lines
-		left = p.before()
-		from = p.start
+	if p.last < p.segs[p.seg].Start {
+		p.syntax(p.start, end, fmt.Sprintf("%s stands behind %s without an operator; a bracket above may not be closed", quoted(right), quoted(left)))
+		return
 	}
 	if p.tok == tName && units.IsUnitName(p.here()) && p.prev != tNumber {
 		p.syntax(p.start, end, fmt.Sprintf("a unit stands directly behind a number only, and %s is none", quoted(left)),
@@ -292,9 +292,9 @@ func (p *parser) feetAndInches(start, i int) {
 		p.syntax(start, e, "figures are not grouped by `'`", fmt.Sprintf("write %s or %s", quoted(strings.ReplaceAll(text, "_", "")), quoted(text)))
 		return
 	}
-	mark, end := p.inchMark(i)
+	m, end := p.inchMark(i)
 	text := p.s[start:i] + " in"
-	if mark == footMark {
+	if m == footMark {
 		text = p.s[start:i] + " ft"
 		k := end
 		for k < p.end && (p.s[k] == ' ' || p.s[k] == '-') {
@@ -312,16 +312,16 @@ func (p *parser) feetAndInches(start, i int) {
 	p.syntax(start, end, "feet and inches are written as units", "write "+quoted(text))
 }
 
-type lengthMark int
+type mark int
 
 const (
-	noMark lengthMark = iota
+	noMark mark = iota
 	footMark
 	inchMark
 )
 
 // inchMark reads a mark of feet or inches at i.
-func (p *parser) inchMark(i int) (mark lengthMark, end int) {
+func (p *parser) inchMark(i int) (m mark, end int) {
 	r, size := utf8.DecodeRuneInString(p.s[i:p.end])
 	switch r {
 	case '\'', '′', '’':
@@ -335,9 +335,10 @@ func (p *parser) inchMark(i int) (mark lengthMark, end int) {
 	return noMark, i
 }
 
-// markOrMinus reports a typographic mark behind figures that end at i.
-func (p *parser) markOrMinus(start, i int) bool {
-	if mark, _ := p.inchMark(i); mark != noMark {
+// lengthMark reports a typographic mark of feet or inches behind figures that
+// end at i.
+func (p *parser) lengthMark(start, i int) bool {
+	if m, _ := p.inchMark(i); m != noMark {
 		p.feetAndInches(start, i)
 		return true
 	}

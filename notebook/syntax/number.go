@@ -12,7 +12,7 @@ import (
 // number reads a literal with its unit, from its first figure on: a plain
 // number, a fraction or a mixed number before a unit, or a falling compound.
 func (p *parser) number() Expr {
-	start := p.start
+	start, seg := p.start, p.seg
 	pieces := p.pieces.take(1, p.size)
 	end, ok := p.piece(&pieces[0], start, true)
 	if !ok {
@@ -28,7 +28,7 @@ func (p *parser) number() Expr {
 	n.At = p.span(start, end)
 	p.pos = end
 	p.advance()
-	if p.tok == tNumber && !pieces[0].HasUnit && p.start > end {
+	if p.tok == tNumber && !pieces[0].HasUnit && p.seg == seg {
 		p.numberBesideNumber(start, end)
 	}
 	return n
@@ -164,7 +164,11 @@ func (p *parser) checkFigures(start, i int, whole bool) bool {
 		case c == '\'' || c == '"':
 			p.feetAndInches(start, i)
 			return false
-		case c >= utf8.RuneSelf && p.markOrMinus(start, i):
+		case (c == 'e' || c == 'E') && strings.HasPrefix(p.s[i+1:p.end], "−") && digitsEnd(p.s, i+1+len("−"), p.end) > i+1+len("−"):
+			e := digitsEnd(p.s, i+1+len("−"), p.end)
+			p.syntax(start, e, "the minus of an exponent is written `-`", "write "+quoted(strings.Replace(p.s[start:e], "−", "-", 1)))
+			return false
+		case c >= utf8.RuneSelf && p.lengthMark(start, i):
 			return false
 		}
 	}
@@ -261,7 +265,10 @@ func (p *parser) unitStarts(i int, touch bool) bool {
 	case c == '%':
 		return true
 	case c == '1':
-		return !touch && i+2 < p.end && p.s[i+1] == '/' && units.ScanName(p.s[i+2:p.end]) > 0 && nameEnd(p.s, i+2, p.end) > i+2
+		if touch || i+2 >= p.end || p.s[i+1] != '/' {
+			return false
+		}
+		return p.s[i+2] == '(' && p.unitBracket(i+2) > 0 || unitNameEnd(p.s, i+2, p.end) > i+2 && !isDigit(p.s[i+2])
 	case c < utf8.RuneSelf:
 		return false
 	}

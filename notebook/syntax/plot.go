@@ -213,7 +213,7 @@ func (p *parser) figure(b *Block, info Line) {
 	}
 	f.Kind, f.KindAt = p.s[info.Start:end], p.span(info.Start, end)
 	if f.Kind == "" {
-		p.report(diag.Error, f.KindAt, diag.Syntax, "the figure has no kind", "write it behind the word, as in `figure mohr sigma_x, sigma_y, tau_xy`")
+		p.report(diag.Error, f.KindAt, diag.Syntax, "the figure has no kind", "put it behind the word, as in `figure mohr sigma_x, sigma_y, tau_xy`")
 	}
 	p.segs = p.segs[:0]
 	if rest := trimmed(p.s, end, info.End); rest.Start < rest.End {

@@ -40,7 +40,7 @@ func (p *parser) tableHead(b *Block, seg Line) {
 		at := p.span(seg.Start, seg.Start)
 		t.Name = &Name{At: at, ID: "cases", Text: "cases", Slot: -1}
 	case t.Name == nil && len(p.diags) == 0:
-		p.report(diag.Error, p.span(seg.Start, seg.Start), diag.Syntax, "the schedule has no name", "write it behind the word, as in `schedule bolts`")
+		p.report(diag.Error, p.span(seg.Start, seg.Start), diag.Syntax, "the schedule has no name", "put it behind the word, as in `schedule bolts`")
 	}
 }
 
@@ -69,7 +69,7 @@ func (p *parser) table(t *Table) {
 			p.row(t, l, leading)
 		}
 	}
-	if t.Columns == nil && t.From == "" {
+	if t.Columns == nil && t.From == "" && len(p.diags) == 0 {
 		p.report(diag.Error, t.At, diag.Syntax, "the table has no header", "its first line names the columns, as in `mark | x [mm] | y [mm]`")
 	}
 }

@@ -13,11 +13,17 @@ import (
 // starts at lit. A unit is written tight and ends before a blank, and before a
 // sign that is followed by a figure, a call or a bracket that is no unit.
 func (p *parser) unit(lit, u int) (unit units.Unit, end int, ok bool) {
-	i := u
+	i, first := u, true
 	if p.s[i] == '1' { // of 1/K
-		i += 2
+		if i += 2; p.s[i] == '(' {
+			first = false
+			if i, end = p.unitSign(i, p.unitBracket(i)); i == 0 {
+				unit, ok = p.parseUnit(u, end)
+				return unit, end, ok
+			}
+		}
 	}
-	for first := true; ; first = false {
+	for ; ; first = false {
 		j := unitNameEnd(p.s, i, p.end)
 		name := p.s[i:j]
 		switch {
@@ -67,7 +73,7 @@ func (p *parser) unitPower(lit, i int) (int, bool) {
 		return j, true
 	}
 	e := p.operandEnd(p.skipBlanks(i + 1))
-	p.syntax(lit, e, fmt.Sprintf("the power behind %s belongs to the unit and has to be a figure", quoted(p.s[lit:i])),
+	p.syntax(lit, e, fmt.Sprintf("the power behind %s belongs to the unit and has to be a whole number, or a fraction as in `m^(1/2)`", quoted(p.s[lit:i])),
 		"for a power of the value write "+quoted("("+p.s[lit:i]+")"+p.s[i:e]))
 	return 0, false
 }
