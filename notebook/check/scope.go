@@ -132,12 +132,13 @@ func (c *checker) occupied(id string) (what string, line int) {
 
 // space is a name that stands before a dot.
 type space struct {
-	what   string
-	line   int
-	rows   *Rows
-	failed bool // a schedule that could not be read
-	from   *Carry
-	file   *HelperFile
+	what    string
+	line    int
+	rows    *Rows
+	failed  bool // a schedule that could not be read
+	from    *Carry
+	file    *HelperFile
+	helpers []*helper
 }
 
 // head returns what stands before the first dot, and what follows it.

@@ -23,6 +23,9 @@ func (s *Step) Printed(entry int) []Piece {
 	if s.Literal != nil {
 		return printLiteral(s)
 	}
+	if entry < len(s.Cells) && s.Cells[entry] != "" {
+		return []Piece{{Figures: s.Cells[entry], Unit: s.Unit}}
+	}
 	return s.Value.Printed(entry, s.Unit, s.Figures)
 }
 

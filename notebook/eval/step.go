@@ -78,6 +78,8 @@ type Step struct {
 	Entry int
 	// Taken is the branch taken, for each entry; nil where there is one branch.
 	Taken []int
+	// Picks are the rows that `first of` picked from a schedule, for each entry.
+	Picks []int
 	// Trials are the candidates of `first of` that were tried for Entry, in order.
 	Trials []Trial
 	Check  *CheckResult
@@ -128,7 +130,8 @@ type CheckResult struct {
 	Governs  int         // the entry with the verdict: the worst one
 	Equal    bool        // the governing entry's sides are equal under < or >
 	AllOK    bool
-	NeededIf []Side // operands of the condition behind `if`, nil where there is none or it is no plain comparison
+	IfOps    []syntax.Op // between the operands of NeededIf
+	NeededIf []Side      // operands of the condition behind `if`, nil where there is none or it is no plain comparison
 }
 
 // Side is one operand of a comparison with its value and printed unit.
@@ -137,4 +140,36 @@ type Side struct {
 	Value   Value
 	Unit    units.Unit
 	Figures int
+}
+
+// Plot is what a plot block draws, recomputed over its range, in the axes' units.
+type Plot struct {
+	Title   string
+	X, Y    Axis
+	At      float64 // the swept value's present entry
+	Curves  []Curve
+	Limits  []Curve
+	Present []float64 // the curves' present values, by curve
+	Checks  bool      // bars of utilisation of the file's checks instead of curves
+}
+
+// Axis is one axis: the quantity's symbol and the unit it is drawn in.
+type Axis struct {
+	Symbol string
+	Unit   units.Unit
+}
+
+// Curve is one line of a plot. Mark names the row it stands for where the
+// value has rows beside the sweep.
+type Curve struct {
+	ID, Symbol, Mark string
+	X, Y             []float64
+}
+
+// Figure is a sketch: its kind and the steps whose values it draws, in the
+// order of the kind's parameters; nil where an optional one is absent.
+type Figure struct {
+	Kind  string
+	Args  []*Step
+	Names []string // of the parameters
 }

@@ -1,0 +1,368 @@
+package eval
+
+import (
+	"fmt"
+
+	"gusset/notebook/check"
+	"gusset/notebook/diag"
+	"gusset/notebook/syntax"
+)
+
+// maxDepth bounds calls inside calls while they are computed.
+const maxDepth = 200
+
+// callFunc calls an author's function for one entry. Where the body only
+// works entry by entry, its parameters take that entry's values alone.
+func (m *machine) callFunc(n *check.Node, f *frame, target *check.Type, entry int) (any, error) {
+	inst := n.Func
+	g, err := m.functionFrame(n, f)
+	if err != nil {
+		return nil, err
+	}
+	alone := entrywise(inst)
+	for i, p := range inst.Params {
+		arg := n.Args[i]
+		v := Value{Type: p.Type}
+		switch {
+		case !alone && len(arg.Type.Rows) > 0:
+			v = m.columnValue(arg, f)
+		default:
+			v.Type.Rows = nil
+			x, err := m.entry(arg, f, target, entry)
+			if err != nil {
+				return nil, err
+			}
+			v.set(x)
+		}
+		m.bindParam(g, p, v)
+	}
+	if alone {
+		v, _, err := m.choice(inst.Body, g, &check.Type{}, 0)
+		return v, m.inFunction(err, n, f)
+	}
+	t := inst.Body.Type
+	v, _, err := m.choice(inst.Body, g, &t, max(target.Project(entry, t), 0))
+	return v, m.inFunction(err, n, f)
+}
+
+func (v *Value) set(x any) {
+	switch x := x.(type) {
+	case float64:
+		v.Num = []float64{x}
+	case string:
+		v.Text = []string{x}
+	}
+}
+
+func (m *machine) functionFrame(n *check.Node, f *frame) (*frame, error) {
+	if f.depth > maxDepth {
+		return nil, &fault{id: diag.BoundExceeded, at: n.Expr.Span(), message: fmt.Sprintf("calls are nested over %d deep, the bound", maxDepth)}
+	}
+	g := newFrame(n.Func.Scope, f.of(n.Func.Scope.Parent), f.of(n.Func.Scope.Parent).src)
+	g.depth = f.depth + 1
+	return g, nil
+}
+
+// bindParam gives a parameter its value, and a step for whoever prints it.
+func (m *machine) bindParam(g *frame, p *check.Def, v Value) {
+	g.vals[p.Slot] = v
+	g.steps[p.Slot] = &Step{Kind: Constant, ID: p.ID, Symbol: p.Symbol, Value: v, Unit: m.unitOf(p), Figures: m.figures()}
+}
+
+// inFunction says of a fault inside a function which call it arose in.
+func (m *machine) inFunction(err error, n *check.Node, f *frame) error {
+	e, ok := err.(*fault)
+	if !ok {
+		return err
+	}
+	x := n.Expr.(*syntax.Call)
+	return &fault{id: e.id, at: x.At, message: fmt.Sprintf("in `%s`: %s", x.Fun.Text, e.message), hints: e.hints}
+}
+
+// entrywise tells that a function's body needs no more than one entry of its
+// arguments at a time: it reduces no rows and looks nothing up.
+func entrywise(inst *check.Function) bool {
+	if inst.Body.FirstOf != nil {
+		return false
+	}
+	for _, b := range inst.Body.Branches {
+		if !elementary(b.Value) || b.Cond != nil && !elementary(b.Cond) {
+			return false
+		}
+	}
+	return true
+}
+
+func elementary(n *check.Node) bool {
+	switch n.Op {
+	case check.Reduce, check.At, check.AtRow, check.Interp, check.CallHelp, check.CallGo:
+		return false
+	case check.Load:
+		// A name of the calc's own with rows is projected from the caller's rows.
+		return len(n.Def.Type.Rows) == 0 || n.Def.Plan == nil && n.Def.Carry == nil
+	case check.CallFunc:
+		if !entrywise(n.Func) {
+			return false
+		}
+	}
+	for _, a := range n.Args {
+		if !elementary(a) {
+			return false
+		}
+	}
+	return true
+}
+
+// callHelp runs a helper for one entry and returns its one result.
+func (m *machine) callHelp(n *check.Node, f *frame, target *check.Type, entry int) (any, error) {
+	loop := check.Type{Rows: n.Help.Loop}
+	g, err := m.runHelper(n.Help, f, max(target.Project(entry, loop), 0))
+	if err != nil {
+		return nil, err
+	}
+	r := n.Help.Results[n.Result]
+	v := &g.vals[r.Slot]
+	at := 0
+	if len(v.Type.Rows) > 0 {
+		at = target.Project(entry, v.Type)
+	}
+	if v.Type.Kind == check.Text {
+		return v.Text[at], nil
+	}
+	if x := v.Num[at]; x == x {
+		return x, nil
+	}
+	return nil, &fault{id: diag.OutOfRange, at: n.Expr.Span(), message: fmt.Sprintf("%s has no result for these values", n.Help.Helper.Name.Text)}
+}
+
+// runHelper runs a helper's lines for one entry of the rows it loops over. While
+// the statement is recorded for print, the call is kept with its steps.
+func (m *machine) runHelper(hc *check.HelperCall, f *frame, entry int) (*frame, error) {
+	if f.depth > maxDepth {
+		return nil, &fault{id: diag.BoundExceeded, at: hc.Expr.At, message: fmt.Sprintf("calls are nested over %d deep, the bound", maxDepth)}
+	}
+	g := newFrame(hc.Scope, nil, hc.Helper.Source)
+	g.depth = f.depth + 1
+	loop := check.Type{Rows: hc.Loop}
+	outer := m.recording
+	var call *Call
+	if outer != nil {
+		call = &Call{Expr: hc.Expr, Helper: hc.Helper, Library: hc.Library, Mark: loop.Mark(entry)}
+	}
+	m.recording = nil
+	for i, p := range hc.Params {
+		v, err := m.argument(hc, i, f, &loop, entry)
+		if err != nil {
+			m.recording = outer
+			return nil, err
+		}
+		m.bindParam(g, p, v)
+		if lit, negated := literalOf(hc, i); lit != nil && len(v.Type.Rows) == 0 {
+			g.steps[p.Slot].Literal, g.steps[p.Slot].Negated = lit, negated
+		} else if s := m.argStep(hc, i, f); s != nil && len(v.Type.Rows) == 0 && len(s.Value.Type.Rows) == 0 {
+			g.steps[p.Slot].Literal, g.steps[p.Slot].Negated, g.steps[p.Slot].Anchor = s.Literal, s.Negated, s.Anchor
+		}
+		if call != nil {
+			call.Args = append(call.Args, g.steps[p.Slot])
+		}
+	}
+	err := m.helperBody(hc, g, call)
+	m.recording = outer
+	if err != nil {
+		return nil, err
+	}
+	if call != nil {
+		for _, r := range hc.Results {
+			call.Results = append(call.Results, g.steps[r.Slot])
+		}
+		*outer = append(*outer, call)
+	}
+	return g, nil
+}
+
+// literalOf is an argument's literal, whose figures the helper's page shows.
+func literalOf(hc *check.HelperCall, i int) (*syntax.Number, bool) {
+	switch x := hc.Args[i].Expr.(type) {
+	case *syntax.Number:
+		return x, false
+	case *syntax.Unary:
+		if lit, ok := x.X.(*syntax.Number); ok && x.Op == syntax.Neg {
+			return lit, true
+		}
+	}
+	return nil, false
+}
+
+func (m *machine) argStep(hc *check.HelperCall, i int, f *frame) *Step {
+	if n := hc.Args[i]; n.Op == check.Load && hc.Given[i] {
+		return m.stepFor(n.Def, f)
+	}
+	return nil
+}
+
+// argument is the value a parameter takes for one entry of the loop: a plain
+// value, or a column.
+func (m *machine) argument(hc *check.HelperCall, i int, f *frame, loop *check.Type, entry int) (Value, error) {
+	n, p := hc.Args[i], hc.Params[i]
+	v := Value{Type: p.Type}
+	if !hc.Columns[i] {
+		from := f
+		if !hc.Given[i] {
+			from = newFrame(&check.Scope{}, nil, hc.Helper.Source)
+		}
+		x, err := m.entry(n, from, loop, entry)
+		if err != nil {
+			return v, err
+		}
+		v.set(x)
+		return v, nil
+	}
+	col := m.column(n, f, &n.Type)
+	joint := check.Type{Rows: append(append([]*check.Rows{}, hc.Loop...), p.Type.Rows...)}
+	count := p.Type.Count()
+	v.Num = make([]float64, count)
+	for k := range v.Num {
+		at := joint.Project(entry*count+k, n.Type)
+		v.Num[k] = col[at]
+		if !finite(col[at]) {
+			if _, err := m.number(n, f, &n.Type, at); err != nil {
+				return v, atEntry(err, n.Type, at)
+			}
+		}
+	}
+	return v, nil
+}
+
+// helperBody runs a helper's lines in order.
+func (m *machine) helperBody(hc *check.HelperCall, g *frame, call *Call) error {
+	for _, p := range hc.Plans {
+		var step *Step
+		var err error
+		if call != nil {
+			step, err = m.recorded(p, g)
+		} else {
+			err = m.compute(p, g, nil)
+		}
+		if err != nil {
+			return m.inHelper(err, hc)
+		}
+		if step != nil {
+			call.Steps = append(call.Steps, step)
+		}
+	}
+	return nil
+}
+
+// recorded computes a statement and keeps what it prints, calls inside it included.
+func (m *machine) recorded(p *check.Plan, g *frame) (*Step, error) {
+	step := m.newStep(p, g)
+	if step == nil {
+		return nil, nil
+	}
+	outer := m.recording
+	m.recording = &step.Calls
+	err := m.compute(p, g, step)
+	m.recording = outer
+	if err == nil {
+		m.settleStep(p, g, step)
+	}
+	return step, err
+}
+
+// inHelper points a fault inside a helper's body to the call.
+func (m *machine) inHelper(err error, hc *check.HelperCall) error {
+	e, ok := err.(*fault)
+	if !ok {
+		return err
+	}
+	hints := e.hints
+	if hc.Helper.Note.Source != "" && e.id == diag.OutOfRange {
+		hints = append(append([]string{}, hints...), fmt.Sprintf("%s follows %s", hc.Helper.Name.Text, hc.Helper.Note.Source))
+	}
+	return &fault{id: e.id, at: hc.Expr.At, message: fmt.Sprintf("in `%s`: %s", hc.Helper.Name.Text, e.message), hints: hints}
+}
+
+// limit holds a helper to a limit of its validity.
+func (m *machine) limit(p *check.Plan, g *frame, step *Step) error {
+	s := p.Stmt.(*syntax.Needs)
+	t := p.Check.Type
+	for e := 0; e < t.Count(); e++ {
+		ok, err := m.truth(p.Check.Cond, g, &t, e)
+		if err != nil {
+			return atEntry(err, t, e)
+		}
+		if ok {
+			continue
+		}
+		err = m.outside(p, s, g, &t, e)
+		if !s.Warn {
+			return err
+		}
+		m.warn(s, err.(*fault), g)
+	}
+	if step != nil {
+		step.Check = m.checkResult(p, g)
+	}
+	return nil
+}
+
+// outside says which limit does not hold, with the value, the limit and the clause.
+func (m *machine) outside(p *check.Plan, s *syntax.Needs, g *frame, t *check.Type, entry int) error {
+	message := fmt.Sprintf("the limit `%s` does not hold", syntax.Print(g.src, s.Cond))
+	if c := p.Check; c.Sides != nil {
+		for i, side := range c.Sides {
+			if side.Op == check.Const || side.Op == check.TextLit {
+				continue
+			}
+			v := m.show(side, g, t, entry)
+			if i == 0 || c.Sides[0].Op == check.Const {
+				message += fmt.Sprintf(": %s is %s", syntax.Print(g.src, side.Expr), v)
+			} else {
+				message += fmt.Sprintf(", %s is %s", syntax.Print(g.src, side.Expr), v)
+			}
+		}
+	} else if values := m.valuesIn(p.Check.Cond, g, t, entry); values != "" {
+		message += ": " + values
+	}
+	out := &fault{id: diag.OutOfRange, at: s.At, message: message}
+	if note := s.Note.Text; note != "" {
+		out.hints = append(out.hints, note)
+	}
+	if s.Note.Source != "" {
+		out.hints = append(out.hints, "see "+s.Note.Source)
+	}
+	return out
+}
+
+// show is one entry of a node as text in its printed unit.
+func (m *machine) show(n *check.Node, f *frame, target *check.Type, entry int) string {
+	x, err := m.entry(n, f, target, entry)
+	if err != nil {
+		return "not known"
+	}
+	v := Value{Type: check.Type{Kind: n.Type.Kind, Dim: n.Type.Dim}}
+	v.set(x)
+	return PlainText(v.Printed(0, m.nodeUnit(n, f), m.figures()))
+}
+
+// warn gives a limit's warning once for each statement that calls the helper.
+func (m *machine) warn(s *syntax.Needs, e *fault, g *frame) {
+	key := warning{s, m.running}
+	if m.running == nil || m.warned[key] {
+		return
+	}
+	m.warned[key] = true
+	at := m.running.Stmt.Span()
+	name := ""
+	switch st := m.running.Stmt.(type) {
+	case *syntax.Definition:
+		at = st.Branches[0].Value.Span()
+		name = st.Name.Text + ": "
+	case *syntax.Check:
+		at = st.Cond.Span()
+	}
+	m.report(diag.Diagnostic{Severity: diag.Warning, ID: diag.OutOfRange, Source: m.top.src, Span: at,
+		Message: name + e.message, Hints: e.hints})
+}
+
+func (m *machine) report(d diag.Diagnostic) { m.out.Diagnostics = append(m.out.Diagnostics, d) }

@@ -1,0 +1,176 @@
+package eval
+
+import (
+	"math"
+
+	"gusset/notebook/check"
+	"gusset/notebook/syntax"
+)
+
+// computeCheck computes a check: its sides, the verdict and the utilisation of
+// each entry, and which entry governs.
+func (m *machine) computeCheck(p *check.Plan, f *frame, step *Step) error {
+	t := p.Check.Type
+	for e := 0; e < t.Count(); e++ {
+		if p.Check.If != nil {
+			needed, err := m.truth(p.Check.If, f, &t, e)
+			if err != nil {
+				return atEntry(err, t, e)
+			}
+			if !needed {
+				continue
+			}
+		}
+		if _, err := m.truth(p.Check.Cond, f, &t, e); err != nil {
+			return atEntry(err, t, e)
+		}
+	}
+	if step != nil {
+		step.Check = m.checkResult(p, f)
+		step.Entry = step.Check.Governs
+	}
+	return nil
+}
+
+// checkResult is how a check or a limit came out, once it is known that it can be computed.
+func (m *machine) checkResult(p *check.Plan, f *frame) *CheckResult {
+	c := p.Check
+	r := &CheckResult{Ops: c.Ops, Type: c.Type, AllOK: true}
+	outer := m.recording
+	m.recording = nil
+	defer func() { m.recording = outer }()
+	named := m.sidesUnit(c.Sides, f)
+	for _, n := range c.Sides {
+		r.Sides = append(r.Sides, m.side(n, f, named))
+	}
+	named = m.sidesUnit(c.IfSides, f)
+	for _, n := range c.IfSides {
+		r.NeededIf = append(r.NeededIf, m.side(n, f, named))
+	}
+	r.IfOps = c.IfOps
+	count := c.Type.Count()
+	r.Required, r.OK, r.Ratio = make([]bool, count), make([]bool, count), make([]float64, count)
+	for e := range r.OK {
+		r.Required[e], r.OK[e], r.Ratio[e] = true, true, nan
+		if c.If != nil {
+			r.Required[e], _ = m.truth(c.If, f, &c.Type, e)
+		}
+		if !r.Required[e] {
+			continue
+		}
+		r.OK[e], _ = m.truth(c.Cond, f, &c.Type, e)
+		r.AllOK = r.AllOK && r.OK[e]
+		r.Ratio[e] = m.utilisation(r, e)
+	}
+	r.Governs = r.worst()
+	r.Equal = r.equalSides(r.Governs)
+	return r
+}
+
+// side computes an operand; it is shown in its own name's unit, else in the
+// unit of the side it is compared with.
+func (m *machine) side(n *check.Node, f *frame, shared *check.Node) Side {
+	s := Side{Expr: n.Expr, Figures: m.figures(), Unit: m.nodeUnit(n, f)}
+	if _, own := m.namedUnit(n, n.Type, f); !own && shared != nil && shared.Type.Dim == n.Type.Dim && shared.Type.Kind == n.Type.Kind {
+		s.Unit = m.nodeUnit(shared, f)
+	}
+	s.Value = m.columnValue(n, f)
+	return s
+}
+
+// sidesUnit is the first side that brings a unit of its own.
+func (m *machine) sidesUnit(sides []*check.Node, f *frame) *check.Node {
+	for _, n := range sides {
+		if _, own := m.namedUnit(n, n.Type, f); own {
+			return n
+		}
+	}
+	return nil
+}
+
+// utilisation is demand over capacity, the larger of a chain's; NaN where a
+// ratio says nothing.
+func (m *machine) utilisation(r *CheckResult, entry int) float64 {
+	out := nan
+	for i, op := range r.Ops {
+		a, b := r.at(i, entry), r.at(i+1, entry)
+		if r.Sides[i].Value.Type.Kind != check.Number || r.Sides[i+1].Value.Type.Kind != check.Number {
+			continue
+		}
+		if op == syntax.Gt || op == syntax.Ge {
+			a, b = b, a
+		}
+		if op == syntax.Eq || a <= 0 || b <= 0 || !finite(a) || !finite(b) {
+			continue
+		}
+		if u := a / b; finite(u) && (!finite(out) || u > out) {
+			out = u
+		}
+	}
+	return out
+}
+
+// at is the value of a side for an entry of the check.
+func (r *CheckResult) at(side, entry int) float64 {
+	v := r.Sides[side].Value
+	if k := r.Type.Project(entry, v.Type); k >= 0 && k < len(v.Num) {
+		return v.Num[k]
+	}
+	return nan
+}
+
+// worst is the entry with the verdict: of the required ones one that fails
+// before one that holds, and of those the largest utilisation.
+func (r *CheckResult) worst() int {
+	best := 0
+	rank := func(e int) (int, float64) {
+		u := r.Ratio[e]
+		if !finite(u) {
+			u = math.Inf(-1)
+		}
+		switch {
+		case !r.Required[e]:
+			return 0, u
+		case r.OK[e]:
+			return 1, u
+		}
+		return 2, u
+	}
+	bk, bu := rank(0)
+	for e := 1; e < len(r.OK); e++ {
+		if k, u := rank(e); k > bk || k == bk && u > bu {
+			best, bk, bu = e, k, u
+		}
+	}
+	return best
+}
+
+// equalSides tells that the check fails under < or > only because its sides are equal.
+func (r *CheckResult) equalSides(entry int) bool {
+	if len(r.OK) == 0 || r.OK[entry] {
+		return false
+	}
+	equal := false
+	for i, op := range r.Ops {
+		a, b := r.at(i, entry), r.at(i+1, entry)
+		if !finite(a) || !finite(b) {
+			return false
+		}
+		if (op == syntax.Lt || op == syntax.Gt) && same(a, b) {
+			equal = true
+		} else if !compare(op, a, b) {
+			return false
+		}
+	}
+	return equal
+}
+
+// Needed tells whether the check is required for any entry.
+func (r *CheckResult) Needed() bool {
+	for _, q := range r.Required {
+		if q {
+			return true
+		}
+	}
+	return false
+}

@@ -1,0 +1,491 @@
+package eval
+
+import (
+	"math"
+	"sync"
+
+	"gusset/notebook/check"
+	"gusset/units"
+)
+
+// Values over rows go through a small evaluator of columns, since govaluate's
+// cost for an entry is right for plain statements and wrong for a sweep. A
+// node is compiled once to a list of operations on registers; each operation
+// is a tight loop over a block of entries. What does not exist (a division by zero,
+// a root of a negative value) is NaN and spreads, so that a condition may pass
+// it over; where it reaches a result, that entry is computed once more by
+// govaluate, which says why.
+
+const block = 1024 // entries worked on at a time: registers stay in the cache
+
+type columnOp struct {
+	node *check.Node
+	dst  int
+	args []int // registers
+	leaf int   // the column a leaf reads, -1 for none
+}
+
+type columnProgram struct {
+	ops       []columnOp
+	registers int
+	leaves    []*check.Node
+}
+
+func compileColumn(n *check.Node) *columnProgram {
+	c := memo(n)
+	if c.column == nil {
+		p := &columnProgram{}
+		p.node(n)
+		c.column = p
+	}
+	return c.column
+}
+
+func (p *columnProgram) node(n *check.Node) int {
+	op := columnOp{node: n, leaf: -1}
+	switch {
+	case n.Op == check.Const:
+	case opaque(n):
+		op.leaf = len(p.leaves)
+		p.leaves = append(p.leaves, n)
+	default:
+		for _, a := range n.Args {
+			op.args = append(op.args, p.node(a))
+		}
+	}
+	op.dst = p.registers
+	p.registers++
+	p.ops = append(p.ops, op)
+	return op.dst
+}
+
+// opaque tells of a node that it is computed as a whole column, not block by block.
+func opaque(n *check.Node) bool {
+	switch n.Op {
+	case check.Load, check.TextLit, check.Reduce, check.At, check.AtRow, check.Interp, check.CallFunc, check.CallHelp, check.CallGo:
+		return true
+	case check.Compare:
+		return n.Args[0].Type.Kind == check.Text
+	}
+	return false
+}
+
+// source is a leaf's column and how its entries lie among the target's:
+// entry e of the target reads (e/repeat)%n, or goes through index.
+type source struct {
+	col       []float64
+	repeat, n int
+	index     []int32
+}
+
+// column computes all entries of a node over the rows of a target, NaN where
+// an entry does not exist. The slice may be the value's own: it is not to be written to.
+func (m *machine) column(n *check.Node, f *frame, target *check.Type) []float64 {
+	count := target.Count()
+	if n.Op == check.Load && !n.Def.IsConst {
+		if v, err := f.value(n.Def); err == nil && len(v.Num) == count && sameRows(v.Type.Rows, target.Rows) {
+			return v.Num
+		}
+	}
+	p := compileColumn(n)
+	sources := make([]source, len(p.leaves))
+	for i, l := range p.leaves {
+		sources[i] = m.source(l, f, target)
+	}
+	out := make([]float64, count)
+	last := p.registers - 1
+	run := func(lo, hi int) {
+		regs := make([][]float64, p.registers)
+		buf := make([]float64, p.registers*block)
+		for i := range regs {
+			regs[i] = buf[i*block : (i+1)*block]
+		}
+		for at := lo; at < hi; at += block {
+			end := min(at+block, hi)
+			p.run(regs, sources, at, end)
+			copy(out[at:end], regs[last])
+		}
+	}
+	if count < 16*block {
+		run(0, count)
+		return out
+	}
+	half := count / 2 / block * block
+	var wg sync.WaitGroup
+	wg.Add(1)
+	go func() {
+		defer wg.Done()
+		run(0, half)
+	}()
+	run(half, count)
+	wg.Wait()
+	return out
+}
+
+func sameRows(a, b []*check.Rows) bool {
+	if len(a) != len(b) {
+		return false
+	}
+	for i := range a {
+		if a[i] != b[i] {
+			return false
+		}
+	}
+	return true
+}
+
+func (m *machine) columnValue(n *check.Node, f *frame) Value {
+	v := Value{Type: n.Type}
+	if n.Type.Kind == check.Text {
+		for e := 0; e < n.Type.Count(); e++ {
+			x, _ := m.entry(n, f, &n.Type, e)
+			s, _ := x.(string)
+			v.Text = append(v.Text, s)
+		}
+		return v
+	}
+	v.Num = m.column(n, f, &n.Type)
+	return v
+}
+
+// source makes a leaf's column: a value as it is, all else computed over its
+// own rows, entry by entry.
+func (m *machine) source(n *check.Node, f *frame, target *check.Type) source {
+	if n.Op == check.Load {
+		if n.Def.IsConst {
+			return source{col: []float64{n.Def.Const}, repeat: 1, n: 1}
+		}
+		v, err := f.value(n.Def)
+		if err != nil {
+			return source{col: []float64{nan}, repeat: 1, n: 1}
+		}
+		return lay(v.Num, &v.Type, target)
+	}
+	t := n.Type
+	t.Rows = keep(t.Rows, target.Rows)
+	col := make([]float64, t.Count())
+	if n.Op == check.CallFunc && !anyText(n) {
+		return lay(m.functionColumn(n, f), &n.Type, target)
+	}
+	for e := range col {
+		x, err := m.entry(n, f, &t, e)
+		switch x := x.(type) {
+		case float64:
+			col[e] = x
+		case bool:
+			col[e] = truth(x)
+		}
+		if err != nil {
+			col[e] = nan
+		}
+	}
+	return lay(col, &t, target)
+}
+
+func keep(rows, among []*check.Rows) []*check.Rows {
+	var out []*check.Rows
+	for _, r := range rows {
+		for _, o := range among {
+			if o == r {
+				out = append(out, r)
+			}
+		}
+	}
+	return out
+}
+
+func anyText(n *check.Node) bool {
+	for _, a := range n.Args {
+		if a.Type.Kind == check.Text {
+			return true
+		}
+	}
+	return n.Type.Kind == check.Text
+}
+
+// functionColumn calls an author's function with whole columns at once.
+func (m *machine) functionColumn(n *check.Node, f *frame) []float64 {
+	count := n.Type.Count()
+	fail := func() []float64 {
+		col := make([]float64, count)
+		for i := range col {
+			col[i] = nan
+		}
+		return col
+	}
+	g, err := m.functionFrame(n, f)
+	if err != nil {
+		return fail()
+	}
+	for i, p := range n.Func.Params {
+		m.bindParam(g, p, m.columnValue(n.Args[i], f))
+	}
+	if n.Func.Body.FirstOf != nil {
+		return fail()
+	}
+	t := n.Func.Body.Type
+	col, _ := m.branches(n.Func.Body, g, &t)
+	return col
+}
+
+// branches computes a choice over rows: the value of the first branch whose condition
+// holds, by mask, and which one that was. NaN marks an entry that failed.
+func (m *machine) branches(ch check.Choice, f *frame, t *check.Type) ([]float64, []int) {
+	if len(ch.Branches) == 1 && ch.Branches[0].Cond == nil {
+		return m.column(ch.Branches[0].Value, f, t), nil
+	}
+	count := t.Count()
+	out, taken := make([]float64, count), make([]int, count)
+	for e := range out {
+		out[e], taken[e] = nan, -1
+	}
+	open := count
+	for i, b := range ch.Branches {
+		if open == 0 {
+			break
+		}
+		var cond []float64
+		if b.Cond != nil {
+			cond = m.column(b.Cond, f, t)
+		}
+		value := m.column(b.Value, f, t)
+		for e := range out {
+			if taken[e] != -1 {
+				continue
+			}
+			switch {
+			case cond == nil || cond[e] == 1:
+				out[e], taken[e] = value[e], i
+				open--
+			case cond[e] != 0:
+				taken[e] = -2 // the condition itself failed
+				open--
+			}
+		}
+	}
+	return out, taken
+}
+
+// lay says how a column's entries lie among those of a target.
+func lay(col []float64, t, target *check.Type) source {
+	if len(t.Rows) == 0 || len(col) == 1 {
+		return source{col: col, repeat: 1, n: 1}
+	}
+	// A run of neighbouring sets of the target needs no index.
+	for at := range target.Rows {
+		if at+len(t.Rows) > len(target.Rows) || !sameRows(target.Rows[at:at+len(t.Rows)], t.Rows) {
+			continue
+		}
+		repeat := 1
+		for _, r := range target.Rows[at+len(t.Rows):] {
+			repeat *= r.N()
+		}
+		return source{col: col, repeat: repeat, n: len(col)}
+	}
+	index := make([]int32, target.Count())
+	for e := range index {
+		index[e] = int32(max(target.Project(e, *t), 0))
+	}
+	return source{col: col, index: index}
+}
+
+func (s *source) read(dst []float64, lo, hi int) {
+	switch {
+	case s.index != nil:
+		for i, k := range s.index[lo:hi] {
+			dst[i] = s.col[k]
+		}
+	case s.n == 1:
+		x := s.col[0]
+		for i := range dst[:hi-lo] {
+			dst[i] = x
+		}
+	case s.repeat == 1:
+		k := lo % s.n
+		for i := 0; i < hi-lo; {
+			c := copy(dst[i:hi-lo], s.col[k:])
+			i += c
+			k = 0
+		}
+	default:
+		k, within := lo/s.repeat%s.n, lo%s.repeat
+		for i := range dst[:hi-lo] {
+			dst[i] = s.col[k]
+			if within++; within == s.repeat {
+				within = 0
+				if k++; k == s.n {
+					k = 0
+				}
+			}
+		}
+	}
+}
+
+func truth(b bool) float64 {
+	if b {
+		return 1
+	}
+	return 0
+}
+
+func (p *columnProgram) run(regs [][]float64, sources []source, lo, hi int) {
+	n := hi - lo
+	for i := range p.ops {
+		op := &p.ops[i]
+		dst := regs[op.dst][:n]
+		if op.leaf >= 0 {
+			sources[op.leaf].read(dst, lo, hi)
+			continue
+		}
+		arg := func(k int) []float64 { return regs[op.args[k]][:n] }
+		switch op.node.Op {
+		case check.Const:
+			x := op.node.Num
+			for i := range dst {
+				dst[i] = x
+			}
+		case check.Neg:
+			x := arg(0)
+			for i := range dst {
+				dst[i] = -x[i]
+			}
+		case check.Mul:
+			x, y := arg(0), arg(1)
+			for i := range dst {
+				dst[i] = x[i] * y[i]
+			}
+		case check.Div:
+			x, y := arg(0), arg(1)
+			for i := range dst {
+				dst[i] = x[i] / y[i]
+				if y[i] == 0 || y[i]-y[i] != 0 {
+					dst[i] = nan
+				}
+			}
+		case check.Sum:
+			p.sum(op, regs, dst)
+		case check.Pow:
+			raise(dst, arg(0), arg(1), op.node.Args[1])
+		case check.ToUnit:
+			convert(dst, arg(0), op.node.Unit, units.Unit.FromSI)
+		case check.FromUnit:
+			convert(dst, arg(0), op.node.Unit, units.Unit.ToSI)
+		default:
+			p.other(op, regs, dst)
+		}
+	}
+}
+
+func (p *columnProgram) sum(op *columnOp, regs [][]float64, dst []float64) {
+	minus := op.node.Minus
+	if len(op.args) == 2 {
+		x, y, sign := regs[op.args[0]][:len(dst)], regs[op.args[1]][:len(dst)], 1.0
+		if minus[1] {
+			sign = -1
+		}
+		for i := range dst {
+			b := sign * y[i]
+			s := x[i] + b
+			if a := math.Abs(s); a < dust*math.Abs(x[i]) || a < dust*math.Abs(b) {
+				s = 0
+			}
+			dst[i] = s
+		}
+		return
+	}
+	for i := range dst {
+		total, largest := 0.0, 0.0
+		for k, r := range op.args {
+			x := regs[r][i]
+			if minus[k] {
+				x = -x
+			}
+			total += x
+			largest = math.Max(largest, math.Abs(x))
+		}
+		dst[i] = settle(total, largest)
+	}
+}
+
+func raise(dst, x, y []float64, exponent *check.Node) {
+	if exponent.Op == check.Const && exponent.Num == 2 {
+		for i := range dst {
+			dst[i] = x[i] * x[i]
+		}
+		return
+	}
+	for i := range dst {
+		dst[i] = power(x[i], y[i])
+	}
+}
+
+func convert(dst, x []float64, u units.Unit, f func(units.Unit, float64) float64) {
+	for i := range dst {
+		dst[i] = f(u, x[i])
+	}
+}
+
+// other computes comparisons, logic and the built-in functions. A truth is 1
+// or 0, or NaN where it is not known.
+func (p *columnProgram) other(op *columnOp, regs [][]float64, dst []float64) {
+	n := op.node
+	switch n.Op {
+	case check.Not:
+		for i := range dst {
+			dst[i] = 1 - regs[op.args[0]][i]
+		}
+	case check.And, check.Or:
+		stop := truth(n.Op == check.Or)
+		x, y := regs[op.args[0]], regs[op.args[1]]
+		for i := range dst {
+			dst[i] = x[i]
+			if x[i] == 1-stop {
+				dst[i] = y[i]
+			}
+		}
+	case check.Compare:
+		for i := range dst {
+			dst[i] = 1
+			for k, o := range n.Cmp {
+				a, b := regs[op.args[k]][i], regs[op.args[k+1]][i]
+				if !finite(a) || !finite(b) {
+					dst[i] = nan
+					break
+				}
+				if !compare(o, a, b) {
+					dst[i] = 0
+					break
+				}
+			}
+		}
+	case check.Builtin:
+		p.builtin(op, regs, dst)
+	}
+}
+
+func (p *columnProgram) builtin(op *columnOp, regs [][]float64, dst []float64) {
+	x := regs[op.args[0]][:len(dst)]
+	if len(op.args) == 1 {
+		f := functions1[op.node.Fn]
+		for i := range dst {
+			if finite(x[i]) {
+				dst[i] = f(x[i])
+			} else {
+				dst[i] = nan
+			}
+		}
+		return
+	}
+	f := functions2[op.node.Fn]
+	copy(dst, x)
+	for _, r := range op.args[1:] {
+		y := regs[r]
+		for i := range dst {
+			if finite(dst[i]) && finite(y[i]) {
+				dst[i] = f(dst[i], y[i])
+			} else {
+				dst[i] = nan
+			}
+		}
+	}
+}

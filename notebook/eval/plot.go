@@ -1,0 +1,192 @@
+package eval
+
+import (
+	"errors"
+	"fmt"
+	"math"
+
+	"gusset/notebook/check"
+	"gusset/notebook/diag"
+	"gusset/units"
+)
+
+// drawings computes the plots and gathers what figures draw.
+func (m *machine) drawings(steps []*Step) {
+	for i := range m.prog.In.Blocks {
+		if p := m.prog.Plots[i]; p != nil && !p.Failed {
+			m.out.Blocks[i].Plot = m.plot(p)
+		}
+		if p := m.prog.Figures[i]; p != nil && !p.Failed {
+			m.out.Blocks[i].Figure = m.figure(p)
+		}
+	}
+}
+
+// plot computes the curves of a plot over its range.
+func (m *machine) plot(p *check.PlotPlan) *Plot {
+	out := &Plot{Title: p.Tree.Title, Checks: p.Tree.Checks}
+	if out.Checks {
+		return out
+	}
+	x, err := m.points(p)
+	if err == nil {
+		err = m.curves(p, out, x)
+	}
+	var dep depends
+	if err != nil && !errors.As(err, &dep) {
+		d := diag.Diagnostic{ID: diag.OutOfRange, Source: m.top.src, Span: p.Tree.At, Message: err.Error()}
+		var e *fault
+		if errors.As(err, &e) {
+			d.ID, d.Hints, d.Message = e.id, e.hints, e.message
+		}
+		m.report(d)
+	}
+	if err != nil {
+		return nil
+	}
+	return out
+}
+
+// points are the values of the swept name, from one end of the range to the
+// other; they become the marks of its rows.
+func (m *machine) points(p *check.PlotPlan) ([]float64, error) {
+	lo, err := m.number(p.From, m.top, &check.Type{}, 0)
+	if err != nil {
+		return nil, err
+	}
+	hi, err := m.number(p.To, m.top, &check.Type{}, 0)
+	if err != nil {
+		return nil, err
+	}
+	s := m.stepFor(p.Swept, m.top)
+	if s == nil {
+		return nil, depends(p.Swept.Line)
+	}
+	show := func(x float64) string {
+		return PlainText(Value{Type: check.Type{Kind: check.Number}, Num: []float64{x}}.Printed(0, s.Unit, m.figures()))
+	}
+	if hi <= lo || same(lo, hi) {
+		return nil, &fault{id: diag.OutOfRange, message: fmt.Sprintf("the range of %s runs backwards or is empty: from %s to %s", s.Symbol, show(lo), show(hi)), hints: []string{"the smaller value stands first"}}
+	}
+	n := p.Rows.N() - 1
+	x := make([]float64, n+1)
+	for i := range x {
+		x[i] = lo + (hi-lo)*float64(i)/float64(n)
+		if i == n {
+			x[i] = hi
+		}
+		p.Rows.Marks[i] = s.Symbol + " = " + show(x[i])
+	}
+	return x, nil
+}
+
+// curves computes again what depends on the swept name and draws it.
+func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
+	s := m.stepFor(p.Swept, m.top)
+	f := newFrame(p.Scope, m.top, m.top.src)
+	f.vals[p.Point.Slot] = Value{Type: p.Point.Type, Num: x}
+	f.steps[p.Point.Slot] = &Step{Kind: Constant, ID: s.ID, Symbol: s.Symbol, Value: f.vals[p.Point.Slot], Unit: s.Unit, Figures: m.figures()}
+	for _, plan := range p.Plans {
+		if plan.Func {
+			continue
+		}
+		step := m.newStep(plan, f)
+		if err := m.compute(plan, f, step); err != nil {
+			return err
+		}
+	}
+	out.X = Axis{Symbol: s.Symbol, Unit: s.Unit}
+	out.At = s.Unit.FromSI(s.Value.Num[0])
+	xs := inUnit(x, s.Unit)
+	for i, c := range p.Curves {
+		own := m.stepFor(c.Def, m.top)
+		if own == nil {
+			return depends(c.Def.Line)
+		}
+		if i == 0 {
+			out.Y = Axis{Symbol: own.Symbol, Unit: own.Unit}
+		}
+		out.Present = append(out.Present, out.Y.Unit.FromSI(own.Value.Num[own.Entry]))
+		out.Curves = append(out.Curves, m.curve(c, own, f, p.Rows, xs, out.Y.Unit)...)
+	}
+	for _, c := range p.Limits {
+		own := m.stepFor(c.Def, m.top)
+		if own == nil {
+			return depends(c.Def.Line)
+		}
+		out.Limits = append(out.Limits, m.curve(c, own, f, p.Rows, xs, out.Y.Unit)...)
+	}
+	return nil
+}
+
+// mostCurves is how many rows of one value are drawn as a curve each; of more
+// only the governing one is.
+const mostCurves = 6
+
+// curve draws one value over the range: a line for each of its rows.
+func (m *machine) curve(c check.PlotCurve, own *Step, f *frame, sweep *check.Rows, xs []float64, u units.Unit) []Curve {
+	v, _ := f.value(c.Swept)
+	t := own.Value.Type
+	entries := []int{own.Entry}
+	if n := t.Count(); n > 1 && n <= mostCurves {
+		entries = entries[:0]
+		for e := 0; e < n; e++ {
+			entries = append(entries, e)
+		}
+	}
+	var out []Curve
+	for _, e := range entries {
+		line := Curve{ID: own.ID, Symbol: own.Symbol, Mark: t.Mark(e), X: xs, Y: make([]float64, len(xs))}
+		joint := check.Type{Rows: append(append([]*check.Rows{}, t.Rows...), sweep)}
+		for i := range xs {
+			at := max(joint.Project(e*len(xs)+i, v.Type), 0)
+			line.Y[i] = u.FromSI(v.Num[at])
+		}
+		out = append(out, line)
+	}
+	return out
+}
+
+func inUnit(x []float64, u units.Unit) []float64 {
+	out := make([]float64, len(x))
+	for i := range x {
+		out[i] = u.FromSI(x[i])
+	}
+	return out
+}
+
+// figure gathers the steps whose values a sketch draws.
+func (m *machine) figure(p *check.FigurePlan) *Figure {
+	out := &Figure{Kind: p.Kind.Name}
+	for i, n := range p.Args {
+		out.Names = append(out.Names, p.Kind.Params[i].Name)
+		if n == nil {
+			out.Args = append(out.Args, nil)
+			continue
+		}
+		if n.Op == check.Load {
+			s := m.stepFor(n.Def, m.top)
+			if s == nil {
+				return nil
+			}
+			out.Args = append(out.Args, s)
+			continue
+		}
+		v := m.columnValue(n, m.top)
+		for e, x := range v.Num {
+			if math.IsNaN(x) || math.IsInf(x, 0) {
+				if _, err := m.number(n, m.top, &n.Type, e); err != nil {
+					var dep depends
+					if !errors.As(err, &dep) {
+						m.reportFault(err, &check.Plan{Stmt: nil, Def: &check.Def{At: p.Tree.At}})
+					}
+				}
+				return nil
+			}
+		}
+		s := &Step{Kind: Constant, ID: p.Kind.Params[i].Name, Symbol: p.Kind.Params[i].Name, Value: v, Unit: m.nodeUnit(n, m.top), Figures: m.figures()}
+		s.Entry = largest(v)
+		out.Args = append(out.Args, s)
+	}
+	return out
+}

@@ -1,0 +1,340 @@
+package eval
+
+import (
+	"fmt"
+	"math"
+	"strings"
+
+	"github.com/Knetic/govaluate"
+
+	"gusset/notebook/check"
+	"gusset/notebook/diag"
+	"gusset/notebook/syntax"
+)
+
+// One entry of an expression is computed by govaluate. An expression is
+// compiled once to tokens, every sub-expression in its own brackets. What
+// govaluate is trusted with is multiplication, signs and logic; division,
+// powers, sums and comparisons are functions of ours, since an infinity in the
+// middle of an expression (`1/(1/0)`) would otherwise vanish from its result
+// unseen. Names, reductions and calls are parameters, found by their number.
+
+// compiled is what the evaluators keep of a node.
+type compiled struct {
+	expr   *govaluate.EvaluableExpression
+	leaves []*check.Node
+	column *columnProgram
+}
+
+func memo(n *check.Node) *compiled {
+	if c, ok := n.Memo.(*compiled); ok {
+		return c
+	}
+	c := &compiled{}
+	n.Memo = c
+	return c
+}
+
+// slots are the names of parameters: a parameter's name is its number.
+const slotBase = 0x20000 // from here up a number is always one code point
+
+type builder struct {
+	tokens []govaluate.ExpressionToken
+	leaves []*check.Node
+}
+
+var (
+	tokOpen      = govaluate.ExpressionToken{Kind: govaluate.CLAUSE, Value: '('}
+	tokClose     = govaluate.ExpressionToken{Kind: govaluate.CLAUSE_CLOSE, Value: ')'}
+	tokSeparator = govaluate.ExpressionToken{Kind: govaluate.SEPARATOR, Value: ","}
+	tokMul       = govaluate.ExpressionToken{Kind: govaluate.MODIFIER, Value: "*"}
+	tokMinus     = govaluate.ExpressionToken{Kind: govaluate.PREFIX, Value: "-"}
+	tokNot       = govaluate.ExpressionToken{Kind: govaluate.PREFIX, Value: "!"}
+	tokAnd       = govaluate.ExpressionToken{Kind: govaluate.LOGICALOP, Value: "&&"}
+	tokOr        = govaluate.ExpressionToken{Kind: govaluate.LOGICALOP, Value: "||"}
+)
+
+func compile(n *check.Node) (*compiled, error) {
+	c := memo(n)
+	if c.expr != nil {
+		return c, nil
+	}
+	var b builder
+	b.node(n)
+	expr, err := govaluate.NewEvaluableExpressionFromTokens(b.tokens)
+	if err != nil {
+		return nil, err
+	}
+	expr.ChecksTypes = false // the checker has run
+	c.expr, c.leaves = expr, b.leaves
+	return c, nil
+}
+
+func (b *builder) put(t ...govaluate.ExpressionToken) { b.tokens = append(b.tokens, t...) }
+
+func (b *builder) infix(op govaluate.ExpressionToken, x, y *check.Node) {
+	b.put(tokOpen)
+	b.node(x)
+	b.put(op)
+	b.node(y)
+	b.put(tokClose)
+}
+
+func (b *builder) function(f govaluate.ExpressionFunction, args []*check.Node) {
+	b.put(govaluate.ExpressionToken{Kind: govaluate.FUNCTION, Value: f}, tokOpen)
+	for i, a := range args {
+		if i > 0 {
+			b.put(tokSeparator)
+		}
+		b.put(tokOpen)
+		b.node(a)
+		b.put(tokClose)
+	}
+	b.put(tokClose)
+}
+
+func (b *builder) node(n *check.Node) {
+	switch n.Op {
+	case check.Const:
+		b.put(govaluate.ExpressionToken{Kind: govaluate.NUMERIC, Value: n.Num})
+	case check.TextLit:
+		b.put(govaluate.ExpressionToken{Kind: govaluate.STRING, Value: n.Str})
+	case check.Neg:
+		b.put(tokOpen, tokMinus, tokOpen)
+		b.node(n.Args[0])
+		b.put(tokClose, tokClose)
+	case check.Not:
+		b.put(tokOpen, tokNot, tokOpen)
+		b.node(n.Args[0])
+		b.put(tokClose, tokClose)
+	case check.Mul:
+		b.infix(tokMul, n.Args[0], n.Args[1])
+	case check.And:
+		b.infix(tokAnd, n.Args[0], n.Args[1])
+	case check.Or:
+		b.infix(tokOr, n.Args[0], n.Args[1])
+	case check.Sum, check.Div, check.Pow, check.Compare, check.Builtin, check.ToUnit, check.FromUnit:
+		b.function(operation(n), n.Args)
+	default:
+		b.put(govaluate.ExpressionToken{Kind: govaluate.VARIABLE, Value: string(rune(slotBase + len(b.leaves)))})
+		b.leaves = append(b.leaves, n)
+	}
+}
+
+// undefined is the error of an operation without a finite result.
+type undefined struct{ node *check.Node }
+
+func (e undefined) Error() string { return "no finite result" }
+
+// operation is a node's own function: it refuses what is not finite.
+func operation(n *check.Node) govaluate.ExpressionFunction {
+	numeric := func(f func(args []any) float64) govaluate.ExpressionFunction {
+		return func(args ...any) (any, error) {
+			for _, a := range args {
+				if x, ok := a.(float64); ok && !finite(x) {
+					return nil, undefined{n}
+				}
+			}
+			r := f(args)
+			if !finite(r) {
+				return nil, undefined{n}
+			}
+			return r, nil
+		}
+	}
+	num := func(a any) float64 { x, _ := a.(float64); return x }
+	switch n.Op {
+	case check.Sum:
+		return numeric(func(args []any) float64 { return sum(n.Minus, args) })
+	case check.Div:
+		return numeric(func(args []any) float64 { return divide(num(args[0]), num(args[1])) })
+	case check.Pow:
+		return numeric(func(args []any) float64 { return power(num(args[0]), num(args[1])) })
+	case check.ToUnit:
+		return numeric(func(args []any) float64 { return n.Unit.FromSI(num(args[0])) })
+	case check.FromUnit:
+		return numeric(func(args []any) float64 { return n.Unit.ToSI(num(args[0])) })
+	case check.Compare:
+		return func(args ...any) (any, error) { return compareChain(n, args) }
+	}
+	return numeric(func(args []any) float64 {
+		xs := make([]float64, len(args))
+		for i, a := range args {
+			xs[i] = num(a)
+		}
+		return apply(n.Fn, xs)
+	})
+}
+
+func sum(minus []bool, args []any) float64 {
+	total, largest := 0.0, 0.0
+	for i, a := range args {
+		x, _ := a.(float64)
+		if minus[i] {
+			x = -x
+		}
+		total += x
+		largest = math.Max(largest, math.Abs(x))
+	}
+	return settle(total, largest)
+}
+
+func compareChain(n *check.Node, args []any) (any, error) {
+	for i, op := range n.Cmp {
+		switch a := args[i].(type) {
+		case string:
+			b, _ := args[i+1].(string)
+			if !compareText(op, a, b) {
+				return false, nil
+			}
+		case float64:
+			b, _ := args[i+1].(float64)
+			if !finite(a) || !finite(b) {
+				return nil, undefined{n}
+			}
+			if !compare(op, a, b) {
+				return false, nil
+			}
+		}
+	}
+	return true, nil
+}
+
+// params gives govaluate the parameters of one entry: target is the type
+// whose entries are counted by entry.
+type params struct {
+	m      *machine
+	c      *compiled
+	f      *frame
+	target *check.Type
+	entry  int
+}
+
+// Get returns the parameter of a number.
+func (p *params) Get(name string) (any, error) {
+	for _, r := range name {
+		return p.m.leaf(p.c.leaves[int(r)-slotBase], p.f, p.target, p.entry)
+	}
+	return nil, fmt.Errorf("no parameter")
+}
+
+// entry computes one entry of a node: a float64, a string or a bool.
+func (m *machine) entry(n *check.Node, f *frame, target *check.Type, entry int) (any, error) {
+	switch n.Op { // the commonest need no expression
+	case check.Const:
+		return n.Num, nil
+	case check.TextLit:
+		return n.Str, nil
+	case check.Load, check.Reduce, check.At, check.AtRow, check.Interp, check.CallFunc, check.CallHelp, check.CallGo:
+		return m.leaf(n, f, target, entry)
+	}
+	c, err := compile(n)
+	if err != nil {
+		return nil, err
+	}
+	v, err := c.expr.Eval(&params{m, c, f, target, entry})
+	if err != nil {
+		return nil, m.explain(err, f, target, entry)
+	}
+	if x, ok := v.(float64); ok && !finite(x) {
+		return nil, m.explain(undefined{n}, f, target, entry)
+	}
+	return v, nil
+}
+
+func (m *machine) number(n *check.Node, f *frame, target *check.Type, entry int) (float64, error) {
+	v, err := m.entry(n, f, target, entry)
+	if err != nil {
+		return nan, err
+	}
+	x, ok := v.(float64)
+	if !ok {
+		return nan, fmt.Errorf("no number")
+	}
+	return x, nil
+}
+
+func (m *machine) truth(n *check.Node, f *frame, target *check.Type, entry int) (bool, error) {
+	v, err := m.entry(n, f, target, entry)
+	if err != nil {
+		return false, err
+	}
+	b, _ := v.(bool)
+	return b, nil
+}
+
+// fault is why a statement could not be computed: a diagnostic that lacks its source.
+type fault struct {
+	id      string
+	at      diag.Span
+	message string
+	hints   []string
+}
+
+func (e *fault) Error() string { return e.message }
+
+// explain says of an operation without a finite result which it was, and shows
+// the values that made it.
+func (m *machine) explain(err error, f *frame, target *check.Type, entry int) error {
+	u, ok := err.(undefined)
+	if !ok {
+		return err
+	}
+	n := u.node
+	what := fmt.Sprintf("`%s` has no finite value", f.print(n.Expr))
+	args := make([]float64, len(n.Args))
+	for i, a := range n.Args {
+		args[i], _ = m.number(a, f, target, entry)
+	}
+	switch {
+	case n.Op == check.Div && args[1] == 0:
+		what = fmt.Sprintf("division by zero: `%s` is 0", f.print(n.Args[1].Expr))
+	case n.Op == check.Pow && args[0] == 0 && args[1] < 0:
+		what = fmt.Sprintf("division by zero: `%s` is 0 and its exponent is negative", f.print(n.Args[0].Expr))
+	case n.Op == check.Pow && args[0] < 0:
+		what = fmt.Sprintf("`%s` is negative, and has no power that is not whole", f.print(n.Args[0].Expr))
+	case n.Op == check.Builtin && n.Fn == "sqrt" && args[0] < 0:
+		what = fmt.Sprintf("the root of a negative value: `%s`", f.print(n.Args[0].Expr))
+	case n.Op == check.Builtin && (n.Fn == "ln" || n.Fn == "log10") && args[0] <= 0:
+		what = fmt.Sprintf("%s of a value that is not positive: `%s`", n.Fn, f.print(n.Args[0].Expr))
+	case n.Op == check.Builtin && (n.Fn == "asin" || n.Fn == "acos"):
+		what = fmt.Sprintf("%s of a value outside -1 to 1: `%s`", n.Fn, f.print(n.Args[0].Expr))
+	case n.Op == check.Builtin && len(args) == 2 && args[1] <= 0 && (n.Fn == "ceil" || n.Fn == "floor" || n.Fn == "round"):
+		what = fmt.Sprintf("the step of %s is not positive: `%s`", n.Fn, f.print(n.Args[1].Expr))
+	}
+	out := &fault{id: diag.NotANumber, at: n.Expr.Span(), message: what}
+	if values := m.valuesIn(n, f, target, entry); values != "" {
+		out.hints = append(out.hints, "with "+values)
+	}
+	return out
+}
+
+// valuesIn lists the values that an expression names, as printed.
+func (m *machine) valuesIn(n *check.Node, f *frame, target *check.Type, entry int) string {
+	var parts []string
+	seen := map[*check.Def]bool{}
+	var walk func(*check.Node)
+	walk = func(n *check.Node) {
+		if n.Op == check.Load && !seen[n.Def] && !n.Def.IsConst {
+			seen[n.Def] = true
+			if s := m.stepFor(n.Def, f); s != nil {
+				if at := target.Project(entry, s.Value.Type); at >= 0 && at < s.Value.Len() {
+					parts = append(parts, s.Symbol+" = "+PlainText(s.Printed(at)))
+				}
+			}
+		}
+		for _, a := range n.Args {
+			walk(a)
+		}
+	}
+	walk(n)
+	if len(parts) > 8 {
+		parts = append(parts[:8], "…")
+	}
+	return strings.Join(parts, ", ")
+}
+
+// print is an expression's text in the file it stands in.
+func (f *frame) print(x syntax.Expr) string {
+	return syntax.Print(f.src, x)
+}
