@@ -1,0 +1,319 @@
+package pdf
+
+import (
+	"math"
+
+	"gusset/render"
+	"gusset/render/fonts"
+	"gusset/render/maths"
+)
+
+// The distances of entries.
+const (
+	entryPad    = 2.8 // above and below what stands in a row
+	bandPad     = 4.5 // the same on a band
+	notesAt     = 36 * mm
+	entryIndent = 14.0
+	groupGap    = 9.0
+	lineGap     = 3.0 // between the lines of a formula
+)
+
+// entries lays out a block of calculation.
+func (b *prose) entries(index int) {
+	list := b.doc.page.Blocks[index]
+	b.space(blockGap - entryPad)
+	for i := 0; i < len(list); i++ {
+		if list[i].Kind == render.Line {
+			n := i + 1
+			for n < len(list) && list[n].Kind == render.Line && list[n].Indent == list[i].Indent {
+				n++
+			}
+			b.lines(list[i:n])
+			i = n - 1
+			continue
+		}
+		b.entry(&list[i])
+	}
+	b.space(blockGap - entryPad)
+}
+
+// indented runs a function with the column moved in by the entry's steps, with
+// a rule beside it inside a helper.
+func (b *prose) indented(e *render.Entry, run func()) {
+	if e.Indent == 0 {
+		run()
+		return
+	}
+	by := entryIndent * float64(e.Indent)
+	b.inset(by, band{x: b.x + math.Min(by, b.width-leastColumn) - 8, width: 0.6, colour: hairColour}, run)
+}
+
+func (b *prose) entry(e *render.Entry) {
+	switch e.Kind {
+	case render.Gap:
+		b.space(groupGap)
+	case render.NoteLine:
+		b.indented(e, func() { b.noteLine(e) })
+	case render.HelperHead:
+		b.indented(e, func() { b.helperHead(e) })
+	case render.Tabular:
+		b.indented(e, func() { b.tabular(e) })
+	case render.Limit:
+		b.indented(e, func() { b.limit(e) })
+	default:
+		b.indented(e, func() { b.formulaEntry(e) })
+	}
+}
+
+// row is an entry in the making: the parts of its calculation from top to
+// bottom, and the part whose baseline the output stands on.
+type row struct {
+	*flow
+	output int
+}
+
+func (b *prose) row() *row { return &row{flow: &flow{x: b.x, width: b.width}} }
+
+// words pushes a text.
+func (r *row) words(v voice, s string) {
+	if s != "" {
+		p := &paragraph{}
+		p.write(v.style(), s)
+		r.paragraph(p, v.leading)
+	}
+}
+
+// formula pushes the lines of a formula, and makes the last of them the one
+// that the output stands beside.
+func (r *row) formula(c maths.Chain, size float64, tallest float64) {
+	if c.Left == nil && len(c.Steps) == 0 {
+		return
+	}
+	lines := maths.Break(c, size, r.width)
+	for i := range lines {
+		b := mathsBox(&lines[i], inkColour)
+		if b.ascent+b.descent > tallest {
+			b = b.scaled(tallest / (b.ascent + b.descent))
+		}
+		ascent, descent := math.Max(b.ascent, 0.75*size), math.Max(b.descent, 0.25*size)
+		s := slab{height: ascent + descent, baseline: ascent}
+		s.ink.add(&b.ink, r.x, ascent)
+		if i > 0 {
+			r.space(lineGap)
+		}
+		r.push(s)
+		r.output = len(r.slabs) - 1
+	}
+}
+
+// scaled is a box set smaller.
+func (b *box) scaled(k float64) *box {
+	out := &box{width: b.width * k, ascent: b.ascent * k, descent: b.descent * k}
+	for _, f := range b.ink.fills {
+		out.ink.fill(f.x*k, f.y*k, f.w*k, f.h*k, f.colour)
+	}
+	for _, s := range b.ink.shapes {
+		s.x, s.y, s.scale = s.x*k, s.y*k, s.scale*k
+		out.ink.shapes = append(out.ink.shapes, s)
+	}
+	for _, t := range b.ink.texts {
+		t.x, t.y, t.size = t.x*k, t.y*k, t.size*k
+		out.ink.texts = append(out.ink.texts, t)
+	}
+	for _, a := range b.ink.areas {
+		out.ink.areas = append(out.ink.areas, area{a.x * k, a.y * k, a.w * k, a.h * k, a.link})
+	}
+	return out
+}
+
+// formulaEntry lays out a formula, a check or a definition: the note above,
+// the formula, what is said below it; and its output beside the last line.
+func (b *prose) formulaEntry(e *render.Entry) {
+	r := b.row()
+	r.words(noteVoice, e.Note)
+	r.space(1.5)
+	r.formula(e.Formula, formulaSize, b.doc.tallest())
+	for i := range e.Below {
+		r.space(lineGap)
+		r.paragraph(b.doc.phrase(&e.Below[i], noteVoice), noteVoice.leading+1)
+	}
+	pad := entryPad
+	if e.Kind == render.Check {
+		pad = bandPad
+	}
+	b.finish(r, e, pad)
+	if len(e.Trials) > 0 {
+		b.keep()
+		b.trials(e.Trials)
+	}
+	b.tables(e.Tables)
+}
+
+// phrase is a formula in a sentence.
+func (d *document) phrase(f *render.Phrase, v voice) *paragraph {
+	p := &paragraph{}
+	st := v.style()
+	p.write(st, f.Before)
+	if f.Before != "" && (f.Formula.Left != nil || len(f.Formula.Steps) > 0) {
+		p.blank(st)
+	}
+	inner := st
+	inner.size = smallSize
+	inner.face = fonts.Serif
+	d.chain(p, f.Formula, inner)
+	if f.After != "" {
+		if p.open && !isPunctuation(f.After) {
+			p.blank(st)
+		}
+		p.write(st, f.After)
+	}
+	return p
+}
+
+func isPunctuation(s string) bool {
+	return s[0] == ',' || s[0] == '.' || s[0] == ';' || s[0] == ':' || s[0] == ')' || s[0] == ' '
+}
+
+// finish puts the reference and output columns beside the parts of an entry
+// and pushes it: as one slab, or part by part where it is too tall for that.
+func (b *prose) finish(r *row, e *render.Entry, pad float64) {
+	if len(r.slabs) == 0 {
+		r.push(slab{height: noteVoice.leading, baseline: 0.72 * noteVoice.leading})
+	}
+	parts := r.slabs
+	for i := 1; i < len(parts); i++ {
+		parts[i].height += parts[i].gap
+		shiftDown(&parts[i], parts[i].gap)
+		parts[i].gap = 0
+	}
+	parts[0].height += pad
+	shiftDown(&parts[0], pad)
+	parts[len(parts)-1].height += pad
+	b.references(parts, e)
+	if e.Kind == render.Check {
+		b.verdictBeside(parts, e)
+	} else {
+		b.outputBeside(&parts[min(r.output, len(parts)-1)], e)
+	}
+	if height(parts) <= b.doc.tallest() {
+		parts = []slab{stack(parts)}
+	}
+	first := len(b.slabs)
+	for i := range parts {
+		parts[i].keep = i < len(parts)-1
+		if e.Kind == render.Check {
+			x, width := b.doc.paper.calculation()
+			parts[i].bands = append(parts[i].bands, band{
+				x: x - calculationPad, width: width + 2*calculationPad + outputWidth,
+				colour: washColour, starts: i == 0,
+			})
+		}
+		b.push(parts[i])
+	}
+	if e.Anchor != "" {
+		b.slabs[first].anchors = append(b.slabs[first].anchors, e.Anchor)
+	}
+}
+
+// shiftDown moves what a slab draws down by h, into space that it has gained.
+func shiftDown(s *slab, h float64) {
+	if h == 0 {
+		return
+	}
+	moved := ink{}
+	moved.add(&s.ink, 0, h)
+	s.ink = moved
+	s.baseline += h
+}
+
+// references sets the number and the sources flush right in their column,
+// from the first baseline down. Parts grow where there are many.
+func (b *prose) references(parts []slab, e *render.Entry) {
+	const leading = 10.4
+	y := parts[0].baseline
+	if y == 0 {
+		y = 0.72 * noteVoice.leading
+	}
+	k := &parts[0].ink
+	width := referenceWidth - referencePad
+	if e.Number != "" {
+		st := style{face: fonts.Sans, size: 7.6, colour: softColour}
+		s := "(" + e.Number + ")"
+		k.texts = append(k.texts, text{x: width - st.width(s), y: y, style: st, text: s})
+		y += leading
+	}
+	for _, ref := range e.Refs {
+		st := style{face: fonts.Sans, size: 7.6, colour: markColour}
+		if ref.Target != "" {
+			st.link = "#" + ref.Target
+		}
+		p := &paragraph{}
+		p.write(st, ref.Text)
+		p = p.fitted(width)
+		for _, l := range p.lines(width) {
+			p.set(k, l, width-l.width, y)
+			y += leading
+		}
+	}
+	if lack := y - leading + 4 - height(parts); lack > 0 {
+		parts[len(parts)-1].height += lack
+	}
+}
+
+// outputBeside sets a value in the output column on the baseline of a part,
+// and its mark below.
+func (b *prose) outputBeside(s *slab, e *render.Entry) {
+	x, width := b.doc.paper.output()
+	y := s.baseline
+	if e.Output != nil {
+		p := b.doc.outputWords(e.Output, width)
+		p = p.fitted(width)
+		lines := p.lines(width)
+		for i, l := range lines {
+			p.set(&s.ink, l, x, y+float64(i)*outputLeading)
+		}
+		y += float64(len(lines)-1) * outputLeading
+	}
+	if e.Mark != "" {
+		y = b.doc.smallOutput(s, e.Mark, y+10)
+	}
+	s.height = math.Max(s.height, y+5)
+}
+
+const outputLeading = 13.0
+
+// outputStyle is how results are set: heavy, so that an eye can run down them.
+var outputStyle = style{face: fonts.SansSemiBold, size: 9.6, colour: inkColour}
+
+// outputWords is a result as a paragraph of its column.
+func (d *document) outputWords(n maths.Node, width float64) *paragraph {
+	p := &paragraph{}
+	if t, ok := n.(maths.Text); ok {
+		p.write(outputStyle, t.Text)
+		return p
+	}
+	m := maths.Layout(n, outputStyle.size, fonts.SansSemiBold)
+	if m.Width > width {
+		p.write(outputStyle, string(maths.AppendPlain(nil, n)))
+		return p
+	}
+	p.place(outputStyle, mathsBox(&m, inkColour))
+	return p
+}
+
+// smallOutput sets a small text in the output column and returns the lowest
+// baseline.
+func (d *document) smallOutput(s *slab, words string, y float64) float64 {
+	x, width := d.paper.output()
+	st := style{face: fonts.Sans, size: 7.6, colour: softColour}
+	p := &paragraph{}
+	p.write(st, words)
+	p = p.fitted(width)
+	for i, l := range p.lines(width) {
+		if i > 0 {
+			y += 9.6
+		}
+		p.set(&s.ink, l, x, y)
+	}
+	return y
+}

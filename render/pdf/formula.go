@@ -1,0 +1,78 @@
+package pdf
+
+import (
+	"gusset/render/fonts"
+	"gusset/render/maths"
+)
+
+// The sizes of formulas: on lines of their own, and in the small lines below.
+const (
+	formulaSize = 11.0
+	smallSize   = 9.0
+)
+
+// mathsBox takes a formula that was set for paper into a box of ours.
+func mathsBox(m *maths.Box, c colour) *box {
+	b := &box{width: m.Width, ascent: m.Ascent, descent: m.Descent}
+	for i := range m.Items {
+		item := &m.Items[i]
+		switch item.Kind {
+		case maths.Rule:
+			b.ink.fill(item.X, item.Y, item.Width, item.Height, c)
+		case maths.Outline:
+			b.ink.shapes = append(b.ink.shapes, shape{
+				x: item.X, y: item.Y, scale: item.Size / 1000, path: item.Path, colour: c,
+			})
+		default:
+			b.ink.texts = append(b.ink.texts, text{
+				x: item.X, y: item.Y, text: item.Text,
+				style: style{face: item.Face, size: item.Size, colour: c},
+			})
+			if item.Link != "" {
+				b.ink.areas = append(b.ink.areas, area{
+					item.X, item.Y - 0.8*item.Size, item.Width, 1.05 * item.Size, "#" + item.Link,
+				})
+			}
+		}
+	}
+	return b
+}
+
+// besideFace is the face of figures and units beside a text.
+func besideFace(st style) *fonts.Face {
+	if st.face == fonts.Sans || st.face == fonts.SansSemiBold {
+		return fonts.Sans
+	}
+	return fonts.Serif
+}
+
+// formula puts a formula into running text. One that is wider than any line
+// is written as words.
+func (d *document) formula(p *paragraph, n maths.Node, st style) {
+	if t, ok := n.(maths.Text); ok {
+		p.write(st, t.Text)
+		return
+	}
+	m := maths.Layout(n, st.size, besideFace(st))
+	if m.Width > d.widest() {
+		p.write(st, string(maths.AppendPlain(nil, n)))
+		return
+	}
+	p.place(st, mathsBox(&m, st.colour))
+}
+
+// chain puts a chain of relations into running text, which may break before
+// each of them.
+func (d *document) chain(p *paragraph, c maths.Chain, st style) {
+	space := 5.0 / 18 * st.size
+	if c.Left != nil {
+		d.formula(p, c.Left, st)
+	}
+	for _, step := range c.Steps {
+		if p.open {
+			p.words[len(p.words)-1].space = space
+			p.open = false
+		}
+		d.formula(p, maths.Row{maths.Relation(step.Sign), step.Right}, st)
+	}
+}

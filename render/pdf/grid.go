@@ -1,0 +1,210 @@
+package pdf
+
+import "math"
+
+// grid is a table before it is laid out: a head that is repeated on each page,
+// and rows of cells that hold running text.
+type grid struct {
+	voice voice
+	head  gridRow
+	rows  []gridRow
+	plain bool // without a line under each row
+	// anchors are the ids of the columns.
+	anchors []string
+}
+
+type gridRow struct {
+	cells  []gridCell
+	tinted bool
+	anchor string
+}
+
+type gridCell struct {
+	p     *paragraph
+	align alignment
+}
+
+type alignment uint8
+
+const (
+	left alignment = iota
+	right
+	center
+)
+
+// The distances within a table.
+const (
+	columnGap = 12.0 // less where there are very many columns
+	rowPad    = 2.6
+	headRule  = 0.7
+	rowRule   = 0.4
+)
+
+// grid pushes a table. It is built in the voice asked for, and in smaller ones
+// where its words do not fit side by side. A row taller than the limit may
+// break between lines.
+func (f *flow) grid(v voice, build func(v voice) *grid, limit float64) {
+	g := build(v)
+	widths, gap, fits := g.widths(f.width)
+	for _, scale := range []float64{0.87, 0.75} {
+		if fits {
+			break
+		}
+		smaller := v
+		smaller.size, smaller.leading = v.size*scale, v.leading*scale
+		g = build(smaller)
+		widths, gap, fits = g.widths(f.width)
+	}
+	var head *slab
+	if len(g.head.cells) > 0 {
+		parts := f.gridRow(g, &g.head, widths, gap, math.Inf(1))
+		head = &parts[0]
+		head.ink.fill(f.x, head.height-headRule, f.width, headRule, inkColour)
+		head.keep = true
+		f.anchors = append(f.anchors, g.anchors...)
+		f.push(*head)
+		f.slabs[len(f.slabs)-1].keep = len(g.rows) > 0
+		if head.height > limit/3 {
+			head = nil
+		}
+	}
+	for i := range g.rows {
+		row := &g.rows[i]
+		parts := f.gridRow(g, row, widths, gap, limit)
+		for j := range parts {
+			s := &parts[j]
+			s.head = head
+			if j == 0 && row.anchor != "" {
+				s.anchors = []string{row.anchor}
+			}
+			if row.tinted {
+				s.bands = append(s.bands, band{x: f.x, width: f.width, colour: washColour, starts: true})
+			}
+			last := j == len(parts)-1
+			if last && (!g.plain || i == len(g.rows)-1) {
+				s.ink.fill(f.x, s.height-rowRule, f.width, rowRule, hairColour)
+			}
+			// The first row does not leave the head, nor the last the one before it.
+			s.keep = i == 0 && len(g.rows) > 1 || i == len(g.rows)-2 || !last
+			if i == len(g.rows)-1 && last || height(parts) > limit {
+				s.keep = false
+			}
+			f.push(*s)
+		}
+	}
+}
+
+func height(slabs []slab) float64 {
+	h := 0.0
+	for i := range slabs {
+		h += slabs[i].height
+	}
+	return h
+}
+
+// gridRow lays out a row: as one slab, or line by line where it is taller
+// than the limit.
+func (f *flow) gridRow(g *grid, row *gridRow, widths []float64, gap, limit float64) []slab {
+	type cellLines struct {
+		p     *paragraph
+		lines []line
+	}
+	cells := make([]cellLines, len(row.cells))
+	count := 1
+	for i, c := range row.cells {
+		if i < len(widths) {
+			p := c.p.fitted(widths[i])
+			cells[i] = cellLines{p, p.lines(widths[i])}
+			count = max(count, len(cells[i].lines))
+		}
+	}
+	parts := make([]slab, count)
+	for n := range parts {
+		s := &parts[n]
+		ascent, descent := 0.72*g.voice.leading, 0.28*g.voice.leading
+		for _, c := range cells {
+			if n < len(c.lines) {
+				a, d := lineExtent(c.lines[n], g.voice.leading)
+				ascent, descent = math.Max(ascent, a), math.Max(descent, d)
+			}
+		}
+		if n == 0 {
+			ascent += rowPad
+		}
+		if n == count-1 {
+			descent += rowPad
+		}
+		s.height, s.baseline = ascent+descent, ascent
+		x := f.x
+		for i, c := range cells {
+			if n < len(c.lines) {
+				l := c.lines[n]
+				free := widths[i] - l.width
+				at := x + map[alignment]float64{left: 0, right: free, center: free / 2}[row.cells[i].align]
+				c.p.set(&s.ink, l, at, ascent)
+			}
+			if i < len(widths) {
+				x += widths[i] + gap
+			}
+		}
+	}
+	if height(parts) > limit {
+		return parts
+	}
+	return []slab{stack(parts)}
+}
+
+// stack joins slabs into one.
+func stack(parts []slab) slab {
+	out := parts[0]
+	for i := 1; i < len(parts); i++ {
+		out.ink.add(&parts[i].ink, 0, out.height)
+		out.height += parts[i].height
+	}
+	return out
+}
+
+// widths shares the width of a column of text among the columns of a table:
+// each gets what its widest cell needs where there is room for all; else each
+// gets its widest word, and the rest is shared by what they still want. Where
+// the words do not fit either, the columns get narrower alike and words are cut.
+func (g *grid) widths(total float64) (widths []float64, gap float64, fits bool) {
+	n := len(g.head.cells)
+	for _, r := range g.rows {
+		n = max(n, len(r.cells))
+	}
+	natural, least := make([]float64, n), make([]float64, n)
+	measure := func(r *gridRow) {
+		for i, c := range r.cells {
+			a, b := c.p.natural()
+			natural[i], least[i] = math.Max(natural[i], a), math.Max(least[i], b)
+		}
+	}
+	measure(&g.head)
+	for i := range g.rows {
+		measure(&g.rows[i])
+	}
+	gap = math.Min(columnGap, 0.3*total/float64(n))
+	total -= gap * float64(n-1)
+	wants, needs := sum(natural), sum(least)
+	out := make([]float64, n)
+	for i := range out {
+		switch {
+		case wants <= total:
+			out[i] = natural[i] + 0.01
+		case needs < total:
+			out[i] = least[i] + (total-needs)*(natural[i]-least[i])/(wants-needs)
+		default:
+			out[i] = math.Max(total*least[i]/needs, 6)
+		}
+	}
+	return out, gap, needs <= total
+}
+
+func sum(v []float64) float64 {
+	s := 0.0
+	for _, x := range v {
+		s += x
+	}
+	return s
+}

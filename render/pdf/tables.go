@@ -1,0 +1,131 @@
+package pdf
+
+import (
+	"strconv"
+
+	"gusset/render"
+	"gusset/render/fonts"
+	"gusset/render/maths"
+)
+
+// tabular sets an entry that is nothing but tables.
+func (b *prose) tabular(e *render.Entry) {
+	if e.Note != "" || e.Number != "" || len(e.Refs) > 0 {
+		r := b.row()
+		r.words(noteVoice, e.Note)
+		b.finish(r, e, entryPad)
+		b.keep()
+	} else if e.Anchor != "" {
+		b.anchors = append(b.anchors, e.Anchor)
+	}
+	b.tables(e.Tables)
+}
+
+// tables sets the tables of an entry below it, kept with it at their heads.
+func (b *prose) tables(list []*render.Table) {
+	for _, t := range list {
+		b.keep()
+		b.space(3)
+		if t.Caption != "" {
+			p := &paragraph{}
+			p.write(noteVoice.style(), t.Caption)
+			b.paragraph(p, noteVoice.leading)
+			b.keep()
+			b.space(2)
+		}
+		b.grid(tableVoice, func(v voice) *grid { return b.doc.rowsGrid(t, v) }, b.doc.tallest())
+		if left := t.Left(); left > 0 {
+			b.keep()
+			p := &paragraph{}
+			p.write(noteVoice.style(), leftOut(left, t.Rows))
+			b.space(2)
+			b.paragraph(p, noteVoice.leading)
+		}
+		b.space(6)
+	}
+}
+
+func leftOut(left, rows int) string {
+	return strconv.Itoa(left) + " of " + strconv.Itoa(rows) + " rows are left out here: those shown govern or are extremes"
+}
+
+// rowsGrid is a table over rows; the entries that govern are set heavy and
+// their rows tinted.
+func (d *document) rowsGrid(t *render.Table, v voice) *grid {
+	g := &grid{voice: v}
+	for i := range t.Heads {
+		h := &t.Heads[i]
+		st := v.strong().style()
+		if h.Anchor != "" {
+			g.anchors = append(g.anchors, h.Anchor)
+		}
+		p := &paragraph{}
+		p.write(st, h.Words)
+		if h.Symbol != nil {
+			p.blank(st)
+			d.formula(p, h.Symbol, st)
+		}
+		if len(h.Unit) > 0 {
+			p.blank(st)
+			unit := st
+			unit.face, unit.colour = v.regular, softColour
+			box := maths.Layout(maths.Fence{Open: "[", Body: h.Unit, Close: "]"}, st.size, fonts.Serif)
+			p.place(unit, mathsBox(&box, softColour))
+		}
+		g.head.cells = append(g.head.cells, gridCell{p: p, align: sideOf(h.Right)})
+	}
+	count := t.Rows
+	if t.Printed != nil {
+		count = len(t.Printed)
+	}
+	var cell []byte
+	for i := range count {
+		n := i
+		if t.Printed != nil {
+			n = t.Printed[i]
+		}
+		row := gridRow{tinted: t.Marked(n)}
+		for col := range t.Heads {
+			st := v.style()
+			if t.Governs(n, col) {
+				st.face = v.bold
+			}
+			cell = t.AppendCell(cell[:0], n, col)
+			p := &paragraph{}
+			p.write(st, string(cell))
+			row.cells = append(row.cells, gridCell{p: p, align: sideOf(t.Heads[col].Right)})
+		}
+		g.rows = append(g.rows, row)
+	}
+	return g
+}
+
+func sideOf(toRight bool) alignment {
+	if toRight {
+		return right
+	}
+	return left
+}
+
+// trials sets the candidates of `first of` with how each came out.
+func (b *prose) trials(list []render.Trial) {
+	b.space(2)
+	b.grid(lineVoice, func(v voice) *grid {
+		g := &grid{voice: v, plain: true}
+		for _, t := range list {
+			cv, word := v.in(softColour), "does not do"
+			if t.OK {
+				cv, word = v.strong(), "taken"
+			}
+			var row gridRow
+			for _, s := range []string{t.Mark, t.Value, t.Why, word} {
+				p := &paragraph{}
+				p.write(cv.style(), s)
+				row.cells = append(row.cells, gridCell{p: p})
+			}
+			g.rows = append(g.rows, row)
+		}
+		return g
+	}, b.doc.tallest())
+	b.space(4)
+}
