@@ -82,6 +82,9 @@ const (
 // Rat returns the exact value of the figures, mixed numbers and fractions
 // included.
 func (p Piece) Rat() (*big.Rat, error) {
+	if p.Figures == "" {
+		return nil, errors.New("no figures")
+	}
 	sum := new(big.Rat)
 	for field := range strings.FieldsSeq(p.Figures) {
 		num, den, fraction := strings.Cut(field, "/")
