@@ -59,7 +59,7 @@ func (c *checker) checkHelper(h *helper) {
 		if t.Kind == Invalid {
 			sound = false
 		}
-		n := &Node{Op: Load, Type: t, Expr: p.Name}
+		n := &Node{Op: Load, Type: t, Expr: p.Name, Def: &Def{ID: p.Name.ID}}
 		if p.Unit != nil && p.Unit.Column {
 			n.Type.Rows = []*Rows{{Name: p.Name.ID, File: h.tree.Source.Name}}
 		}
@@ -115,6 +115,11 @@ func (l *lower) paramType(h *helper, p *syntax.Param) (Type, *Node) {
 	if def != nil && def.ok() && !def.zero && (def.Type.Dim != t.Dim || def.Type.Kind != t.Kind) {
 		l.fail(diag.DimensionMismatch, p.Default.Span(), fmt.Sprintf("the default of %s is %s, but %s is declared as %s",
 			p.Name.Text, l.e.c.describe(def.Type), p.Name.Text, l.unitWords(p.Unit)))
+	}
+	if def != nil && def.zero && t.Kind == Number {
+		zero := *def // 0 fits any dimension
+		zero.Type.Dim = t.Dim
+		def = &zero
 	}
 	return t, def
 }
