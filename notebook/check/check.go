@@ -73,7 +73,7 @@ func (c *checker) report(d diag.Diagnostic) {
 // keys enters the front matter's keys, which stand before dots.
 func (c *checker) keys() {
 	for _, f := range c.in.Carried {
-		c.spaces[f.Key] = &space{what: "a carried file", line: 1, from: f}
+		c.spaces[f.Key] = &space{what: "a carried file", line: max(f.Line, 1), from: f}
 		c.enterRows(f)
 	}
 	for _, h := range c.in.Helpers {

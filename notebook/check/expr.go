@@ -302,6 +302,10 @@ func (l *lower) product(x *syntax.Binary) *Node {
 	left := l.factor(first)
 	for i := len(chain) - 1; i >= 0; i-- {
 		b := chain[i]
+		if l.tightUnit(b) {
+			left = invalid
+			continue
+		}
 		right := l.factor(b.Y)
 		if !left.ok() || !right.ok() {
 			left = invalid
@@ -310,6 +314,19 @@ func (l *lower) product(x *syntax.Binary) *Node {
 		left = l.multiply(b, left, right)
 	}
 	return left
+}
+
+// tightUnit reports `12e-6/K`: a bare number divided by what is no value, but a unit.
+func (l *lower) tightUnit(b *syntax.Binary) bool {
+	number, ok := b.X.(*syntax.Number)
+	name, named := b.Y.(*syntax.Name)
+	if !ok || !named || b.Op != syntax.Div || number.Pieces[0].HasUnit || l.e.lookup(name.ID) != nil || !units.IsUnitName(name.Text) {
+		return false
+	}
+	figures := l.print(number)
+	l.fail(diag.WrongUnitSpelling, b.Span(), fmt.Sprintf("`%s` stands here as a value, but no value of that name is defined; it is a unit", name.Text),
+		fmt.Sprintf("write `%s 1/%s` for the unit, `%s / %s` for a value", figures, name.Text, figures, name.Text))
+	return true
 }
 
 // factor lowers an operand of arithmetic, which must be a number.

@@ -25,6 +25,7 @@ type Input struct {
 // carries nothing.
 type Carry struct {
 	Key, Path string
+	Line      int // of the calc, where the file is named
 	Failed    bool
 	Values    map[string]Type // `P_u`, `bolts.x`, `jnt.F_v_Rk`
 	Rows      map[string]*Rows

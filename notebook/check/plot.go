@@ -69,6 +69,7 @@ func (c *checker) sweep(l *lower, plan *PlotPlan, t *syntax.Plot) {
 	c.order[plan.Rows] = len(c.order)
 	s := &sweeper{c: c, plan: plan, dirty: map[*Def]bool{d: true}, funcs: map[string]bool{}}
 	s.overlay(t)
+	s.need(t)
 	if !s.relower() {
 		l.failed = true
 		return
@@ -151,6 +152,66 @@ type sweeper struct {
 	body  *body
 	dirty map[*Def]bool   // the calc's own values that depend on it
 	funcs map[string]bool // the author's functions that do
+	// needed are the statements that the curves and limits are made from.
+	needed map[*Plan]bool
+}
+
+// need finds what lies upstream of the curves and limits, from the last
+// statement to the first.
+func (s *sweeper) need(t *syntax.Plot) {
+	s.needed = map[*Plan]bool{}
+	defs, calls := map[*Def]bool{}, map[string]bool{}
+	for _, names := range [][]*syntax.Name{t.Curves, t.Limits} {
+		for _, n := range names {
+			defs[s.c.top.lookup(n.ID)] = true
+		}
+	}
+	plans := s.c.prog.Plans
+	for i := len(plans) - 1; i >= 0; i-- {
+		p := plans[i]
+		def, _ := p.Stmt.(*syntax.Definition)
+		wanted := p.Def != nil && defs[p.Def] || p.Func && calls[def.Name.ID]
+		if p.Def != nil {
+			for _, r := range p.Def.Results {
+				wanted = wanted || defs[r]
+			}
+		}
+		if !wanted {
+			continue
+		}
+		s.needed[p] = true
+		for _, u := range p.Uses {
+			defs[u] = true
+		}
+		if p.Column != nil {
+			for _, cell := range p.Column.Uses {
+				for _, u := range cell {
+					defs[u] = true
+				}
+			}
+		}
+		eachCall(def, func(id string) { calls[id] = true })
+	}
+}
+
+// eachCall visits the functions that a definition's right side calls.
+func eachCall(def *syntax.Definition, f func(id string)) {
+	if def == nil {
+		return
+	}
+	for i := range def.Branches {
+		for _, x := range []syntax.Expr{def.Branches[i].Value, def.Branches[i].Cond} {
+			if x == nil {
+				continue
+			}
+			syntax.Walk(x, func(e syntax.Expr) bool {
+				if call, ok := e.(*syntax.Call); ok {
+					f(call.Fun.ID)
+				}
+				return true
+			})
+		}
+	}
 }
 
 func (s *sweeper) overlay(t *syntax.Plot) {
@@ -171,7 +232,7 @@ func (s *sweeper) relower() bool {
 	before := len(c.prog.Diagnostics)
 	for _, p := range c.prog.Plans {
 		def, ok := p.Stmt.(*syntax.Definition)
-		if p.Failed || p.Def == s.plan.Swept || !ok && p.Column == nil || ok && !s.depends(p, def) {
+		if p.Failed || !s.needed[p] || p.Def == s.plan.Swept || !ok && p.Column == nil || ok && !s.depends(p, def) {
 			continue
 		}
 		if p.Column != nil {
@@ -223,18 +284,6 @@ func (s *sweeper) depends(p *Plan, def *syntax.Definition) bool {
 		}
 	}
 	found := false
-	for i := range def.Branches {
-		for _, x := range []syntax.Expr{def.Branches[i].Value, def.Branches[i].Cond} {
-			if x == nil || found {
-				continue
-			}
-			syntax.Walk(x, func(e syntax.Expr) bool {
-				if call, ok := e.(*syntax.Call); ok && s.funcs[call.Fun.ID] {
-					found = true
-				}
-				return !found
-			})
-		}
-	}
+	eachCall(def, func(id string) { found = found || s.funcs[id] })
 	return found
 }

@@ -109,7 +109,7 @@ func (l *lower) unknown(x *syntax.Name) {
 		return
 	}
 	near := diag.Nearest(x.ID, l.e.inScope(func(*Def) bool { return true }))
-	if units.IsUnitName(x.Text) && (near == "" || len(x.Text) > 1) {
+	if units.IsUnitName(x.Text) {
 		l.fail(diag.MissingUnit, x.At, fmt.Sprintf("`%s` stands here as a value, but no value of that name is defined; it is a unit", x.Text),
 			fmt.Sprintf("a unit stands directly after a number: write `1 %s`", x.Text))
 		return

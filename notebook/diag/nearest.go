@@ -3,11 +3,15 @@ package diag
 import "strings"
 
 // Nearest returns the candidate that a misspelled word most likely meant, ""
-// where none is near: at most two edits away, or one for a short word. Of
+// where none is near: at most two edits away, one for a
+// short word, and for a single letter only its other case. Of
 // equally near ones the first wins.
 func Nearest(word string, candidates []string) string {
 	bound := 2
-	if len(word) <= 3 {
+	switch n := len(word); {
+	case n == 1:
+		bound = 0 // any other letter would be as near
+	case n <= 3:
 		bound = 1
 	}
 	best, distance := "", bound+1

@@ -52,7 +52,7 @@ func (d depends) Error() string { return fmt.Sprintf("not computed, see line %d"
 // machine computes one program.
 type machine struct {
 	prog    *check.Program
-	carried map[string]*CarriedFile
+	carried map[string]*Carry
 	top     *frame
 	out     *Result
 	marks   map[*check.Rows]map[string]int

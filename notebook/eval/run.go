@@ -10,9 +10,9 @@ import (
 	"gusset/units"
 )
 
-// CarriedFile is a computed calc whose values another one carries under Key.
+// Carry is a computed calc whose values another one carries under Key.
 // Steps holds its values by ID, columns and helpers' results included.
-type CarriedFile struct {
+type Carry struct {
 	Key    string
 	Origin Origin // without its step
 	Steps  map[string]*Step
@@ -42,7 +42,7 @@ type RefResult struct {
 
 // Run computes a checked program. carried holds the files behind the front
 // matter's keys. What fails is reported and, with all that depends on it, left out.
-func Run(p *check.Program, carried map[string]*CarriedFile) *Result {
+func Run(p *check.Program, carried map[string]*Carry) *Result {
 	m := &machine{prog: p, carried: carried, out: &Result{Blocks: make([]BlockResult, len(p.In.Blocks))},
 		marks: map[*check.Rows]map[string]int{}, consts: map[*check.Def]*Step{}, warned: map[warning]bool{}}
 	m.out.Diagnostics = append(m.out.Diagnostics, p.Diagnostics...)

@@ -287,6 +287,8 @@ func (m *machine) explain(err error, f *frame, target *check.Type, entry int) er
 		args[i], _ = m.number(a, f, target, entry)
 	}
 	switch {
+	case n.Op == check.Div && args[1] == 0 && n.Args[1].Op == check.Const:
+		what = "division by zero"
 	case n.Op == check.Div && args[1] == 0:
 		what = fmt.Sprintf("division by zero: `%s` is 0", f.print(n.Args[1].Expr))
 	case n.Op == check.Pow && args[0] == 0 && args[1] < 0:

@@ -413,7 +413,7 @@ func misses(op syntax.Op, a, b float64, kind check.Kind) string {
 	if kind == check.Point || op == syntax.Eq || op == syntax.Ne || a <= 0 || b <= 0 {
 		return ""
 	}
-	return fmt.Sprintf(", %.3g %% over", math.Max((a/b-1)*100, 0))
+	return fmt.Sprintf(", %s %% over", units.Format(math.Max((a/b-1)*100, 0), 3))
 }
 
 func sign(op syntax.Op) string {
