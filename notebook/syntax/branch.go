@@ -129,6 +129,10 @@ func (p *parser) branch(b *Branch, first bool) {
 	case tIf:
 		p.advance()
 		b.Cond = p.condition()
+		if p.tok == tComma || p.tok == tElse && p.pos < p.end {
+			p.syntax(p.start, p.pos, "each branch of a choice stands on a line of its own", "the next line starts with `=`, the last one ends with `otherwise`")
+			return
+		}
 	case tOtherwise:
 		if first {
 			p.syntax(p.start, p.pos, "`otherwise` stands behind the last of several branches, and this is the only one above it")
@@ -220,11 +224,7 @@ func (p *parser) where(def *Definition) {
 			p.fail(item.Name.At, diag.Syntax, fmt.Sprintf("%s needs its unit behind `where`, as in `where d [mm]`", quoted(item.Name.Text)))
 			return
 		}
-		if item.Unit = p.unitRef(); item.Unit == nil {
-			return
-		}
-		if item.Unit.Quantity != "" {
-			p.fail(item.Unit.At, diag.Syntax, fmt.Sprintf("behind `where` stands a unit, and %s is a quantity", quoted(item.Unit.Text)))
+		if item.Unit = p.unitRef(unitOnly); item.Unit == nil {
 			return
 		}
 		def.Where = append(def.Where, item)

@@ -12,6 +12,16 @@ func reduces(name string) bool {
 	return false
 }
 
+// isFunction tells whether a name is that of a built-in function.
+func isFunction(name string) bool {
+	switch name {
+	case "sqrt", "cbrt", "abs", "round", "floor", "ceil", "exp", "ln", "log10", "sin", "cos", "tan",
+		"asin", "acos", "atan", "atan2", "sinh", "cosh", "tanh", "hypot", "interpolate":
+		return true
+	}
+	return reduces(name)
+}
+
 // call reads the arguments of a call; the current token is the bracket.
 func (p *parser) call(fun *Name) Expr {
 	defer func() { p.depth-- }()

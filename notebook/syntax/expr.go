@@ -211,6 +211,9 @@ func (p *parser) comparison(x Expr) Expr {
 		p.advance()
 		c.Operands = append(c.Operands, p.needValue(p.expression(levelSum)))
 	}
+	if p.tok == tFailed {
+		return p.bad()
+	}
 	c.At = c.Operands[0].Span().To(c.Operands[len(c.Operands)-1].Span())
 	return c
 }

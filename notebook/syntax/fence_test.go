@@ -42,6 +42,7 @@ var fenceMistakes = []struct{ info, content, id, under string }{
 	{"schedule s", "a | | b", "syntax", ""},
 	{"schedule s", "a | x mm", "syntax", "mm"},
 	{"schedule s", "a | x [mmm]", "unknown-unit", "mmm"},
+	{"schedule s", "a | x [length]", "syntax", "[length]"},
 	{"schedule s", "a | at", "syntax", "at"},
 	{"schedule s", "a | x.y", "syntax", "x.y"},
 	{"schedule s", "a | 2x", "syntax", "2x"},

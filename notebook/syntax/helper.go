@@ -95,7 +95,7 @@ func (p *parser) parameter() (param *Param, ok bool) {
 	p.begin()
 	param = &Param{At: p.bounds(), Note: p.note, Name: p.name()}
 	if p.tok == tOpenUnit {
-		if param.Unit = p.unitRef(); param.Unit == nil {
+		if param.Unit = p.unitRef(parameterType); param.Unit == nil {
 			return param, false
 		}
 	}

@@ -26,6 +26,8 @@ func (p *parser) noValue() {
 		p.syntax(p.start, p.pos, "square brackets hold the unit that a name is declared in; values stand in round ones")
 	case p.tok == tSuper:
 		p.syntax(p.start, p.pos, fmt.Sprintf("the power %s has nothing before it", here))
+	case p.tok == tIf && p.prev == tAssign:
+		p.syntax(p.start, p.pos, "a choice has its value before the condition", "as in `k = 0.85 if t <= 25 mm`, further branches on the lines below")
 	case p.tok >= tIf:
 		p.syntax(p.start, p.pos, fmt.Sprintf("a value is missing before %s, which is a word of the notation and cannot be a name", here))
 	case p.prev == tEnd:
@@ -47,7 +49,7 @@ func (p *parser) leftover() {
 	case tCloseUnit:
 		p.syntax(p.start, p.pos, "the bracket `]` closes none")
 	case tOpenUnit:
-		p.syntax(p.start, p.pos, "a declared unit in square brackets stands behind the name that is defined, as in `tau [MPa] = …`")
+		p.strayBrackets()
 	case tComma:
 		p.strayComma()
 	case tAssign:
@@ -67,9 +69,30 @@ func (p *parser) leftover() {
 	}
 }
 
+// strayBrackets reports square brackets behind a value: a unit, a row, or a
+// source without the `#` before it.
+func (p *parser) strayBrackets() {
+	end := strings.IndexByte(p.s[p.start:p.end], ']')
+	if end < 0 {
+		p.syntax(p.start, p.pos, "the bracket `[` is not closed")
+		return
+	}
+	end += p.start + 1
+	inside := p.s[p.pos : end-1]
+	_, err := units.Parse(strings.TrimSpace(inside))
+	switch {
+	case p.prev == tName && p.last == p.start:
+		p.syntax(p.start, end, "square brackets pick no row; a row is picked by its mark, as in `bolts.x at \"B1\"`")
+	case err == nil:
+		p.syntax(p.start, end, "a declared unit in square brackets stands behind the name that is defined, as in `tau [MPa] = …`")
+	default:
+		p.syntax(p.start, end, "a source in square brackets stands in the note, behind `#`", "write "+quoted("# "+p.s[p.start:end]))
+	}
+}
+
 // strayComma reports a comma outside a list, or a decimal comma.
 func (p *parser) strayComma() {
-	if p.prev == tNumber && p.last == p.start && p.pos < p.end && isDigit(p.s[p.pos]) {
+	if p.prev == tNumber && p.last == p.start && strings.Trim(p.before(), "0123456789_") == "" && p.pos < p.end && isDigit(p.s[p.pos]) {
 		e := digitsEnd(p.s, p.pos, p.end)
 		p.syntax(p.lastFrom, e, "a comma separates arguments; decimals stand behind a point",
 			"write "+quoted(p.s[p.lastFrom:p.last]+"."+p.s[p.pos:e]))
@@ -86,6 +109,16 @@ func (p *parser) sideBySide() {
 		p.syntax(p.start, end, fmt.Sprintf("%s stands behind %s without an operator; a bracket above may not be closed", quoted(right), quoted(left)))
 		return
 	}
+	switch {
+	case p.tok == tName && p.prev == tNumber && p.unitInParts(from):
+		return
+	case p.prev == tName && isFunction(left):
+		if p.tok == tOpen {
+			right = right[1 : len(right)-1]
+		}
+		p.syntax(from, end, fmt.Sprintf("the arguments of %s stand in brackets", quoted(left)), "write "+quoted(left+"("+right+")"))
+		return
+	}
 	if p.tok == tName && units.IsUnitName(p.here()) && p.prev != tNumber {
 		p.syntax(p.start, end, fmt.Sprintf("a unit stands directly behind a number only, and %s is none", quoted(left)),
 			fmt.Sprintf("a product is written with `*`; the unit of a result is declared behind its name, as in `x [%s] = …`", p.here()))
@@ -93,6 +126,23 @@ func (p *parser) sideBySide() {
 	}
 	p.syntax(from, end, fmt.Sprintf("%s and %s stand side by side without an operator", quoted(left), quoted(right)),
 		"for a product write "+quoted(left+"*"+right))
+}
+
+// unitInParts reports a unit with a blank inside: `5 kN m`, `20 deg C`. The
+// literal starts at from.
+func (p *parser) unitInParts(from int) bool {
+	literal, name := p.s[from:p.last], p.here()
+	if stem := strings.TrimRight(literal, "°"); len(stem) < len(literal) || strings.HasSuffix(literal, "deg") {
+		if name == "C" || name == "F" {
+			p.fail(p.span(from, p.pos), diag.WrongUnitSpelling, "a unit is written without blanks", "write "+quoted(literal+name))
+			return true
+		}
+	}
+	if !units.IsUnitName(name) {
+		return false
+	}
+	p.fail(p.span(from, p.pos), diag.WrongUnitSpelling, "a unit is written without blanks, its parts joined by `*`", "write "+quoted(literal+"*"+name))
+	return true
 }
 
 // operandStart returns the start of the operand that the token before ended.
@@ -359,6 +409,19 @@ func (p *parser) strange(i int) {
 		p.syntax(i, i+2, fmt.Sprintf("%s is written %s", quoted(p.s[i:i+2]), quoted(meant)), "write "+quoted(meant))
 		return
 	}
+	if subscript(r) > 0 {
+		e := i
+		figures := "_"
+		for e < p.end {
+			r, size := utf8.DecodeRuneInString(p.s[e:p.end])
+			if subscript(r) == 0 {
+				break
+			}
+			figures, e = figures+string(subscript(r)), e+size
+		}
+		p.syntax(i, e, "a subscript is written behind `_`", "write "+quoted(figures))
+		return
+	}
 	if hint := slipRunes[r]; hint != "" {
 		end := i + size
 		if next == p.s[i] && (r == '&' || r == '|') || r == ':' && next == '=' {
@@ -389,6 +452,14 @@ func (p *parser) strange(i int) {
 	p.fail(p.span(i, i+size), id, message)
 }
 
+// subscript returns the plain figure of a subscript one, or 0.
+func subscript(r rune) rune {
+	if r < '₀' || r > '₉' {
+		return 0
+	}
+	return '0' + r - '₀'
+}
+
 // slipRunes say what to write for signs that other notations know.
 var slipRunes = map[rune]string{
 	'&': "conditions are joined by `and`", '|': "conditions are joined by `or`, a magnitude is `abs(x)`",
@@ -400,5 +471,6 @@ var slipRunes = map[rune]string{
 	'½': "write `1/2`", '¼': "write `1/4`", '¾': "write `3/4`",
 	'≈': "a comparison is made with `==`, within a relative 1e-9", '∞': "values are finite",
 	'%': "a percent sign stands behind a number only", '°': "a degree sign stands behind a number only",
+	'_': "a name starts with a letter", '\'': "a text stands in double quotes, as in `\"S355\"`",
 	'\\': "a statement goes on in the next line behind an operator, a comma or an open bracket",
 }

@@ -163,6 +163,7 @@ func TestValueRef(t *testing.T) {
 		{"{tau[N/mm^2]}", "tau", "N/mm^2", true, ""},
 		{"{bolts.x [mm]}", "bolts.x", "mm", true, ""},
 		{"{tau [kips]}", "tau", "", true, "wrong-unit-spelling"},
+		{"{tau [stress]}", "tau", "", true, "syntax"},
 		{"{tau []}", "tau", "", true, "syntax"},
 		{"{tau [xyz]}", "tau", "", true, "unknown-unit"},
 		{"{}", "", "", false, ""},
@@ -213,12 +214,13 @@ func TestUnitRef(t *testing.T) {
 		{"[number]", "number", false, false},
 		{"[temperature]", "temperature", false, true},
 	} {
-		_, b, diags := parseCalc("x " + test.source + " = a")
+		_, parse := fenced("helper h", "x "+test.source+"\ngives x\n")
+		b, diags := parse()
 		if len(diags) > 0 {
 			t.Errorf("%s: %s", test.source, diags[0].Text())
 			continue
 		}
-		u := b.Stmts[0].(*Definition).Unit
+		u := b.Helper.Params[0].Unit
 		if u.Quantity != test.quantity || u.Column != test.column || u.Point != test.point || u.Text != strings.TrimSpace(strings.Trim(test.source, "[]")) {
 			t.Errorf("%s: %+v", test.source, u)
 		}

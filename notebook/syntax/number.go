@@ -202,6 +202,9 @@ func (p *parser) fraction(start, i int, bound bool) (int, bool) {
 		}
 		return j, p.hasDenominator(start, i, j)
 	}
+	if i < p.end && p.s[i] == '-' && !bound && p.mixedByHyphen(start, i) {
+		return 0, false
+	}
 	k := p.skipBlanks(i)
 	if k == i || k >= p.end || !isDigit(p.s[k]) {
 		return i, true
@@ -218,11 +221,28 @@ func (p *parser) fraction(start, i int, bound bool) (int, bool) {
 		return 0, false
 	}
 	if bound {
-		e := p.unitRunEnd(p.skipBlanks(j))
+		e := unitNameEnd(p.s, p.skipBlanks(j), p.end)
 		p.syntax(start, e, fmt.Sprintf("behind %s a mixed number wants brackets", quoted(p.before())), "write "+quoted("("+p.s[start:e]+")"))
 		return 0, false
 	}
 	return j, p.hasDenominator(start, m, j)
+}
+
+// mixedByHyphen refuses `6-1/2 in`, as drawings write a mixed number; a number
+// less a length is nothing.
+func (p *parser) mixedByHyphen(start, hyphen int) bool {
+	slash := digitsEnd(p.s, hyphen+1, p.end)
+	if slash == hyphen+1 || slash >= p.end || p.s[slash] != '/' {
+		return false
+	}
+	j := p.fractionTail(slash)
+	if j < 0 {
+		return false
+	}
+	e := unitNameEnd(p.s, p.skipBlanks(j), p.end)
+	text := p.s[start:hyphen] + " " + p.s[hyphen+1:e]
+	p.syntax(start, e, "a mixed number is written with a blank", "write "+quoted(text))
+	return true
 }
 
 // hasDenominator refuses `3/0 in`.

@@ -155,6 +155,9 @@ func (p *parser) bad() Expr { return &Bad{At: p.span(p.start, p.start)} }
 
 // quoted puts the user's words into backticks, cut where they are long.
 func quoted(s string) string {
+	if strings.IndexByte(s, '`') >= 0 {
+		s = strings.ReplaceAll(s, "`", "'")
+	}
 	const most = 60
 	if len(s) > most {
 		cut := most

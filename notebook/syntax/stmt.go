@@ -127,7 +127,7 @@ func (p *parser) definition() Stmt {
 		return p.badStatement(name)
 	}
 	if p.tok == tOpenUnit {
-		if def.Unit = p.unitRef(); def.Unit == nil {
+		if def.Unit = p.unitRef(unitOrQuantity); def.Unit == nil {
 			return p.badStatement(name)
 		}
 	}
@@ -136,7 +136,11 @@ func (p *parser) definition() Stmt {
 		return p.badStatement(name)
 	}
 	p.advance()
-	return p.rightSide(def)
+	stmt := p.rightSide(def)
+	if _, ok := stmt.(*Definition); ok && p.unitForParameter(def) {
+		return &BadStmt{At: def.At, Name: name}
+	}
+	return stmt
 }
 
 // noAssign reports what stands in the place of `=`.
@@ -210,6 +214,31 @@ func (p *parser) parameters(def *Definition) bool {
 	return ok
 }
 
+// unitForParameter reports `x (mm) = 3`, which would define a function of mm.
+func (p *parser) unitForParameter(def *Definition) bool {
+	if len(def.Params) != 1 || !units.IsUnitName(def.Params[0].Text) {
+		return false
+	}
+	used := false
+	for _, b := range def.Branches {
+		for _, e := range []Expr{b.Value, b.Cond} {
+			Walk(e, func(x Expr) bool {
+				n, ok := x.(*Name)
+				used = used || ok && n.ID == def.Params[0].ID
+				return !used
+			})
+		}
+	}
+	if used {
+		return false
+	}
+	at := def.Params[0].At
+	p.tok = tEnd
+	p.fail(diag.Span{Start: at.Start - 1, End: at.End + 1}, diag.Syntax,
+		"round brackets behind a name hold parameters; a declared unit stands in square ones", "write "+quoted("["+def.Params[0].Text+"]"))
+	return true
+}
+
 // check reads `check condition if condition`.
 func (p *parser) check() Stmt {
 	c := &Check{Note: p.note}
@@ -237,6 +266,9 @@ func (p *parser) check() Stmt {
 
 // needComparison holds a check to one comparison or one chain of them.
 func (p *parser) needComparison(x Expr) {
+	if p.tok == tFailed {
+		return
+	}
 	bare := x
 	for {
 		b, ok := bare.(*Paren)
@@ -255,8 +287,7 @@ func (p *parser) needComparison(x Expr) {
 	case *Binary:
 		switch e.Op {
 		case And:
-			p.fail(p.bounds(), diag.Syntax, "a check is one comparison, so that it has one utilisation; write two checks",
-				fmt.Sprintf("write %s and %s on lines of their own", quoted("check "+Print(p.src, e.X)), quoted("check "+Print(p.src, e.Y))))
+			p.severalChecks(e)
 		case Or:
 			p.fail(at, diag.Syntax, "a check is one comparison; `or` gives no utilisation", "compare with the larger of the two capacities, by `max`, or make one check hold `if` a condition does")
 		default:
@@ -271,6 +302,31 @@ func (p *parser) needComparison(x Expr) {
 	default:
 		p.noComparison(at)
 	}
+}
+
+// severalChecks reports `check a and b` and shows the checks that it means.
+func (p *parser) severalChecks(x *Binary) {
+	var parts []string
+	var split func(e Expr)
+	split = func(e Expr) {
+		if b, ok := e.(*Binary); ok && b.Op == And {
+			split(b.X)
+			split(b.Y)
+			return
+		}
+		parts = append(parts, quoted("check "+Print(p.src, e)))
+	}
+	split(x)
+	number := "two"
+	if len(parts) > 2 {
+		number = fmt.Sprint(len(parts))
+	}
+	const most = 5 // a longer list helps nobody
+	if len(parts) > most {
+		parts = append(parts[:most], "…")
+	}
+	p.fail(p.bounds(), diag.Syntax, fmt.Sprintf("a check is one comparison, so that it has one utilisation; make it %s checks", number),
+		"write on lines of their own "+strings.Join(parts, ", "))
 }
 
 func (p *parser) noComparison(at diag.Span) {

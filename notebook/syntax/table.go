@@ -126,7 +126,7 @@ func (p *parser) column(c Line) Column {
 	p.whole(c.Start, c.End)
 	name := p.plainName("a column's name")
 	if name != nil && p.tok == tOpenUnit {
-		col.Unit = p.unitRef()
+		col.Unit = p.unitRef(unitOnly)
 	}
 	if name != nil && p.tok != tEnd {
 		p.syntax(p.start, p.pos, fmt.Sprintf("a column is headed by a name and its unit, as in `x [mm]`; %s is out of place", quoted(p.here())))

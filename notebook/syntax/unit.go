@@ -38,6 +38,12 @@ func (p *parser) unit(lit, u int) (unit units.Unit, end int, ok bool) {
 		if j, ok = p.unitPower(lit, j); !ok {
 			return unit, 0, false
 		}
+		if j < p.end && p.s[j] == '.' {
+			if e := nameEnd(p.s, j+1, p.end); units.IsUnitName(p.s[j+1 : e]) {
+				p.parseUnit(u, e) // which refuses the point
+				return unit, 0, false
+			}
+		}
 		next, closed := p.unitSign(i, j)
 		if next == 0 {
 			end = closed

@@ -8,10 +8,19 @@ import (
 	"gusset/units"
 )
 
+// bracketKind says what square brackets may hold where they stand.
+type bracketKind int
+
+const (
+	unitOnly       bracketKind = iota // behind `where`, in a header, in text
+	unitOrQuantity                    // behind a name that is defined
+	parameterType                     // `column of …` too
+)
+
 // unitRef reads `[MPa]`, or in the place of a unit a quantity's name:
 // `[force]`, `[column of length]`. The current token is the bracket. It returns
 // nil after a mistake.
-func (p *parser) unitRef() *UnitRef {
+func (p *parser) unitRef(kind bracketKind) *UnitRef {
 	open := p.start
 	n := strings.IndexByte(p.s[open:p.end], ']')
 	if n < 0 {
@@ -20,10 +29,27 @@ func (p *parser) unitRef() *UnitRef {
 	}
 	p.pos = open + n + 1
 	u := p.unitIn(open, p.pos)
+	if u != nil && !p.allowed(u, kind) {
+		return nil
+	}
 	if u != nil {
 		p.advance()
 	}
 	return u
+}
+
+// allowed refuses a quantity where a unit is asked, and a column outside the
+// parameters of a helper.
+func (p *parser) allowed(u *UnitRef, kind bracketKind) bool {
+	switch {
+	case u.Column && kind != parameterType:
+		p.fail(u.At, diag.Syntax, "`column of` types a parameter of a helper only")
+	case u.Quantity != "" && kind == unitOnly && u.Quantity != "number":
+		p.fail(u.At, diag.Syntax, fmt.Sprintf("a unit is asked here, and %s is a quantity", quoted(u.Text)))
+	default:
+		return true
+	}
+	return false
 }
 
 // unitIn reads the brackets between two offsets.
@@ -102,7 +128,7 @@ func ParseValueRef(src *diag.Source, at diag.Span) (ref ValueRef, ok bool, d *di
 	ref.Name = &Name{At: p.span(l.Start, j), ID: Canonical(text), Text: text, Slot: -1}
 	if i < l.End {
 		p.whole(i, l.End)
-		if ref.Unit = p.unitRef(); len(p.diags) > 0 {
+		if ref.Unit = p.unitRef(unitOnly); len(p.diags) > 0 {
 			return ref, true, &p.diags[0]
 		}
 	}
