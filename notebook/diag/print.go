@@ -54,9 +54,9 @@ func writeExcerpt(b *strings.Builder, d Diagnostic, line int, text string) {
 	if to := runesAfter(text, start, excerptWidth); to < len(text) {
 		right, text, end = "…", text[:to], min(end, to)
 	}
-	fmt.Fprintf(b, "%5d | %s%s%s\n", line, left, visible(text), right)
-	pad := strings.Repeat(" ", width(left)) + blank(text[:start])
-	fmt.Fprintf(b, "      | %s%s\n", pad, strings.Repeat("^", max(width(text[start:end]), 1)))
+	fmt.Fprintf(b, "%5d | %s%s%s\n", line, left, Visible(text), right)
+	pad := strings.Repeat(" ", Width(left)) + blank(text[:start])
+	fmt.Fprintf(b, "      | %s%s\n", pad, strings.Repeat("^", max(Width(text[start:end]), 1)))
 }
 
 // runesBefore returns the offset n code points before the offset at, or 0.
@@ -76,9 +76,9 @@ func runesAfter(s string, at, n int) int {
 	return at
 }
 
-// visible replaces control characters and direction marks by a replacement
+// Visible replaces control characters and direction marks by a replacement
 // mark, so that a file from outside cannot steer the terminal or reorder a line.
-func visible(s string) string {
+func Visible(s string) string {
 	return strings.Map(func(r rune) rune {
 		switch {
 		case r == '\t':
@@ -90,7 +90,8 @@ func visible(s string) string {
 	}, s)
 }
 
-func width(s string) int {
+// Width is the number of terminal cells a text takes.
+func Width(s string) int {
 	n := 0
 	for _, r := range s {
 		n += runeWidth(r)
@@ -98,7 +99,7 @@ func width(s string) int {
 	return n
 }
 
-func blank(s string) string { return strings.Repeat(" ", width(s)) }
+func blank(s string) string { return strings.Repeat(" ", Width(s)) }
 
 // runeWidth is the number of terminal cells a code point takes: none for a
 // combining mark, two for the wide blocks of East Asian text and pictographs.
