@@ -145,8 +145,14 @@ func woff(tables []fontTable) []byte {
 	size := 12 + 16*len(tables) // of the TrueType file it unwraps to
 	directory := make([]byte, 0, entry*len(tables))
 	var body []byte
+	var buffer bytes.Buffer
+	packer := zlib.NewWriter(&buffer)
 	for _, t := range tables {
-		packed := deflate(t.data)
+		buffer.Reset()
+		packer.Reset(&buffer)
+		packer.Write(t.data)
+		packer.Close() // a buffer does not fail
+		packed := buffer.Bytes()
 		if len(packed) >= len(t.data) {
 			packed = t.data
 		}
@@ -168,14 +174,6 @@ func woff(tables []fontTable) []byte {
 	b = binary.BigEndian.AppendUint32(b, uint32(size))
 	b = append(b, make([]byte, header-len(b))...) // no version, no metadata
 	return append(append(b, directory...), body...)
-}
-
-func deflate(data []byte) []byte {
-	var b bytes.Buffer
-	w, _ := zlib.NewWriterLevel(&b, zlib.BestSpeed) // a level that exists
-	w.Write(data)
-	w.Close() // a buffer does not fail
-	return b.Bytes()
 }
 
 func checksum(b []byte) uint32 {

@@ -38,6 +38,7 @@ type breaker struct {
 	x     float64 // where the next piece goes
 	right Class   // of the piece before it on the line
 	full  bool    // there is one
+	inner bool    // the lines stand inside of something else
 	limit int     // pieces that may still be opened; a bound on absurd input
 }
 
@@ -61,8 +62,6 @@ func (b *breaker) pieces(list []Node, prev Class) []piece {
 		case i == 0:
 		case comma:
 			p.rank = rankComma
-		case ok && o.Sign == Beside.Sign:
-			p.rank = rankBeside
 		case ok && o.Class != Punct && !signs(o, prev):
 			p.rank = rankOf(o)
 		}
@@ -84,6 +83,8 @@ func (b *breaker) extent(ps []piece) float64 {
 	for i, p := range ps {
 		if i > 0 || b.full {
 			x += b.gapBefore(right, p.left)
+		} else {
+			p = b.leading(p)
 		}
 		x += p.width
 		right = p.right
@@ -91,7 +92,7 @@ func (b *breaker) extent(ps []piece) float64 {
 	return x
 }
 
-// bare is the width of pieces at the start of a line.
+// alone is the width of pieces at the start of a line.
 func (b *breaker) alone(ps []piece) float64 {
 	fresh := breaker{setter: b.setter, st: b.st}
 	return fresh.extent(ps)
@@ -103,14 +104,21 @@ func (b *breaker) place(ps ...piece) {
 	for _, p := range ps {
 		if b.full {
 			b.x += b.gapBefore(b.right, p.left)
-		} else if o, ok := p.node.(Op); ok && o.Sign == Beside.Sign {
-			// A multiplication that starts a line is written.
-			p = b.pieces([]Node{Dot}, Ord)[0]
+		} else {
+			p = b.leading(p)
 		}
 		b.add(p.part, b.x, 0)
 		b.x += p.width
 		b.right, b.full = p.right, true
 	}
+}
+
+// leading is a piece as it starts a line: a multiplication is written there.
+func (b *breaker) leading(p piece) piece {
+	if o, ok := p.node.(Op); ok && o.Sign == Beside.Sign {
+		return b.pieces([]Node{Dot}, Ord)[0]
+	}
+	return p
 }
 
 // add copies a part into the line.
@@ -236,17 +244,35 @@ func (b *breaker) unbroken(ps []piece, at float64) {
 		b.newLine(at)
 	}
 	for i, p := range ps {
+		tail := ps[i+1 : i+1+followers(ps[i+1:])]
 		switch {
-		case b.fits(ps[i : i+1]):
+		case b.fits(ps[i : i+1+len(tail)]), follows(p) && b.fits(ps[i:i+1]):
 			b.place(p)
-		case b.room(p.left) < (b.width-at)/2:
+		case b.full && b.room(p.left) < (b.width-at)/2:
 			b.newLine(at)
 			b.unbroken(ps[i:], at)
 			return
 		default:
-			b.reduce(p, at)
+			after := breaker{setter: b.setter, st: b.st, right: p.right, full: true}
+			b.reduce(p, at, after.extent(tail))
 		}
 	}
+}
+
+// follows reports whether a piece stays on the line of the one before it, as a
+// comma and a closing bracket do.
+func follows(p piece) bool {
+	return p.node == nil && p.left == Close || p.left == Punct
+}
+
+// followers is the number of pieces that stay on the line of the one before.
+func followers(ps []piece) int {
+	for i, p := range ps {
+		if !follows(p) {
+			return i
+		}
+	}
+	return len(ps)
 }
 
 // opens reports whether a line may break inside of an atom.
@@ -272,30 +298,37 @@ func (b *breaker) open(p piece) []piece {
 	if !ok {
 		return []piece{p}
 	}
-	body := b.row(f.Body, b.st)
-	shut := b.bracket(f.Close, body, b.st)
+	mark := len(b.items)
+	body := b.row(f.Body, b.st) // for its size
+	b.items = b.items[:mark]
+	shut := b.bracket(f.Close, false, body, b.st)
 	if scripted {
 		shut.ascent = max(shut.ascent, body.ascent)
 		shut = b.attach(shut, scripts{subNode: script.Sub, supNode: script.Sup}, b.st)
 	}
-	open := piece{part: b.bracket(f.Open, body, b.st), left: p.left, right: Open, rank: p.rank}
+	open := piece{part: b.bracket(f.Open, true, body, b.st), left: p.left, right: Open, rank: p.rank}
 	list := append([]piece{open}, b.pieces(atoms(nil, f.Body), Open)...)
 	return append(list, piece{part: shut, left: Close, right: p.right, rank: rankNone})
 }
 
-// reduce sets a piece that is wider than a line, from the start of one.
-func (b *breaker) reduce(p piece, at float64) {
-	room := b.room(p.left)
+// reduce sets a piece that is wider than a line, from the start of one, and
+// keeps a width free for what follows it.
+func (b *breaker) reduce(p piece, at, free float64) {
+	room := b.room(p.left) - free
 	if c, ok := p.node.(Choice); ok {
-		p.part = b.choice(c, b.st, room)
+		// A choice within a choice only shrinks: setting each anew for each of
+		// those about it would take for ever.
+		if !b.inner {
+			p.part = b.choice(c, b.st, room)
+		}
+		if p.width > room {
+			p.part = b.smaller(c, b.choice(c, b.st, 0).width, room)
+		}
 		b.place(p)
 		return
 	}
-	if scale := room / p.width; scale >= leastScale && p.node != nil {
-		full := b.size
-		b.size *= scale * (1 - 1e-9)
-		p.part = b.atom(p.node, Open, b.st)
-		b.size = full
+	if room >= leastScale*p.width && p.node != nil {
+		p.part = b.smaller(p.node, p.width, room)
 		b.place(p)
 		return
 	}
@@ -305,6 +338,25 @@ func (b *breaker) reduce(p piece, at float64) {
 		return
 	}
 	b.cut(p, at)
+}
+
+// smaller sets a node that is so wide at full size within a room. Its width
+// is not quite in proportion to its size, since brackets and roots grow in
+// steps.
+func (b *breaker) smaller(n Node, width, room float64) part {
+	full, mark := b.size, len(b.items)
+	room = max(room, 0)
+	var p part
+	for range 8 {
+		b.items = b.items[:mark]
+		b.size *= room / max(width, room, 1e-9) * (1 - 1e-9)
+		p = b.atom(n, Open, b.st)
+		if width = p.width; width <= room {
+			break
+		}
+	}
+	b.size = full
+	return p
 }
 
 // room is what is left of the line for a piece of a left class.
@@ -320,18 +372,18 @@ func (b *breaker) room(left Class) float64 {
 func written(n Node) []Node {
 	switch n := n.(type) {
 	case Fraction:
-		return atoms(atoms(append(atoms(nil, grouped(n.Num)), Slash), grouped(n.Den)), nil)
+		return atoms(append(atoms(nil, grouped(n.Num)), Slash), grouped(n.Den))
 	case Root:
-		list := []Node{Op{"√", Ord}, grouped(n.Body)}
+		var list []Node
 		if n.Index != nil {
-			list = append([]Node{Script{Sup: n.Index}}, list...)
+			list = append(list, Script{Sup: n.Index})
 		}
-		return list
+		return atoms(append(list, Op{"√", Ord}), grouped(n.Body))
 	case Script:
 		if n.Base == nil || n.Sup == nil {
 			return nil
 		}
-		return atoms([]Node{grouped(n.Base), Op{"^", Ord}}, grouped(n.Sup))
+		return atoms(append(atoms(nil, grouped(n.Base)), Op{"^", Ord}), grouped(n.Sup))
 	case Row:
 		return atoms(nil, n)
 	}
@@ -376,10 +428,14 @@ func (b *breaker) cut(p piece, at float64) {
 	}
 }
 
+// leastFlow is the narrowest column that is worth breaking for, in ems.
+const leastFlow = 4
+
 // flow sets a node in lines within a width, for what stands inside of something
-// else.
+// else; the lines are wider where the width is next to nothing.
 func (s *setter) flow(n Node, width float64, st style) []Box {
-	b := breaker{setter: s, width: width, st: st, right: Open, limit: 1000}
+	width = max(width, leastFlow*s.em(st))
+	b := breaker{setter: s, width: width, st: st, right: Open, inner: true, limit: 1000}
 	b.fill(b.pieces(atoms(nil, n), Open), min(hang*s.em(st), width/4))
 	b.finish()
 	return b.lines

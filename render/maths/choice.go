@@ -1,7 +1,5 @@
 package maths
 
-import "gusset/render/fonts"
-
 // choice sets the branches of a choice behind a brace that spans them, the
 // conditions in a column. Within a width other than 0 that has no room for
 // this, conditions stand below their values, and what is longer than a line
@@ -9,7 +7,7 @@ import "gusset/render/fonts"
 func (s *setter) choice(c Choice, st style, width float64) part {
 	within := style{level: st.level, cramped: st.cramped}
 	em := s.em(st)
-	indent := s.scaled(fonts.Math.Advance('{'), st) + em/4
+	indent := widestBrace * em // kept free for the brace
 	body := s.start()
 	var list [][2]part // value and condition
 	values, conditions := 0.0, 0.0
@@ -26,9 +24,9 @@ func (s *setter) choice(c Choice, st style, width float64) part {
 			if i > 0 {
 				y += 2 * s.scaled(branchGap, st)
 			}
-			y = s.stackLines(&body, b.Value, within, indent, y, width-indent)
+			y = s.stackLines(&body, b.Value, within, 0, y, width-indent)
 			y += s.scaled(branchGap, st)
-			y = s.stackLines(&body, condition(b), within, indent+em, y, width-indent-em)
+			y = s.stackLines(&body, condition(b), within, em, y, width-indent-em)
 		}
 		return s.brace(body, y, st)
 	}
@@ -37,10 +35,13 @@ func (s *setter) choice(c Choice, st style, width float64) part {
 			y += s.scaled(branchGap, st)
 		}
 		line := s.join(parts[0], parts[1], values-parts[0].width+em, 0)
-		y = s.stack(&body, line, indent, y, em)
+		y = s.stack(&body, line, 0, y, em)
 	}
 	return s.brace(body, y, st)
 }
+
+// widestBrace is the most that a brace and the room behind it take, in ems.
+const widestBrace = 0.9
 
 // branchGap is the room between two branches in thousandths of an em.
 const branchGap = 350
@@ -95,15 +96,16 @@ const (
 // brace centres a body of a height on the axis and sets a brace before it.
 func (s *setter) brace(body part, height float64, st style) part {
 	axis := s.scaled(s.metrics.AxisHeight, st)
-	s.move(body, 0, -axis-height/2)
-	body.ascent, body.descent = height/2+axis, height/2-axis
 	brace := s.tall('{', height, st)
 	down := brace.ascent/2 - axis
+	indent := brace.width + s.em(st)/4
+	s.move(body, indent, -axis-height/2)
 	s.move(brace, 0, down)
 	first, _ := s.swap(body, brace)
 	return part{
-		width:  body.width,
-		ascent: max(body.ascent, brace.ascent-down), descent: max(body.descent, down),
-		from: first.from, to: brace.to,
+		width:   indent + body.width,
+		ascent:  max(height/2+axis, brace.ascent-down),
+		descent: max(height/2-axis, down),
+		from:    first.from, to: brace.to,
 	}
 }

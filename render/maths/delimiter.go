@@ -1,6 +1,10 @@
 package maths
 
-import "gusset/render/fonts"
+import (
+	"math"
+
+	"gusset/render/fonts"
+)
 
 // tall sets a bracket or a root sign at least height tall, its ink starting at
 // the baseline. It is the smallest variant that reaches, else put together from
@@ -10,7 +14,7 @@ func (s *setter) tall(sign rune, height float64, st style) part {
 	need := height * 1000 / em
 	growth := s.metrics.Growth(fonts.Math.Glyph(sign))
 	for _, v := range growth.Variants {
-		if float64(v.Height) >= need {
+		if float64(v.Height) >= need-1e-6 {
 			return s.glyph(v.Glyph, em)
 		}
 	}
@@ -42,13 +46,7 @@ func (s *setter) outline(glyph uint16, em, y float64) {
 // repeat are repeated until the sum reaches, and the overlaps then widened
 // evenly to take up what is too much.
 func (s *setter) assemble(parts []fonts.Part, need, em float64) part {
-	repeats := 0
-	for repeats < 1000 {
-		if _, longest := reach(parts, repeats, s.metrics.MinOverlap); longest >= need {
-			break
-		}
-		repeats++
-	}
+	repeats := repeatsFor(parts, need, s.metrics.MinOverlap)
 	list := repeated(parts, repeats)
 	shortest, longest := reach(parts, repeats, s.metrics.MinOverlap)
 	share := 0.0 // of the way from the least overlaps to the largest
@@ -70,6 +68,20 @@ func (s *setter) assemble(parts []fonts.Part, need, em float64) part {
 	p.to = len(s.items)
 	p.ascent = y * em / 1000
 	return p
+}
+
+// repeatsFor is how often the pieces that extend are needed to reach.
+func repeatsFor(parts []fonts.Part, need float64, minOverlap int) int {
+	_, none := reach(parts, 0, minOverlap)
+	_, once := reach(parts, 1, minOverlap)
+	_, twice := reach(parts, 2, minOverlap)
+	switch {
+	case none >= need:
+		return 0
+	case once >= need || twice <= once:
+		return 1
+	}
+	return 1 + int(math.Ceil((need-once)/(twice-once)))
 }
 
 // repeated lists the pieces with those that extend so many times.
@@ -116,9 +128,13 @@ const (
 	uncovered    = 0.4
 )
 
+// bracketSide is the room between a tall bracket and its body, in thousandths
+// of an em.
+const bracketSide = 60
+
 // bracket sets a bracket that fits a body, centred on the axis; nothing for an
 // empty one. One that is no larger than a letter is text.
-func (s *setter) bracket(sign string, body part, st style) part {
+func (s *setter) bracket(sign string, open bool, body part, st style) part {
 	if sign == "" {
 		return s.start()
 	}
@@ -136,7 +152,14 @@ func (s *setter) bracket(sign string, body part, st style) part {
 	}
 	p := s.tall(r, need, st)
 	down := p.ascent/2 - axis
-	s.move(p, 0, down)
+	// The ink of the face's tall brackets ends where their room does.
+	side := s.scaled(bracketSide, st)
+	if open {
+		s.move(p, 0, down)
+	} else {
+		s.move(p, side, down)
+	}
+	p.width += side
 	p.ascent, p.descent = p.ascent-down, down
 	return p
 }

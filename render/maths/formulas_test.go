@@ -36,11 +36,13 @@ var shear = Chain{sym("τ"), []Step{
 	eq(Fraction{linked(num("48", kN), "P", "P = 48 kN"), Row{two, Dot, linked(num("490.9", mm2), "A", "A = π·d²/4")}}),
 }}
 
-var writerCases = []struct {
+type writerCase struct {
 	name  string
 	chain Chain
 	plain string
-}{
+}
+
+var writerCases = []writerCase{
 	{"shear", shear, "τ = P/(2·A) = 48 kN/(2·490.9 mm²)"},
 	{"subscripts", Chain{Symbol{Head: "F", Sub: []string{"v", "Rd"}}, []Step{eq(Fraction{
 		Row{sym("α", "v"), Beside, sym("f", "ub"), Beside, sym("A")}, sym("γ", "M2")})}},

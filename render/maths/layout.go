@@ -56,7 +56,7 @@ func (s *setter) atom(n Node, prev Class, st style) part {
 		return s.op(n, st)
 	case Space:
 		p := s.start()
-		p.width = s.mu(int(n), st)
+		p.width = s.mu(max(int(n), 0), st)
 		return p
 	case Fraction:
 		return s.fraction(n, st)
@@ -89,7 +89,7 @@ func (s *setter) op(o Op, st style) part {
 		p.width = s.mu(int(Thin), st)
 		return p
 	}
-	if c := o.Sign[0]; c >= 'a' && c <= 'z' || o.Class == Punct {
+	if o.Class == Punct || o.Sign != "" && o.Sign[0] >= 'a' && o.Sign[0] <= 'z' {
 		return s.run(o.Sign, s.text, st, "")
 	}
 	return s.run(o.Sign, fonts.Math, st, "")
@@ -114,15 +114,9 @@ func (s *setter) symbol(n Symbol, sup Node, st style) part {
 	}
 	letters, figs := split(n.Head)
 	base := s.run(letters, face, st, n.Target)
-	for _, r := range letters {
-		// A letter such as f reaches back into what stands before it.
-		if x0, _, _, _ := face.Bounds(face.Glyph(r)); x0 < 0 {
-			back := s.scaled(-x0, st)
-			s.move(base, back, 0)
-			base.width += back
-		}
-		break
-	}
+	back := s.scaled(backhang(letters), st)
+	s.move(base, back, 0)
+	base.width += back
 	if figs != "" {
 		base = s.join(base, s.run(figs, s.upright(n.Governs), st, n.Target), base.lean, 0)
 	}
@@ -210,6 +204,10 @@ func (s *setter) fraction(f Fraction, st style) part {
 // thousandths of an em: enough to tell it from a rule drawn under its text.
 const fractionSide = 50
 
+// rootSide is the room before and behind what stands under a root, in
+// thousandths of an em.
+const rootSide = 40
+
 // root sets a root sign, its rule and what is under it.
 func (s *setter) root(r Root, st style) part {
 	m := s.metrics
@@ -244,25 +242,27 @@ func (s *setter) root(r Root, st style) part {
 	}
 	s.move(sign, x, low)
 	x += sign.width
-	s.move(body, x, 0)
-	s.rule(x, -top, body.width, thick)
+	side := s.scaled(rootSide, st)
+	s.move(body, x+side, 0)
+	s.rule(x, -top, body.width+2*side, thick)
 	p.to = len(s.items)
-	p.width = x + body.width
+	p.width = x + body.width + 2*side
 	p.ascent = top + s.scaled(m.RadicalExtraAscender, st)
 	p.descent = max(low, body.descent)
 	if r.Index != nil {
 		raise := float64(m.RadicalDegreeRaisePercent) / 100 * sign.ascent
 		p.ascent = max(p.ascent, raise-low+index.ascent+index.descent)
+		p.width = max(p.width, index.width)
 	}
 	return p
 }
 
 func (s *setter) fence(f Fence, st style) part {
 	body := s.row(f.Body, st)
-	open := s.bracket(f.Open, body, st)
+	open := s.bracket(f.Open, true, body, st)
 	// The opening bracket is set when the body's size is known, and read first.
 	open, body = s.swap(body, open)
-	shut := s.bracket(f.Close, body, st)
+	shut := s.bracket(f.Close, false, body, st)
 	body.width += body.lean
 	return s.join(s.join(open, body, 0, 0), shut, 0, 0)
 }

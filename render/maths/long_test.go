@@ -2,8 +2,11 @@ package maths
 
 import (
 	"fmt"
+	"math"
 	"strings"
 	"testing"
+
+	"gusset/render/fonts"
 )
 
 // long are 30 long and deep formulas, for lines of 120 mm at 11 pt.
@@ -78,7 +81,7 @@ func long() []Chain {
 			f(times(num("1.05"), num("24.3", mPa), num("38", mm), num("3.75", mm)), sum(two, num("1"))),
 			f(times(num("1.15"), num("6112", term("", "N", 1), term("·", "mm", 1))), num("3.2")))),
 			eq(num("812.5", term("", "N", 1)))}},
-		{v("F_c"), []Step{eq(Row{f(johansen, sum(num("1"), v("β"))), Paren(Row{Root{Body: sum(v("β"), product(two, sq(v("β")), sum(num("1"), f(v("t_2"), v("t_1")), sq(Paren(f(v("t_2"), v("t_1")))))), product(Script{v("β"), nil, num("3")}, sq(Paren(f(v("t_2"), v("t_1"))))))}, Minus, v("β"), Paren(sum(num("1"), f(v("t_2"), v("t_1"))))}), Plus, f(v("F_ax_Rk"), num("4"))})}},
+		{v("F_c"), []Step{eq(Row{f(johansen, sum(num("1"), v("β"))), Paren(Row{Root{Body: sum(v("β"), product(two, sq(v("β")), Fence{"[", sum(num("1"), f(v("t_2"), v("t_1")), sq(Paren(f(v("t_2"), v("t_1"))))), "]"}), product(Script{v("β"), nil, num("3")}, sq(Paren(f(v("t_2"), v("t_1"))))))}, Minus, v("β"), Paren(sum(num("1"), f(v("t_2"), v("t_1"))))}), Plus, f(v("F_ax_Rk"), num("4"))})}},
 		{v("F_d"), []Step{eq(Row{num("1.05"), Beside, f(johansen, sum(two, v("β"))), Fence{"[", Row{Root{Body: sum(product(two, v("β"), Paren(sum(num("1"), v("β")))), f(product(num("4"), v("β"), Paren(sum(two, v("β"))), v("M_y_Rk")), product(v("f_h_1_k"), v("d"), sq(v("t_1")))))}, Minus, v("β")}, "]"}, Plus, f(v("F_ax_Rk"), num("4"))})}},
 		{Row{sq(Paren(f(v("N_Ed"), v("N_Rd")))), Plus, sq(Paren(f(v("V_Ed"), v("V_Rd")))), Plus, sq(Paren(f(v("M_Ed"), v("M_Rd"))))},
 			[]Step{eq(sum(sq(Paren(f(num("120.5", kN), num("355", kN)))), sq(Paren(f(num("48.25", kN), num("136.6", kN)))), sq(Paren(f(kNm, num("25.5", term("", "kN", 1), term("·", "m", 1))))))), {"<=", num("1")}}},
@@ -113,13 +116,13 @@ func long() []Chain {
 
 const column = 120 * 72 / 25.4
 
-func TestLongFormulas(t *testing.T) {
+func TestLongFormulasKeepToTheColumn(t *testing.T) {
 	if n := len(long()); n < 30 {
 		t.Fatalf("%d formulas, want 30", n)
 	}
 	for i, c := range long() {
 		for _, width := range []float64{column, column / 2, column / 4} {
-			for j, b := range Break(c, 11, width) {
+			for j, b := range Break(c, pt, width) {
 				if b.Width > width+1e-6 {
 					t.Errorf("formula %d in %.0f: line %d is %.1f wide", i+1, width, j+1, b.Width)
 				}
@@ -128,6 +131,92 @@ func TestLongFormulas(t *testing.T) {
 						t.Errorf("formula %d in %.0f: line %d has %q from %.1f to %.1f", i+1, width, j+1, it.Text, it.X, it.X+it.Width)
 					}
 				}
+			}
+		}
+	}
+}
+
+// Each rule of a fraction has something above it and something below it on its
+// own line; that of a root has its sign at its left end.
+func TestLongFormulasSplitNoFraction(t *testing.T) {
+	for i, c := range long() {
+		for j, b := range Break(c, pt, column) {
+			for _, r := range rules(b) {
+				above, below, sign := false, false, false
+				for _, it := range b.Items {
+					if it.Kind == Outline && math.Abs(it.Y-r.Y) < 40 && it.X < r.X && r.X-it.X < 2*pt {
+						sign = true
+					}
+					if it.Kind != Run || it.X < r.X-1e-6 || it.X+it.Width > r.X+r.Width+1e-6 {
+						continue
+					}
+					above = above || it.Y < r.Y
+					below = below || it.Y > r.Y
+				}
+				if !below || !above && !sign {
+					t.Errorf("formula %d line %d: a rule of %.1f has above %v, below %v, sign %v", i+1, j+1, r.Width, above, below, sign)
+				}
+			}
+		}
+	}
+}
+
+// A continuation starts under the first right side, or with its relation under
+// the first relation.
+func TestLongFormulasContinueUnderTheirRightSide(t *testing.T) {
+	checked := 0
+	for i, c := range long() {
+		lines := Break(c, pt, column)
+		left := 0.0
+		if c.Left != nil {
+			left = one(t, c.Left).Width + 5*pt/18
+		}
+		if len(lines) == 1 || left > longLeft*column {
+			continue
+		}
+		sign := Relation(c.Steps[0].Sign).Sign
+		under := left + float64(fonts.Math.Width(sign))*pt/1000 + 5*pt/18
+		for j, b := range lines[1:] {
+			first := b.Items[0]
+			x := first.X
+			for _, it := range b.Items {
+				x = min(x, it.X)
+			}
+			want := under
+			if strings.ContainsAny(first.Text, "=<≤≥") {
+				want = left
+			}
+			// A letter's first stroke stands a little to the right of its place.
+			if x < want-1e-6 || x > want+0.3*pt {
+				t.Errorf("formula %d: line %d starts at %.2f, want %.2f", i+1, j+2, x, want)
+			}
+			checked++
+		}
+	}
+	if checked < 30 {
+		t.Errorf("only %d continuation lines", checked)
+	}
+}
+
+// Text stays text: each name, figure and operator of a formula is among the
+// runs of its lines.
+func TestLongFormulasKeepTheirText(t *testing.T) {
+	for i, c := range long() {
+		count := func(width float64) map[string]int {
+			all := map[string]int{}
+			for _, b := range Break(c, pt, width) {
+				for _, it := range b.Items {
+					for _, r := range it.Text {
+						all[string(r)]++
+					}
+				}
+			}
+			return all
+		}
+		wide, narrow := count(1e6), count(column)
+		for r, n := range wide {
+			if narrow[r] < n {
+				t.Errorf("formula %d: %q stands %d times in the column, %d on one line", i+1, r, narrow[r], n)
 			}
 		}
 	}

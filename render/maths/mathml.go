@@ -19,6 +19,7 @@ math mtext.l{line-height:0}
 math a{color:inherit;text-decoration:none}
 math a:is(:hover,:focus){text-decoration:underline;text-decoration-thickness:.06em;text-underline-offset:.2em}
 math mtd{text-align:left;padding:.15em .5em .15em 0}
+math mtd:first-child{padding-left:.25em}
 .chain,.chain>span,.chain>span>span{display:flex;align-items:baseline}
 .chain>span,.chain>span>span{flex-wrap:wrap;row-gap:.35em;min-width:0}
 .chain>span{flex:1}
@@ -63,6 +64,9 @@ func AppendChain(dst []byte, c Chain) []byte {
 
 // leads reports whether a left side is short enough to set the rest beside it.
 func leads(left Node) bool {
+	if width(left) > shortStep/2 {
+		return false
+	}
 	switch left := left.(type) {
 	case Symbol, Number, Word, Text, Script:
 		return true
@@ -123,8 +127,11 @@ func (w *markup) step(list []Node, after bool) {
 		w.raw("<span>")
 	}
 	rank := rankNone
-	if length(list) > shortStep {
+	if n := length(list); n > shortStep {
 		rank = loosest(list)
+		if rank == rankBeside && n < 2*shortStep {
+			rank = rankNone
+		}
 	}
 	from := 0
 	prev := Open
@@ -133,6 +140,9 @@ func (w *markup) step(list []Node, after bool) {
 		if o, ok := n.(Op); ok && i > 0 && rank < rankNone && rankOf(o) == rank && left != Punct && !signs(o, prev) {
 			w.math(list[from:i], edgeBefore(list, from))
 			from = i
+			if rank == rankBeside {
+				list[i] = Dot // what may start a line is written
+			}
 		}
 		prev = right
 	}
@@ -330,7 +340,7 @@ func (w *markup) unlink(r Ref) {
 // symbol writes a quantity's name, with the superscript of a script about it.
 func (w *markup) symbol(s Symbol, sup Node) {
 	w.link(s.Ref)
-	up := sup != nil || s.Primes > 0
+	up := sup != nil
 	switch {
 	case len(s.Sub) > 0 && up:
 		w.raw("<msubsup>")
@@ -350,18 +360,7 @@ func (w *markup) symbol(s Symbol, sup Node) {
 		}
 		w.raw("</mtext>")
 	}
-	switch {
-	case s.Primes > 0 && sup != nil:
-		w.raw("<mrow><mo>")
-		w.raw(primes(s.Primes))
-		w.raw("</mo>")
-		w.row(sup, Open)
-		w.raw("</mrow>")
-	case s.Primes > 0:
-		w.raw("<mo>")
-		w.raw(primes(s.Primes))
-		w.raw("</mo>")
-	case sup != nil:
+	if up {
 		w.single(sup)
 	}
 	switch {
@@ -379,16 +378,20 @@ func (w *markup) symbol(s Symbol, sup Node) {
 // of an em.
 const leastLean = 3
 
-// head writes the letters of a name, and where a superscript follows the room
-// that a slanted letter needs to stay clear of it.
+// head writes the letters of a name, its figures and primes, and the room that
+// a slanted letter needs to stay clear of what is before it and above it.
 func (w *markup) head(s Symbol, up bool) {
 	letters, figs := split(s.Head)
-	lean := 0
-	if up && figs == "" {
+	back, lean := backhang(letters)/10, 0
+	if up && figs == "" && s.Primes == 0 {
 		lean = overhang(letters) / 10
 	}
-	if figs != "" || lean >= leastLean {
+	group := figs != "" || back >= leastLean || lean >= leastLean
+	if group {
 		w.raw("<mrow>")
+	}
+	if back >= leastLean {
+		w.blank(back)
 	}
 	w.raw("<mi")
 	if s.Governs {
@@ -396,16 +399,19 @@ func (w *markup) head(s Symbol, up bool) {
 	}
 	w.raw(">")
 	w.text(letters)
-	w.raw("</mi>")
 	if figs != "" {
-		w.raw("<mn>")
+		w.raw("</mi><mn>")
 		w.raw(figs)
+		w.raw(primes(s.Primes))
 		w.raw("</mn>")
+	} else {
+		w.raw(primes(s.Primes))
+		w.raw("</mi>")
 	}
 	if lean >= leastLean {
 		w.blank(lean)
 	}
-	if figs != "" || lean >= leastLean {
+	if group {
 		w.raw("</mrow>")
 	}
 }
@@ -511,24 +517,52 @@ func (w *markup) root(r Root) {
 	w.raw("</mroot>")
 }
 
+// fence writes brackets as the first and the last of a group, where they are
+// brackets without being told. Chromium gives one that may grow the width of
+// its widest form, so those about a line of text may not.
 func (w *markup) fence(f Fence) {
+	bracket := "<mo stretchy=\"false\">"
+	if tall(f.Body) {
+		bracket = "<mo>"
+	}
 	w.raw("<mrow>")
 	if f.Open != "" {
-		w.raw(`<mo form="prefix" fence="true" stretchy="true">`)
+		w.raw(bracket)
 		w.text(f.Open)
 		w.raw("</mo>")
 	}
 	w.row(f.Body, Open)
 	if f.Close != "" {
-		w.raw(`<mo form="postfix" fence="true" stretchy="true">`)
+		w.raw(bracket)
 		w.text(f.Close)
 		w.raw("</mo>")
 	}
 	w.raw("</mrow>")
 }
 
+// tall reports whether a node is taller than a line of text with its scripts.
+func tall(n Node) bool {
+	switch n := n.(type) {
+	case Row:
+		for _, c := range n {
+			if tall(c) {
+				return true
+			}
+		}
+	case Fraction, Choice:
+		return true
+	case Script:
+		return tall(n.Base)
+	case Root:
+		return tall(n.Body)
+	case Fence:
+		return tall(n.Body)
+	}
+	return false
+}
+
 func (w *markup) choice(c Choice) {
-	w.raw(`<mrow><mo form="prefix" fence="true" stretchy="true">{</mo><mtable>`)
+	w.raw(`<mrow><mo>{</mo><mtable>`)
 	for _, b := range c.Branches {
 		if b.Taken {
 			w.raw(`<mtr class="taken">`)

@@ -14,3 +14,10 @@ func overhang(letters string) int {
 	_, _, right, _ := fonts.SerifItalic.Bounds(glyph)
 	return max(0, right-fonts.SerifItalic.GlyphAdvance(glyph))
 }
+
+// backhang is how far the first letter of an italic name reaches back.
+func backhang(letters string) int {
+	r, _ := utf8.DecodeRuneInString(letters)
+	left, _, _, _ := fonts.SerifItalic.Bounds(fonts.SerifItalic.Glyph(r))
+	return max(0, -left)
+}

@@ -29,6 +29,8 @@ func rankOf(o Op) int {
 		return rankSum
 	case "·", "×", "/":
 		return rankProduct
+	case Beside.Sign:
+		return rankBeside
 	}
 	switch o.Class {
 	case Rel:

@@ -184,13 +184,21 @@ func (Symbol) edges() (left, right Class) { return ordinary() }
 func (Number) edges() (left, right Class) { return ordinary() }
 func (Unit) edges() (left, right Class)   { return ordinary() }
 func (Text) edges() (left, right Class)   { return ordinary() }
-func (Space) edges() (left, right Class)  { return ordinary() }
 func (Root) edges() (left, right Class)   { return ordinary() }
 
 func (Word) edges() (left, right Class)     { return Func, Func }
-func (o Op) edges() (left, right Class)     { return o.Class, o.Class }
 func (Fraction) edges() (left, right Class) { return Inner, Inner }
 func (Choice) edges() (left, right Class)   { return Inner, Inner }
+
+// A blank is all the space there is on either side of it.
+func (Space) edges() (left, right Class) { return Close, Open }
+
+func (o Op) edges() (left, right Class) {
+	if o.Sign == Beside.Sign {
+		return Close, Open
+	}
+	return o.Class, o.Class
+}
 
 func (s Script) edges() (left, right Class) {
 	if s.Base == nil {
