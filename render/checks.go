@@ -126,7 +126,7 @@ func (c *composer) side(s *eval.Step, side *eval.Side, t check.Type, entry int) 
 			if used.Literal != nil && used.Unit.Equal(side.Unit) {
 				return c.maths.Value(used, at)
 			}
-			ref = maths.Ref{Target: used.Anchor, Tip: c.maths.Tip(used, at)}
+			ref = maths.Ref{Target: c.maths.Anchor(used), Tip: c.maths.Tip(used, at)}
 		}
 	}
 	return c.maths.Pieces(pieces, ref)

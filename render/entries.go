@@ -77,7 +77,10 @@ func sameRows(a, b check.Type) bool {
 // step makes the entries of one line: its own, and those of the helpers that it
 // calls.
 func (c *composer) step(s *eval.Step, indent int, full bool) []Entry {
-	e := Entry{Indent: indent, Anchor: s.Anchor, Number: s.Number, Refs: sources(s.Source), Note: s.Note}
+	for _, call := range s.Calls {
+		c.place(call)
+	}
+	e := Entry{Indent: indent, Anchor: c.maths.Anchor(s), Number: s.Number, Refs: sources(s.Source), Note: s.Note}
 	switch s.Kind {
 	case eval.Gap:
 		return []Entry{{Kind: Gap, Indent: indent}}
@@ -167,7 +170,7 @@ func (c *composer) computed(s *eval.Step, e *Entry) {
 	e.Kind = Formula
 	e.Formula.Steps = equal(c.maths.Written(s))
 	for _, t := range s.Trials {
-		e.Trials = append(e.Trials, Trial(t))
+		e.Trials = append(e.Trials, Trial{Value: t.Value, Mark: t.Mark, Why: t.Why, OK: t.OK})
 	}
 	if bundle || len(d.Branches) == 0 {
 		return

@@ -1,17 +1,36 @@
 package render
 
 import (
+	"strconv"
+
 	"gusset/notebook"
 	"gusset/notebook/eval"
 	"gusset/notebook/syntax"
 	"gusset/render/maths"
 )
 
+// place gives the lines of a helper as it was called their places on the page.
+func (c *composer) place(call *eval.Call) {
+	c.calls++
+	at := "h" + strconv.Itoa(c.calls) + "."
+	for _, a := range call.Args {
+		c.maths.Place(a, at+"given")
+	}
+	for _, s := range call.Steps {
+		if s.ID != "" {
+			c.maths.Place(s, at+s.ID)
+		}
+	}
+}
+
 // call appends the lines of a helper as it was called: its title, its source and
 // the values that it was given, then its own formulas and limits.
 func (c *composer) call(dst []Entry, call *eval.Call, indent int) []Entry {
 	h := call.Helper
 	head := Entry{Kind: HelperHead, Indent: indent, Note: helperTitle(h), Refs: sources(h.Note.Source), Mark: call.Mark}
+	if len(call.Args) > 0 {
+		head.Anchor = c.maths.Anchor(call.Args[0])
+	}
 	for _, text := range call.Cautions {
 		if line := c.caution(text); line != nil {
 			head.Refs = append(head.Refs, Ref{Text: "caution " + line.Number, Target: line.Anchor})

@@ -33,6 +33,7 @@ type composer struct {
 	maths    *maths.Builder
 	sheet    *notebook.Sheet
 	cautions []CautionLine
+	calls    int // helpers placed so far
 }
 
 func title(f *notebook.Front) Title {

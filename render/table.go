@@ -1,7 +1,6 @@
 package render
 
 import (
-	"gusset/notebook"
 	"gusset/render/maths"
 )
 

@@ -19,6 +19,7 @@ type Builder struct {
 	units   map[string]Unit
 	values  map[valueKey]Node
 	written map[*eval.Step]Node
+	anchors map[*eval.Step]string
 }
 
 type valueKey struct {
@@ -33,7 +34,19 @@ func NewBuilder() *Builder {
 		units:   map[string]Unit{},
 		values:  map[valueKey]Node{},
 		written: map[*eval.Step]Node{},
+		anchors: map[*eval.Step]string{},
 	}
+}
+
+// Place tells where a step without an anchor of its own stands on the page.
+func (b *Builder) Place(s *eval.Step, anchor string) { b.anchors[s] = anchor }
+
+// Anchor is where a step stands on the page, "" for nowhere.
+func (b *Builder) Anchor(s *eval.Step) string {
+	if s.Anchor != "" {
+		return s.Anchor
+	}
+	return b.anchors[s]
 }
 
 // Name returns a name as a symbol. The names before a dot, a schedule's or
@@ -65,7 +78,7 @@ func (b *Builder) Name(name string) Symbol {
 // Symbol returns the symbol of a step, which leads to where it stands.
 func (b *Builder) Symbol(s *eval.Step) Symbol {
 	symbol := b.Plain(s)
-	symbol.Target = s.Anchor
+	symbol.Target = b.Anchor(s)
 	return symbol
 }
 
@@ -124,7 +137,7 @@ func (b *Builder) Value(s *eval.Step, entry int) Node {
 	if n, ok := b.values[key]; ok {
 		return n
 	}
-	n := b.Pieces(s.Printed(entry), Ref{Target: s.Anchor, Tip: b.Tip(s, entry)})
+	n := b.Pieces(s.Printed(entry), Ref{Target: b.Anchor(s), Tip: b.Tip(s, entry)})
 	if IsCarried(s) {
 		n = Script{Base: n, Sup: Text{Text: CarriedMark}}
 	}
@@ -342,7 +355,7 @@ func (w *builder) name(n *syntax.Name) Node {
 func (w *builder) symbol(n *syntax.Name, s *eval.Step) Symbol {
 	symbol := w.Name(n.Text)
 	if n.ID != "pi" {
-		symbol.Target = s.Anchor
+		symbol.Target = w.Anchor(s)
 	}
 	return symbol
 }
@@ -353,7 +366,7 @@ func (w *builder) measured(s *eval.Step, entry int, u units.Unit) Node {
 	if own := s.Printed(entry); len(own) == 1 && own[0].Unit.Equal(u) {
 		pieces = own
 	}
-	ref := Ref{Target: s.Anchor, Tip: w.Tip(s, entry)}
+	ref := Ref{Target: w.Anchor(s), Tip: w.Tip(s, entry)}
 	if len(pieces) == 1 {
 		return Number{Value: pieces[0].Figures, Ref: ref}
 	}

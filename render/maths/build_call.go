@@ -35,7 +35,7 @@ func reduces(c *syntax.Call) bool {
 func (w *builder) call(c *syntax.Call) (Node, rank) {
 	if s := w.used(c.Fun); s != nil && s.Kind == eval.Function {
 		f := w.Name(c.Fun.Text)
-		f.Target = s.Anchor
+		f.Target = w.Anchor(s)
 		return Call(f, w.args(c)...), rankedAtom
 	}
 	if run := w.run(c); run != nil {

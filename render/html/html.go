@@ -1,0 +1,223 @@
+// Package html writes a page as one self-contained HTML file: faces and images
+// are inside, there is no script, and nothing is fetched.
+//
+//	os.WriteFile("C-104_B.html", html.Append(nil, render.NewPage(sheet)), 0o666)
+//
+// The text goes through three columns (reference, calculation, output) that
+// fall into one on a narrow screen. Formulas are MathML. The tree of the prose
+// is read and never changed, so that a sheet may be written any number of
+// times, by several goroutines at once.
+package html
+
+import (
+	"encoding/binary"
+	"unicode/utf8"
+
+	"gusset/notebook"
+	"gusset/render"
+	"gusset/render/fonts"
+	"gusset/render/maths"
+)
+
+// Append appends the HTML file of a page.
+func Append(dst []byte, p *render.Page) []byte {
+	w := &writer{page: p, sheet: p.Sheet, source: p.Sheet.Source.Text}
+	w.b = make([]byte, 0, 16*len(w.source)+1<<16)
+	w.body()
+	dst = w.head(dst)
+	dst = append(dst, w.b...)
+	return append(dst, "</body>\n</html>\n"...)
+}
+
+// writer writes the body of a page.
+type writer struct {
+	b      []byte
+	page   *render.Page
+	sheet  *notebook.Sheet
+	source []byte
+	mono   bool // the page has code
+	strong bool // the page has text that is both bold and italic
+}
+
+// head appends everything before the body's content: the characters of the
+// body tell which parts of the faces it needs.
+func (w *writer) head(dst []byte) []byte {
+	h := &writer{b: dst}
+	f := &w.sheet.Front
+	h.raw("<!DOCTYPE html>\n<html lang=\"en\">\n<head>\n<meta charset=\"utf-8\">\n" +
+		"<meta name=\"viewport\" content=\"width=device-width, initial-scale=1\">\n<title>")
+	h.text(f.Calc)
+	if f.Rev != "" {
+		h.raw(" rev ")
+		h.text(f.Rev)
+	}
+	if f.Title != "" {
+		h.raw(": ")
+		h.text(f.Title)
+	}
+	h.raw("</title>\n")
+	if f.By.Name != "" {
+		h.raw(`<meta name="author" content="`)
+		h.text(f.By.Name)
+		h.raw("\">\n")
+	}
+	h.raw("<style>\n")
+	var runes fonts.Runes
+	addRunes(&runes, w.b)
+	addRunes(&runes, h.b)
+	faces := []*fonts.Face{fonts.Serif, fonts.SerifItalic, fonts.SerifSemiBold, fonts.Sans, fonts.SansSemiBold, fonts.Math}
+	if w.mono {
+		faces = append(faces, fonts.Mono)
+	}
+	if w.strong {
+		faces = append(faces, fonts.SerifSemiBoldItalic)
+	}
+	h.b = fonts.AppendCSS(h.b, &runes, faces...)
+	h.raw(maths.CSS)
+	h.raw(sheetCSS)
+	h.paper(w.page)
+	h.raw("</style>\n</head>\n<body>\n")
+	return h.b
+}
+
+// addRunes adds the characters of a text that is ASCII for the most part.
+func addRunes(runes *fonts.Runes, text []byte) {
+	runes.Add([]byte("az09"))
+	const highBits = 0x8080808080808080
+	for len(text) >= 8 {
+		if binary.LittleEndian.Uint64(text)&highBits == 0 {
+			text = text[8:]
+			continue
+		}
+		n := 8
+		for n < len(text) && !utf8.RuneStart(text[n]) {
+			n++
+		}
+		runes.Add(text[:n])
+		text = text[n:]
+	}
+	runes.Add(text)
+}
+
+func (w *writer) body() {
+	w.raw("<div class=\"sheet\">\n<header>\n")
+	w.titleBlock()
+	w.stateBox()
+	w.raw("</header>\n<div class=\"row cols\" aria-hidden=\"true\"><div class=\"ref\">Reference</div><div class=\"mid\">Calculation</div><div class=\"out\">Output</div></div>\n<main>\n")
+	w.document()
+	w.raw("</main>\n")
+	w.lists()
+	w.raw("</div>\n")
+}
+
+func (w *writer) raw(s string) { w.b = append(w.b, s...) }
+
+// text appends character data or an attribute's value. What no page may hold
+// becomes a replacement character; marks that turn the direction of writing
+// are left out, since they could make a line read as something else.
+func (w *writer) text(s string) {
+	from := 0
+	for i := 0; i < len(s); {
+		c := s[i]
+		size, with := 1, ""
+		switch {
+		case c == '&':
+			with = "&amp;"
+		case c == '<':
+			with = "&lt;"
+		case c == '>':
+			with = "&gt;"
+		case c == '"':
+			with = "&quot;"
+		case c < ' ' && c != '\n' && c != '\t' || c == 0x7f:
+			with = "\uFFFD"
+		case c < utf8.RuneSelf:
+			i++
+			continue
+		default:
+			var r rune
+			r, size = utf8.DecodeRuneInString(s[i:])
+			switch {
+			case r == utf8.RuneError && size == 1, noncharacter(r):
+				with = "\uFFFD"
+			case turns(r):
+				w.raw(s[from:i])
+				from = i + size
+			}
+		}
+		if with != "" {
+			w.raw(s[from:i])
+			w.raw(with)
+			from = i + size
+		}
+		i += size
+	}
+	w.raw(s[from:])
+}
+
+// noncharacter tells whether a character may not stand in a page.
+func noncharacter(r rune) bool {
+	return r >= 0x80 && r < 0xA0 || r >= 0xFDD0 && r <= 0xFDEF || r&0xFFFE == 0xFFFE
+}
+
+// turns tells whether a character overrides the direction of what follows it.
+func turns(r rune) bool {
+	return r >= 0x202A && r <= 0x202E || r >= 0x2066 && r <= 0x2069
+}
+
+// figures appends a cell or a label: plain text whose powers of ten are set as
+// superscripts, since the faces have no raised minus.
+func (w *writer) figures(s string) {
+	for {
+		i := indexPower(s)
+		if i < 0 {
+			w.text(s)
+			return
+		}
+		w.text(s[:i])
+		w.raw("<sup>")
+		s = s[i:]
+		for len(s) > 0 {
+			r, size := utf8.DecodeRuneInString(s)
+			d, ok := lowered(r)
+			if !ok {
+				break
+			}
+			if d == '-' {
+				w.raw("−")
+			} else {
+				w.b = append(w.b, d)
+			}
+			s = s[size:]
+		}
+		w.raw("</sup>")
+	}
+}
+
+// indexPower finds a run of superscript characters that starts with a minus,
+// or that stands behind ×10; -1 where there is none.
+func indexPower(s string) int {
+	for i, r := range s {
+		d, ok := lowered(r)
+		if ok && (d == '-' || i >= 4 && s[i-4:i] == "×10") {
+			return i
+		}
+	}
+	return -1
+}
+
+// lowered is the figure or sign of a superscript character.
+func lowered(r rune) (byte, bool) {
+	switch r {
+	case '⁻':
+		return '-', true
+	case '¹':
+		return '1', true
+	case '²', '³':
+		return byte('2' + r - '²'), true
+	}
+	if r == '⁰' || r >= '⁴' && r <= '⁹' {
+		return byte('0' + r - '⁰'), true
+	}
+	return 0, false
+}

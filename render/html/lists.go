@@ -1,0 +1,185 @@
+package html
+
+import (
+	"gusset/notebook"
+	"gusset/render"
+	"gusset/render/maths"
+)
+
+// lists writes the closing lists. One that is empty is not there.
+func (w *writer) lists() {
+	l := &w.page.Lists
+	w.raw(`<footer class="lists">` + "\n")
+	w.summary(l.Checks)
+	w.unsourced(l.Unsourced)
+	w.remarkList("Assumptions", l.Assumptions)
+	w.remarkList("Holds", l.Holds)
+	w.symbols(l.Symbols)
+	w.sources(l.Sources)
+	w.cautions(l.Cautions)
+	w.listHead("Notes")
+	w.raw(`<div class="row"><div class="mid notes">`)
+	for _, n := range l.Notes {
+		w.raw("<p>")
+		w.text(n)
+		w.raw("</p>")
+	}
+	w.raw("</div></div>\n</footer>\n")
+}
+
+func (w *writer) listHead(title string) {
+	w.raw(`<div class="row head"><div class="mid"><h2>`)
+	w.text(title)
+	w.raw("</h2></div></div>\n")
+}
+
+// listRef starts a row of a list with its reference column.
+func (w *writer) listRef(class, anchor, words string) {
+	w.raw(`<div class="row list `)
+	w.raw(class)
+	w.raw(`"><div class="ref"><span class="n">`)
+	w.jump(anchor, words)
+	w.raw(`</span></div><div class="mid">`)
+}
+
+func (w *writer) note(s string) {
+	if s != "" {
+		w.raw(`<div class="note">`)
+		w.text(s)
+		w.raw("</div>")
+	}
+}
+
+func (w *writer) summary(list []render.Summary) {
+	if len(list) == 0 {
+		return
+	}
+	w.listHead("Summary of checks")
+	for i := range list {
+		s := &list[i]
+		w.listRef("check", s.Anchor, "("+s.Number+")")
+		w.note(s.Note)
+		w.raw(`<div class="f">`)
+		w.b = maths.AppendChain(w.b, s.Formula)
+		w.raw("</div>")
+		for j := range s.Reason {
+			w.phrase(&s.Reason[j])
+		}
+		w.raw(`</div><div class="out">`)
+		w.verdict(s.Verdict)
+		if s.Mark != "" {
+			w.raw(`<span class="mark">`)
+			w.text(s.Mark)
+			w.raw("</span>")
+		}
+		w.raw("</div></div>\n")
+	}
+}
+
+func (w *writer) unsourced(list []render.Unsourced) {
+	if len(list) == 0 {
+		return
+	}
+	w.listHead("Givens without a source")
+	for i := range list {
+		u := &list[i]
+		w.raw(`<div class="row list line"><div class="mid">`)
+		w.note(u.Note)
+		w.raw(`<div class="f"><a href="#`)
+		w.text(u.Anchor)
+		w.raw(`">`)
+		row := maths.Row{u.Symbol}
+		if u.Value != nil {
+			row = append(row, maths.Relation("="), u.Value)
+		}
+		w.symbol(row)
+		w.raw("</a></div></div></div>\n")
+	}
+}
+
+func (w *writer) remarkList(title string, list []*notebook.Remark) {
+	if len(list) == 0 {
+		return
+	}
+	w.listHead(title)
+	for _, r := range list {
+		w.listRef("", r.Anchor, r.Number)
+		w.raw("<p>")
+		w.text(r.Text)
+		w.raw("</p></div></div>\n")
+	}
+}
+
+func (w *writer) symbols(list []render.SymbolLine) {
+	if len(list) == 0 {
+		return
+	}
+	w.listHead("Symbols")
+	for i := range list {
+		s := &list[i]
+		w.listRef("line", s.Anchor, s.Where)
+		w.note(s.Meaning)
+		w.raw(`<div class="f">`)
+		w.symbol(s.Symbol)
+		w.raw("</div></div>")
+		if len(s.Unit) > 0 {
+			w.raw(`<div class="out"><span class="unit">`)
+			w.unit(s.Unit)
+			w.raw("</span></div>")
+		}
+		w.raw("</div>\n")
+	}
+}
+
+func (w *writer) sources(list []render.SourceLine) {
+	if len(list) == 0 {
+		return
+	}
+	w.listHead("Sources")
+	for i := range list {
+		s := &list[i]
+		w.raw(`<div class="row list"><div class="mid"><p>`)
+		w.text(s.Source)
+		w.raw(`</p><div class="rest">`)
+		for j := range s.On {
+			on := &s.On[j]
+			if j > 0 {
+				w.raw(", ")
+			}
+			if on.Symbol == nil {
+				w.jump(on.Anchor, on.Number)
+				continue
+			}
+			w.raw(`<a href="#`)
+			w.text(on.Anchor)
+			w.raw(`">`)
+			w.symbol(on.Symbol)
+			w.raw("</a>")
+		}
+		w.raw("</div></div></div>\n")
+	}
+}
+
+func (w *writer) cautions(list []render.CautionLine) {
+	if len(list) == 0 {
+		return
+	}
+	w.listHead("Cautions")
+	for i := range list {
+		c := &list[i]
+		w.raw(`<div class="row list" id="`)
+		w.text(c.Anchor)
+		w.raw(`"><div class="ref"><span class="n">`)
+		w.text(c.Number)
+		w.raw(`</span></div><div class="mid"><p>`)
+		w.text(c.Text)
+		w.raw(`</p><div class="rest">`)
+		for j, h := range c.Helpers {
+			if j > 0 {
+				w.raw(", ")
+			}
+			w.text(h)
+		}
+		w.raw("</div></div></div>\n")
+	}
+}

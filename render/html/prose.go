@@ -1,0 +1,355 @@
+package html
+
+import (
+	"bytes"
+
+	"github.com/yuin/goldmark/ast"
+	east "github.com/yuin/goldmark/extension/ast"
+
+	"gusset/notebook"
+)
+
+// document writes the prose and the blocks within it, one row of the three
+// columns for each block of the document.
+func (w *writer) document() {
+	for n := w.sheet.Doc.FirstChild(); n != nil; n = n.NextSibling() {
+		if f, ok := n.(*notebook.FenceNode); ok {
+			w.entries(w.page.Blocks[f.Index])
+			continue
+		}
+		if n.Kind() == ast.KindHeading {
+			w.raw(`<div class="row head"><div class="mid">`)
+		} else {
+			w.raw(`<div class="row prose"><div class="mid">`)
+		}
+		w.block(n)
+		w.raw("</div></div>\n")
+	}
+}
+
+// children writes the nodes within a node.
+func (w *writer) children(n ast.Node) {
+	for c := n.FirstChild(); c != nil; c = c.NextSibling() {
+		if c.Type() == ast.TypeInline {
+			w.inline(c)
+		} else {
+			w.block(c)
+		}
+	}
+}
+
+func (w *writer) block(n ast.Node) {
+	switch n := n.(type) {
+	case *ast.Paragraph:
+		w.raw("<p>")
+		w.children(n)
+		w.raw("</p>")
+	case *ast.TextBlock:
+		w.children(n)
+		if n.NextSibling() != nil {
+			w.raw("\n")
+		}
+	case *ast.Heading:
+		w.heading(n)
+	case *ast.ThematicBreak:
+		w.raw("<hr>")
+	case *ast.CodeBlock, *ast.FencedCodeBlock:
+		w.code(n)
+	case *ast.Blockquote:
+		w.quote(n)
+	case *ast.List:
+		w.list(n)
+	case *ast.ListItem:
+		w.raw("<li>")
+		w.children(n)
+		w.raw("</li>\n")
+	case *east.Table:
+		w.markdownTable(n)
+	case *notebook.FenceNode:
+		w.raw(`<div class="nested">`)
+		w.entries(w.page.Blocks[n.Index])
+		w.raw("</div>")
+	case *ast.HTMLBlock:
+		w.raw("<p>")
+		w.lines(n)
+		if n.HasClosure() {
+			w.text(string(n.ClosureLine.Value(w.source)))
+		}
+		w.raw("</p>")
+	default:
+		w.children(n)
+	}
+}
+
+func (w *writer) heading(n *ast.Heading) {
+	level, number := n.Level+1, ""
+	anchor := ""
+	if h := w.sheet.HeadingOf(n); h != nil {
+		level, number, anchor = h.Level+1, h.Number, h.Anchor
+	}
+	tag := []string{"h2>", "h3>", "h4>", "h5>", "h6>"}[min(max(level-2, 0), 4)]
+	w.raw("<")
+	w.raw(tag[:2])
+	if anchor != "" {
+		w.raw(` id="`)
+		w.text(anchor)
+		w.raw(`"`)
+	}
+	w.raw(">")
+	if number != "" {
+		w.raw(`<span class="no">`)
+		w.text(number)
+		w.raw("</span> ")
+	}
+	w.children(n)
+	w.raw("</")
+	w.raw(tag)
+}
+
+// lines writes the lines of a block as they stand in the file.
+func (w *writer) lines(n ast.Node) {
+	lines := n.Lines()
+	for i := range lines.Len() {
+		at := lines.At(i)
+		w.text(string(at.Value(w.source)))
+	}
+}
+
+func (w *writer) code(n ast.Node) {
+	w.mono = true
+	w.raw("<pre tabindex=\"0\"><code>")
+	w.lines(n)
+	w.raw("</code></pre>")
+}
+
+// quote writes a block quote, or a remark that is collected.
+func (w *writer) quote(n *ast.Blockquote) {
+	r := w.sheet.RemarkOf(n)
+	if r == nil {
+		w.raw("<blockquote>")
+		w.children(n)
+		w.raw("</blockquote>")
+		return
+	}
+	w.raw(`<div class="remark `)
+	switch r.Kind {
+	case notebook.Assumption:
+		w.raw("assumption")
+	case notebook.Caution:
+		w.raw("caution")
+	case notebook.Hold:
+		w.raw("hold")
+	default:
+		w.raw("remark-note")
+	}
+	w.raw(`" role="note" id="`)
+	w.text(r.Anchor)
+	w.raw(`"><b class="lead">`)
+	w.raw(string(r.Kind))
+	if r.Number != "" {
+		w.raw(" ")
+		w.text(r.Number)
+	}
+	w.raw("</b><div>")
+	w.children(n)
+	w.raw("</div></div>")
+}
+
+func (w *writer) list(n *ast.List) {
+	tag := "ul>"
+	if n.IsOrdered() {
+		tag = "ol>"
+	}
+	w.raw("<")
+	w.raw(tag[:2])
+	if n.IsOrdered() && n.Start != 1 {
+		w.raw(` start="`)
+		w.int(n.Start)
+		w.raw(`"`)
+	}
+	if n.IsTight {
+		w.raw(` class="tight"`)
+	}
+	w.raw(">\n")
+	w.children(n)
+	w.raw("</")
+	w.raw(tag)
+}
+
+func (w *writer) markdownTable(n *east.Table) {
+	w.raw(`<div class="rows" tabindex="0"><table>`)
+	body := false
+	for row := n.FirstChild(); row != nil; row = row.NextSibling() {
+		_, header := row.(*east.TableHeader)
+		switch {
+		case header:
+			w.raw("<thead><tr>")
+		case !body:
+			w.raw("<tbody>\n<tr>")
+			body = true
+		default:
+			w.raw("<tr>")
+		}
+		for c := row.FirstChild(); c != nil; c = c.NextSibling() {
+			w.tableCell(c, header)
+		}
+		w.raw("</tr>")
+		if header {
+			w.raw("</thead>")
+		}
+		w.raw("\n")
+	}
+	if body {
+		w.raw("</tbody>")
+	}
+	w.raw("</table></div>")
+}
+
+func (w *writer) tableCell(n ast.Node, header bool) {
+	tag := "td>"
+	if header {
+		tag = "th>"
+	}
+	w.raw("<")
+	w.raw(tag[:2])
+	if cell, ok := n.(*east.TableCell); ok {
+		switch cell.Alignment {
+		case east.AlignRight:
+			w.raw(` class="r"`)
+		case east.AlignCenter:
+			w.raw(` class="c"`)
+		}
+	}
+	w.raw(">")
+	w.children(n)
+	w.raw("</")
+	w.raw(tag)
+}
+
+func (w *writer) inline(n ast.Node) {
+	switch n := n.(type) {
+	case *ast.Text:
+		w.prose(n)
+	case *ast.String:
+		w.text(string(n.Value))
+	case *ast.CodeSpan:
+		w.codeSpan(n)
+	case *ast.Emphasis:
+		w.emphasis(n)
+	case *ast.Link:
+		w.raw(`<a href="`)
+		w.text(string(n.Destination))
+		if len(n.Title) > 0 {
+			w.raw(`" title="`)
+			w.text(notebook.Unescape(n.Title))
+		}
+		w.raw(`" rel="noopener noreferrer">`)
+		w.children(n)
+		w.raw("</a>")
+	case *ast.AutoLink:
+		w.autoLink(n)
+	case *ast.Image:
+		w.picture(n)
+	case *notebook.ValueNode:
+		w.named(n)
+	case *ast.RawHTML:
+		for i := range n.Segments.Len() {
+			at := n.Segments.At(i)
+			w.text(string(at.Value(w.source)))
+		}
+	default:
+		w.children(n)
+	}
+}
+
+// prose writes a run of text, its backslashes and references resolved.
+func (w *writer) prose(n *ast.Text) {
+	raw := n.Segment.Value(w.source)
+	switch {
+	case n.IsRaw() || bytes.IndexByte(raw, '\\') < 0 && bytes.IndexByte(raw, '&') < 0:
+		w.text(string(raw))
+	default:
+		w.text(notebook.Unescape(raw))
+	}
+	switch {
+	case n.HardLineBreak():
+		w.raw("<br>\n")
+	case n.SoftLineBreak():
+		w.raw("\n")
+	}
+}
+
+func (w *writer) codeSpan(n ast.Node) {
+	w.mono = true
+	w.raw("<code>")
+	for c := n.FirstChild(); c != nil; c = c.NextSibling() {
+		t, ok := c.(*ast.Text)
+		if !ok {
+			w.inline(c)
+			continue
+		}
+		raw := t.Segment.Value(w.source)
+		line, broken := bytes.CutSuffix(raw, []byte("\n"))
+		w.text(string(bytes.TrimSuffix(line, []byte("\r"))))
+		if broken {
+			w.raw(" ")
+		}
+	}
+	w.raw("</code>")
+}
+
+func (w *writer) emphasis(n *ast.Emphasis) {
+	tag := "em>"
+	if n.Level == 2 {
+		tag = "strong>"
+	}
+	for p := n.Parent(); p != nil; p = p.Parent() {
+		if e, ok := p.(*ast.Emphasis); ok && e.Level != n.Level || p.Kind() == ast.KindHeading || p.Kind() == east.KindTableHeader {
+			w.strong = true
+		}
+	}
+	w.raw("<")
+	w.raw(tag)
+	w.children(n)
+	w.raw("</")
+	w.raw(tag)
+}
+
+func (w *writer) autoLink(n *ast.AutoLink) {
+	w.raw(`<a href="`)
+	if n.AutoLinkType == ast.AutoLinkEmail {
+		w.raw("mailto:")
+	}
+	w.text(string(n.URL(w.source)))
+	w.raw(`" rel="noopener noreferrer">`)
+	w.text(string(n.Label(w.source)))
+	w.raw("</a>")
+}
+
+// picture writes an image; alone in its paragraph its title is its caption.
+func (w *writer) picture(n *ast.Image) {
+	path := string(n.Destination)
+	alternative := w.sheet.PlainText(n)
+	if w.sheet.Images[path] == nil {
+		w.text(alternative)
+		return
+	}
+	w.image(path, alternative, "")
+	if len(n.Title) > 0 {
+		w.raw(`<span class="caption">`)
+		w.text(notebook.Unescape(n.Title))
+		w.raw("</span>")
+	}
+}
+
+// named writes a value named in the text.
+func (w *writer) named(n *notebook.ValueNode) {
+	for _, p := range w.page.Values[n.Index] {
+		w.text(p.Words)
+		if p.Value != nil {
+			w.raw(`<span class="nb">`)
+			w.value(p.Value)
+			w.raw("</span>")
+		}
+	}
+}
