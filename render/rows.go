@@ -44,9 +44,10 @@ func (t *Table) addMarks(typ check.Type) {
 	stride := typ.Count()
 	for _, r := range typ.Rows {
 		stride /= max(r.N(), 1)
+		step := stride
 		t.Heads = append(t.Heads, Head{Words: r.Name})
 		t.columns = append(t.columns, column{governs: -1, cell: func(dst []byte, row int) []byte {
-			return append(dst, r.Marks[row/stride%r.N()]...)
+			return append(dst, r.Marks[row/step%r.N()]...)
 		}})
 	}
 }
@@ -236,9 +237,10 @@ func envelope(r *eval.CheckResult, axis int, full bool) *Table {
 		if i == axis {
 			continue
 		}
+		step := stride
 		t.Heads = append(t.Heads, Head{Words: "at " + o.Name})
 		t.columns = append(t.columns, column{governs: governs, cell: func(dst []byte, row int) []byte {
-			return append(dst, o.Marks[at(row)/stride%o.N()]...)
+			return append(dst, o.Marks[at(row)/step%o.N()]...)
 		}})
 	}
 	t.addOutcome(r, at, governs)
