@@ -3,8 +3,11 @@ package syntax
 import (
 	"fmt"
 	"reflect"
+	"strings"
 	"testing"
 	"unicode/utf8"
+
+	"pgregory.net/rapid"
 
 	"gusset/notebook/diag"
 )
@@ -217,5 +220,32 @@ func FuzzParseExpr(f *testing.F) {
 		ParseValueRef(src, at)
 		ParseCell(src, at, false)
 		ParseHeaderCell(src, at)
+	})
+}
+
+// vocabulary is what statements are made of; random runs of it reach states of
+// the parser that random bytes do not.
+var vocabulary = strings.Split(`a|τ_d|bolts.x|f|max|mm|kN|d|1|2.5|3/4|1 1/8|12 ft|6 in|1,200|1e400|5 kips|2x|-40 degC|"text"|"open|+|-|*|/|^|²|√|<|<=|==|!=|(|)|(|)|[mm]|[force]|[column of length]|[|]|,|=|=|if|otherwise|else|and|or|not|at|over|first of|with|where|check|needs|gives|warn|# note [src]|//|@|'|12'-6"|from|to|against|limit|steps|title||-|\|`, "|")
+
+func TestRandomStatements(t *testing.T) {
+	kinds := []string{"calc", "helper h", "schedule s", "plot", "figure mohr", "cases"}
+	rapid.Check(t, func(t *rapid.T) {
+		words := rapid.SliceOfN(rapid.SampledFrom(append(vocabulary, "\n", "\n", "\nx = ", "\ncheck ", "\n= ", "|")), 1, 40).Draw(t, "words")
+		info := rapid.SampledFrom(kinds).Draw(t, "info")
+		content := strings.Join(words, rapid.SampledFrom([]string{" ", "", "  "}).Draw(t, "blank"))
+		src, parse := fenced(info, content)
+		b, diags := parse()
+		if fault := checkBlock(src, b, diags); fault != "" {
+			t.Fatal(fault)
+		}
+		bad := 0
+		for _, s := range b.Stmts {
+			if _, ok := s.(*BadStmt); ok {
+				bad++
+			}
+		}
+		if b.Kind == CalcBlock && (bad > 0) != diag.HasErrors(diags) {
+			t.Fatalf("%d bad statements, diagnostics %v", bad, diags)
+		}
 	})
 }
