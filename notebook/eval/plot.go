@@ -97,6 +97,7 @@ func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
 	}
 	out.X = Axis{Symbol: s.Symbol, Unit: s.Unit}
 	out.At = s.Unit.FromSI(s.Value.Num[0])
+	out.Present = s.Printed(0)
 	xs := inUnit(x, s.Unit)
 	for i, c := range p.Curves {
 		own := m.stepFor(c.Def, m.top)
@@ -106,15 +107,22 @@ func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
 		if i == 0 {
 			out.Y = Axis{Symbol: own.Symbol, Unit: own.Unit}
 		}
-		out.Present = append(out.Present, out.Y.Unit.FromSI(own.Value.Num[own.Entry]))
-		out.Curves = append(out.Curves, m.curve(c, own, f, p.Rows, xs, out.Y.Unit)...)
+		lines, err := m.curve(c, own, f, p.Rows, xs, out.Y.Unit)
+		if err != nil {
+			return err
+		}
+		out.Curves = append(out.Curves, lines...)
 	}
 	for _, c := range p.Limits {
 		own := m.stepFor(c.Def, m.top)
 		if own == nil {
 			return depends(c.Def.Line)
 		}
-		out.Limits = append(out.Limits, m.curve(c, own, f, p.Rows, xs, out.Y.Unit)...)
+		lines, err := m.curve(c, own, f, p.Rows, xs, out.Y.Unit)
+		if err != nil {
+			return err
+		}
+		out.Limits = append(out.Limits, lines...)
 	}
 	return nil
 }
@@ -123,8 +131,9 @@ func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
 // only the governing one is.
 const mostCurves = 6
 
-// curve draws one value over the range: a line for each of its rows.
-func (m *machine) curve(c check.PlotCurve, own *Step, f *frame, sweep *check.Rows, xs []float64, u units.Unit) []Curve {
+// curve draws one value over the range: a line for each of its rows. A value
+// that does not exist everywhere is not drawn with a gap.
+func (m *machine) curve(c check.PlotCurve, own *Step, f *frame, sweep *check.Rows, xs []float64, u units.Unit) ([]Curve, error) {
 	v, _ := f.value(c.Swept)
 	t := own.Value.Type
 	entries := []int{own.Entry}
@@ -136,15 +145,22 @@ func (m *machine) curve(c check.PlotCurve, own *Step, f *frame, sweep *check.Row
 	}
 	var out []Curve
 	for _, e := range entries {
-		line := Curve{ID: own.ID, Symbol: own.Symbol, Mark: t.Mark(e), X: xs, Y: make([]float64, len(xs))}
+		line := Curve{ID: own.ID, Symbol: own.Symbol, Mark: t.Mark(e), Of: t.Count(), X: xs, Y: make([]float64, len(xs)),
+			At: u.FromSI(own.Value.Num[e]), Present: own.Value.Printed(e, u, own.Figures)}
+		if own.Unit.Equal(u) {
+			line.Present = own.Printed(e)
+		}
 		joint := check.Type{Rows: append(append([]*check.Rows{}, t.Rows...), sweep)}
 		for i := range xs {
 			at := max(joint.Project(e*len(xs)+i, v.Type), 0)
 			line.Y[i] = u.FromSI(v.Num[at])
+			if !finite(line.Y[i]) {
+				return nil, &fault{id: diag.OutOfRange, message: fmt.Sprintf("%s has no value at %s", own.Symbol, joint.Mark(e*len(xs)+i))}
+			}
 		}
 		out = append(out, line)
 	}
-	return out
+	return out, nil
 }
 
 func inUnit(x []float64, u units.Unit) []float64 {

@@ -147,10 +147,10 @@ type Plot struct {
 	Title   string
 	X, Y    Axis
 	At      float64 // the swept value's present entry
+	Present []Piece // the same as it is printed
 	Curves  []Curve
 	Limits  []Curve
-	Present []float64 // the curves' present values, by curve
-	Checks  bool      // bars of utilisation of the file's checks instead of curves
+	Checks  bool // bars of utilisation of the file's checks instead of curves
 }
 
 // Axis is one axis: the quantity's symbol and the unit it is drawn in.
@@ -160,10 +160,14 @@ type Axis struct {
 }
 
 // Curve is one line of a plot. Mark names the row it stands for where the
-// value has rows beside the sweep.
+// value has rows beside the sweep; Of is how many of them there are, more than
+// are drawn where there are too many for a curve each.
 type Curve struct {
 	ID, Symbol, Mark string
+	Of               int
 	X, Y             []float64
+	At               float64 // its present value
+	Present          []Piece // the same as it is printed, in the axis' unit
 }
 
 // Figure is a sketch: its kind and the steps whose values it draws, in the
