@@ -93,17 +93,22 @@ func (c *canvas) text(t *text, x, y float64) {
 func (c *canvas) familyOf(face *fonts.Face) string {
 	name, ok := c.family[face]
 	if !ok {
-		name = strings.ReplaceAll(face.Name, " ", "")
-		if face.Weight == 600 {
-			name += "-SemiBold"
-		}
-		if face.Italic {
-			name += "-Italic"
-		}
+		name = faceFamily(face)
 		// The library writes into the bytes of a face whose last glyphs share
 		// their widths, and the bytes are everyone's.
 		c.pdf.AddUTF8FontFromBytes(name, "", bytes.Clone(face.TTF))
 		c.family[face] = name
+	}
+	return name
+}
+
+func faceFamily(face *fonts.Face) string {
+	name := strings.ReplaceAll(face.Name, " ", "")
+	if face.Weight == 600 {
+		name += "-SemiBold"
+	}
+	if face.Italic {
+		name += "-Italic"
 	}
 	return name
 }

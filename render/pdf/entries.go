@@ -10,7 +10,7 @@ import (
 
 // The distances of entries.
 const (
-	entryPad    = 2.8 // above and below what stands in a row
+	entryPad    = 3.4 // above and below what stands in a row
 	bandPad     = 4.5 // the same on a band
 	notesAt     = 36 * mm
 	entryIndent = 14.0
@@ -58,6 +58,8 @@ func (b *prose) entry(e *render.Entry) {
 		b.indented(e, func() { b.helperHead(e) })
 	case render.Tabular:
 		b.indented(e, func() { b.tabular(e) })
+	case render.DrawingOf:
+		b.indented(e, func() { b.drawing(e) })
 	case render.Limit:
 		b.indented(e, func() { b.limit(e) })
 	default:
@@ -274,8 +276,18 @@ func (b *prose) outputBeside(s *slab, e *render.Entry) {
 		}
 		y += float64(len(lines)-1) * outputLeading
 	}
+	if v := e.Verdict; v != nil {
+		st := style{face: fonts.SansSemiBold, size: 8.2, colour: okColour}
+		if !v.OK {
+			st.colour = ngColour
+		}
+		s.ink.texts = append(s.ink.texts, text{x: x, y: y, style: st, text: v.Word})
+	}
 	if e.Mark != "" {
-		y = b.doc.smallOutput(s, e.Mark, y+10)
+		if e.Output != nil || e.Verdict != nil {
+			y += 10
+		}
+		y = b.doc.smallOutput(s, e.Mark, y)
 	}
 	s.height = math.Max(s.height, y+5)
 }

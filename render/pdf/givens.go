@@ -143,17 +143,6 @@ func (b *prose) limit(e *render.Entry) {
 		}
 		p.write(noteVoice.style(), e.Note)
 	}
-	if v := e.Verdict; v != nil {
-		st := noteVoice.strong().in(okColour).style()
-		if !v.OK {
-			st.colour = ngColour
-		}
-		if len(p.words) > 0 {
-			p.words[len(p.words)-1].space = 10
-			p.open = false
-		}
-		p.write(st, v.Word)
-	}
 	r.paragraph(p, noteVoice.leading+1)
 	for i := range e.Below {
 		r.space(1)

@@ -9,6 +9,7 @@ type grid struct {
 	head  gridRow
 	rows  []gridRow
 	plain bool // without a line under each row
+	wide  int  // the column, from 1, that takes what is left of the width
 	// anchors are the ids of the columns.
 	anchors []string
 }
@@ -55,11 +56,12 @@ func (f *flow) grid(v voice, build func(v voice) *grid, limit float64) {
 		g = build(smaller)
 		widths, gap, fits = g.widths(f.width)
 	}
+	whole := sum(widths) + gap*float64(len(widths)-1)
 	var head *slab
 	if len(g.head.cells) > 0 {
 		parts := f.gridRow(g, &g.head, widths, gap, math.Inf(1))
 		head = &parts[0]
-		head.ink.fill(f.x, head.height-headRule, f.width, headRule, inkColour)
+		head.ink.fill(f.x, head.height-headRule, whole, headRule, inkColour)
 		head.keep = true
 		f.anchors = append(f.anchors, g.anchors...)
 		f.push(*head)
@@ -78,11 +80,11 @@ func (f *flow) grid(v voice, build func(v voice) *grid, limit float64) {
 				s.anchors = []string{row.anchor}
 			}
 			if row.tinted {
-				s.bands = append(s.bands, band{x: f.x, width: f.width, colour: washColour, starts: true})
+				s.bands = append(s.bands, band{x: f.x, width: whole, colour: washColour, starts: true})
 			}
 			last := j == len(parts)-1
 			if last && (!g.plain || i == len(g.rows)-1) {
-				s.ink.fill(f.x, s.height-rowRule, f.width, rowRule, hairColour)
+				s.ink.fill(f.x, s.height-rowRule, whole, rowRule, hairColour)
 			}
 			// The first row does not leave the head, nor the last the one before it.
 			s.keep = i == 0 && len(g.rows) > 1 || i == len(g.rows)-2 || !last
@@ -197,6 +199,9 @@ func (g *grid) widths(total float64) (widths []float64, gap float64, fits bool) 
 		default:
 			out[i] = math.Max(total*least[i]/needs, 6)
 		}
+	}
+	if spare := total - wants; g.wide > 0 && spare > 0 {
+		out[g.wide-1] += spare
 	}
 	return out, gap, needs <= total
 }

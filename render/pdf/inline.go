@@ -2,7 +2,6 @@ package pdf
 
 import (
 	"bytes"
-	"html"
 	"strings"
 
 	"github.com/yuin/goldmark/ast"
@@ -96,7 +95,7 @@ func (t *runningText) node(n ast.Node) {
 		if n.IsRaw() || n.IsCode() {
 			t.p.write(t.style(), string(n.Value))
 		} else {
-			t.p.write(t.style(), unescaped(n.Value))
+			t.p.write(t.style(), notebook.Unescape(n.Value))
 		}
 	case *ast.CodeSpan:
 		t.codeSpan(n)
@@ -120,7 +119,7 @@ func (t *runningText) text(n *ast.Text) {
 	if n.IsRaw() {
 		t.p.write(t.style(), string(value))
 	} else {
-		t.p.write(t.style(), unescaped(value))
+		t.p.write(t.style(), notebook.Unescape(value))
 	}
 	switch {
 	case n.HardLineBreak():
@@ -196,7 +195,7 @@ func (d *document) plainWords(n ast.Node) string {
 		}
 		switch n := n.(type) {
 		case *ast.Text:
-			b.WriteString(unescaped(n.Segment.Value(d.source)))
+			b.WriteString(notebook.Unescape(n.Segment.Value(d.source)))
 			if n.SoftLineBreak() || n.HardLineBreak() {
 				b.WriteByte(' ')
 			}
@@ -208,52 +207,6 @@ func (d *document) plainWords(n ast.Node) string {
 		return ast.WalkContinue, nil
 	})
 	return b.String()
-}
-
-// unescaped resolves the backslashes and entities of Markdown text, which the
-// tree keeps as they were typed.
-func unescaped(b []byte) string {
-	if bytes.IndexByte(b, '\\') < 0 && bytes.IndexByte(b, '&') < 0 {
-		return string(b)
-	}
-	var out strings.Builder
-	for i := 0; i < len(b); i++ {
-		if b[i] == '\\' && i+1 < len(b) && util.IsPunct(b[i+1]) {
-			i++
-			out.WriteByte(b[i])
-			continue
-		}
-		if b[i] == '&' {
-			if to, length := entity(b[i:]); length > 0 {
-				out.WriteString(to)
-				i += length - 1
-				continue
-			}
-		}
-		out.WriteByte(b[i])
-	}
-	return out.String()
-}
-
-// entity resolves the entity that a text starts with; length is 0 where it
-// starts with none.
-func entity(b []byte) (to string, length int) {
-	const longest = 40
-	end := bytes.IndexByte(b[:min(len(b), longest)], ';')
-	if end < 2 {
-		return "", 0
-	}
-	name := string(b[1:end])
-	if name[0] == '#' {
-		if to = html.UnescapeString(string(b[:end+1])); to == string(b[:end+1]) {
-			return "", 0
-		}
-		return to, end + 1
-	}
-	if e, ok := util.LookUpHTML5EntityByName(name); ok {
-		return string(e.Characters), end + 1
-	}
-	return "", 0
 }
 
 // target says where a link of the prose leads on paper: to a place in the

@@ -94,17 +94,18 @@ func (p *paragraph) breakLine(out []line, from, to int, width float64) []line {
 }
 
 // lineCost is what a line costs that is set to a length of the width. The
-// unit is a line that leaves a tenth of the width free; each line costs a
-// little by itself, and a last line that is hardly there costs a whole unit.
+// unit is a line that leaves a tenth of the width free, or a short word where
+// that is more; each line costs a little by itself, and a last line that is
+// hardly there costs a whole unit.
 func lineCost(set, width float64, words int, last bool) float64 {
-	const each, hardly = 0.15, 0.1
+	const each, hardly, shortWord = 0.15, 0.1, 22
 	if last {
 		if words == 1 && set < hardly*width {
 			return each + 1
 		}
 		return each
 	}
-	free := (width - set) / (0.1 * width)
+	free := (width - set) / math.Max(0.1*width, shortWord)
 	return each + free*free
 }
 
@@ -146,7 +147,7 @@ func (d *lineDrawing) piece(c *piece, blank float64) {
 	case c.box != nil:
 		d.flush()
 		d.ink.add(&c.box.ink, d.at+blank, d.y)
-	case len(d.letters) > 0 && d.run.style == c.style:
+	case len(d.letters) > 0 && d.run.style == c.style && (blank == 0 || math.Abs(blank-c.style.width(" ")) < 0.01):
 		if blank > 0 {
 			d.letters = append(d.letters, ' ')
 		}

@@ -24,7 +24,6 @@ func (b *prose) lists(l *render.Lists) {
 	}
 	b.remarks("Assumptions", l.Assumptions)
 	b.remarks("Holds", l.Holds)
-	b.cautions(l.Cautions)
 	if len(l.Symbols) > 0 {
 		b.listHead("Symbols")
 		b.grid(lineVoice, func(v voice) *grid { return b.doc.symbolsGrid(l.Symbols, v) }, b.doc.tallest())
@@ -33,6 +32,7 @@ func (b *prose) lists(l *render.Lists) {
 		b.listHead("Sources")
 		b.grid(lineVoice, func(v voice) *grid { return b.doc.sourcesGrid(l.Sources, v) }, b.doc.tallest())
 	}
+	b.cautions(l.Cautions)
 	if len(l.Notes) > 0 {
 		b.listHead("Notes")
 		for _, n := range l.Notes {
@@ -148,7 +148,7 @@ func (b *prose) numbered(number, target, words, under string) {
 }
 
 func (d *document) symbolsGrid(list []render.SymbolLine, v voice) *grid {
-	g := &grid{voice: v, head: headings(v, "Symbol", "Unit", "Meaning", "Where")}
+	g := &grid{voice: v, wide: 3, head: headings(v, "Symbol", "Unit", "Meaning", "Where")}
 	st := style{face: fonts.Serif, size: v.size * 1.15, colour: inkColour}
 	for _, s := range list {
 		link := st
@@ -168,7 +168,7 @@ func (d *document) symbolsGrid(list []render.SymbolLine, v voice) *grid {
 }
 
 func (d *document) sourcesGrid(list []render.SourceLine, v voice) *grid {
-	g := &grid{voice: v, head: headings(v, "Source", "What rests on it")}
+	g := &grid{voice: v, wide: 2, head: headings(v, "Source", "What rests on it")}
 	for _, s := range list {
 		source, on := &paragraph{}, &paragraph{}
 		source.write(v.style(), s.Source)

@@ -361,7 +361,7 @@ func (d *document) imageOf(n *ast.Image) *image { return d.album.image(string(n.
 
 // imageWords are the words of an image: what it shows, and its title behind.
 func (d *document) imageWords(n *ast.Image) string {
-	words, title := d.plainWords(n), unescaped(n.Title)
+	words, title := d.plainWords(n), notebook.Unescape(n.Title)
 	if title == "" || title == words {
 		return words
 	}

@@ -205,13 +205,12 @@ func (d *document) stateItems() [][]styled {
 	}
 	items := [][]styled{counted(s.Checks, "check", "checks")}
 	if s.Checks > 0 {
-		verdict := heavy
-		verdict.colour = okColour
-		words := "all OK"
+		ng := counted(s.NG, "NG", "NG")
 		if s.NG > 0 {
-			verdict.colour, words = ngColour, strconv.Itoa(s.NG)+" NG"
+			ng = []styled{{heavy, strconv.Itoa(s.NG) + " NG"}}
+			ng[0].colour = ngColour
 		}
-		items = append(items, []styled{{verdict, words}})
+		items = append(items, ng)
 	}
 	if s.NotRequired > 0 {
 		items = append(items, counted(s.NotRequired, "not required", "not required"))

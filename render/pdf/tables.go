@@ -46,7 +46,7 @@ func (b *prose) tables(list []*render.Table) {
 }
 
 func leftOut(left, rows int) string {
-	return strconv.Itoa(left) + " of " + strconv.Itoa(rows) + " rows are left out here: those shown govern or are extremes"
+	return strconv.Itoa(left) + " of " + strconv.Itoa(rows) + " rows left out in print"
 }
 
 // rowsGrid is a table over rows; the entries that govern are set heavy and
@@ -111,14 +111,17 @@ func sideOf(toRight bool) alignment {
 func (b *prose) trials(list []render.Trial) {
 	b.space(2)
 	b.grid(lineVoice, func(v voice) *grid {
-		g := &grid{voice: v, plain: true}
+		g := &grid{voice: v, plain: true, head: headings(v, "tried", "condition", "outcome")}
 		for _, t := range list {
-			cv, word := v.in(softColour), "does not do"
+			cv, outcome, value := v.in(softColour), "fails", t.Value
 			if t.OK {
-				cv, word = v.strong(), "taken"
+				cv, outcome = v.strong(), "holds, taken"
+			}
+			if t.Mark != "" {
+				value += " (" + t.Mark + ")"
 			}
 			var row gridRow
-			for _, s := range []string{t.Mark, t.Value, t.Why, word} {
+			for _, s := range []string{value, t.Why, outcome} {
 				p := &paragraph{}
 				p.write(cv.style(), s)
 				row.cells = append(row.cells, gridCell{p: p})

@@ -1,0 +1,157 @@
+package pdf
+
+import (
+	"bytes"
+	"fmt"
+	"runtime"
+	"strings"
+	"testing"
+	"time"
+
+	"github.com/go-pdf/fpdf"
+)
+
+// longCalc is a calc file of about a page for every twelve statements, with
+// prose as an engineer writes it.
+func longCalc(statements int) string {
+	var b strings.Builder
+	b.WriteString("---\ncalc: C-500\ntitle: A long calculation\nrev: A\ndate: 2026-03-02\n---\n")
+	for i := 0; i < statements; i++ {
+		if i%12 == 0 {
+			fmt.Fprintf(&b, "\n# Joint %d\n\n", i/12+1)
+			b.WriteString("The pull is shared by two shear planes. The plates are snug, so bending of the pin is taken up\n" +
+				"in the next section with *no* gap, and `the friction` between the plates is left out.\n\n")
+			fmt.Fprintf(&b, "```calc\nP_%[1]d = %[2]d kN # Pull on one lug [load schedule, row %[1]d]\nd_%[1]d = 25 mm # Pin diameter [drawing S-12]\n", i/12, 40+i%9)
+		}
+		j := i / 12
+		switch i % 12 {
+		case 0:
+			fmt.Fprintf(&b, "A_%[1]d = pi*d_%[1]d^2/4 # Area of one shear plane\n", j)
+		case 11:
+			fmt.Fprintf(&b, "check tau_%[1]d_1 <= 200 MPa # Pin in double shear\n```\n\nAt the design pull the stress is {tau_%[1]d_1}, and the plate has to be thicker.\n", j)
+		default:
+			fmt.Fprintf(&b, "tau_%[1]d_%[2]d [MPa] = P_%[1]d/(2*A_%[1]d) + %[2]d*P_%[1]d/sqrt(A_%[1]d^2 + d_%[1]d^4) # Average shear stress in plane %[2]d\n", j, i%12)
+		}
+	}
+	return b.String()
+}
+
+// replay is what bare fpdf takes to draw what a layout draws: the same texts,
+// fills and faces in the same order.
+type replay struct {
+	paper paper
+	pages [][]any // text and fill, in page coordinates
+}
+
+func recorded(l *layout) *replay {
+	r := &replay{paper: l.paper}
+	for i, page := range l.pages {
+		var ops []any
+		put := func(k *ink, x, y float64) {
+			for _, f := range k.fills {
+				f.x, f.y = f.x+x, f.y+y
+				ops = append(ops, f)
+			}
+			for _, t := range k.texts {
+				t.x, t.y = t.x+x, t.y+y
+				ops = append(ops, t)
+			}
+		}
+		for _, s := range page {
+			for _, b := range s.bands {
+				ops = append(ops, fill{sideMargin + b.x, s.y, b.width, s.height, b.colour})
+			}
+		}
+		top := topMargin + stripHeight
+		if i == 0 {
+			top = l.title.height
+			put(&l.title.ink, sideMargin, topMargin)
+		} else {
+			k := l.strip("1 of 1")
+			put(&k, sideMargin, topMargin)
+		}
+		k := l.columns(l.paper.foot() - top)
+		put(&k, sideMargin, top)
+		for j := range page {
+			put(&page[j].ink, sideMargin, page[j].y)
+		}
+		r.pages = append(r.pages, ops)
+	}
+	return r
+}
+
+func (r *replay) run(b testing.TB) int {
+	f := fpdf.New("P", "pt", r.paper.name, "")
+	f.SetAutoPageBreak(false, 0)
+	f.SetCatalogSort(true)
+	f.SetCreationDate(fixedDate)
+	f.SetModificationDate(fixedDate)
+	known := map[string]bool{}
+	var st style
+	for _, ops := range r.pages {
+		f.AddPage()
+		for _, op := range ops {
+			switch op := op.(type) {
+			case fill:
+				if op.colour != st.colour {
+					f.SetFillColor(int(op.colour>>16), int(op.colour>>8&255), int(op.colour&255))
+					f.SetTextColor(int(op.colour>>16), int(op.colour>>8&255), int(op.colour&255))
+					st.colour = op.colour
+				}
+				f.Rect(op.x, op.y, op.w, op.h, "F")
+			case text:
+				if op.colour != st.colour {
+					f.SetFillColor(int(op.colour>>16), int(op.colour>>8&255), int(op.colour&255))
+					f.SetTextColor(int(op.colour>>16), int(op.colour>>8&255), int(op.colour&255))
+					st.colour = op.colour
+				}
+				if op.face != st.face || op.size != st.size {
+					if !known[op.face.Name+fmt.Sprint(op.face.Weight, op.face.Italic)] {
+						known[op.face.Name+fmt.Sprint(op.face.Weight, op.face.Italic)] = true
+						f.AddUTF8FontFromBytes(faceFamily(op.face), "", op.face.TTF)
+					}
+					f.SetFont(faceFamily(op.face), "", op.size)
+					st.face, st.size = op.face, op.size
+				}
+				f.Text(op.x, op.y, op.text)
+			}
+		}
+	}
+	var out bytes.Buffer
+	if err := f.Output(&out); err != nil {
+		b.Fatal(err)
+	}
+	return out.Len()
+}
+
+// BenchmarkWrite writes the PDF of a long calc, and beside it bare fpdf draws
+// the same runs and rules; x-replay is the ratio.
+func BenchmarkWrite(b *testing.B) {
+	for _, statements := range []int{600, 6000} {
+		b.Run(fmt.Sprint(statements, "-statements"), func(b *testing.B) {
+			p := pageOf(b, longCalc(statements), nil)
+			l := newDocument(p).layout()
+			r := recorded(l)
+			b.ReportMetric(float64(len(l.pages)), "pages")
+			b.ReportAllocs()
+			var own, bare time.Duration
+			b.ResetTimer()
+			for range b.N {
+				runtime.GC()
+				start := time.Now()
+				if _, err := Write(p, time.Time{}); err != nil {
+					b.Fatal(err)
+				}
+				own += time.Since(start)
+				b.StopTimer()
+				runtime.GC()
+				start = time.Now()
+				r.run(b)
+				bare += time.Since(start)
+				b.StartTimer()
+			}
+			b.ReportMetric(own.Seconds()/bare.Seconds(), "x-replay")
+			b.ReportMetric(bare.Seconds()*1000/float64(b.N), "replay-ms")
+		})
+	}
+}
