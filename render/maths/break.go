@@ -12,7 +12,7 @@ import "gusset/render/fonts"
 // and below that written out with a slash, which breaks again. A line without a
 // place to break, such as an endless name, is cut.
 func Break(c Chain, size, width float64) []Box {
-	s := &setter{size: size, text: fonts.Serif, metrics: fonts.MathMetrics()}
+	s := &setter{size: size, text: fonts.Serif, metrics: fonts.MathMetrics(), items: make([]Item, 0, 32)}
 	b := breaker{setter: s, width: width, st: style{display: true}, right: Open}
 	b.chain(c)
 	b.finish()
@@ -123,6 +123,9 @@ func (b *breaker) leading(p piece) piece {
 
 // add copies a part into the line.
 func (b *breaker) add(p part, x, y float64) {
+	if b.line.Items == nil {
+		b.line.Items = make([]Item, 0, min(len(b.items), 32))
+	}
 	for _, item := range b.items[p.from:p.to] {
 		item.X += x
 		item.Y += y

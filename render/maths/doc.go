@@ -27,7 +27,7 @@
 //	}
 //	html = maths.AppendChain(html, c)
 //	text = maths.AppendPlainChain(text, c)
-//	boxes := maths.Break(c, 11, 340)
+//	lines := maths.Break(c, 11, 340) // at 11 pt, in a column of 340 pt
 //
 // # Spacing
 //
@@ -46,4 +46,11 @@
 // name upright, in subscripts too. A quantity named by several letters is set
 // as one italic word, so that it is told from units and functions; figures
 // at its end are upright.
+//
+// # Deviations in a browser
+//
+// Chromium reserves the room of the widest root sign for each root, so a gap
+// stays behind narrow ones. It sets no thin space beside a fraction, and cannot
+// break a line inside of brackets: a formula that is too long even so scrolls.
+// Its selection puts every token on a line of its own when it is copied.
 package maths

@@ -168,10 +168,15 @@ func (w *markup) math(list []Node, prev Class) {
 
 // row writes a node as children of an element that groups by itself.
 func (w *markup) row(n Node, prev Class) {
-	if r, ok := n.(Row); ok {
-		w.list(atoms(nil, r), prev, false)
-	} else if n != nil {
-		w.list([]Node{n}, prev, false)
+	switch n := n.(type) {
+	case nil:
+	case Row:
+		var room [12]Node
+		w.list(atoms(room[:0], n), prev, false)
+	case Op:
+		w.operator(n, prev, false)
+	default:
+		w.node(n)
 	}
 }
 
@@ -180,18 +185,23 @@ func (w *markup) row(n Node, prev Class) {
 func (w *markup) list(list []Node, prev Class, parted bool) {
 	for i, n := range list {
 		if o, ok := n.(Op); ok {
-			switch {
-			case signs(o, prev):
-				w.op(o, "prefix")
-			case i == 0 && parted && o.Class != Ord:
-				w.op(o, "infix")
-			default:
-				w.op(o, "")
-			}
+			w.operator(o, prev, i == 0 && parted)
 		} else {
 			w.node(n)
 		}
 		_, prev = n.edges()
+	}
+}
+
+// operator writes an operator in the form that its place asks for.
+func (w *markup) operator(o Op, prev Class, parted bool) {
+	switch {
+	case signs(o, prev):
+		w.op(o, "prefix")
+	case parted && o.Class != Ord:
+		w.op(o, "infix")
+	default:
+		w.op(o, "")
 	}
 }
 
