@@ -205,6 +205,7 @@ func article(word string) string {
 // offer adds the names in scope that have a dimension to a hint.
 func (l *lower) offer(words string, dim units.Dimension) []string {
 	names := l.e.inScope(func(d *Def) bool { return d.Type.Kind == Number && d.Type.Dim == dim && !d.Failed })
+	sort.SliceStable(names, func(i, j int) bool { return !strings.Contains(names[i], ".") && strings.Contains(names[j], ".") })
 	if len(names) == 0 {
 		return []string{words}
 	}

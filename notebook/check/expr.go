@@ -146,36 +146,45 @@ func (l *lower) literalUnits(x *syntax.Number) {
 		if !p.HasUnit {
 			continue
 		}
+		spelled := l.e.src.Slice(p.At)
+		var values []units.NameAt
 		for i, at := range p.Unit.Names() {
 			d := l.e.lookup(syntax.Canonical(at.Name))
-			if d == nil || d.IsConst {
-				continue
-			}
-			spelled := l.e.src.Slice(p.At)
 			switch {
+			case d == nil || d.IsConst:
 			case i == 0 && p.Touch:
 				l.fail(diag.AmbiguousUnit, p.At.To(p.UnitAt),
 					fmt.Sprintf("`%s%s` may be %s times the value %s, or %s %s", spelled, at.Name, spelled, at.Name, spelled, at.Name),
 					fmt.Sprintf("write `%s*%s` for the product, `%s %s` for the unit", spelled, at.Name, spelled, at.Name))
 			case at.After == "/" || at.After == "*":
-				l.spaced = append(l.spaced, spacedUnit(spelled, p.Unit.String(), at))
-				if !l.declared {
-					l.report(diag.Warning, diag.AmbiguousUnit, p.UnitAt,
-						fmt.Sprintf("`%s` in `%s` is read as the unit, though %s is also a value (line %d)", at.Name, p.Unit, at.Name, d.Line),
-						fmt.Sprintf("write `%s` for the value, or declare the line's unit to keep the unit", spacedUnit(spelled, p.Unit.String(), at)))
-				}
+				values = append(values, at)
 			}
+		}
+		if len(values) == 0 {
+			continue
+		}
+		spaced := spacedUnit(spelled, p.Unit.String(), values)
+		l.spaced = append(l.spaced, spaced)
+		for _, at := range values {
+			if l.declared {
+				break
+			}
+			l.report(diag.Warning, diag.AmbiguousUnit, p.UnitAt,
+				fmt.Sprintf("`%s` in `%s` is read as the unit, though %s is also a value (line %d)", at.Name, p.Unit, at.Name, l.e.lookup(syntax.Canonical(at.Name)).Line),
+				fmt.Sprintf("write `%s` for the value, or declare the line's unit to keep the unit", spaced))
 		}
 	}
 }
 
 // spacedUnit spells `48 kN/L` as `48 kN / L`.
-func spacedUnit(figures, unit string, at units.NameAt) string {
-	cut := at.Start
-	for cut > 0 && (unit[cut-1] == '/' || unit[cut-1] == '*') {
-		cut--
+func spacedUnit(figures, unit string, values []units.NameAt) string {
+	for i := len(values) - 1; i >= 0; i-- {
+		at := values[i].Start
+		if at > 0 && (unit[at-1] == '/' || unit[at-1] == '*') {
+			unit = unit[:at-1] + " " + unit[at-1:at] + " " + unit[at:]
+		}
 	}
-	return fmt.Sprintf("%s %s %s %s", figures, unit[:cut], unit[cut:at.Start], unit[at.Start:])
+	return figures + " " + unit
 }
 
 func freqOf(u units.Unit) Freq {

@@ -334,8 +334,17 @@ func (m *machine) outside(p *check.Plan, s *syntax.Needs, g *frame, t *check.Typ
 	return out
 }
 
-// show is one entry of a node as text in its printed unit.
+// show is one entry of a node as text: the author's own figures of a literal
+// or a given, else the value in its printed unit.
 func (m *machine) show(n *check.Node, f *frame, target *check.Type, entry int) string {
+	if lit, ok := n.Expr.(*syntax.Number); ok && n.Op == check.Const && lit.Pieces[0].HasUnit {
+		return PlainText(printLiteral(&Step{Literal: lit}))
+	}
+	if n.Op == check.Load {
+		if s := m.stepFor(n.Def, f); s != nil && s.Literal != nil {
+			return PlainText(s.Printed(0))
+		}
+	}
 	x, err := m.entry(n, f, target, entry)
 	if err != nil {
 		return "not known"

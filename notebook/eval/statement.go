@@ -317,6 +317,9 @@ func (m *machine) firstOf(fo *check.FirstOf, f *frame, t *check.Type, entry int,
 		}
 	}
 	last := PlainText(step.Value.Printed(0, step.Unit, step.Figures))
+	if fo.Column == nil {
+		last = m.candidateText(fo.Values[count-1], last)
+	}
 	return nil, 0, &fault{id: diag.OutOfRange, at: fo.Expr.At, message: fmt.Sprintf("none of the %d candidates will do: the last, %s, misses with %s", count, last, why),
 		hints: []string{"add a further candidate, or change what the condition asks"}}
 }
