@@ -153,10 +153,10 @@ func (p *parser) checkBranches(def *Definition) bool {
 		p.fail(at, diag.Syntax, "a branch needs its condition: `if …`, or `otherwise` for the last one", "write "+quoted(p.src.Slice(at)+" otherwise"))
 		return true
 	}
-	if len(def.Where) > 0 && def.Unit == nil {
+	if len(def.Where) > 0 && (def.Unit == nil || def.Unit.Quantity != "" && def.Unit.Quantity != "number") {
 		p.tok = tEnd
 		p.fail(def.Name.At, diag.Syntax, fmt.Sprintf("`where` takes plain numbers, so %s needs the unit that the result is in", quoted(def.Name.Text)),
-			"declare it behind the name, as in `M_y [N*mm] = …`")
+			"declare it behind the name, as in `M_y [N*mm] = …`, or `[number]`")
 		return true
 	}
 	return false

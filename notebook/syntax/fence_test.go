@@ -168,6 +168,16 @@ func TestLinesInQuote(t *testing.T) {
 	}
 }
 
+// Line endings of another system change nothing.
+func TestCarriageReturns(t *testing.T) {
+	for _, test := range blockTests {
+		want := tree(t, test.info, test.content)
+		if got := tree(t, test.info, strings.ReplaceAll(test.content, "\n", "\r\n")); got != want {
+			t.Errorf("%s: got\n%s\nwant\n%s", test.name, got, want)
+		}
+	}
+}
+
 func TestWarningKeepsStatement(t *testing.T) {
 	for _, source := range []string{"c = 3 J/kg*K", "c [J/kg*K] = a"} {
 		src, b, diags := parseCalc(source)

@@ -227,6 +227,8 @@ var mistakes = []struct{ source, id, under, corrected string }{
 	{"k = 3 if a < b\n= first of 3, 4 with k > 2", "syntax", "first", ""},
 	// where
 	{"M = 0.3*d^2.6 where d [mm]", "syntax", "M", "M [N*mm] = 0.3*d^2.6 where d [mm]"},
+	{"M [moment] = 0.3*d^2.6 where d [mm]", "syntax", "M", "M [N*mm] = 0.3*d^2.6 where d [mm]"},
+	{"k = 0.3*d where d [mm]", "syntax", "k", "k [number] = 0.3*d where d [mm]"},
 	{"M [kN] = 2*d where d", "syntax", "d", "M [kN] = 2*d where d [mm]"},
 	{"M [kN] = 2*d where", "syntax", "where", "M [kN] = 2*d where d [mm]"},
 	{"M [kN] = 2*d where d [length]", "syntax", "[length]", "M [kN] = 2*d where d [mm]"},
