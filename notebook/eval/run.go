@@ -84,7 +84,7 @@ func (m *machine) load0() {
 		s := &Step{Kind: Constant, ID: d.ID, Symbol: d.Symbol, Value: from.Value, Figures: m.figures(), Origin: &origin, Note: from.Note, Picks: from.Picks}
 		s.Unit = m.unitFor(d.Type)
 		if from.Declared || from.Kind == Given || from.Kind == Carried {
-			s.Unit, s.Literal, s.Negated = from.Unit, from.Literal, from.Negated
+			s.Unit, s.Literal, s.Negated, s.Cells = from.Unit, from.Literal, from.Negated, from.Cells
 		}
 		m.top.vals[d.Slot], m.top.steps[d.Slot] = from.Value, s
 		if from.Picks != nil {

@@ -164,7 +164,7 @@ func (m *machine) carriedLine(p *check.Plan, f *frame, step *Step) {
 		step.Unit = from.Unit
 	}
 	if step.Unit.Equal(from.Unit) {
-		step.Literal, step.Negated = from.Literal, from.Negated
+		step.Literal, step.Negated, step.Cells = from.Literal, from.Negated, from.Cells
 	}
 }
 
