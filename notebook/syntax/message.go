@@ -124,8 +124,12 @@ func (p *parser) sideBySide() {
 			fmt.Sprintf("a product is written with `*`; the unit of a result is declared behind its name, as in `x [%s] = …`", p.here()))
 		return
 	}
+	times := "*"
+	if p.prev == tNumber && !isDigit(left[len(left)-1]) {
+		times = " * " // tight, it might be read as part of the unit
+	}
 	p.syntax(from, end, fmt.Sprintf("%s and %s stand side by side without an operator", quoted(left), quoted(right)),
-		"for a product write "+quoted(left+"*"+right))
+		"for a product write "+quoted(left+times+right))
 }
 
 // unitInParts reports a unit with a blank inside: `5 kN m`, `20 deg C`. The

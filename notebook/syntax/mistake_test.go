@@ -100,6 +100,7 @@ var mistakes = []struct{ source, id, under, corrected string }{
 	{"x = P kN", "syntax", "kN", "x = P*1 kN"},
 	// operators and brackets
 	{"x = 2 (a+b)", "syntax", "2 (a+b)", "x = 2*(a+b)"},
+	{"x = 2 kN (m)", "syntax", "2 kN (m)", "x = 2 kN * (m)"},
 	{"x = 2(a+b)", "syntax", "2(a+b)", "x = 2*(a+b)"},
 	{"x = (a) (b + c)", "syntax", "(a) (b + c)", "x = (a)*(b + c)"},
 	{"x = f(a) b", "syntax", "f(a) b", "x = f(a)*b"},
