@@ -24,6 +24,19 @@ func compile(t testing.TB, body string, more ...string) *notebook.Sheet {
 	return notebook.Compile(&notebook.Context{FS: root, Panics: true}, "calc.md")
 }
 
+// compileText compiles a block behind a table.
+func compileText(lines, table string) *notebook.Sheet {
+	root := fstest.MapFS{"calc.md": &fstest.MapFile{Data: []byte(front + table + endTable(table) + lines)}}
+	return notebook.Compile(&notebook.Context{FS: root, Panics: true}, "calc.md")
+}
+
+func endTable(table string) string {
+	if table == "" {
+		return ""
+	}
+	return "```\n"
+}
+
 // sound compiles and fails the test on any error.
 func sound(t testing.TB, body string, more ...string) *notebook.Sheet {
 	t.Helper()
