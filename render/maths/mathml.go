@@ -15,7 +15,7 @@ math :is(mi,mn,mtext){font-family:"Plex Serif",serif}
 math mi{font-style:italic;text-transform:none}
 math mi.f{font-style:normal}
 math .g{font-weight:600}
-math mtext.l{line-height:0}
+math mn.l{line-height:0}
 math a{color:inherit;text-decoration:none}
 math a:is(:hover,:focus){text-decoration:underline;text-decoration-thickness:.06em;text-underline-offset:.2em}
 math mtd{text-align:left;padding:.15em .5em .15em 0}
@@ -318,13 +318,14 @@ func (w *markup) tag(open string, governs bool, text, end string) {
 	w.raw(end)
 }
 
-// link opens a link, if there is one. MathML Core has no links of its own, but
-// mtext may hold HTML, and that a formula again.
+// link opens a link, if there is one. MathML Core has no links of its own, but a
+// token may hold HTML, and that a formula again. The token is no mtext, which
+// counts as space: an operator between two of them would lose its own.
 func (w *markup) link(r Ref) {
 	if r.Target == "" && r.Tip == "" {
 		return
 	}
-	w.raw(`<mtext class="l"><a`)
+	w.raw(`<mn class="l"><a`)
 	if r.Target != "" {
 		w.raw(` href="#`)
 		w.text(r.Target)
@@ -344,7 +345,7 @@ func (w *markup) unlink(r Ref) {
 	if r.Target == "" && r.Tip == "" {
 		return
 	}
-	w.raw("</math></a></mtext>")
+	w.raw("</math></a></mn>")
 }
 
 // symbol writes a quantity's name, with the superscript of a script about it.
