@@ -221,7 +221,7 @@ func (c *checker) notes() {
 		if !p.IsGiven || p.Def == nil || p.Failed {
 			continue
 		}
-		source, at := "", p.Def.At
+		source, at, shipped := "", p.Def.At, false
 		if d, ok := p.Stmt.(*syntax.Definition); ok {
 			source = d.Note.Source
 		} else if b := c.in.Blocks[p.Block]; b.Table != nil {
@@ -231,12 +231,13 @@ func (c *checker) notes() {
 			}
 			noted[b.Table] = true
 			at = b.Table.At
+			_, shipped = c.in.Library.Tables[b.Table.From] // nobody needs all its columns
 		}
 		if source == "" {
 			c.report(diag.Diagnostic{Severity: diag.Note, ID: diag.NoSource, Source: c.in.Source, Span: at,
 				Message: fmt.Sprintf("%s is given without a source", givenName(c, p)), Hints: []string{"a source stands in brackets at the end of the note: `# note [source]`"}})
 		}
-		if !p.Def.used && (p.Column == nil || p.Def.Type.Kind != Text) {
+		if !p.Def.used && !shipped && (p.Column == nil || p.Def.Type.Kind != Text) {
 			c.report(diag.Diagnostic{Severity: diag.Note, ID: diag.UnusedValue, Source: c.in.Source, Span: p.Def.At,
 				Message: fmt.Sprintf("%s is given but not used", p.Def.Symbol)})
 		}
