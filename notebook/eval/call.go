@@ -2,6 +2,7 @@ package eval
 
 import (
 	"fmt"
+	"strings"
 
 	"gusset/notebook/check"
 	"gusset/notebook/diag"
@@ -246,9 +247,14 @@ func (m *machine) helperBody(hc *check.HelperCall, g *frame, call *Call) error {
 		if err != nil {
 			return m.inHelper(err, hc)
 		}
-		if step != nil {
-			call.Steps = append(call.Steps, step)
+		if step == nil {
+			continue
 		}
+		if text, ok := strings.CutPrefix(step.Note, "Caution: "); ok && step.Kind == NoteLine {
+			call.Cautions = append(call.Cautions, text)
+			continue
+		}
+		call.Steps = append(call.Steps, step)
 	}
 	return nil
 }
