@@ -26,16 +26,12 @@ func mustDim(unit string) units.Dimension {
 
 // pieceSI is the value of one number with its unit in coherent SI, rounded once.
 func pieceSI(p syntax.Piece, negative bool) float64 {
-	sign := 1.0
-	if negative {
-		sign = -1
-	}
-	if !p.HasUnit {
-		if mant, exp, ok := p.Decimal(); ok && exp >= -22 && exp <= 22 {
-			if exp < 0 {
-				return sign * float64(mant) / pow10[-exp]
+	if mant, exp, ok := p.Decimal(); ok {
+		if si, ok := p.Unit.DecimalToSI(mant, exp); ok {
+			if negative {
+				return -si
 			}
-			return sign * float64(mant) * pow10[exp]
+			return si
 		}
 	}
 	r, err := p.Rat()
@@ -45,14 +41,8 @@ func pieceSI(p syntax.Piece, negative bool) float64 {
 	if negative {
 		r.Neg(r)
 	}
-	if !p.HasUnit {
-		f, _ := r.Float64()
-		return f
-	}
 	return p.Unit.LiteralToSI(r)
 }
-
-var pow10 = [...]float64{1e0, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10, 1e11, 1e12, 1e13, 1e14, 1e15, 1e16, 1e17, 1e18, 1e19, 1e20, 1e21, 1e22}
 
 // describe says what a value is, in words and in the unit it would be printed
 // in: "a force (kN)", "a plain number", "a temperature point (°C)".

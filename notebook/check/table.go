@@ -300,6 +300,11 @@ func (t *tableCheck) cell(l *lower, cell *syntax.Cell, col *syntax.Column, d *De
 		}
 		return l.fail(diag.Syntax, cell.At, fmt.Sprintf("`%s` under %s cannot be read as a number", cell.Text, col.Name.Text))
 	}
+	if cell.Err != nil {
+		e := *cell.Err // a warning, since the cell could be read
+		e.Source = t.src
+		t.c.report(e)
+	}
 	n := l.value(cell.Expr)
 	if !n.ok() {
 		return n
@@ -335,14 +340,24 @@ func (t *tableCheck) cell(l *lower, cell *syntax.Cell, col *syntax.Column, d *De
 
 // bareNumber tells that a cell is a number without a unit, whose unit is the header's.
 func bareNumber(n *Node) bool {
-	return n.Type.Kind == Number && n.Type.Dim.IsNumber() && n.plain && n.rat() != nil
+	if n.Type.Kind != Number || !n.Type.Dim.IsNumber() || !n.plain {
+		return false
+	}
+	if lit, ok := n.Expr.(*syntax.Number); ok && n.Op == Const {
+		return !lit.Pieces[0].HasUnit
+	}
+	return n.rat() != nil
 }
 
 // inUnit is a bare number under a header's unit, exact to the last bit.
 func inUnit(n *Node, u units.Unit, t Type) *Node {
-	out := *n
-	out.Op, out.Args, out.bare, out.zero, out.exact, out.plain = Const, nil, false, false, nil, false
-	out.Type = Type{Kind: t.Kind, Dim: t.Dim, Freq: t.Freq}
+	out := &Node{Op: Const, Expr: n.Expr, Type: Type{Kind: t.Kind, Dim: t.Dim, Freq: t.Freq}}
+	if lit, ok := n.Expr.(*syntax.Number); ok && n.Op == Const {
+		p := lit.Pieces[0]
+		p.Unit = u
+		out.Num = pieceSI(p, lit.Neg)
+		return out
+	}
 	out.Num = u.LiteralToSI(n.rat())
-	return &out
+	return out
 }

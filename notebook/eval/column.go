@@ -95,16 +95,13 @@ func (m *machine) column(n *check.Node, f *frame, target *check.Type) []float64 
 	out := make([]float64, count)
 	last := p.registers - 1
 	run := func(lo, hi int) {
-		regs := make([][]float64, p.registers)
-		buf := make([]float64, p.registers*block)
-		for i := range regs {
-			regs[i] = buf[i*block : (i+1)*block]
-		}
+		regs, buf := p.scratch()
 		for at := lo; at < hi; at += block {
 			end := min(at+block, hi)
+			regs[last] = out[at:end] // the last operation writes where it belongs
 			p.run(regs, sources, at, end)
-			copy(out[at:end], regs[last])
 		}
+		scratch.Put(buf)
 	}
 	if count < 16*block {
 		run(0, count)
@@ -120,6 +117,27 @@ func (m *machine) column(n *check.Node, f *frame, target *check.Type) []float64 
 	run(half, count)
 	wg.Wait()
 	return out
+}
+
+// scratch keeps the registers' memory between columns.
+var scratch = sync.Pool{New: func() any { return new([]float64) }}
+
+// scratch returns the program's registers but the last, constants filled in.
+func (p *columnProgram) scratch() ([][]float64, *[]float64) {
+	buf := scratch.Get().(*[]float64)
+	if need := (p.registers - 1) * block; cap(*buf) < need {
+		*buf = make([]float64, need)
+	}
+	regs := make([][]float64, p.registers)
+	for i := range regs[:p.registers-1] {
+		regs[i] = (*buf)[:cap(*buf)][i*block : (i+1)*block]
+		if n := p.ops[i].node; n.Op == check.Const {
+			for k := range regs[i] {
+				regs[i][k] = n.Num
+			}
+		}
+	}
+	return regs, buf
 }
 
 func sameRows(a, b []*check.Rows) bool {
@@ -340,9 +358,10 @@ func (p *columnProgram) run(regs [][]float64, sources []source, lo, hi int) {
 		arg := func(k int) []float64 { return regs[op.args[k]][:n] }
 		switch op.node.Op {
 		case check.Const:
-			x := op.node.Num
-			for i := range dst {
-				dst[i] = x
+			if i == len(p.ops)-1 {
+				for k := range dst {
+					dst[k] = op.node.Num
+				}
 			}
 		case check.Neg:
 			x := arg(0)

@@ -8,7 +8,6 @@ import (
 	"testing"
 
 	"pgregory.net/rapid"
-
 )
 
 // expression draws a random expression of plain numbers over the names a, b
@@ -113,7 +112,9 @@ func TestColumnsAgree(t *testing.T) {
 func names(x string, rewrite func(string) string) string {
 	var b strings.Builder
 	for i := 0; i < len(x); i++ {
-		letter := func(j int) bool { return j >= 0 && j < len(x) && (x[j] >= 'a' && x[j] <= 'z' || x[j] >= '0' && x[j] <= '9') }
+		letter := func(j int) bool {
+			return j >= 0 && j < len(x) && (x[j] >= 'a' && x[j] <= 'z' || x[j] >= '0' && x[j] <= '9')
+		}
 		if (x[i] == 'a' || x[i] == 'b') && !letter(i-1) && !letter(i+1) {
 			b.WriteString(rewrite(x[i : i+1]))
 			continue
@@ -237,4 +238,3 @@ func (p *oracle) unary() (*big.Float, float64) {
 }
 
 func float(x *big.Float) float64 { f, _ := x.Float64(); return f }
-
