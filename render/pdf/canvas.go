@@ -35,10 +35,11 @@ func newCanvas(p paper) *canvas {
 	c.pdf.SetMargins(0, 0, 0)
 	c.pdf.SetAutoPageBreak(false, 0)
 	c.pdf.SetCatalogSort(true)
+	c.pdf.SetCompression(false) // see squeeze
 	return c
 }
 
-// draw draws ink at a place of the page. Fills come first.
+// draw draws ink at a place of the page, what lies under the rest first.
 func (c *canvas) draw(k *ink, x, y float64) {
 	for _, f := range k.fills {
 		c.fill(x+f.x, y+f.y, f.w, f.h, f.colour)
@@ -47,13 +48,31 @@ func (c *canvas) draw(k *ink, x, y float64) {
 		p := &k.pictures[i]
 		c.picture(p, x+p.x, y+p.y)
 	}
-	for i := range k.shapes {
-		s := &k.shapes[i]
-		c.shape(s, x+s.x, y+s.y)
-	}
 	for i := range k.texts {
 		t := &k.texts[i]
 		c.text(t, x+t.x, y+t.y)
+	}
+	for i := range k.formulas {
+		c.formula(&k.formulas[i], x, y)
+	}
+}
+
+func (c *canvas) formula(m *formula, x, y float64) {
+	x, y = x+m.x, y+m.y
+	for i := range m.items {
+		item := &m.items[i]
+		atX, atY := x+item.X*m.scale, y+item.Y*m.scale
+		switch item.Kind {
+		case maths.Rule:
+			c.fill(atX, atY, item.Width*m.scale, item.Height*m.scale, m.colour)
+		case maths.Outline:
+			c.use(m.colour)
+			c.outline(item.Path, atX, atY, item.Size*m.scale/1000)
+		default:
+			c.use(m.colour)
+			c.setFont(item.Face, item.Size*m.scale)
+			c.pdf.Text(atX, atY, item.Text)
+		}
 	}
 }
 
@@ -75,10 +94,7 @@ func (c *canvas) use(to colour) {
 
 func (c *canvas) text(t *text, x, y float64) {
 	c.use(t.colour)
-	if c.face != t.face || c.size != t.size {
-		c.pdf.SetFont(c.familyOf(t.face), "", t.size)
-		c.face, c.size = t.face, t.size
-	}
+	c.setFont(t.face, t.size)
 	if t.tracked != 0 {
 		c.pdf.RawWriteStr(strconv.FormatFloat(t.tracked, 'f', 2, 64) + " Tc")
 	}
@@ -88,15 +104,20 @@ func (c *canvas) text(t *text, x, y float64) {
 	}
 }
 
+func (c *canvas) setFont(face *fonts.Face, size float64) {
+	if c.face != face || c.size != size {
+		c.pdf.SetFont(c.familyOf(face), "", size)
+		c.face, c.size = face, size
+	}
+}
+
 // familyOf returns the name that the library knows a face by, and hands the
 // face over at its first use: each costs the library milliseconds.
 func (c *canvas) familyOf(face *fonts.Face) string {
 	name, ok := c.family[face]
 	if !ok {
 		name = faceFamily(face)
-		// The library writes into the bytes of a face whose last glyphs share
-		// their widths, and the bytes are everyone's.
-		c.pdf.AddUTF8FontFromBytes(name, "", bytes.Clone(face.TTF))
+		c.pdf.AddUTF8FontFromBytes(name, "", face.TTF)
 		c.family[face] = name
 	}
 	return name
@@ -117,16 +138,16 @@ func (c *canvas) picture(p *picture, x, y float64) {
 	c.pdf.ImageOptions(p.image.name, x, y, p.w, p.h, false, fpdf.ImageOptions{AllowNegativePosition: true}, 0, "")
 }
 
-// shape fills an outline. Fonts have quadratic curves and PDF cubic ones.
-func (c *canvas) shape(s *shape, x, y float64) {
-	c.use(s.colour)
+// outline fills a path from a font, whose y points up. Fonts have quadratic
+// curves and PDF cubic ones.
+func (c *canvas) outline(path []maths.Segment, x, y, scale float64) {
 	_, height := c.pdf.GetPageSize()
 	y = height - y
 	b := c.path[:0]
 	var atX, atY float64
 	started := false
-	for _, g := range s.path {
-		toX, toY := x+g.P.X*s.scale, y+g.P.Y*s.scale
+	for _, g := range path {
+		toX, toY := x+g.P.X*scale, y+g.P.Y*scale
 		switch g.Kind {
 		case maths.Move:
 			if started {
@@ -137,7 +158,7 @@ func (c *canvas) shape(s *shape, x, y float64) {
 		case maths.Line:
 			b = append(appendPoint(b, toX, toY), "l\n"...)
 		case maths.Curve:
-			cx, cy := x+g.C.X*s.scale, y+g.C.Y*s.scale
+			cx, cy := x+g.C.X*scale, y+g.C.Y*scale
 			b = appendPoint(b, atX+(cx-atX)*2/3, atY+(cy-atY)*2/3)
 			b = appendPoint(b, toX+(cx-toX)*2/3, toY+(cy-toY)*2/3)
 			b = append(appendPoint(b, toX, toY), "c\n"...)

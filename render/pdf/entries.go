@@ -108,22 +108,12 @@ func (r *row) formula(c maths.Chain, size float64, tallest float64) {
 	}
 }
 
-// scaled is a box set smaller.
+// scaled is a formula's box set smaller.
 func (b *box) scaled(k float64) *box {
 	out := &box{width: b.width * k, ascent: b.ascent * k, descent: b.descent * k}
-	for _, f := range b.ink.fills {
-		out.ink.fill(f.x*k, f.y*k, f.w*k, f.h*k, f.colour)
-	}
-	for _, s := range b.ink.shapes {
-		s.x, s.y, s.scale = s.x*k, s.y*k, s.scale*k
-		out.ink.shapes = append(out.ink.shapes, s)
-	}
-	for _, t := range b.ink.texts {
-		t.x, t.y, t.size = t.x*k, t.y*k, t.size*k
-		out.ink.texts = append(out.ink.texts, t)
-	}
-	for _, a := range b.ink.areas {
-		out.ink.areas = append(out.ink.areas, area{a.x * k, a.y * k, a.w * k, a.h * k, a.link})
+	for _, m := range b.ink.formulas {
+		m.scale *= k
+		out.ink.formulas = append(out.ink.formulas, m)
 	}
 	return out
 }
@@ -177,19 +167,14 @@ func isPunctuation(s string) bool {
 }
 
 // finish puts the reference and output columns beside the parts of an entry
-// and pushes it: as one slab, or part by part where it is too tall for that.
+// and pushes it, all parts kept together.
 func (b *prose) finish(r *row, e *render.Entry, pad float64) {
 	if len(r.slabs) == 0 {
 		r.push(slab{height: noteVoice.leading, baseline: 0.72 * noteVoice.leading})
 	}
 	parts := r.slabs
-	for i := 1; i < len(parts); i++ {
-		parts[i].height += parts[i].gap
-		shiftDown(&parts[i], parts[i].gap)
-		parts[i].gap = 0
-	}
-	parts[0].height += pad
-	shiftDown(&parts[0], pad)
+	parts[0].gap = 0
+	parts[0].pad, parts[0].height, parts[0].baseline = pad, parts[0].height+pad, parts[0].baseline+pad
 	parts[len(parts)-1].height += pad
 	b.references(parts, e)
 	if e.Kind == render.Check {
@@ -197,45 +182,28 @@ func (b *prose) finish(r *row, e *render.Entry, pad float64) {
 	} else {
 		b.outputBeside(&parts[min(r.output, len(parts)-1)], e)
 	}
-	if height(parts) <= b.doc.tallest() {
-		parts = []slab{stack(parts)}
+	if e.Anchor != "" {
+		b.anchors = append(b.anchors, e.Anchor)
 	}
-	first := len(b.slabs)
 	for i := range parts {
 		parts[i].keep = i < len(parts)-1
 		if e.Kind == render.Check {
 			x, width := b.doc.paper.calculation()
-			parts[i].bands = append(parts[i].bands, band{
+			parts[i].bands = []band{{
 				x: x - calculationPad, width: width + 2*calculationPad + outputWidth,
 				colour: washColour, starts: i == 0,
-			})
+			}}
 		}
 		b.push(parts[i])
 	}
-	if e.Anchor != "" {
-		b.slabs[first].anchors = append(b.slabs[first].anchors, e.Anchor)
-	}
-}
-
-// shiftDown moves what a slab draws down by h, into space that it has gained.
-func shiftDown(s *slab, h float64) {
-	if h == 0 {
-		return
-	}
-	moved := ink{}
-	moved.add(&s.ink, 0, h)
-	s.ink = moved
-	s.baseline += h
 }
 
 // references sets the number and the sources flush right in their column,
 // from the first baseline down. Parts grow where there are many.
 func (b *prose) references(parts []slab, e *render.Entry) {
 	const leading = 10.4
-	y := parts[0].baseline
-	if y == 0 {
-		y = 0.72 * noteVoice.leading
-	}
+	pad := parts[0].pad
+	y := parts[0].baseline - pad
 	k := &parts[0].ink
 	width := referenceWidth - referencePad
 	if e.Number != "" {
@@ -257,7 +225,7 @@ func (b *prose) references(parts []slab, e *render.Entry) {
 			y += leading
 		}
 	}
-	if lack := y - leading + 4 - height(parts); lack > 0 {
+	if lack := pad + y - leading + 4 - height(parts); lack > 0 {
 		parts[len(parts)-1].height += lack
 	}
 }
@@ -266,7 +234,7 @@ func (b *prose) references(parts []slab, e *render.Entry) {
 // and its mark below.
 func (b *prose) outputBeside(s *slab, e *render.Entry) {
 	x, width := b.doc.paper.output()
-	y := s.baseline
+	y := s.baseline - s.pad
 	if e.Output != nil {
 		p := b.doc.outputWords(e.Output, width)
 		p = p.fitted(width)
@@ -289,7 +257,7 @@ func (b *prose) outputBeside(s *slab, e *render.Entry) {
 		}
 		y = b.doc.smallOutput(s, e.Mark, y)
 	}
-	s.height = math.Max(s.height, y+5)
+	s.height = math.Max(s.height, s.pad+y+5)
 }
 
 const outputLeading = 13.0

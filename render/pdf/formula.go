@@ -11,31 +11,11 @@ const (
 	smallSize   = 9.0
 )
 
-// mathsBox takes a formula that was set for paper into a box of ours.
+// mathsBox makes a box of a formula that was set for paper.
 func mathsBox(m *maths.Box, c colour) *box {
-	b := &box{width: m.Width, ascent: m.Ascent, descent: m.Descent}
-	for i := range m.Items {
-		item := &m.Items[i]
-		switch item.Kind {
-		case maths.Rule:
-			b.ink.fill(item.X, item.Y, item.Width, item.Height, c)
-		case maths.Outline:
-			b.ink.shapes = append(b.ink.shapes, shape{
-				x: item.X, y: item.Y, scale: item.Size / 1000, path: item.Path, colour: c,
-			})
-		default:
-			b.ink.texts = append(b.ink.texts, text{
-				x: item.X, y: item.Y, text: item.Text,
-				style: style{face: item.Face, size: item.Size, colour: c},
-			})
-			if item.Link != "" {
-				b.ink.areas = append(b.ink.areas, area{
-					item.X, item.Y - 0.8*item.Size, item.Width, 1.05 * item.Size, "#" + item.Link,
-				})
-			}
-		}
-	}
-	return b
+	return &box{width: m.Width, ascent: m.Ascent, descent: m.Descent, ink: ink{
+		formulas: []formula{{scale: 1, items: m.Items, colour: c}},
+	}}
 }
 
 // besideFace is the face of figures and units beside a text.

@@ -96,13 +96,8 @@ func (f *flow) grid(v voice, build func(v voice) *grid, limit float64) {
 	}
 }
 
-func height(slabs []slab) float64 {
-	h := 0.0
-	for i := range slabs {
-		h += slabs[i].height
-	}
-	return h
-}
+// height is that of slabs with the gaps between them.
+func height(slabs []slab) float64 { return extent(slabs, false) - slabs[0].gap }
 
 // gridRow lays out a row: as one slab, or line by line where it is taller
 // than the limit.

@@ -41,9 +41,9 @@ func (s style) width(text string) float64 {
 // under everything else.
 type ink struct {
 	fills    []fill
-	shapes   []shape
 	pictures []picture
 	texts    []text
+	formulas []formula
 	areas    []area
 }
 
@@ -59,10 +59,11 @@ type text struct {
 	tracked float64 // space put behind each letter
 }
 
-// shape is a filled outline from a font, scaled from the font's units.
-type shape struct {
+// formula is what the maths set, from the left end of its baseline, all
+// lengths times the scale.
+type formula struct {
 	x, y, scale float64
-	path        []maths.Segment
+	items       []maths.Item
 	colour      colour
 }
 
@@ -87,9 +88,9 @@ func (k *ink) add(o *ink, x, y float64) {
 		f.x, f.y = f.x+x, f.y+y
 		k.fills = append(k.fills, f)
 	}
-	for _, s := range o.shapes {
-		s.x, s.y = s.x+x, s.y+y
-		k.shapes = append(k.shapes, s)
+	for _, m := range o.formulas {
+		m.x, m.y = m.x+x, m.y+y
+		k.formulas = append(k.formulas, m)
 	}
 	for _, p := range o.pictures {
 		p.x, p.y = p.x+x, p.y+y

@@ -112,7 +112,8 @@ func lineCost(set, width float64, words int, last bool) float64 {
 // set draws a line with its baseline at (x, y). Neighbours of one style are
 // one text: with ragged lines a line is mostly a single one.
 func (p *paragraph) set(k *ink, l line, x, y float64) {
-	d := lineDrawing{ink: k, line: l, at: x, y: y}
+	var room [160]byte
+	d := lineDrawing{ink: k, line: l, at: x, y: y, letters: room[:0]}
 	blank := 0.0
 	for i := l.from; i < l.to; i++ {
 		w := p.words[i]

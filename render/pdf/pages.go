@@ -1,10 +1,12 @@
 package pdf
 
 // slab is the smallest part of a page; it never breaks. Its ink is measured
-// from the left edge of the reference column and its own top edge.
+// from the left edge of the reference column and from below the padding at its
+// top edge, the baseline from the edge itself.
 type slab struct {
 	gap      float64 // space above it, which vanishes at the head of a page
 	height   float64
+	pad      float64
 	baseline float64 // of its first line of text, 0 where it has none
 	ink      ink
 	bands    []band

@@ -34,23 +34,40 @@ func (l *layout) placesOf(c *canvas) *places {
 // the document is left out.
 func (m *places) annotate(c *canvas, k *ink, x, y float64) {
 	for _, a := range k.areas {
-		id, internal := strings.CutPrefix(a.link, "#")
-		if !internal {
-			c.pdf.LinkString(x+a.x, y+a.y, a.w, a.h, a.link)
-			continue
-		}
-		to, ok := m.at[id]
-		if !ok {
-			continue
-		}
-		n, ok := m.links[id]
-		if !ok {
-			n = c.pdf.AddLink()
-			c.pdf.SetLink(n, max(to.y-6, 0), to.page)
-			m.links[id] = n
-		}
-		c.pdf.Link(x+a.x, y+a.y, a.w, a.h, n)
+		m.link(c, a.link, x+a.x, y+a.y, a.w, a.h)
 	}
+	for i := range k.formulas {
+		f := &k.formulas[i]
+		for j := range f.items {
+			if t := &f.items[j]; t.Link != "" {
+				size := t.Size * f.scale
+				m.jump(c, t.Link, x+f.x+t.X*f.scale, y+f.y+t.Y*f.scale-0.8*size, t.Width*f.scale, 1.05*size)
+			}
+		}
+	}
+}
+
+func (m *places) link(c *canvas, to string, x, y, w, h float64) {
+	if id, internal := strings.CutPrefix(to, "#"); internal {
+		m.jump(c, id, x, y, w, h)
+	} else {
+		c.pdf.LinkString(x, y, w, h, to)
+	}
+}
+
+// jump puts a link to an anchor on the page.
+func (m *places) jump(c *canvas, id string, x, y, w, h float64) {
+	to, ok := m.at[id]
+	if !ok {
+		return
+	}
+	n, ok := m.links[id]
+	if !ok {
+		n = c.pdf.AddLink()
+		c.pdf.SetLink(n, max(to.y-6, 0), to.page)
+		m.links[id] = n
+	}
+	c.pdf.Link(x, y, w, h, n)
 }
 
 // bookmark adds a heading to the outline. A reader takes levels that grow one

@@ -33,7 +33,7 @@ func (b *prose) verdictBeside(parts []slab, e *render.Entry) {
 		parts[len(parts)-1].height += lack
 		whole += lack
 	}
-	parts[0].ink.add(&s.ink, 0, (whole-low)/2)
+	parts[0].ink.add(&s.ink, 0, (whole-low)/2-parts[0].pad)
 }
 
 // verdict sets the utilisation and the word for it on a baseline, and the bar

@@ -45,8 +45,11 @@ const (
 // write appends a text in a style. Blanks and ends of lines in it part words.
 func (p *paragraph) write(st style, s string) {
 	s = settable(s)
+	if p.words == nil {
+		p.words, p.pieces = make([]word, 0, len(s)/6+2), make([]piece, 0, len(s)/6+2)
+	}
 	for s != "" {
-		i := strings.IndexAny(s, " \u200B")
+		i := blankOrBreak(s)
 		if i < 0 {
 			p.letters(st, s)
 			return
@@ -60,6 +63,16 @@ func (p *paragraph) write(st style, s string) {
 			s = s[i+len("\u200B"):]
 		}
 	}
+}
+
+// blankOrBreak is the first place in a text where it has a blank or a
+// zero-width space, -1 where it has none.
+func blankOrBreak(s string) int {
+	i := strings.IndexByte(s, ' ')
+	if j := strings.Index(s, "\u200B"); j >= 0 && (i < 0 || j < i) {
+		return j
+	}
+	return i
 }
 
 // verbatim appends a text whose blanks count. A line may break behind them.
@@ -114,6 +127,10 @@ func breaksBehind(r rune, before, after string, long bool) (cost float64, ok boo
 }
 
 func (p *paragraph) append(st style, s string) {
+	if hasAll(st.face, s) {
+		p.grow(piece{style: st, text: s, width: st.width(s)})
+		return
+	}
 	for _, sp := range spans(st.face, s) {
 		in := st.in(sp.face)
 		if sp.code != 0 {

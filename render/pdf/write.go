@@ -8,7 +8,6 @@
 package pdf
 
 import (
-	"bytes"
 	"time"
 
 	"gusset/render"
@@ -33,8 +32,8 @@ func (l *layout) write(date time.Time) ([]byte, error) {
 		l.bands(c, page)
 		l.furniture(c, i)
 		for j := range page {
-			c.draw(&page[j].ink, sideMargin, page[j].y)
-			marks.annotate(c, &page[j].ink, sideMargin, page[j].y)
+			c.draw(&page[j].ink, sideMargin, page[j].y+page[j].pad)
+			marks.annotate(c, &page[j].ink, sideMargin, page[j].y+page[j].pad)
 			if h := page[j].heading; h != nil && !page[j].repeat {
 				marks.bookmark(c, h, page[j].y)
 			}
@@ -43,11 +42,11 @@ func (l *layout) write(date time.Time) ([]byte, error) {
 			marks.annotate(c, &l.title.ink, sideMargin, topMargin)
 		}
 	}
-	var out bytes.Buffer
+	var out squeezer
 	if err := c.pdf.Output(&out); err != nil {
 		return nil, err
 	}
-	return out.Bytes(), nil
+	return out.file, nil
 }
 
 // properties sets the title, the author, the subject and the dates.
