@@ -38,7 +38,10 @@ func counted(r *eval.CheckResult, n int) string {
 			ng++
 		}
 	}
-	text := strconv.Itoa(n) + " entries checked, " + strconv.Itoa(ng) + " NG"
+	text := strconv.Itoa(n) + " entries checked, all OK"
+	if ng > 0 || free > 0 {
+		text = strconv.Itoa(n) + " entries checked, " + strconv.Itoa(ng) + " NG"
+	}
 	if free > 0 {
 		text += ", " + strconv.Itoa(free) + " not required"
 	}

@@ -138,6 +138,7 @@ func (c *composer) carried(s *eval.Step, e Entry) Entry {
 // function is the definition of a function of the author's own.
 func (c *composer) function(s *eval.Step, e Entry) Entry {
 	e.Kind = Definition
+	c.maths.Define(s)
 	d := s.Stmt.(*syntax.Definition)
 	e.Formula = maths.Chain{Left: c.signature(d.Name, d.Params), Steps: equal(c.maths.Function(d, s))}
 	e.Below = c.whereUnits(d, d.Unit)

@@ -110,8 +110,8 @@ func (c *composer) unsourced() []Unsourced {
 func (c *composer) defined() []*eval.Step {
 	var list []*eval.Step
 	for _, b := range c.sheet.Blocks {
-		for _, s := range b.Steps {
-			if s.ID == "" || s.Failed {
+		for i, s := range b.Steps {
+			if s.ID == "" || s.Failed || b.Rows != nil && i == b.Marks {
 				continue
 			}
 			if s.Value.Type.Kind != check.Bundle {
@@ -126,16 +126,39 @@ func (c *composer) defined() []*eval.Step {
 // symbols explains every symbol, Latin letters before Greek ones.
 func (c *composer) symbols() []SymbolLine {
 	steps := c.defined()
+	meaning := c.meanings()
 	slices.SortStableFunc(steps, func(a, b *eval.Step) int { return compareSymbols(c.maths.Plain(a), c.maths.Plain(b)) })
 	list := make([]SymbolLine, len(steps))
 	for i, s := range steps {
-		line := SymbolLine{Symbol: c.maths.Plain(s), Meaning: s.Note, Anchor: s.Anchor, Where: c.where(s)}
+		line := SymbolLine{Symbol: c.maths.Plain(s), Meaning: meaning(s), Anchor: s.Anchor, Where: c.where(s)}
 		if k := s.Value.Type.Kind; k == check.Number || k == check.Point {
 			line.Unit = c.maths.Unit(s.Unit)
 		}
 		list[i] = line
 	}
 	return list
+}
+
+// meanings tells what a symbol stands for: its note, for a column the name of
+// its schedule, for a result of a helper the note of the call.
+func (c *composer) meanings() func(*eval.Step) string {
+	other := map[*eval.Step]string{}
+	for _, b := range c.sheet.Blocks {
+		for _, s := range b.Steps {
+			if b.Rows != nil {
+				other[s] = "column of " + b.Name
+			}
+			for _, r := range s.Results {
+				other[r] = s.Note
+			}
+		}
+	}
+	return func(s *eval.Step) string {
+		if s.Note == "" {
+			return other[s]
+		}
+		return s.Note
+	}
 }
 
 // where is the number of a step, else of the section it stands in.

@@ -22,35 +22,39 @@ var kinds = [...]string{
 func (w *writer) entry(e *render.Entry) {
 	w.open(e)
 	w.references(e)
-	w.raw(`<div class="mid">`)
-	if e.Note != "" {
-		w.raw(`<div class="note">`)
-		w.text(e.Note)
-		w.raw("</div>")
-	}
+	w.note(e.Note)
 	if e.Formula.Left != nil || len(e.Formula.Steps) > 0 {
-		w.raw(`<div class="f">`)
+		w.raw(`<div class="eq">`)
 		w.b = maths.AppendChain(w.b, e.Formula)
 		w.raw("</div>")
 	}
-	for i := range e.Below {
-		w.phrase(&e.Below[i])
+	if len(e.Below)+len(e.Trials)+len(e.Tables) > 0 || e.Drawing != nil {
+		w.raw(`<div class="more">`)
+		for i := range e.Below {
+			w.phrase(&e.Below[i])
+		}
+		w.trials(e.Trials)
+		if len(e.Tables) > 1 {
+			w.raw(`<div class="pair">`)
+		}
+		for _, t := range e.Tables {
+			w.table(t)
+		}
+		if len(e.Tables) > 1 {
+			w.raw("</div>")
+		}
+		if e.Drawing != nil {
+			w.drawing(e.Drawing)
+		}
+		w.raw("</div>")
 	}
-	w.trials(e.Trials)
-	for _, t := range e.Tables {
-		w.table(t)
-	}
-	if e.Drawing != nil {
-		w.drawing(e.Drawing)
-	}
-	w.raw("</div>")
 	w.output(e)
 	w.raw("</div>\n")
 }
 
 // open starts the row of an entry.
 func (w *writer) open(e *render.Entry) {
-	w.raw(`<div class="row `)
+	w.raw(`<div class="row e `)
 	w.raw(kinds[e.Kind])
 	if e.Indent > 0 {
 		w.raw(" in in")

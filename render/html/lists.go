@@ -35,11 +35,11 @@ func (w *writer) listHead(title string) {
 
 // listRef starts a row of a list with its reference column.
 func (w *writer) listRef(class, anchor, words string) {
-	w.raw(`<div class="row list `)
+	w.raw(`<div class="row e list `)
 	w.raw(class)
 	w.raw(`"><div class="ref"><span class="n">`)
 	w.jump(anchor, words)
-	w.raw(`</span></div><div class="mid">`)
+	w.raw(`</span></div>`)
 }
 
 func (w *writer) note(s string) {
@@ -59,13 +59,17 @@ func (w *writer) summary(list []render.Summary) {
 		s := &list[i]
 		w.listRef("check", s.Anchor, "("+s.Number+")")
 		w.note(s.Note)
-		w.raw(`<div class="f">`)
+		w.raw(`<div class="eq">`)
 		w.b = maths.AppendChain(w.b, s.Formula)
 		w.raw("</div>")
-		for j := range s.Reason {
-			w.phrase(&s.Reason[j])
+		if len(s.Reason) > 0 {
+			w.raw(`<div class="more">`)
+			for j := range s.Reason {
+				w.phrase(&s.Reason[j])
+			}
+			w.raw("</div>")
 		}
-		w.raw(`</div><div class="out">`)
+		w.raw(`<div class="out">`)
 		w.verdict(s.Verdict)
 		if s.Mark != "" {
 			w.raw(`<span class="mark">`)
@@ -83,9 +87,9 @@ func (w *writer) unsourced(list []render.Unsourced) {
 	w.listHead("Givens without a source")
 	for i := range list {
 		u := &list[i]
-		w.raw(`<div class="row list line"><div class="mid">`)
+		w.raw(`<div class="row e list line">`)
 		w.note(u.Note)
-		w.raw(`<div class="f"><a href="#`)
+		w.raw(`<div class="eq"><a href="#`)
 		w.text(u.Anchor)
 		w.raw(`">`)
 		row := maths.Row{u.Symbol}
@@ -93,7 +97,7 @@ func (w *writer) unsourced(list []render.Unsourced) {
 			row = append(row, maths.Relation("="), u.Value)
 		}
 		w.symbol(row)
-		w.raw("</a></div></div></div>\n")
+		w.raw("</a></div></div>\n")
 	}
 }
 
@@ -104,7 +108,7 @@ func (w *writer) remarkList(title string, list []*notebook.Remark) {
 	w.listHead(title)
 	for _, r := range list {
 		w.listRef("", r.Anchor, r.Number)
-		w.raw("<p>")
+		w.raw(`<div class="more"><p>`)
 		w.text(r.Text)
 		w.raw("</p></div></div>\n")
 	}
@@ -119,9 +123,9 @@ func (w *writer) symbols(list []render.SymbolLine) {
 		s := &list[i]
 		w.listRef("line", s.Anchor, s.Where)
 		w.note(s.Meaning)
-		w.raw(`<div class="f">`)
+		w.raw(`<div class="eq">`)
 		w.symbol(s.Symbol)
-		w.raw("</div></div>")
+		w.raw("</div>")
 		if len(s.Unit) > 0 {
 			w.raw(`<div class="out"><span class="unit">`)
 			w.unit(s.Unit)
@@ -138,7 +142,7 @@ func (w *writer) sources(list []render.SourceLine) {
 	w.listHead("Sources")
 	for i := range list {
 		s := &list[i]
-		w.raw(`<div class="row list"><div class="mid"><p>`)
+		w.raw(`<div class="row e list"><div class="more"><p>`)
 		w.text(s.Source)
 		w.raw(`</p><div class="rest">`)
 		for j := range s.On {
@@ -167,11 +171,11 @@ func (w *writer) cautions(list []render.CautionLine) {
 	w.listHead("Cautions")
 	for i := range list {
 		c := &list[i]
-		w.raw(`<div class="row list" id="`)
+		w.raw(`<div class="row e list" id="`)
 		w.text(c.Anchor)
 		w.raw(`"><div class="ref"><span class="n">`)
 		w.text(c.Number)
-		w.raw(`</span></div><div class="mid"><p>`)
+		w.raw(`</span></div><div class="more"><p>`)
 		w.text(c.Text)
 		w.raw(`</p><div class="rest">`)
 		for j, h := range c.Helpers {

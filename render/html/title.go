@@ -9,7 +9,7 @@ import (
 
 func (w *writer) titleBlock() {
 	t := &w.page.Title
-	w.raw(`<div class="block"><div class="t">`)
+	w.raw(`<div class="block"><div class="name">`)
 	if t.Firm != "" || w.sheet.Images[t.Logo] != nil {
 		w.raw(`<div class="firm">`)
 		if img := w.sheet.Images[t.Logo]; img != nil {

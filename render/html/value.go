@@ -9,8 +9,8 @@ import (
 )
 
 // value writes a printed value as text in the face of its surroundings: the
-// true minus, powers as superscripts, and a thin space that does not break
-// before the unit.
+// true minus, powers as superscripts, and a space that does not break before
+// the unit; the style sheet makes it thin.
 func (w *writer) value(n maths.Node) {
 	switch n := n.(type) {
 	case maths.Row:
@@ -79,7 +79,7 @@ func (w *writer) number(n maths.Number) {
 	switch n.Unit[0].Name {
 	case "°", "′", "″":
 	default:
-		w.raw("\u202f")
+		w.raw("\u00a0")
 	}
 	w.unit(n.Unit)
 }

@@ -20,6 +20,8 @@ type Builder struct {
 	values  map[valueKey]Node
 	written map[*eval.Step]Node
 	anchors map[*eval.Step]string
+	// functions are the author's own, by name
+	functions map[string]*eval.Step
 }
 
 type valueKey struct {
@@ -35,6 +37,8 @@ func NewBuilder() *Builder {
 		values:  map[valueKey]Node{},
 		written: map[*eval.Step]Node{},
 		anchors: map[*eval.Step]string{},
+
+		functions: map[string]*eval.Step{},
 	}
 }
 
@@ -48,6 +52,9 @@ func (b *Builder) Anchor(s *eval.Step) string {
 	}
 	return b.anchors[s]
 }
+
+// Define tells of a function of the author's own, which calls of it lead to.
+func (b *Builder) Define(s *eval.Step) { b.functions[s.ID] = s }
 
 // Name returns a name as a symbol. The names before a dot, a schedule's or
 // another calc's, stand last in its subscript.

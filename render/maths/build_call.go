@@ -33,13 +33,13 @@ func reduces(c *syntax.Call) bool {
 }
 
 func (w *builder) call(c *syntax.Call) (Node, rank) {
-	if s := w.used(c.Fun); s != nil && s.Kind == eval.Function {
+	if run := w.run(c); run != nil {
+		return w.helper(c, run), rankedAtom
+	}
+	if s := w.functions[c.Fun.ID]; s != nil {
 		f := w.Name(c.Fun.Text)
 		f.Target = w.Anchor(s)
 		return Call(f, w.args(c)...), rankedAtom
-	}
-	if run := w.run(c); run != nil {
-		return w.helper(c, run), rankedAtom
 	}
 	switch c.Fun.ID {
 	case "sqrt", "cbrt", "abs", "hypot":
@@ -110,10 +110,7 @@ func open(n Node) bool {
 func (w *builder) functionPower(e *syntax.Binary) Node {
 	c, ok := unbracketed(e.X).(*syntax.Call)
 	exponent, whole := unbracketed(e.Y).(*syntax.Number)
-	if !ok || !whole || !angular(c.Fun.ID) || len(c.Args) != 1 || w.run(c) != nil {
-		return nil
-	}
-	if s := w.used(c.Fun); s != nil && s.Kind == eval.Function {
+	if !ok || !whole || !angular(c.Fun.ID) || len(c.Args) != 1 {
 		return nil
 	}
 	sup, ok := w.literal(exponent).(Number)
