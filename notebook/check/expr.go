@@ -214,7 +214,7 @@ func (l *lower) name(x *syntax.Name) *Node {
 		return l.fail(diag.DimensionMismatch, x.At, fmt.Sprintf("%s stands for a helper with %d results, and is no value itself", x.Text, len(d.Results)),
 			"name one of them: "+list(resultNames(d)))
 	}
-	n := &Node{Op: Load, Type: d.Type, Expr: x, Def: d, exact: d.exact, plain: d.plain}
+	n := &Node{Op: Load, Type: d.Type, Expr: x, Def: d, exact: d.exact, plain: d.plain, zero: d.zero}
 	if u, ok := l.where[x.ID]; ok {
 		return l.plainNumber(n, u)
 	}
@@ -369,6 +369,9 @@ func (l *lower) multiply(b *syntax.Binary, left, right *Node) *Node {
 		return l.failRows(b.Span(), err)
 	}
 	n.exact = ratOf(b.Op, left, right)
+	// A parameter that was given 0 stands for a zero of any dimension, and so
+	// does what it is a factor of.
+	n.zero = left.zero && left.Op != Const || b.Op == syntax.Mul && right.zero && right.Op != Const
 	return n
 }
 

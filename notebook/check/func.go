@@ -201,7 +201,7 @@ func (l *lower) instance(x *syntax.Call, f *function, args []*Node, usage string
 	e := &env{c: c, src: f.env.src, scope: inst.Scope, names: map[string]*Def{}, parent: f.env, library: f.env.library}
 	for i, p := range f.def.Params {
 		d := e.define(p, args[i].Type)
-		d.exact, d.plain, d.used = args[i].rat(), args[i].plain, true
+		d.exact, d.plain, d.used, d.zero = args[i].rat(), args[i].plain, true, args[i].zero
 		d.Texts = args[i].texts()
 		d.Unit = argUnit(args[i])
 		inst.Params = append(inst.Params, d)

@@ -88,6 +88,7 @@ type Def struct {
 	Picked  *Rows          // the schedule whose column a `first of` picked it from
 	Results []*Def         // of a helper with several
 	used    bool
+	zero    bool // a parameter that was given the literal 0
 	exact   *big.Rat
 	plain   bool
 }

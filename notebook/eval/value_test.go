@@ -123,6 +123,7 @@ func TestValues(t *testing.T) {
 		{"x = 1 if not t > 5 mm or d < t\n  = 2 otherwise", "1.000"}, {"x = 1 if 4 mm < t <= 5 mm\n  = 2 otherwise", "1.000"}, {"g = \"a\"\nx = 1 if g == \"a\"\n  = 2 otherwise", "1.000"},
 		// functions of the author's own
 		{"g(F, a) [MPa] = F/a\nx = g(P, d*t)", "384.0 MPa"}, {"g(F, a) = F/a\nx = g(a=d, F=P)", "1920 kN/m"}, {"g(z) = z*t\nh(z) = g(z)^2\nx = h(2)", "100.0 mm²"},
+		{"g(F, a) [MPa] = F/(a*t)\nx = g(0, d)", "0 MPa"},
 		{"direct_shear(V) = 2*V\nx = direct_shear(3 kN)", "6.000 kN"},
 		// first of
 		{"x = first of 1 mm, 4 mm, 8 mm with x > t", "8.000 mm"},
