@@ -1,0 +1,324 @@
+package check
+
+import (
+	"fmt"
+	"math/big"
+
+	"gusset/notebook/diag"
+	"gusset/notebook/syntax"
+	"gusset/units"
+)
+
+func (l *lower) unary(x *syntax.Unary) *Node {
+	if x.Op == syntax.Not {
+		n := l.expr(x.X)
+		if !n.ok() {
+			return n
+		}
+		if n.Type.Kind != Condition {
+			return l.fail(diag.Syntax, x.X.Span(), "`not` needs a condition, but `"+l.print(x.X)+"` is "+l.e.c.describe(n.Type))
+		}
+		return &Node{Op: Not, Type: n.Type, Expr: x, Args: []*Node{n}}
+	}
+	n := l.value(x.X)
+	if !n.ok() {
+		return n
+	}
+	if n.Type.Kind == Point {
+		return l.fail(diag.DimensionMismatch, x.At, "a temperature point has no negative",
+			"a sign directly before a literal belongs to it: `-40 degC`; a difference is given in K or degR")
+	}
+	if n.Type.Kind != Number {
+		return l.fail(diag.DimensionMismatch, x.At, "a minus sign needs a number, but `"+l.print(x.X)+"` is "+l.e.c.describe(n.Type))
+	}
+	t := n.Type
+	t.Freq = n.Type.Freq // a sign is no arithmetic
+	out := &Node{Op: Neg, Type: t, Expr: x, Args: []*Node{n}, plain: n.plain, zero: n.zero, bare: n.bare}
+	if r := n.rat(); r != nil {
+		out.exact = new(big.Rat).Neg(r)
+	}
+	return out
+}
+
+// rat is the exact value of arithmetic on bare literals, nil for all else.
+func (n *Node) rat() *big.Rat {
+	if n.exact != nil || n.Op != Const || !n.Type.Dim.IsNumber() || !n.plain {
+		return n.exact
+	}
+	x, ok := n.Expr.(*syntax.Number)
+	if !ok || x.Pieces[0].HasUnit || len(x.Pieces) > 1 {
+		return nil
+	}
+	r, err := x.Pieces[0].Rat()
+	if err != nil {
+		return nil
+	}
+	if x.Neg {
+		r.Neg(r)
+	}
+	n.exact = r
+	return r
+}
+
+func (l *lower) binary(x *syntax.Binary) *Node {
+	switch x.Op {
+	case syntax.And, syntax.Or:
+		return l.logical(x)
+	case syntax.Add, syntax.Sub:
+		return l.sum(x)
+	case syntax.Pow:
+		return l.power(x)
+	}
+	return l.product(x)
+}
+
+// product lowers a chain of `*` and `/` without recursing down its left side,
+// which may be as long as a line.
+func (l *lower) product(x *syntax.Binary) *Node {
+	var chain []*syntax.Binary
+	var first syntax.Expr = x
+	for {
+		b, ok := first.(*syntax.Binary)
+		if !ok || b.Op != syntax.Mul && b.Op != syntax.Div {
+			break
+		}
+		chain = append(chain, b)
+		first = b.X
+	}
+	left := l.factor(first)
+	for i := len(chain) - 1; i >= 0; i-- {
+		b := chain[i]
+		if l.tightUnit(b) {
+			left = invalid
+			continue
+		}
+		right := l.factor(b.Y)
+		if !left.ok() || !right.ok() {
+			left = invalid
+			continue
+		}
+		left = l.multiply(b, left, right)
+	}
+	return left
+}
+
+// tightUnit reports `12e-6/K`: a bare number divided by what is no value, but a unit.
+func (l *lower) tightUnit(b *syntax.Binary) bool {
+	number, ok := b.X.(*syntax.Number)
+	name, named := b.Y.(*syntax.Name)
+	if !ok || !named || b.Op != syntax.Div || number.Pieces[0].HasUnit || l.e.lookup(name.ID) != nil || !units.IsUnitName(name.Text) {
+		return false
+	}
+	figures := l.print(number)
+	l.fail(diag.WrongUnitSpelling, b.Span(), fmt.Sprintf("`%s` stands here as a value, but no value of that name is defined; it is a unit", name.Text),
+		fmt.Sprintf("write `%s 1/%s` for the unit, `%s / %s` for a value", figures, name.Text, figures, name.Text))
+	return true
+}
+
+// factor lowers an operand of arithmetic, which must be a number.
+func (l *lower) factor(x syntax.Expr) *Node {
+	n := l.value(x)
+	switch n.Type.Kind {
+	case Point:
+		return l.fail(diag.DimensionMismatch, x.Span(), fmt.Sprintf("`%s` is a temperature point, which has no products", l.print(x)),
+			"points may be subtracted, compared, and go through min, max, mean and interpolate; a difference is given in K or degR")
+	case Text:
+		return l.fail(diag.DimensionMismatch, x.Span(), fmt.Sprintf("`%s` is a text, which has no arithmetic", l.print(x)),
+			"texts are compared with == and !=, or pick a row with `at`")
+	}
+	return n
+}
+
+func (l *lower) multiply(b *syntax.Binary, left, right *Node) *Node {
+	n := &Node{Op: Mul, Expr: b, Args: []*Node{left, right}, plain: left.plain && right.plain}
+	n.Type.Kind = Number
+	var err error
+	if b.Op == syntax.Mul {
+		n.Type.Dim, err = left.Type.Dim.Mul(right.Type.Dim)
+	} else {
+		n.Op = Div
+		n.Type.Dim, err = left.Type.Dim.Div(right.Type.Dim)
+	}
+	if err != nil {
+		return l.fail(diag.BoundExceeded, b.OpAt, err.Error())
+	}
+	if n.Type.Rows, err = l.e.c.union(left.Type.Rows, right.Type.Rows); err != nil {
+		return l.failRows(b.Span(), err)
+	}
+	n.exact = ratOf(b.Op, left, right)
+	// A parameter that was given 0 stands for a zero of any dimension, and so
+	// does what it is a factor of.
+	n.zero = left.zero && left.Op != Const || b.Op == syntax.Mul && right.zero && right.Op != Const
+	return n
+}
+
+// ratOf keeps the exact value of arithmetic on bare literals, which an
+// exponent may need; sizes are bounded by giving up.
+func ratOf(op syntax.Op, left, right *Node) *big.Rat {
+	if !left.plain || !right.plain {
+		return nil
+	}
+	a, b := left.rat(), right.rat()
+	if a == nil || b == nil || a.Num().BitLen()+a.Denom().BitLen() > 256 || b.Num().BitLen()+b.Denom().BitLen() > 256 {
+		return nil
+	}
+	switch op {
+	case syntax.Add:
+		return new(big.Rat).Add(a, b)
+	case syntax.Sub:
+		return new(big.Rat).Sub(a, b)
+	case syntax.Mul:
+		return new(big.Rat).Mul(a, b)
+	case syntax.Div:
+		if b.Sign() != 0 {
+			return new(big.Rat).Quo(a, b)
+		}
+	}
+	return nil
+}
+
+// sum lowers a chain of `+` and `-` to one node with all its terms, since the
+// dust of rounding is measured against the largest of them.
+func (l *lower) sum(x *syntax.Binary) *Node {
+	var chain []*syntax.Binary
+	var first syntax.Expr = x
+	for {
+		b, ok := first.(*syntax.Binary)
+		if !ok || b.Op != syntax.Add && b.Op != syntax.Sub {
+			break
+		}
+		chain = append(chain, b)
+		first = b.X
+	}
+	total := l.value(first)
+	n := &Node{Op: Sum, Expr: x, Args: []*Node{total}, Minus: []bool{false}, Type: total.Type, plain: total.plain, exact: total.rat()}
+	n.zero = total.zero
+	bad := !total.ok()
+	for i := len(chain) - 1; i >= 0; i-- {
+		b := chain[i]
+		term := l.value(b.Y)
+		if bad || !term.ok() {
+			bad = true
+			continue
+		}
+		if !l.addTerm(n, b, term) {
+			bad = true
+		}
+	}
+	if bad {
+		return invalid
+	}
+	n.Type.Freq = NoFreq
+	return n
+}
+
+func (l *lower) addTerm(n *Node, b *syntax.Binary, term *Node) bool {
+	for _, o := range []struct {
+		n *Node
+		x syntax.Expr
+	}{{n, b.X}, {term, b.Y}} {
+		if o.n.Type.Kind == Text {
+			l.fail(diag.DimensionMismatch, o.x.Span(), fmt.Sprintf("`%s` is a text, which has no arithmetic", l.print(o.x)))
+			return false
+		}
+	}
+	if !n.zero && !term.zero && n.Type.Dim != term.Type.Dim {
+		l.mismatch(b.Span(), sumWords(b.Op, l.e.c.describe(n.Type), l.print(b.X), l.e.c.describe(term.Type), l.print(b.Y)), n.Type, term.Type)
+		return false
+	}
+	left, right := n.Type.Kind == Point, term.Type.Kind == Point
+	switch {
+	case left && right && b.Op == syntax.Add:
+		l.fail(diag.DimensionMismatch, b.Span(), "two temperature points cannot be added",
+			"one of them must be a difference, in K or degR")
+		return false
+	case left && right:
+		n.Type.Kind = Number
+	case right && b.Op == syntax.Sub:
+		l.fail(diag.DimensionMismatch, b.Span(), "a temperature point cannot be taken from a difference")
+		return false
+	case right:
+		n.Type.Kind = Point
+	}
+	rows, err := l.e.c.union(n.Type.Rows, term.Type.Rows)
+	if err != nil {
+		l.failRows(b.Span(), err)
+		return false
+	}
+	if n.zero {
+		n.Type.Dim = term.Type.Dim
+	}
+	if e := ratOf(b.Op, &Node{exact: n.exact, plain: n.plain, Op: Sum}, term); e != nil {
+		n.exact = e
+	} else {
+		n.exact = nil
+	}
+	n.Type.Rows = rows
+	n.zero = n.zero && term.zero
+	n.plain = n.plain && term.plain
+	n.Args = append(n.Args, term)
+	n.Minus = append(n.Minus, b.Op == syntax.Sub)
+	return true
+}
+
+func sumWords(op syntax.Op, a, left, b, right string) string {
+	if op == syntax.Add {
+		return fmt.Sprintf("%s and %s cannot be added: `%s` and `%s`", a, b, left, right)
+	}
+	return fmt.Sprintf("%s cannot be taken from %s: `%s` from `%s`", b, a, right, left)
+}
+
+// power lowers `x^y`: the exponent is a number, and where the base has a
+// dimension a constant one, so that the result's dimension is known.
+func (l *lower) power(x *syntax.Binary) *Node {
+	base, exponent := l.factor(x.X), l.factor(x.Y)
+	if !base.ok() || !exponent.ok() {
+		return invalid
+	}
+	if !exponent.Type.Dim.IsNumber() {
+		return l.fail(diag.DimensionMismatch, x.Y.Span(), fmt.Sprintf("an exponent is a plain number, but `%s` is %s", l.print(x.Y), l.e.c.describe(exponent.Type)))
+	}
+	rows, err := l.e.c.union(base.Type.Rows, exponent.Type.Rows)
+	if err != nil {
+		return l.failRows(x.Span(), err)
+	}
+	n := &Node{Op: Pow, Expr: x, Args: []*Node{base, exponent}, Type: Type{Kind: Number, Rows: rows}, plain: base.plain && exponent.plain}
+	r := exponent.rat()
+	if base.Type.Dim.IsNumber() {
+		n.exact = ratPower(base, r)
+		return n
+	}
+	if r == nil {
+		return l.fail(diag.DimensionMismatch, x.Y.Span(),
+			fmt.Sprintf("the exponent of %s must be a constant, so that the result has a dimension, but `%s` is computed", l.e.c.describe(base.Type), l.print(x.Y)),
+			"a constant is a literal, arithmetic of literals, or a name that stems from literals alone",
+			"for a rule of a code with its own units write `where` with the unit of each name")
+	}
+	if !r.Num().IsInt64() || !r.Denom().IsInt64() {
+		return l.fail(diag.BoundExceeded, x.Y.Span(), "the exponent's fraction is too large")
+	}
+	if n.Type.Dim, err = base.Type.Dim.Pow(r.Num().Int64(), r.Denom().Int64()); err != nil {
+		return l.fail(diag.BoundExceeded, x.Y.Span(), err.Error())
+	}
+	return n
+}
+
+// ratPower is the exact small whole power of a bare literal.
+func ratPower(base *Node, r *big.Rat) *big.Rat {
+	b := base.rat()
+	if b == nil || r == nil || !r.IsInt() || !r.Num().IsInt64() {
+		return nil
+	}
+	k := r.Num().Int64()
+	if k < -16 || k > 16 || b.Sign() == 0 && k < 0 || b.Num().BitLen()+b.Denom().BitLen() > 64 {
+		return nil
+	}
+	out := big.NewRat(1, 1)
+	for i := int64(0); i < max(k, -k); i++ {
+		out.Mul(out, b)
+	}
+	if k < 0 {
+		out.Inv(out)
+	}
+	return out
+}
