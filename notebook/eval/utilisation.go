@@ -28,9 +28,9 @@ func UtilisationText(ratio float64, ok, equal bool) string {
 const decimals = 2
 
 // roundedUp rounds a ratio up to two decimals. What lies above a figure only
-// by the tolerance of comparisons is that figure, so that 0.07 stays 0.07.
+// by the dust of rounding is that figure, so that 0.07 stays 0.07.
 func roundedUp(ratio float64) string {
-	exact := strconv.FormatFloat(ratio*(1-closeTo), 'f', -1, 64)
+	exact := strconv.FormatFloat(ratio*(1-dust), 'f', -1, 64)
 	whole, fraction, _ := strings.Cut(exact, ".")
 	if len(fraction) <= decimals {
 		return whole + "." + fraction + strings.Repeat("0", decimals-len(fraction))
