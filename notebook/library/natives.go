@@ -104,13 +104,14 @@ func saintVenantK2(s float64) (float64, error) {
 }
 
 // saintVenantRest bounds what the terms that are left out of either series would change in its
-// coefficient: twice the first one left out, since each is less than half of the one before.
+// coefficient, twice the first one since each is less than half of the one before, and the rounding of what is added up.
 func saintVenantRest(s float64) (float64, error) {
 	if !(s >= 1-1e-9) {
 		return 0, errSides
 	}
 	n := float64(2*saintVenantTerms + 1)
-	return 2 * 2 * math.Exp(-n*math.Pi*s/2) / (n * n), nil
+	const rounding = 4.0 / (1 << 52)
+	return max(rounding, 2*2*math.Exp(-n*math.Pi*s/2)/(n*n)), nil
 }
 
 // principalStress returns the k-th largest eigenvalue of the stress tensor.
