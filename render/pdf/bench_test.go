@@ -56,16 +56,15 @@ func recorded(l *layout) *replay {
 			}
 			for _, t := range k.texts {
 				t.x, t.y = t.x+x, t.y+y
-				ops = append(ops, t)
-			}
-			for _, m := range k.formulas {
-				for _, i := range m.items {
-					atX, atY := x+m.x+i.X, y+m.y+i.Y
+				if t.items == nil {
+					ops = append(ops, t)
+				}
+				for _, i := range t.items {
 					switch i.Kind {
 					case maths.Rule:
-						ops = append(ops, fill{atX, atY, i.Width, i.Height, m.colour})
+						ops = append(ops, fill{t.x + i.X, t.y + i.Y, i.Width, i.Height, t.colour})
 					case maths.Run:
-						ops = append(ops, text{x: atX, y: atY, text: i.Text, style: style{face: i.Face, size: i.Size, colour: m.colour}})
+						ops = append(ops, text{x: t.x + i.X, y: t.y + i.Y, text: i.Text, style: style{face: i.Face, size: i.Size, colour: t.colour}})
 					}
 				}
 			}

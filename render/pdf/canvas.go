@@ -48,17 +48,19 @@ func (c *canvas) draw(k *ink, x, y float64) {
 		p := &k.pictures[i]
 		c.picture(p, x+p.x, y+p.y)
 	}
-	for i := range k.texts {
-		t := &k.texts[i]
-		c.text(t, x+t.x, y+t.y)
+	for i := range k.drawings {
+		c.drawing(&k.drawings[i], x, y)
 	}
-	for i := range k.formulas {
-		c.formula(&k.formulas[i], x, y)
+	for i := range k.texts {
+		if t := &k.texts[i]; t.items != nil {
+			c.formula(t, x+t.x, y+t.y)
+		} else {
+			c.text(t, x+t.x, y+t.y)
+		}
 	}
 }
 
-func (c *canvas) formula(m *formula, x, y float64) {
-	x, y = x+m.x, y+m.y
+func (c *canvas) formula(m *text, x, y float64) {
 	for i := range m.items {
 		item := &m.items[i]
 		atX, atY := x+item.X*m.scale, y+item.Y*m.scale

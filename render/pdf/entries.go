@@ -111,9 +111,9 @@ func (r *row) formula(c maths.Chain, size float64, tallest float64) {
 // scaled is a formula's box set smaller.
 func (b *box) scaled(k float64) *box {
 	out := &box{width: b.width * k, ascent: b.ascent * k, descent: b.descent * k}
-	for _, m := range b.ink.formulas {
+	for _, m := range b.ink.texts {
 		m.scale *= k
-		out.ink.formulas = append(out.ink.formulas, m)
+		out.ink.texts = append(out.ink.texts, m)
 	}
 	return out
 }
@@ -204,7 +204,7 @@ func (b *prose) references(parts []slab, e *render.Entry) {
 	const leading = 10.4
 	pad := parts[0].pad
 	y := parts[0].baseline - pad
-	k := &parts[0].ink
+	k := &ink{}
 	width := referenceWidth - referencePad
 	if e.Number != "" {
 		st := style{face: fonts.Sans, size: 7.6, colour: softColour}
@@ -225,6 +225,10 @@ func (b *prose) references(parts []slab, e *render.Entry) {
 			y += leading
 		}
 	}
+	// References are read first.
+	own := &parts[0].ink
+	own.texts = append(k.texts, own.texts...)
+	own.areas = append(own.areas, k.areas...)
 	if lack := pad + y - leading + 4 - height(parts); lack > 0 {
 		parts[len(parts)-1].height += lack
 	}

@@ -14,7 +14,7 @@ const (
 // mathsBox makes a box of a formula that was set for paper.
 func mathsBox(m *maths.Box, c colour) *box {
 	return &box{width: m.Width, ascent: m.Ascent, descent: m.Descent, ink: ink{
-		formulas: []formula{{scale: 1, items: m.Items, colour: c}},
+		texts: []text{{scale: 1, items: m.Items, style: style{colour: c}}},
 	}}
 }
 

@@ -57,19 +57,7 @@ func (f *flow) grid(v voice, build func(v voice) *grid, limit float64) {
 		widths, gap, fits = g.widths(f.width)
 	}
 	whole := sum(widths) + gap*float64(len(widths)-1)
-	var head *slab
-	if len(g.head.cells) > 0 {
-		parts := f.gridRow(g, &g.head, widths, gap, math.Inf(1))
-		head = &parts[0]
-		head.ink.fill(f.x, head.height-headRule, whole, headRule, inkColour)
-		head.keep = true
-		f.anchors = append(f.anchors, g.anchors...)
-		f.push(*head)
-		f.slabs[len(f.slabs)-1].keep = len(g.rows) > 0
-		if head.height > limit/3 {
-			head = nil
-		}
-	}
+	head := f.gridHead(g, widths, gap, limit/3)
 	for i := range g.rows {
 		row := &g.rows[i]
 		parts := f.gridRow(g, row, widths, gap, limit)
@@ -94,6 +82,26 @@ func (f *flow) grid(v voice, build func(v voice) *grid, limit float64) {
 			f.push(*s)
 		}
 	}
+}
+
+// gridHead pushes the head of a table and returns the slab that further pages
+// repeat: nil where there is none, or where it is too tall to be repeated.
+func (f *flow) gridHead(g *grid, widths []float64, gap, limit float64) *slab {
+	if len(g.head.cells) == 0 {
+		return nil
+	}
+	parts := f.gridRow(g, &g.head, widths, gap, limit)
+	last := &parts[len(parts)-1]
+	last.ink.fill(f.x, last.height-headRule, sum(widths)+gap*float64(len(widths)-1), headRule, inkColour)
+	last.keep = len(g.rows) > 0
+	f.anchors = append(f.anchors, g.anchors...)
+	for _, s := range parts {
+		f.push(s)
+	}
+	if len(parts) > 1 {
+		return nil
+	}
+	return &parts[0]
 }
 
 // height is that of slabs with the gaps between them.

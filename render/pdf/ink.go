@@ -43,7 +43,7 @@ type ink struct {
 	fills    []fill
 	pictures []picture
 	texts    []text
-	formulas []formula
+	drawings []drawing
 	areas    []area
 }
 
@@ -52,19 +52,15 @@ type fill struct {
 	colour     colour
 }
 
+// text is a text in one style, or a formula that the maths set: its items, from
+// the left end of the baseline, all lengths times the scale.
 type text struct {
 	x, y float64
 	style
 	text    string
 	tracked float64 // space put behind each letter
-}
-
-// formula is what the maths set, from the left end of its baseline, all
-// lengths times the scale.
-type formula struct {
-	x, y, scale float64
-	items       []maths.Item
-	colour      colour
+	items   []maths.Item
+	scale   float64
 }
 
 type picture struct {
@@ -87,10 +83,6 @@ func (k *ink) add(o *ink, x, y float64) {
 	for _, f := range o.fills {
 		f.x, f.y = f.x+x, f.y+y
 		k.fills = append(k.fills, f)
-	}
-	for _, m := range o.formulas {
-		m.x, m.y = m.x+x, m.y+y
-		k.formulas = append(k.formulas, m)
 	}
 	for _, p := range o.pictures {
 		p.x, p.y = p.x+x, p.y+y

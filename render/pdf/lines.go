@@ -96,12 +96,12 @@ func (p *paragraph) breakLine(out []line, from, to int, width float64) []line {
 // lineCost is what a line costs that is set to a length of the width. The
 // unit is a line that leaves a tenth of the width free, or a short word where
 // that is more; each line costs a little by itself, and a last line that is
-// hardly there costs a whole unit.
+// hardly there costs two units.
 func lineCost(set, width float64, words int, last bool) float64 {
-	const each, hardly, shortWord = 0.15, 0.1, 22
+	const each, hardly, shortWord = 0.15, 0.2, 22
 	if last {
 		if words == 1 && set < hardly*width {
-			return each + 1
+			return each + 2
 		}
 		return each
 	}

@@ -35,11 +35,15 @@ func (b *prose) lists(l *render.Lists) {
 	b.cautions(l.Cautions)
 	if len(l.Notes) > 0 {
 		b.listHead("Notes")
+		from := len(b.slabs)
 		for _, n := range l.Notes {
 			p := &paragraph{}
 			p.write(noteVoice.style(), n)
 			b.space(3)
 			b.paragraph(p, noteVoice.leading)
+		}
+		for i := from; i < len(b.slabs)-1; i++ {
+			b.slabs[i].keep = true
 		}
 	}
 }
@@ -161,7 +165,7 @@ func (d *document) symbolsGrid(list []render.SymbolLine, v voice) *grid {
 		meaning.write(v.style(), s.Meaning)
 		at := v.in(markColour).style()
 		at.link = link.link
-		where.write(at, s.Where)
+		where.append(at, s.Where)
 		g.rows = append(g.rows, gridRow{cells: []gridCell{{p: symbol}, {p: unit}, {p: meaning}, {p: where, align: right}}})
 	}
 	return g

@@ -36,8 +36,8 @@ func (m *places) annotate(c *canvas, k *ink, x, y float64) {
 	for _, a := range k.areas {
 		m.link(c, a.link, x+a.x, y+a.y, a.w, a.h)
 	}
-	for i := range k.formulas {
-		f := &k.formulas[i]
+	for i := range k.texts {
+		f := &k.texts[i]
 		for j := range f.items {
 			if t := &f.items[j]; t.Link != "" {
 				size := t.Size * f.scale
