@@ -26,6 +26,7 @@ type Line struct {
 	Value       string // `48.89 MPa`; over rows the range and the entry that governs
 	Utilisation string // of a check, "" where there is none
 	Verdict     string // "OK", "NG", "not required", "not computed"
+	Because     int    // of a line not computed, the line with the error
 	Governs     string // the mark of the entry that decides a check over rows
 	Note        string
 	Source      string
@@ -62,7 +63,7 @@ func (s *Sheet) list(lines []Line, step *Step) []Line {
 	}
 	switch c := step.Check; {
 	case step.Failed:
-		line.Verdict = "not computed"
+		line.Verdict, line.Because = "not computed", step.Because
 	case c != nil:
 		line.Verdict, line.Governs = "NG", c.Type.Mark(c.Governs)
 		line.Utilisation = eval.UtilisationText(c.Ratio[c.Governs], c.OK[c.Governs], c.Equal)

@@ -82,11 +82,16 @@ func leftCell(l notebook.Line, names column) string {
 	if l.Kind == notebook.CheckLine {
 		return "check " + name
 	}
-	value := l.Value
-	if value == "" {
-		value = l.Verdict
+	value := diag.Visible(l.Value)
+	if l.Verdict != "" {
+		value = notComputed(l)
 	}
-	return names.pad(name) + " = " + diag.Visible(value)
+	return names.pad(name) + " = " + value
+}
+
+// notComputed says which line is at fault.
+func notComputed(l notebook.Line) string {
+	return fmt.Sprintf("%s, see line %d", l.Verdict, l.Because)
 }
 
 func bodyLine(l notebook.Line, names, left, verdicts column, colour style) string {
@@ -102,6 +107,8 @@ func bodyLine(l notebook.Line, names, left, verdicts column, colour style) strin
 			verdict = colour.paint(green, verdict)
 		case "NG":
 			verdict = colour.paint(red, verdict)
+		case "not computed":
+			verdict = notComputed(l)
 		}
 		if l.Utilisation != "" {
 			verdict = l.Utilisation + strings.Repeat(" ", max(int(verdicts)-diag.Width(l.Utilisation), 0)) + " " + verdict
@@ -122,7 +129,8 @@ func bodyLine(l notebook.Line, names, left, verdicts column, colour style) strin
 	return text
 }
 
-// checksLine sums the checks up: `5 checks: 3 OK, 1 NG, 1 not required`.
+// checksLine sums the checks up: `5 checks: 3 OK, 1 NG, 1 not required`, or
+// `5 checks, all OK`.
 func checksLine(count map[string]int) string {
 	total := 0
 	var parts []string
@@ -132,8 +140,13 @@ func checksLine(count map[string]int) string {
 			parts = append(parts, fmt.Sprintf("%d %s", n, verdict))
 		}
 	}
-	if total == 0 {
+	switch {
+	case total == 0:
 		return ""
+	case total == 1:
+		return "1 check, " + strings.TrimPrefix(parts[0], "1 ")
+	case len(parts) == 1:
+		return plural(total, "check") + ", all " + strings.TrimPrefix(parts[0], fmt.Sprint(total, " "))
 	}
 	return plural(total, "check") + ": " + strings.Join(parts, ", ")
 }

@@ -104,7 +104,7 @@ func (p *printer) stems(results []store.Result) (stems []string, problems []erro
 		}
 		clash[i], clash[j] = true, true
 		problems = append(problems, fmt.Errorf("%s and %s would both be written to %s\ngive one of them another number or revision; neither was written",
-			results[j].File, r.File, filepath.Base(stem)))
+			results[j].File, r.File, filepath.Base(stems[j])))
 	}
 	for i := range clash {
 		stems[i] = ""
