@@ -177,9 +177,10 @@ func (m *machine) figure(p *check.FigurePlan) *Figure {
 	for i, n := range p.Args {
 		out.Names = append(out.Names, p.Kind.Params[i].Name)
 		if n == nil {
-			out.Args = append(out.Args, nil)
+			out.Args, out.Exprs = append(out.Args, nil), append(out.Exprs, nil)
 			continue
 		}
+		out.Exprs = append(out.Exprs, n.Expr)
 		if n.Op == check.Load {
 			s := m.stepFor(n.Def, m.top)
 			if s == nil {

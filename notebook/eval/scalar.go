@@ -13,7 +13,7 @@ import (
 )
 
 // One entry of an expression is computed by govaluate. An expression is
-// compiled once to tokens, every sub-expression in its own brackets. What
+// compiled once to tokens, every operation inside another in its own brackets. What
 // govaluate is trusted with is multiplication, signs and logic; division,
 // powers, sums and comparisons are functions of ours, since an infinity in the
 // middle of an expression (`1/(1/0)`) would otherwise vanish from its result
@@ -59,7 +59,7 @@ func compile(n *check.Node) (*compiled, error) {
 	if c.expr != nil {
 		return c, nil
 	}
-	var b builder
+	b := builder{tokens: make([]govaluate.ExpressionToken, 0, 24)}
 	b.node(n)
 	expr, err := govaluate.NewEvaluableExpressionFromTokens(b.tokens)
 	if err != nil {
@@ -72,12 +72,17 @@ func compile(n *check.Node) (*compiled, error) {
 
 func (b *builder) put(t ...govaluate.ExpressionToken) { b.tokens = append(b.tokens, t...) }
 
-func (b *builder) infix(op govaluate.ExpressionToken, x, y *check.Node) {
-	b.put(tokOpen)
-	b.node(x)
-	b.put(op)
-	b.node(y)
-	b.put(tokClose)
+// operand puts an operand of an infix or prefix operator: what is itself one
+// stands in brackets of its own.
+func (b *builder) operand(n *check.Node) {
+	switch n.Op {
+	case check.Neg, check.Not, check.Mul, check.And, check.Or:
+		b.put(tokOpen)
+		b.node(n)
+		b.put(tokClose)
+	default:
+		b.node(n)
+	}
 }
 
 func (b *builder) function(f govaluate.ExpressionFunction, args []*check.Node) {
@@ -86,9 +91,7 @@ func (b *builder) function(f govaluate.ExpressionFunction, args []*check.Node) {
 		if i > 0 {
 			b.put(tokSeparator)
 		}
-		b.put(tokOpen)
-		b.node(a)
-		b.put(tokClose)
+		b.operand(a)
 	}
 	b.put(tokClose)
 }
@@ -100,25 +103,29 @@ func (b *builder) node(n *check.Node) {
 	case check.TextLit:
 		b.put(govaluate.ExpressionToken{Kind: govaluate.STRING, Value: n.Str})
 	case check.Neg:
-		b.put(tokOpen, tokMinus, tokOpen)
-		b.node(n.Args[0])
-		b.put(tokClose, tokClose)
+		b.put(tokMinus)
+		b.operand(n.Args[0])
 	case check.Not:
-		b.put(tokOpen, tokNot, tokOpen)
-		b.node(n.Args[0])
-		b.put(tokClose, tokClose)
+		b.put(tokNot)
+		b.operand(n.Args[0])
 	case check.Mul:
-		b.infix(tokMul, n.Args[0], n.Args[1])
+		b.infix(tokMul, n)
 	case check.And:
-		b.infix(tokAnd, n.Args[0], n.Args[1])
+		b.infix(tokAnd, n)
 	case check.Or:
-		b.infix(tokOr, n.Args[0], n.Args[1])
+		b.infix(tokOr, n)
 	case check.Sum, check.Div, check.Pow, check.Compare, check.Builtin, check.ToUnit, check.FromUnit:
 		b.function(operation(n), n.Args)
 	default:
 		b.put(govaluate.ExpressionToken{Kind: govaluate.VARIABLE, Value: string(rune(slotBase + len(b.leaves)))})
 		b.leaves = append(b.leaves, n)
 	}
+}
+
+func (b *builder) infix(op govaluate.ExpressionToken, n *check.Node) {
+	b.operand(n.Args[0])
+	b.put(op)
+	b.operand(n.Args[1])
 }
 
 // undefined is the error of an operation without a finite result.

@@ -175,5 +175,6 @@ type Curve struct {
 type Figure struct {
 	Kind  string
 	Args  []*Step
-	Names []string // of the parameters
+	Names []string      // of the parameters
+	Exprs []syntax.Expr // what the author gave for them
 }
