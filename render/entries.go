@@ -18,7 +18,7 @@ func (c *composer) block(b *notebook.Block) []Entry {
 	case syntax.PlotBlock, syntax.FigureBlock:
 		return []Entry{{
 			Kind: DrawingOf, Anchor: b.Anchor, Refs: sources(b.Source),
-			Drawing: &Drawing{Number: b.Number, Caption: b.Note, Plot: b.Plot, Figure: b.Figure},
+			Drawing: drawing(b),
 		}}
 	}
 	return c.steps(b.Steps, 0, b.Full)
@@ -157,7 +157,7 @@ func (c *composer) signature(name *syntax.Name, params []*syntax.Name) maths.Nod
 // computed is a value with its formula as written, the values put in, and the
 // outcome in the output column.
 func (c *composer) computed(s *eval.Step, e *Entry) {
-	bundle := s.Value.Type.Kind == check.Bundle
+	bundle := s.Value.Type.Kind == check.Bundle || len(s.Results) > 0
 	if !bundle {
 		e.Output = c.maths.Output(s, s.Entry)
 		e.Mark = s.Value.Type.Mark(s.Entry)
@@ -234,7 +234,7 @@ func (c *composer) decidedBy(d *syntax.Definition, s *eval.Step) (Phrase, bool) 
 			if len(row) > 0 {
 				row = append(row, maths.Comma)
 			}
-			row = append(row, c.maths.Plain(used), maths.Relation("="), c.maths.Value(used, entry))
+			row = append(row, maths.Pair(c.maths.Plain(used), c.maths.Value(used, entry)))
 		})
 	}
 	return Phrase{Before: "with", Formula: maths.Chain{Left: row}}, len(row) > 0

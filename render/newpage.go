@@ -24,6 +24,7 @@ func NewPage(s *notebook.Sheet) *Page {
 		p.Values[i] = c.value(r)
 	}
 	p.Lists = c.lists()
+	p.drawChecks()
 	p.State = state(s, p.Lists.Checks)
 	return p
 }

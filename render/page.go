@@ -10,6 +10,7 @@ package render
 
 import (
 	"gusset/notebook"
+	"gusset/render/figure"
 	"gusset/render/maths"
 )
 
@@ -142,8 +143,7 @@ type TextPart struct {
 type Drawing struct {
 	Number  string // "1"
 	Caption string
-	Plot    *notebook.Plot
-	Figure  *notebook.Figure
+	Art     *figure.Drawing
 }
 
 // Lists are the closing lists; one that is empty is not printed.

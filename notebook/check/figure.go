@@ -106,7 +106,10 @@ func (l *lower) figureArg(k *FigureKind, p FigureParam, v syntax.Expr) *Node {
 	if !n.ok() {
 		return n
 	}
-	want := Type{Kind: Number, Dim: mustDim(p.Unit)}
+	want := Type{Kind: Number}
+	if p.Unit != "" {
+		want.Dim = mustDim(p.Unit)
+	}
 	if !n.zero && (n.Type.Kind != Number || n.Type.Dim != want.Dim) {
 		l.mismatch(v.Span(), fmt.Sprintf("figure %s draws %s as %s, but `%s` is %s", k.Name, p.Name, l.e.c.describe(want), l.print(v), l.e.c.describe(n.Type)), want, n.Type)
 		return invalid

@@ -281,7 +281,11 @@ func (w *writer) tableHead(h *render.Head) {
 
 // drawing writes a plot or a figure with its caption.
 func (w *writer) drawing(d *render.Drawing) {
-	w.raw("<figure><figcaption><b>Figure ")
+	w.raw("<figure>")
+	if d.Art != nil {
+		w.b = d.Art.SVG(w.b, "figure-"+d.Number)
+	}
+	w.raw("<figcaption><b>Figure ")
 	w.text(d.Number)
 	w.raw("</b>")
 	if d.Caption != "" {

@@ -6,6 +6,8 @@ import "gusset/render"
 func (b *prose) drawing(e *render.Entry) {
 	r := b.row()
 	if d := e.Drawing; d != nil {
+		r.drawing(d.Art, b.doc.tallest())
+		r.space(4)
 		p := &paragraph{}
 		p.write(noteVoice.strong().style(), "Figure "+d.Number)
 		if d.Caption != "" {
