@@ -133,7 +133,7 @@ var steelLimits = []limits{
 
 var otherLimits = []limits{
 	{"embedment_ec5", "", "rho_k=350 kg/m^3, d=4 mm, predrilled=0",
-		[]string{positive("rho_k", "d"), "d=8 mm, predrilled=1 | d=8.0001 mm, predrilled=1", of(zeroOrOne, "predrilled"), "d=6 mm | d=6.0001 mm; d=8 mm, predrilled=1 | d=8 mm", "rho_k=499.999 kg/m^3 | rho_k=500 kg/m^3; rho_k=600 kg/m^3, predrilled=1 | rho_k=600 kg/m^3"}},
+		[]string{positive("rho_k", "d"), "d=8 mm, predrilled=1 | d=8.0001 mm, predrilled=1", of(zeroOrOne, "predrilled"), "d=6 mm | d=6.0001 mm; d=8 mm, predrilled=1 | d=8 mm", "rho_k=500 kg/m^3 | rho_k=500.001 kg/m^3; rho_k=600 kg/m^3, predrilled=1 | rho_k=600 kg/m^3"}},
 	{"embedment_bolt_ec5", "", "rho_k=350 kg/m^3, d=20 mm, alpha=0 deg, softwood=1",
 		[]string{positive("rho_k", "d"), "d=30 mm | d=30.0001 mm", of(toGrain, "alpha"), "softwood=0 | softwood=-1; softwood=1 | softwood=0.5; softwood=2 | softwood=2.001"}},
 	{"hankinson", "", "F_par=2 kN, F_perp=1 kN, theta=30 deg", []string{positive("F_par", "F_perp"), of(toGrain, "theta")}},

@@ -16,7 +16,7 @@ var tableRows = []struct {
 }{
 	{"bolts_metric", `t.A_s at "M6" = 20.1 mm^2; t.A_s at "M12" = 84.3 mm^2; t.A_s at "M16" = 157 mm^2; t.A_s at "M20" = 245 mm^2; t.A_s at "M24" = 353 mm^2; t.A_s at "M30" = 561 mm^2; t.A_s at "M36" = 817 mm^2`, "ISO 898-1, from memory"},
 	{"bolts_metric", `t.p at "M8" = 1.25 mm; t.p at "M10" = 1.5 mm; t.p at "M12" = 1.75 mm; t.p at "M14" = 2 mm; t.p at "M22" = 2.5 mm; t.p at "M27" = 3 mm; t.p at "M33" = 3.5 mm; t.p at "M36" = 4 mm; t.d at "M27" = 27 mm`, "ISO 261, from memory"},
-	{"bolts_metric", `t.d_3 at "M12" = 9.853 mm; t.d_2 at "M12" = 10.863 mm; t.A at "M20" = 314.2 mm^2`, "ISO 724, from memory"},
+	{"bolts_metric", `t.d_3 at "M12" = 9.853 mm; t.d_2 at "M12" = 10.863 mm; t.A at "M20" = 314.2 mm^2`, "ISO 724, ISO 898-1, from memory"},
 	{"bolts_unc", `t.A_t at "1/2" = 0.1419 in^2; t.A_t at "3/4" = 0.334 in^2; t.A_t at "7/8" = 0.462 in^2; t.A_t at "1" = 0.606 in^2; t.A_t at "1 1/2" = 1.405 in^2; t.d at "1 1/8" = 1 1/8 in; t.p at "3/4" = 1/10 in; t.A_b at "3/4" = 0.4418 in^2`, "ASME B1.1, from memory"},
 	{"nails_common", `t.D at "6d" = 0.113 in; t.L at "6d" = 2 in; t.D at "8d" = 0.131 in; t.L at "8d" = 2 1/2 in; t.D at "10d" = 0.148 in; t.D at "16d" = 0.162 in; t.L at "16d" = 3 1/2 in; t.D at "20d" = 0.192 in; t.D at "60d" = 0.263 in; t.L at "60d" = 6 in; t.H at "16d" = 0.344 in`, "ASTM F1667; NDS Table L4, from memory"},
 	{"nails_common", `t.F_yb at "8d" = 100 ksi; t.F_yb at "10d" = 90 ksi; t.F_yb at "16d" = 90 ksi; t.F_yb at "20d" = 80 ksi; t.F_yb at "50d" = 70 ksi`, "NDS Table I1, from memory"},
