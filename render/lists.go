@@ -127,7 +127,6 @@ func (c *composer) defined() []*eval.Step {
 func (c *composer) symbols() []SymbolLine {
 	steps := c.defined()
 	meaning := c.meanings()
-	slices.SortStableFunc(steps, func(a, b *eval.Step) int { return compareSymbols(c.maths.Plain(a), c.maths.Plain(b)) })
 	list := make([]SymbolLine, len(steps))
 	for i, s := range steps {
 		line := SymbolLine{Symbol: c.maths.Plain(s), Meaning: meaning(s), Anchor: s.Anchor, Where: c.where(s)}
@@ -136,6 +135,9 @@ func (c *composer) symbols() []SymbolLine {
 		}
 		list[i] = line
 	}
+	slices.SortStableFunc(list, func(a, b SymbolLine) int {
+		return compareSymbols(a.Symbol.(maths.Symbol), b.Symbol.(maths.Symbol))
+	})
 	return list
 }
 
@@ -193,6 +195,11 @@ func compareSymbols(a, b maths.Symbol) int {
 func (c *composer) sources() []SourceLine {
 	var list []SourceLine
 	at := map[string]int{}
+	type place struct {
+		source         int
+		anchor, number string
+	}
+	seen := map[place]bool{}
 	rest := func(source string, on Resting) {
 		if source == "" {
 			return
@@ -203,10 +210,10 @@ func (c *composer) sources() []SourceLine {
 			at[source] = i
 			list = append(list, SourceLine{Source: source})
 		}
-		for _, r := range list[i].On {
-			if r.Anchor == on.Anchor && r.Number == on.Number {
-				return
-			}
+		if here := (place{i, on.Anchor, on.Number}); seen[here] {
+			return
+		} else {
+			seen[here] = true
 		}
 		list[i].On = append(list[i].On, on)
 	}
