@@ -10,7 +10,7 @@ import (
 
 const (
 	aisc71 = "AISC Manual, Table 7-1, from memory"
-	aisc7x = "AISC Manual, Tables 7-6 to 7-8, from memory"
+	aisc76 = "AISC Manual, Table 7-6, from memory"
 	ec3t34 = "EN 1993-1-8, Table 3.4 by hand; stress areas and classes from memory"
 	p363   = "SCI P363, from memory"
 )
@@ -75,16 +75,14 @@ func groupRows() []row {
 		{[]float64{0}, 4, 2, 3.32}, {[]float64{0}, 4, 3, 2.81}, {[]float64{0}, 4, 4, 2.36}, {[]float64{0}, 4, 6, 1.73}, {[]float64{0}, 4, 8, 1.34},
 		{[]float64{0}, 5, 2, 4.39}, {[]float64{0}, 5, 3, 3.90}, {[]float64{0}, 5, 4, 3.40},
 		{[]float64{0}, 6, 2, 5.45}, {[]float64{0}, 6, 3, 4.98}, {[]float64{0}, 6, 4, 4.47},
-		{[]float64{0, 3}, 2, 2, 2.54}, {[]float64{0, 3}, 2, 3, 2.03}, {[]float64{0, 3}, 2, 4, 1.67}, {[]float64{0, 3}, 2, 6, 1.22},
-		{[]float64{0, 3}, 3, 2, 4.48}, {[]float64{0, 3}, 3, 3, 3.68}, {[]float64{0, 3}, 3, 4, 3.06}, {[]float64{0, 3}, 3, 6, 2.25},
 	} {
-		rows = append(rows, row{setup: grid(c.cols, c.n, 3, "in"), call: fmt.Sprintf("bolt_group_ic(b.x, b.y, %g in)", c.e), want: fmt.Sprintf("r.C = %g", c.c), tol: 0.02, source: aisc7x})
+		rows = append(rows, row{setup: grid(c.cols, c.n, 3, "in"), call: fmt.Sprintf("bolt_group_ic(b.x, b.y, %g in)", c.e), want: fmt.Sprintf("r.C = %g", c.c), tol: 0.02, source: aisc76})
 	}
 	for _, c := range []struct {
 		cols     []float64
 		n        int
 		e, theta float64
-	}{{[]float64{0, 5.5}, 3, 6, 0}, {[]float64{0, 5.5}, 4, 12, 45}, {[]float64{0, 3}, 5, 9, 30}, {[]float64{0}, 4, 5, 60}, {[]float64{0, 3, 6}, 3, -8, 15}} {
+	}{{[]float64{0, 3}, 2, 2, 0}, {[]float64{0, 3}, 2, 6, 0}, {[]float64{0, 3}, 3, 4, 0}, {[]float64{0, 5.5}, 3, 6, 0}, {[]float64{0, 5.5}, 4, 12, 45}, {[]float64{0, 3}, 5, 9, 30}, {[]float64{0}, 4, 5, 60}, {[]float64{0, 3, 6}, 3, -8, 15}} {
 		coefficient, x, y := brandt(c.cols, c.n, 3, c.e, c.theta*math.Pi/180)
 		rows = append(rows, row{
 			setup: grid(c.cols, c.n, 3, "in"), call: fmt.Sprintf("bolt_group_ic(b.x, b.y, %g in, theta=%g deg)", c.e, c.theta),
