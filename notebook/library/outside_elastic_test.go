@@ -14,7 +14,7 @@ const (
 	timosh   = "Timoshenko & Goodier, Theory of Elasticity, art. 109, table, from memory"
 	en10210  = "EN 10210-2, from memory"
 	ennu     = "EN 1993-1-1, 3.2.6"
-	wahl     = "Shigley, Mechanical Engineering Design, Wahl factors, from memory"
+	wahl     = "Shigley, Mechanical Engineering Design, Wahl factors of 4 to 10, from memory, and of 12 by hand"
 	strip    = "strips added up"
 	rotation = "rotation of the tensor by matrices"
 )

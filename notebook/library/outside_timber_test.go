@@ -91,8 +91,8 @@ func timberRows() []row {
 		{call: "hankinson(F_par=4 kN, F_perp=1 kN, theta=45 deg)", want: "r = 1.6 kN", source: "half-way, the harmonic mean"},
 		{call: "hankinson(F_par=4 kN, F_perp=1 kN, theta=0 deg)", want: "r = 4 kN", source: "along the grain"},
 		{call: "hankinson(F_par=4 kN, F_perp=1 kN, theta=90 deg)", want: "r = 1 kN", source: "across the grain"},
-		{call: "nail_yield_moment_ec5(f_u=600 MPa, d=3.1 mm)", want: "r = 3410 N*mm", tol: 2e-3, source: "tables of nails to EN 1995-1-1, 3.1 mm of 600 N/mm², from memory"},
-		{call: "nail_yield_moment_ec5(f_u=600 MPa, d=4.2 mm)", want: "r = 7511 N*mm", tol: 2e-3, source: "tables of nails to EN 1995-1-1, 4.2 mm of 600 N/mm², from memory"},
+		{call: "nail_yield_moment_ec5(f_u=600 MPa, d=3.1 mm)", want: "r = 3410 N*mm", tol: 2e-3, source: "EN 1995-1-1 (8.14) " + byHand},
+		{call: "nail_yield_moment_ec5(f_u=600 MPa, d=4.2 mm)", want: "r = 7511 N*mm", tol: 2e-3, source: "EN 1995-1-1 (8.14) " + byHand},
 		{call: "dowel_timber_single_ec5(t_1=100 mm, t_2=100 mm, d=3.1 mm, f_h1=20 MPa, f_h2=20 MPa, M_y=3410 N*mm, F_ax=800 N)",
 			want: "r.F_f = 1.15*1.15*sqrt(2*3410*20*3.1)*1 N; r.F_v_Rk = r.F_f", source: "rope effect of a round nail held at 15 % of the Johansen part"},
 	}
