@@ -171,16 +171,19 @@ func (c *composer) needed(s *eval.Step) []Phrase {
 // limit sets a limit of validity that a helper was held to.
 func (c *composer) limit(s *eval.Step, e *Entry) {
 	e.Kind = Limit
-	if r := s.Check; r != nil {
-		e.Formula = c.relation(s, r.Sides, r.Ops, r.Type, r.Governs)
-		e.Verdict = &Verdict{OK: r.AllOK, Required: true, Ratio: math.NaN(), Word: "holds"}
-		if !r.AllOK {
-			e.Verdict.Word = "outside the limit"
-		}
-		return
+	e.Verdict = &Verdict{OK: true, Required: true, Ratio: math.NaN(), Word: "holds"}
+	r := s.Check
+	if r != nil && !r.AllOK {
+		e.Verdict.OK, e.Verdict.Word = false, "outside the limit"
 	}
-	if needs, ok := s.Stmt.(*syntax.Needs); ok {
-		e.Formula = maths.Chain{Left: c.maths.Write(needs.Cond, s)}
-		e.Verdict = &Verdict{OK: true, Required: true, Ratio: math.NaN(), Word: "holds"}
+	needs, ok := s.Stmt.(*syntax.Needs)
+	switch {
+	case r != nil && len(r.Sides) > 0:
+		e.Formula = c.relation(s, r.Sides, r.Ops, r.Type, r.Governs)
+	case ok:
+		e.Formula.Left = c.maths.Write(needs.Cond, s)
+		if put := c.maths.Put(needs.Cond, s, check.Type{}, 0); put != nil {
+			e.Below = []Phrase{{Before: "with values:", Formula: maths.Chain{Left: put}}}
+		}
 	}
 }

@@ -60,11 +60,10 @@ func (c *composer) arguments(args []*eval.Step) maths.Node {
 		if len(row) > 0 {
 			row = append(row, maths.Comma)
 		}
-		row = append(row, c.maths.Plain(a), maths.Relation("="))
 		if len(a.Value.Type.Rows) > 0 {
-			row = append(row, c.column(a))
+			row = append(row, c.maths.Plain(a), maths.Relation("="), c.column(a))
 		} else {
-			row = append(row, c.maths.Output(a, 0))
+			row = append(row, maths.Pair(c.maths.Plain(a), c.maths.Output(a, 0)))
 		}
 	}
 	if row == nil {
@@ -105,7 +104,7 @@ func (c *composer) helperBlock(b *notebook.Block) []Entry {
 	for i, p := range h.Params {
 		params[i] = c.maths.Name(p.Name.Text)
 		if p.Default != nil {
-			params[i] = maths.Row{params[i], maths.Relation("="), c.maths.Write(p.Default, nil)}
+			params[i] = maths.Pair(params[i], c.maths.Write(p.Default, nil))
 		}
 	}
 	entries := []Entry{{

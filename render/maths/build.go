@@ -296,7 +296,7 @@ type builder struct {
 	where   []syntax.WhereItem
 	changed bool // a value was put in
 	inline  int  // inside an exponent: fractions are set with a slash
-	depth   int  // of fractions
+	depth   int  // inside a fraction: the same
 }
 
 // place is a row that is being written out.

@@ -74,11 +74,14 @@ func (w *builder) args(c *syntax.Call) []Node {
 	for i, a := range c.Args {
 		args[i] = w.side(a.Value)
 		if a.Name != nil {
-			args[i] = Row{w.Name(a.Name.Text), Relation("="), args[i]}
+			args[i] = Pair(w.Name(a.Name.Text), args[i])
 		}
 	}
 	return args
 }
+
+// Pair sets a name and its value as one: a line does not break between them.
+func Pair(name, value Node) Node { return Fence{Body: Row{name, Relation("="), value}} }
 
 // applied sets sin θ, with brackets round all but a symbol or a value.
 func (w *builder) applied(name Node, c *syntax.Call) (Node, rank) {

@@ -172,6 +172,15 @@ func (w *builder) compare(e *syntax.Compare) Node {
 // put round a product within it are not needed.
 func (w *builder) product(e *syntax.Binary) (Node, rank) {
 	factors := w.factors(nil, e)
+	if first, ok := unbracketed(factors[0]).(*syntax.Unary); ok && first.Op == syntax.Neg {
+		factors[0] = first.X
+		return Row{Minus, w.times(factors)}, rankedNeg
+	}
+	return w.times(factors), rankedProduct
+}
+
+// times sets factors side by side.
+func (w *builder) times(factors []syntax.Expr) Node {
 	row := make(Row, 0, 2*len(factors))
 	for i, f := range factors {
 		last := i == len(factors)-1
@@ -181,11 +190,11 @@ func (w *builder) product(e *syntax.Binary) (Node, rank) {
 		}
 		n = bracketed(n, r, rankedProduct, i == 0)
 		if i > 0 {
-			row = append(row, times(row[len(row)-1], n))
+			row = append(row, between(row[len(row)-1], n))
 		}
 		row = append(row, n)
 	}
-	return row, rankedProduct
+	return row
 }
 
 // factors takes a product apart.
@@ -207,9 +216,9 @@ func unbracketed(e syntax.Expr) syntax.Expr {
 	}
 }
 
-// times is the sign between two factors: none where they are told apart
+// between is the sign between two factors: none where they are told apart
 // without one, else a dot.
-func times(left, right Node) Op {
+func between(left, right Node) Op {
 	if !bare1(right) || !standsBefore(left, right) {
 		return Dot
 	}
@@ -283,11 +292,8 @@ func oneLetter(s Symbol) bool {
 	return n == 1
 }
 
-// deepest is how many fractions are set inside one another.
-const deepest = 2
-
 // quotient sets a division as a fraction; a slash is used in exponents and
-// deep inside other fractions. Division from the left, a/b/c, is one fraction.
+// inside other fractions. Division from the left, a/b/c, is one fraction.
 func (w *builder) quotient(e *syntax.Binary) (Node, rank) {
 	num, dens := syntax.Expr(e), []syntax.Expr(nil)
 	for {
@@ -301,7 +307,7 @@ func (w *builder) quotient(e *syntax.Binary) (Node, rank) {
 	for i, j := 0, len(dens)-1; i < j; i, j = i+1, j-1 {
 		dens[i], dens[j] = dens[j], dens[i]
 	}
-	if w.inline > 0 || w.depth >= deepest {
+	if w.inline > 0 || w.depth > 0 {
 		n := w.part(num, rankedProduct, true)
 		d, r := w.denominator(dens)
 		return Row{n, Slash, bracketed(d, r, rankedPower, false)}, rankedProduct

@@ -26,13 +26,14 @@ math mtd:first-child{padding-left:.25em}
 .chain>span>span{padding-left:1.5em}
 .chain>span>span>:first-child{margin-left:-1.5em}
 .chain .b{flex-basis:100%}
+@media print,screen and (min-width:761px){.s9{font-size:.9em}.s8{font-size:.8em}.s7{font-size:.7em}}
 @media screen{.chain{overflow-x:auto;overflow-y:hidden}
 [data-tip]:is(:hover,:focus)::after{content:attr(data-tip);position:fixed;left:1em;bottom:1em;max-width:calc(100vw - 2em);padding:.4em .8em;background:#16202c;color:#fff;font:normal 14px/1.4 "Plex Serif",serif;white-space:pre-line;border-radius:3px;z-index:9}}
 `
 
 // AppendMathML appends a node as one formula within a line of text.
 func AppendMathML(dst []byte, n Node) []byte {
-	w := markup{dst}
+	w := markup{b: dst}
 	w.raw("<math>")
 	w.row(n, Open)
 	w.raw("</math>")
@@ -42,9 +43,10 @@ func AppendMathML(dst []byte, n Node) []byte {
 // AppendChain appends a formula on a line of its own, made of parts between
 // which a browser can break it.
 func AppendChain(dst []byte, c Chain) []byte {
-	w := markup{dst}
+	w := markup{b: dst, room: columnWidth}
 	w.raw(`<span class="chain">`)
 	if leads(c.Left) {
+		w.room -= leftWidth * float64(width(c.Left))
 		w.math(atoms(nil, c.Left), Open)
 		w.raw("<span>")
 	} else {
@@ -77,7 +79,10 @@ func leads(left Node) bool {
 }
 
 // A markup writes MathML Core.
-type markup struct{ b []byte }
+type markup struct {
+	b    []byte
+	room float64 // for a part of a chain, in ems
+}
 
 func (w *markup) raw(s string) { w.b = append(w.b, s...) }
 
@@ -114,54 +119,21 @@ func (w *markup) text(s string) {
 	w.raw(s[from:])
 }
 
-// shortStep is the length up to which a step is not parted: it has room on a
-// telephone's screen.
-const shortStep = 24
-
-// step writes one box of a chain, parted before its loosest operators.
-// One after a choice has a line of its own.
-func (w *markup) step(list []Node, after bool) {
-	if after {
-		w.raw(`<span class="b">`)
-	} else {
-		w.raw("<span>")
-	}
-	rank := rankNone
-	if n := length(list); n > shortStep {
-		rank = loosest(list)
-		if rank == rankBeside && n < 2*shortStep {
-			rank = rankNone
-		}
-	}
-	from := 0
-	prev := Open
-	for i, n := range list {
-		left, right := n.edges()
-		if o, ok := n.(Op); ok && i > 0 && rank < rankNone && rankOf(o) == rank && left != Punct && !signs(o, prev) {
-			w.math(list[from:i], edgeBefore(list, from))
-			from = i
-			if rank == rankBeside {
-				list[i] = Dot // what may start a line is written
-			}
-		}
-		prev = right
-	}
-	w.math(list[from:], edgeBefore(list, from))
-	w.raw("</span>")
-}
-
-// edgeBefore is the class that the atom at i sees to its left; a part that
-// starts with an operator is no sign.
-func edgeBefore(list []Node, i int) Class {
-	if i == 0 {
-		return Open
-	}
-	_, right := list[i-1].edges()
-	return right
-}
-
+// math writes atoms as one formula, smaller where they are longer than their
+// room.
 func (w *markup) math(list []Node, prev Class) {
-	w.raw(`<math displaystyle="true">`)
+	w.raw(`<math displaystyle="true"`)
+	if length(list) > shortStep {
+		switch k := w.shrink(list); {
+		case k < 0.8:
+			w.raw(` class="s7"`)
+		case k < 0.9:
+			w.raw(` class="s8"`)
+		case k < 1:
+			w.raw(` class="s9"`)
+		}
+	}
+	w.raw(">")
 	w.list(list, prev, true)
 	w.raw("</math>")
 }
@@ -196,8 +168,10 @@ func (w *markup) list(list []Node, prev Class, parted bool) {
 // operator writes an operator in the form that its place asks for.
 func (w *markup) operator(o Op, prev Class, parted bool) {
 	switch {
-	case signs(o, prev):
+	case signs(o, prev), o.Class == Open:
 		w.op(o, "prefix")
+	case o.Class == Close:
+		w.op(o, "postfix")
 	case parted && o.Class != Ord:
 		w.op(o, "infix")
 	default:
@@ -218,6 +192,9 @@ func (w *markup) op(o Op, form string) {
 		w.raw(` form="`)
 		w.raw(form)
 		w.raw(`"`)
+	}
+	if o.Class == Open || o.Class == Close {
+		w.raw(` stretchy="false"`)
 	}
 	w.raw(">")
 	w.text(o.Sign)

@@ -1,0 +1,133 @@
+package maths
+
+import "gusset/render/fonts"
+
+// A browser breaks a line only between formulas, so a right side is written
+// in parts: before its loosest operators where it is longer than shortStep,
+// which has room on a telephone's screen, and each part longer than longPart in
+// turn at tighter operators. One that the column still has no room for is set
+// smaller, down to leastScale; below that it is parted inside of its brackets,
+// and last its roots and fractions are written out in line. Parts that fit
+// stand as if they were one.
+const (
+	shortStep = 24
+	longPart  = 44
+	// columnWidth is the room of a part in the calculation column on paper, in
+	// ems: 109 mm at 11.5 points, less the hang of a continuation. leftWidth is
+	// what a character of the left side takes of it.
+	columnWidth = 25.5
+	leftWidth   = 0.55
+)
+
+// shrink is how small atoms have to be set for their room, at most 1.
+func (w *markup) shrink(list []Node) float64 {
+	s := setter{size: 1, text: fonts.Serif, metrics: fonts.MathMetrics()}
+	return min(1, w.room/s.row(Row(list), style{display: true}).width)
+}
+
+// step writes one box of a chain. One after a choice has a line of its own.
+func (w *markup) step(list []Node, after bool) {
+	if after {
+		w.raw(`<span class="b">`)
+	} else {
+		w.raw("<span>")
+	}
+	w.parts(list, Open, shortStep)
+	w.raw("</span>")
+}
+
+// parts writes atoms that stand behind a class in parts no longer than most.
+func (w *markup) parts(list []Node, prev Class, most int) {
+	n := length(list)
+	if n <= most {
+		w.math(list, prev)
+		return
+	}
+	rank := breakable(list)
+	if rank == rankNone || rank == rankBeside && n < 2*shortStep {
+		if n > shortStep && w.shrink(list) < leastScale {
+			if open := opened(list); open != nil {
+				w.parts(open, prev, longPart)
+				return
+			}
+		}
+		w.math(list, prev)
+		return
+	}
+	from := 0
+	for i := 1; i <= len(list); i++ {
+		if i < len(list) && rankBefore(list, i) != rank {
+			continue
+		}
+		if from > 0 && rank == rankBeside {
+			list[from] = Dot // what may start a line is written
+		}
+		w.parts(list[from:i], prev, longPart)
+		_, prev = list[i-1].edges()
+		from = i
+	}
+}
+
+// breakable is the loosest rank at which atoms can be parted.
+func breakable(list []Node) int {
+	rank := rankNone
+	for i := 1; i < len(list); i++ {
+		rank = min(rank, rankBefore(list, i))
+	}
+	return rank
+}
+
+// rankBefore is the rank of a break before an atom: that of an operator there
+// or of a comma behind which it stands.
+func rankBefore(list []Node, i int) int {
+	left, prev := list[i-1].edges()
+	if o, ok := list[i-1].(Op); ok && left == Punct {
+		return rankOf(o)
+	}
+	if o, ok := list[i].(Op); ok && o.Class != Punct && !signs(o, prev) {
+		return rankOf(o)
+	}
+	return rankNone
+}
+
+// opened is a list of atoms whose longest bracket is open to the line, so that
+// it can be parted inside; nil where there is nothing to open.
+func opened(list []Node) []Node {
+	at := -1
+	var inside []Node
+	for i, n := range list {
+		if at >= 0 && width(n) <= width(list[at]) {
+			continue
+		}
+		if in := inner(n); in != nil {
+			at, inside = i, in
+		}
+	}
+	if at < 0 {
+		return nil
+	}
+	out := append([]Node(nil), list[:at]...)
+	out = append(out, inside...)
+	return append(out, list[at+1:]...)
+}
+
+// inner is an atom in the line: a bracket's signs and what stands between them,
+// a root or a fraction as written out; nil for what has no such form.
+func inner(n Node) []Node {
+	script, scripted := n.(Script)
+	f, fenced := n.(Fence)
+	if scripted {
+		f, fenced = script.Base.(Fence)
+	}
+	switch {
+	case fenced && f.Open != "" && f.Close != "" && f.Body != nil:
+		var shut Node = Op{f.Close, Close}
+		if scripted {
+			shut = Script{Base: shut, Sub: script.Sub, Sup: script.Sup}
+		}
+		return append(atoms([]Node{Op{f.Open, Open}}, f.Body), shut)
+	case scripted:
+		return nil
+	}
+	return written(n)
+}
