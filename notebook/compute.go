@@ -18,7 +18,7 @@ import (
 // from, and is not asked for one that is part of a cycle. Both drafts and sheets may be
 // shared by many computations.
 func (d *Draft) Compute(find func(path string) *Draft, sheet func(path string) *Sheet) (s *Sheet) {
-	s = &Sheet{Path: d.Path, Source: d.source, Front: d.front, Doc: d.doc, Images: d.images, Files: d.Files, carriedRows: map[*check.Rows]string{}}
+	s = &Sheet{Path: d.Path, Source: d.source, Front: d.front, Doc: d.doc, Images: d.images, Files: d.Files, carriedRows: map[*check.Rows]string{}, unreadable: d.missing}
 	s.Diagnostics = slices.Clone(d.diags)
 	if !d.ctx.Panics {
 		defer func() {
@@ -34,7 +34,7 @@ func (d *Draft) Compute(find func(path string) *Draft, sheet func(path string) *
 	}
 	in := &check.Input{
 		Source: d.source, Blocks: d.blocks, Texts: d.texts, Printing: d.front.Printing,
-		Helpers: d.helpers, Library: library.Load().Library, ReadTable: d.readTable,
+		Helpers: d.helpers, Library: library.Load().Library, ReadTable: d.table,
 	}
 	carried := map[string]*eval.Carry{}
 	for _, l := range d.front.From {
@@ -72,7 +72,7 @@ func (s *Sheet) carry(d *Draft, l Link, find func(string) *Draft, sheet func(str
 	failed := func(severity diag.Severity, id, message string, hints ...string) {
 		s.Diagnostics = append(s.Diagnostics, diag.Diagnostic{Severity: severity, ID: id, Message: message, Hints: hints, Source: d.source, Span: l.At})
 	}
-	c := &check.Carry{Key: l.Key, Path: l.Path, Failed: true}
+	c := &check.Carry{Key: l.Key, Path: l.Path, Line: d.source.LineAt(l.At.Start), Failed: true}
 	e := &eval.Carry{Key: l.Key}
 	name := d.source.Slice(l.At)
 	if chain := Cycle(d, l.Path, find); chain != nil {
@@ -84,7 +84,7 @@ func (s *Sheet) carry(d *Draft, l Link, find func(string) *Draft, sheet func(str
 	s.Files = slices.Compact(slices.Sorted(slices.Values(slices.Concat(s.Files, from.Files))))
 	if from.Failed() {
 		first := from.Diagnostics[slices.IndexFunc(from.Diagnostics, func(d diag.Diagnostic) bool { return d.Severity == diag.Error })]
-		if first.ID == diag.MissingFile && first.Source == from.Source && len(first.Source.Text) == 0 {
+		if from.unreadable != nil {
 			failed(diag.Error, diag.MissingFile, fmt.Sprintf("`%s`: %s", name, first.Message))
 			return c, e
 		}
@@ -113,7 +113,7 @@ func (s *Sheet) fill(c *check.Carry, e *eval.Carry) {
 	c.Failed = false
 	c.Values, c.Rows = map[string]check.Type{}, map[string]*check.Rows{}
 	c.Texts, c.Picked = map[string][]string{}, s.picked
-	e.Steps, e.NG = map[string]*Step{}, s.firstNG() != nil
+	e.Steps = map[string]*Step{}
 	e.Origin = eval.Origin{Key: c.Key, Path: c.Path, Calc: s.Front.Calc, Rev: s.Front.Rev, Title: s.Front.Title}
 	for _, b := range s.Blocks {
 		if b.Rows != nil {

@@ -34,12 +34,13 @@ type Draft struct {
 	images  map[string]*Image
 	diags   []diag.Diagnostic
 	dead    bool // it is no text, or has no front matter: there is nothing to compute
+	missing error
 }
 
 // table is a CSV file, or why it cannot be had.
 type table struct {
 	src *diag.Source
-	err error
+	bad *fault
 }
 
 // Carries lists the calc files it carries values from, in order.
@@ -100,6 +101,9 @@ func (d *Draft) stop(f diag.Diagnostic) {
 func (d *Draft) read() {
 	text, f := readBounded(d.ctx.FS, d.Path)
 	if f != nil {
+		if f.id == diag.MissingFile {
+			d.missing = fmt.Errorf("%s: %s", d.source.Name, f.message)
+		}
 		d.stop(f.at(d.source, diag.Span{}))
 		return
 	}
@@ -212,19 +216,31 @@ func (d *Draft) readTables() {
 		if _, ok := d.tables[ref]; ok {
 			continue
 		}
-		file, f := d.within(path.Dir(d.Path), ref)
-		var t table
-		if f == nil {
-			t.src, f = d.file(file)
-		}
-		if f != nil {
-			t.err = f
-		}
-		d.tables[ref] = t
+		d.tables[ref] = d.readTable(ref)
 	}
 }
 
-func (d *Draft) readTable(ref string) (*diag.Source, error) {
+func (d *Draft) readTable(ref string) table {
+	file, bad := d.within(path.Dir(d.Path), ref)
+	if bad != nil {
+		return table{bad: bad}
+	}
+	src, bad := d.file(file)
+	if bad != nil {
+		bad = bad.of(ref)
+		if bad.id == diag.MissingFile {
+			bad.hints = []string{"the path is taken from the calc file's folder, or `library/…` for a table that ships with the program"}
+		}
+	}
+	return table{src, bad}
+}
+
+// table hands on a CSV file that was read.
+func (d *Draft) table(ref string) (*diag.Source, *diag.Diagnostic) {
 	t := d.tables[ref]
-	return t.src, t.err
+	if t.bad != nil {
+		bad := t.bad.at(nil, diag.Span{})
+		return nil, &bad
+	}
+	return t.src, nil
 }

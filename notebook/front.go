@@ -90,7 +90,7 @@ func (d *Draft) readFront(at diag.Span) {
 func (d *Draft) readRegister() {
 	dir := path.Dir(d.Path)
 	for {
-		name := path.Join(dir, registerName)
+		name := path.Join(dir, RegisterName)
 		d.watched(name)
 		text, f := readBounded(d.ctx.FS, name)
 		if f == nil || f.id != diag.MissingFile {

@@ -2,7 +2,6 @@ package notebook
 
 import (
 	"bytes"
-	"fmt"
 	"iter"
 
 	"github.com/yuin/goldmark/ast"
@@ -15,34 +14,30 @@ import (
 	"gusset/notebook/syntax"
 )
 
-// maxNesting bounds how deep quotes, lists and spans of text nest. A browser
-// stops at 512 elements; no reader follows ten.
-const maxNesting = 100
-
 // markdown is CommonMark with pipe tables and values in braces, without raw
 // HTML, which stays text. It keeps nothing of what it parses.
 var markdown = parser.NewParser(
 	parser.WithBlockParsers(
 		util.Prioritized(parser.NewSetextHeadingParser(), 100),
 		util.Prioritized(parser.NewThematicBreakParser(), 200),
-		util.Prioritized(bounded{parser.NewListParser()}, 300),
-		util.Prioritized(bounded{parser.NewListItemParser()}, 400),
+		util.Prioritized(nested{parser.NewListParser()}, 300),
+		util.Prioritized(nested{parser.NewListItemParser()}, 400),
 		util.Prioritized(parser.NewCodeBlockParser(), 500),
-		util.Prioritized(parser.NewATXHeadingParser(), 600),
+		util.Prioritized(measured{parser.NewATXHeadingParser()}, 600),
 		util.Prioritized(fenceParser{parser.NewFencedCodeBlockParser()}, 700),
-		util.Prioritized(bounded{parser.NewBlockquoteParser()}, 800),
-		util.Prioritized(parser.NewParagraphParser(), 1000),
+		util.Prioritized(nested{parser.NewBlockquoteParser()}, 800),
+		util.Prioritized(measured{parser.NewParagraphParser()}, 1000),
 	),
 	parser.WithInlineParsers(
 		util.Prioritized(parser.NewCodeSpanParser(), 100),
 		util.Prioritized(valueParser{}, 150),
-		util.Prioritized(parser.NewLinkParser(), 200),
+		util.Prioritized(marked{parser.NewLinkParser()}, 200),
 		util.Prioritized(parser.NewAutoLinkParser(), 300),
-		util.Prioritized(parser.NewEmphasisParser(), 500),
+		util.Prioritized(marked{parser.NewEmphasisParser()}, 500),
 	),
 	parser.WithParagraphTransformers(
 		util.Prioritized(parser.LinkReferenceParagraphTransformer, 100),
-		util.Prioritized(extension.NewTableParagraphTransformer(), 200),
+		util.Prioritized(newTables(), 200),
 	),
 	parser.WithASTTransformers(util.Prioritized(extension.NewTableASTTransformer(), 0)),
 )
@@ -53,23 +48,15 @@ type reading struct {
 	fences map[ast.Node]*fence
 	texts  []syntax.ValueRef
 	diags  []diag.Diagnostic
-	deep   bool // the bound on nesting was reported
+	bounds map[string]bool // those that were reported as exceeded
+	// marks counts the signs of emphasis and links in the paragraph marksIn.
+	marks   int
+	marksIn ast.Node
 }
 
 var readingKey = parser.NewContextKey()
 
 func readingOf(pc parser.Context) *reading { return pc.Get(readingKey).(*reading) }
-
-func (r *reading) tooDeep(at int) {
-	if r.deep {
-		return
-	}
-	r.deep = true
-	r.diags = append(r.diags, diag.Diagnostic{
-		ID: diag.BoundExceeded, Source: r.src, Span: diag.Span{Start: at, End: at + 1},
-		Message: fmt.Sprintf("quotes, lists and marked text may nest %d deep at most", maxNesting),
-	})
-}
 
 // blank returns a copy of a text with its first bytes blanked: every offset
 // behind them stays what it was.
@@ -86,7 +73,7 @@ func blank(text []byte, body int) []byte {
 // parseMarkdown reads the Markdown of a source from an offset on. Offsets in
 // the tree are offsets into the source.
 func parseMarkdown(src *diag.Source, body int) (ast.Node, *reading) {
-	r := &reading{src: src, fences: map[ast.Node]*fence{}}
+	r := &reading{src: src, fences: map[ast.Node]*fence{}, bounds: map[string]bool{}}
 	pc := parser.NewContext()
 	pc.Set(readingKey, r)
 	doc := markdown.Parse(text.NewReader(blank(src.Text, body)), parser.WithContext(pc))
@@ -136,27 +123,10 @@ func nodes(root ast.Node) iter.Seq2[ast.Node, int] {
 func (r *reading) prune(doc ast.Node) {
 	for n, depth := range nodes(doc) {
 		if depth > 2*maxNesting && n.HasChildren() {
-			at := max(n.Pos(), 0)
-			r.tooDeep(min(at, len(r.src.Text)))
+			r.exceeded(n.Pos(), tooDeep, maxNesting)
 			n.RemoveChildren(n)
 		}
 	}
-}
-
-// bounded is a block parser that opens no block below maxNesting others.
-type bounded struct{ parser.BlockParser }
-
-func (b bounded) Open(parent ast.Node, reader text.Reader, pc parser.Context) (ast.Node, parser.State) {
-	depth := 0
-	for n := parent; n != nil && depth <= maxNesting; n = n.Parent() {
-		depth++
-	}
-	if depth > maxNesting {
-		_, at := reader.Position()
-		readingOf(pc).tooDeep(at.Start)
-		return nil, parser.NoChildren
-	}
-	return b.BlockParser.Open(parent, reader, pc)
 }
 
 // valueParser finds `{name}` and `{name [unit]}` in text. Everything else in

@@ -58,11 +58,8 @@ func Open(file string) (*Sheet, error) {
 		return nil, plainError(file, err)
 	}
 	defer root.Close()
-	c := &Context{FS: root.FS(), Shown: place.Shown}
-	if _, f := readBounded(c.FS, place.Path); f != nil && f.id == diag.MissingFile {
-		return nil, fmt.Errorf("%s: %s", file, f.message)
-	}
-	return Compile(c, place.Path), nil
+	sheet := Compile(&Context{FS: root.FS(), Shown: place.Shown}, place.Path)
+	return sheet, sheet.Unreadable()
 }
 
 // Place is where a file on disk lies: the root it belongs to and its path
@@ -103,7 +100,7 @@ func Locate(file string) (Place, error) {
 		place.dir = own
 	}
 	for dir, inside := own, name; ; {
-		if info, err := os.Stat(filepath.Join(dir, registerName)); err == nil && info.Mode().IsRegular() {
+		if info, err := os.Stat(filepath.Join(dir, RegisterName)); err == nil && info.Mode().IsRegular() {
 			place.Root, place.Path = dir, filepath.ToSlash(inside)
 			return place, nil
 		}
@@ -121,8 +118,8 @@ func plainError(file string, err error) error {
 	return fmt.Errorf("%s: %s", file, reason(err))
 }
 
-// registerName is the file whose folder is a package's root.
-const registerName = "register.yaml"
+// RegisterName is the file whose folder is a package's root.
+const RegisterName = "register.yaml"
 
 // Compile compiles one file of the root, and before it the files that it
 // carries values from. It depends on nothing but the files' bytes.
@@ -139,36 +136,41 @@ func Compile(c *Context, file string) *Sheet {
 	}
 	find := func(path string) *Draft { return drafts[path] }
 	sheets := map[string]*Sheet{}
-	for _, d := range inOrder(drafts[path.Clean(file)], find) {
+	for _, d := range Order([]*Draft{drafts[path.Clean(file)]}, find) {
 		sheets[d.Path] = d.Compute(find, func(path string) *Sheet { return sheets[path] })
 	}
 	return sheets[path.Clean(file)]
 }
 
-// inOrder lists a draft and all it carries from, directly or not, each once and
-// behind the ones it carries from. What carries from itself is left as a cycle
-// for Compute to report.
-func inOrder(top *Draft, find func(path string) *Draft) []*Draft {
+// Order lists drafts and all they carry from, directly or not, each once and
+// behind the ones it carries from. What carries from itself stands somewhere
+// in its cycle; Compute reports it.
+func Order(tops []*Draft, find func(path string) *Draft) []*Draft {
 	type visit struct {
 		draft *Draft
 		links []string
 	}
 	var order []*Draft
-	seen := map[string]bool{top.Path: true}
-	stack := []visit{{top, top.Carries()}}
-	for len(stack) > 0 {
-		v := &stack[len(stack)-1]
-		if len(v.links) == 0 {
+	var stack []visit
+	seen := map[string]bool{}
+	enter := func(d *Draft) {
+		if !seen[d.Path] {
+			seen[d.Path] = true
+			stack = append(stack, visit{d, d.Carries()})
+		}
+	}
+	for _, top := range tops {
+		enter(top)
+		for len(stack) > 0 {
+			v := &stack[len(stack)-1]
+			if len(v.links) > 0 {
+				next := v.links[0]
+				v.links = v.links[1:]
+				enter(find(next))
+				continue
+			}
 			order = append(order, v.draft)
 			stack = stack[:len(stack)-1]
-			continue
-		}
-		next := v.links[0]
-		v.links = v.links[1:]
-		if !seen[next] {
-			seen[next] = true
-			d := find(next)
-			stack = append(stack, visit{d, d.Carries()})
 		}
 	}
 	return order

@@ -55,15 +55,17 @@ func (e *equations) next() string {
 	return e.section + "." + strconv.Itoa(e.count)
 }
 
-// anchors gives out ids, each once.
-type anchors map[string]bool
+// anchors gives out ids, each once. It holds, for each id given, the figure to
+// try next for another of its name.
+type anchors map[string]int
 
 func (a anchors) take(name string) string {
 	id := name
-	for i := 2; a[id]; i++ {
-		id = fmt.Sprintf("%s-%d", name, i)
+	for a[id] > 0 {
+		a[name]++
+		id = fmt.Sprintf("%s-%d", name, a[name])
 	}
-	a[id] = true
+	a[id] = 1
 	return id
 }
 

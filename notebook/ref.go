@@ -18,7 +18,7 @@ const maxWords = 5
 // another unit.
 func newRef(r eval.RefResult, inUnit bool) *Ref {
 	ref := &Ref{Unit: r.Unit}
-	if r.Failed || r.Step == nil {
+	if r.Step == nil {
 		ref.Text = "not computed"
 		ref.Parts = []RefPart{{Words: ref.Text}}
 		return ref

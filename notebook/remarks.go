@@ -4,6 +4,7 @@ import (
 	"strings"
 
 	"github.com/yuin/goldmark/ast"
+	"github.com/yuin/goldmark/text"
 	"github.com/yuin/goldmark/util"
 )
 
@@ -132,33 +133,40 @@ func (d *Draft) cut(block ast.Node, t *ast.Text, size int) {
 	}
 }
 
-// splitLines parts a paragraph before the first line that starts with a leading
-// word; what follows is the next paragraph.
+// splitLines parts a paragraph before each line that starts with a leading
+// word.
 func (d *Draft) splitLines(block ast.Node) {
 	if block.Kind() != ast.KindParagraph {
 		return
 	}
-	for n := block.FirstChild(); n != nil; n = n.NextSibling() {
-		t, ok := n.(*ast.Text)
-		if !ok || !t.SoftLineBreak() && !t.HardLineBreak() || d.leadWord(t.NextSibling()) == "" {
-			continue
+	lines := block.Lines().Sliced(0, block.Lines().Len())
+	used := 0 // lines that are dealt out
+	part := block
+	end := func(offset int) { // of the part's lines
+		from := used
+		for used < len(lines) && lines[used].Start < offset {
+			used++
 		}
-		t.SetSoftLineBreak(false)
-		t.SetHardLineBreak(false)
-		rest := ast.NewParagraph()
-		for c := t.NextSibling(); c != nil; {
-			next := c.NextSibling()
-			rest.AppendChild(rest, c)
-			c = next
+		own := text.NewSegments()
+		own.AppendAll(lines[from:used])
+		part.SetLines(own)
+	}
+	for n := block.FirstChild(); n != nil; {
+		next := n.NextSibling()
+		if part != block {
+			part.AppendChild(part, n)
 		}
-		lines := block.Lines()
-		keep := 0
-		for keep < lines.Len() && lines.At(keep).Start <= t.Segment.Start {
-			keep++
+		if t, ok := n.(*ast.Text); ok && (t.SoftLineBreak() || t.HardLineBreak()) && d.leadWord(next) != "" {
+			t.SetSoftLineBreak(false)
+			t.SetHardLineBreak(false)
+			end(t.Segment.Stop)
+			after := ast.NewParagraph()
+			block.Parent().InsertAfter(block.Parent(), part, after)
+			part = after
 		}
-		rest.Lines().AppendAll(lines.Sliced(keep, lines.Len()))
-		lines.SetSliced(0, keep)
-		block.Parent().InsertAfter(block.Parent(), block, rest)
-		return
+		n = next
+	}
+	if part != block {
+		end(len(d.source.Text) + 1)
 	}
 }

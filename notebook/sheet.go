@@ -41,15 +41,19 @@ type Sheet struct {
 	// root, sorted: itself, carried files and theirs, helpers, CSV, images, registers.
 	Files []string
 
-	byHeading map[ast.Node]*Heading
-	byRemark  map[ast.Node]*Remark
-	picked    map[string]*check.Rows
+	byHeading  map[ast.Node]*Heading
+	byRemark   map[ast.Node]*Remark
+	picked     map[string]*check.Rows
+	unreadable error
 	// carriedRows names the sets of rows that come from other files.
 	carriedRows map[*check.Rows]string
 }
 
 // Failed tells whether the calc has errors: then no page is written of it.
 func (s *Sheet) Failed() bool { return diag.HasErrors(s.Diagnostics) }
+
+// Unreadable tells why the calc's own file cannot be read, nil where it can.
+func (s *Sheet) Unreadable() error { return s.unreadable }
 
 // HeadingOf returns what is known of a heading of the tree.
 func (s *Sheet) HeadingOf(n ast.Node) *Heading { return s.byHeading[n] }
