@@ -29,8 +29,8 @@ func TestLibraryIsSound(t *testing.T) {
 				t.Errorf("%s has no title or no source", h.Name.Text)
 			case len(h.Gives) == 0:
 				t.Errorf("%s gives nothing", h.Name.Text)
-			case e.Title == "":
-				t.Errorf("%s stands under no heading", h.Name.Text)
+			case e.Title == "" || e.About == "":
+				t.Errorf("%s stands under no heading or nothing is said of it", h.Name.Text)
 			case lib.Helpers[h.Name.ID] != h:
 				t.Errorf("%s is listed and cannot be called", h.Name.Text)
 			}
