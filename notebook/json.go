@@ -59,17 +59,23 @@ func (s *Sheet) JSON() []byte {
 		Calc: s.Front.Calc, Rev: s.Front.Rev, Title: s.Front.Title,
 		Values: []valueJSON{}, Checks: []checkJSON{}, Diagnostics: []diag.JSON{},
 	}
-	for _, step := range s.Steps {
-		switch {
-		case step.Failed:
-		case step.Kind == eval.Check:
-			out.Checks = append(out.Checks, s.checkJSON(step))
-		case len(step.Results) > 0:
-			for _, r := range step.Results {
-				out.Values = append(out.Values, s.valueJSON(r, step))
+	for _, b := range s.Blocks {
+		for _, step := range b.Steps {
+			switch {
+			case step.Failed:
+			case step.Kind == eval.Check:
+				out.Checks = append(out.Checks, s.checkJSON(step))
+			case len(step.Results) > 0:
+				for _, r := range step.Results {
+					out.Values = append(out.Values, s.valueJSON(r, step))
+				}
+			case step.Kind == eval.Given || step.Kind == eval.Computed || step.Kind == eval.Carried:
+				v := s.valueJSON(step, step)
+				if b.Tree.Table != nil { // a column's note and source are its table's
+					v.Note, v.Source = b.Note, b.Source
+				}
+				out.Values = append(out.Values, v)
 			}
-		case step.Kind == eval.Given || step.Kind == eval.Computed || step.Kind == eval.Carried:
-			out.Values = append(out.Values, s.valueJSON(step, step))
 		}
 	}
 	for _, d := range s.Diagnostics {

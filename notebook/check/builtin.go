@@ -207,6 +207,13 @@ func (l *lower) builtinDims(x *syntax.Call, n *Node, b builtin) bool {
 			return false
 		}
 		n.Type.Dim = dim
+	case stepped:
+		if len(n.Args) == 1 && !first.Dim.IsNumber() && !n.Args[0].zero {
+			l.fail(diag.DimensionMismatch, x.Args[0].Value.Span(), fmt.Sprintf("%s of %s needs a step with a unit", n.Fn, l.e.c.describe(first)),
+				fmt.Sprintf("write `%s, 1 %s`", l.print(x.Args[0].Value), l.e.c.in.Printing.UnitFor(first.Dim, false)))
+			return false
+		}
+		return l.oneDimension(x, n, b)
 	default:
 		return l.oneDimension(x, n, b)
 	}

@@ -6,7 +6,9 @@ import (
 	"errors"
 	"fmt"
 	"io"
-	"io/fs"
+	"maps"
+	"slices"
+	"strings"
 
 	"gusset/notebook/diag"
 	"gusset/notebook/syntax"
@@ -15,14 +17,10 @@ import (
 // readCSV reads the file that a schedule names. Comment lines starting with
 // `#` may stand above its header; faults point into the file itself.
 func (c *checker) readCSV(t *syntax.Table) (*syntax.Table, *diag.Source, bool) {
-	l := &lower{e: c.top}
-	src, err := c.csvSource(t.From)
-	if err != nil {
-		message := fmt.Sprintf("%s cannot be read: %v", t.From, err)
-		if errors.Is(err, fs.ErrNotExist) {
-			message = fmt.Sprintf("there is no file %s", t.From)
-		}
-		l.fail(diag.MissingFile, t.FromAt, message, "the path is taken from the calc file's folder, or `library/…` for a table that ships with the program")
+	src, bad := c.csvSource(t.From)
+	if bad != nil {
+		bad.Source, bad.Span = c.in.Source, t.FromAt
+		c.report(*bad)
 		return t, nil, false
 	}
 	out := &syntax.Table{At: diag.Span{Start: 0, End: len(src.Text)}, Name: t.Name, From: t.From, FromAt: t.FromAt}
@@ -39,14 +37,23 @@ func (c *checker) readCSV(t *syntax.Table) (*syntax.Table, *diag.Source, bool) {
 	return out, src, ok
 }
 
-func (c *checker) csvSource(path string) (*diag.Source, error) {
+// libraryPrefix starts the names of the tables that ship with the program.
+const libraryPrefix = "library/"
+
+// csvSource finds the file, or says why it cannot be had.
+func (c *checker) csvSource(path string) (*diag.Source, *diag.Diagnostic) {
+	if !strings.HasPrefix(path, libraryPrefix) {
+		return c.in.ReadTable(path)
+	}
 	if s, ok := c.in.Library.Tables[path]; ok {
 		return s, nil
 	}
-	if c.in.ReadTable == nil {
-		return nil, fs.ErrNotExist
+	tables := slices.Sorted(maps.Keys(c.in.Library.Tables))
+	hint := "its tables are " + strings.Join(tables, ", ")
+	if near := diag.Nearest(path, tables); near != "" {
+		hint = fmt.Sprintf("did you mean `%s`?", near)
 	}
-	return c.in.ReadTable(path)
+	return nil, &diag.Diagnostic{ID: diag.MissingFile, Message: fmt.Sprintf("the library that ships with the program has no table `%s`", path), Hints: []string{hint}}
 }
 
 func skipComments(text []byte) int {
@@ -86,7 +93,7 @@ func (f *csvFile) read(t *syntax.Table) bool {
 		case len(t.Rows) > maxRows:
 			return ok // the bound is reported once for the table
 		default:
-			ok = f.row(t, record) && ok
+			f.row(t, record)
 		}
 	}
 }
@@ -99,7 +106,7 @@ func (f *csvFile) broken(err error) {
 		line, message = pe.Line+f.first, pe.Err.Error()
 		switch pe.Err {
 		case csv.ErrQuote:
-			message = "a quote stands in the middle of a field"
+			message = "the quotes of a field are not closed, or a quote inside them is not doubled"
 		case csv.ErrBareQuote:
 			message = "a quote stands in a field that does not begin with one"
 		}
@@ -138,16 +145,22 @@ func (f *csvFile) header(t *syntax.Table, record []string) bool {
 	return ok
 }
 
-func (f *csvFile) row(t *syntax.Table, record []string) bool {
+// row enters a record. One with too few fields or too many is reported and
+// filled or cut, as a row in the calc file is.
+func (f *csvFile) row(t *syntax.Table, record []string) {
 	line, _ := f.r.FieldPos(0)
 	start := f.src.LineStart(line + f.first)
 	at := diag.Span{Start: start, End: start + len(f.src.Line(line+f.first))}
+	row := syntax.Row{At: at}
 	if len(record) != len(t.Columns) {
 		f.l.fail(diag.Syntax, at, fmt.Sprintf("the row has %s, but the header has %d", count(len(record), "field", "fields"), len(t.Columns)))
-		return false
 	}
-	row := syntax.Row{At: at}
-	for i, text := range record {
+	for i := range t.Columns {
+		if i >= len(record) {
+			row.Cells = append(row.Cells, syntax.Cell{At: diag.Span{Start: at.End, End: at.End}, Missing: true})
+			continue
+		}
+		text := record[i]
 		where, quoted := f.field(i, text)
 		cell := syntax.ParseCell(f.src, where, quoted)
 		if quoted {
@@ -156,5 +169,4 @@ func (f *csvFile) row(t *syntax.Table, record []string) bool {
 		row.Cells = append(row.Cells, cell)
 	}
 	t.Rows = append(t.Rows, row)
-	return true
 }

@@ -16,8 +16,9 @@ type Input struct {
 	Carried  []*Carry      // by the front matter's `from`, in order
 	Helpers  []*HelperFile // by the front matter's `helpers`, in order
 	Library  Library
-	// ReadTable reads a CSV file that a schedule names: nil and the reason where it cannot be had.
-	ReadTable func(path string) (*diag.Source, error)
+	// ReadTable reads a CSV file that a schedule names: nil and the reason,
+	// without a place, where it cannot be had.
+	ReadTable func(path string) (*diag.Source, *diag.Diagnostic)
 }
 
 // Carry is another calc file's results under a key. Values holds the types

@@ -187,6 +187,9 @@ func (t *tableCheck) rows(line int) *Rows {
 		mark := cell.Text
 		rows.Marks[r] = mark
 		here := t.src.LineAt(cell.At.Start)
+		if cell.Missing {
+			continue
+		}
 		if mark == "" {
 			l.fail(diag.Syntax, t.t.Rows[r].At, fmt.Sprintf("the row has no mark: the column %s names the rows", t.t.Columns[t.marks].Name.Text))
 			continue
@@ -289,6 +292,9 @@ func (t *tableCheck) cell(l *lower, cell *syntax.Cell, col *syntax.Column, d *De
 	l.uses = make([]*Def, cell.Slots)
 	if cell.Expr == nil {
 		switch {
+		case cell.Missing:
+			l.failed = true
+			return invalid
 		case cell.Text == "":
 			return l.fail(diag.Syntax, cell.At, fmt.Sprintf("the cell under %s is empty", col.Name.Text), "a column of numbers has a value in each row")
 		case cell.Err != nil:

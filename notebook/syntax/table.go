@@ -154,7 +154,7 @@ func (p *parser) row(t *Table, l Line, leading bool) {
 	row := Row{At: p.span(l.Start, l.End), Cells: make([]Cell, n)}
 	for i := range row.Cells {
 		if i >= len(cells) {
-			row.Cells[i] = Cell{At: p.span(l.End, l.End)}
+			row.Cells[i] = Cell{At: p.span(l.End, l.End), Missing: true}
 			continue
 		}
 		c := cells[i]

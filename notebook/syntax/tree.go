@@ -334,7 +334,8 @@ type Row struct {
 // an expression; whether a column is text is for the checker to say. Quoted
 // tells that the author put the text in quotes, which then are not part of Text.
 // Slots counts the names used. Err is an error where Expr is nil, and may be a
-// warning beside an Expr.
+// warning beside an Expr. Missing tells that the row ends before the cell, which
+// has been reported.
 type Cell struct {
 	At     diag.Span
 	Text   string
@@ -342,6 +343,8 @@ type Cell struct {
 	Expr   Expr
 	Slots  int
 	Err    *diag.Diagnostic // why Expr is nil, for a column of numbers
+
+	Missing bool
 }
 
 // Plot is a plot block: curves against a swept name, or `plot checks`.
