@@ -248,11 +248,10 @@ func (l *layout) strip(count string) ink {
 	var k ink
 	const base = 9.0
 	width := l.paper.inner()
-	right := "Sheet " + count
-	k.texts = append(k.texts, text{x: width - stripStyle.width(right), y: base, style: stripStyle, text: right})
+	sheet := "Sheet " + count
 	mark := stripStyle.in(fonts.SansSemiBold)
-	markAt := width - stripStyle.width(right) - 18 - mark.width(working)
-	k.texts = append(k.texts, text{x: markAt, y: base, style: mark, text: working})
+	sheetAt := width - stripStyle.width(sheet)
+	markAt := sheetAt - 18 - mark.width(working)
 	f := &l.page.Sheet.Front
 	number := f.Calc
 	if f.Rev != "" {
@@ -273,6 +272,9 @@ func (l *layout) strip(count string) ink {
 			k.texts = append(k.texts, text{x: lines[0].width + 2, y: base, style: stripStyle, text: "…"})
 		}
 	}
+	k.texts = append(k.texts,
+		text{x: markAt, y: base, style: mark, text: working},
+		text{x: sheetAt, y: base, style: stripStyle, text: sheet})
 	k.fill(0, 14.5, width, frameRule, inkColour)
 	return k
 }

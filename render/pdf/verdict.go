@@ -29,11 +29,17 @@ func (b *prose) verdictBeside(parts []slab, e *render.Entry) {
 		low = b.doc.smallOutput(&s, e.Mark, low+9.5) + 1.5
 	}
 	whole := height(parts)
+	last := &parts[len(parts)-1]
 	if lack := low + 2*bandPad - whole; lack > 0 {
-		parts[len(parts)-1].height += lack
+		last.height += lack
 		whole += lack
 	}
-	parts[0].ink.add(&s.ink, 0, (whole-low)/2-parts[0].pad)
+	y := (whole-low)/2 - (whole - last.height) - last.pad
+	if whole > b.doc.tallest() {
+		// The parts may stand on several pages.
+		y = 0
+	}
+	last.ink.add(&s.ink, 0, y)
 }
 
 // verdict sets the utilisation and the word for it on a baseline, and the bar
