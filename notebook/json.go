@@ -106,6 +106,9 @@ func (s *Sheet) valueJSON(v, line *Step) valueJSON {
 	if v != line && v.Note == "" {
 		j.Note, j.Source = line.Note, line.Source
 	}
+	if line.Origin != nil && j.Source == "" {
+		j.Source = line.Origin.Name()
+	}
 	nested := func(entry func(b []byte, i int) []byte) json.RawMessage {
 		return appendNested(nil, v.Value.Type.Rows, entry)
 	}

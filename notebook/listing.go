@@ -61,6 +61,9 @@ func (s *Sheet) list(lines []Line, step *Step) []Line {
 	default:
 		return lines
 	}
+	if step.Origin != nil && line.Source == "" {
+		line.Source = step.Origin.Name()
+	}
 	switch c := step.Check; {
 	case step.Failed:
 		line.Verdict, line.Because = "not computed", step.Because
@@ -77,7 +80,7 @@ func (s *Sheet) list(lines []Line, step *Step) []Line {
 		for i, r := range step.Results {
 			part := Line{Kind: ValueLine, Name: r.Symbol, Value: valueText(r), Note: r.Note, Source: r.Source}
 			if i == 0 {
-				part.Number, part.Note, part.Source = step.Number, step.Note, step.Source
+				part.Number, part.Note, part.Source = step.Number, step.Note, line.Source
 			}
 			lines = append(lines, part)
 		}

@@ -67,7 +67,11 @@ func PlainText(pieces []Piece) string {
 			continue
 		}
 		b.WriteString(p.Figures)
-		if u := p.Unit.Pretty(); u != "" {
+		switch u := p.Unit.Pretty(); u {
+		case "":
+		case "°", "′", "″":
+			b.WriteString(u)
+		default:
 			b.WriteByte(' ')
 			b.WriteString(u)
 		}

@@ -97,6 +97,18 @@ type Origin struct {
 	Step                        *Step // the step of that file
 }
 
+// Name is the calc a value was carried from as it is cited: `C-104 rev B, Lifting lug`.
+func (o *Origin) Name() string {
+	name := o.Calc
+	if o.Rev != "" {
+		name += " rev " + o.Rev
+	}
+	if o.Title != "" {
+		name += ", " + o.Title
+	}
+	return name
+}
+
 // Trial is one candidate of `first of`: the value as printed, its mark where it came from a
 // schedule, and the comparison as it came out (`142.2 MPa > 136.6 MPa`).
 type Trial struct {

@@ -192,16 +192,7 @@ func (b *Builder) Tip(s *eval.Step, entry int) string {
 }
 
 // Origin names the calc that a value was carried from: C-101 rev B, Load takedown.
-func Origin(o *eval.Origin) string {
-	name := o.Calc
-	if o.Rev != "" {
-		name += " rev " + o.Rev
-	}
-	if o.Title != "" {
-		name += ", " + o.Title
-	}
-	return name
-}
+func Origin(o *eval.Origin) string { return o.Name() }
 
 // rightSide is the formula of a step for its tip: of several branches the one
 // taken.
