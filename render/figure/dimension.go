@@ -9,6 +9,8 @@ import "math"
 func (d *pad) dimension(a, b Point, out float64, value label) {
 	length := math.Hypot(b.X-a.X, b.Y-a.Y)
 	if length == 0 {
+		// Too small for the scale of the drawing, but no less true.
+		d.near(value, a, math.Abs(out), everywhere, math.Pi/2)
 		return
 	}
 	ux, uy := (b.X-a.X)/length, (b.Y-a.Y)/length

@@ -327,7 +327,7 @@ func (d *pad) finish(title, desc string) *Drawing {
 	if room.empty() {
 		room = rect{0, 0, column, 0}
 	}
-	k := math.Min(1, column/(room.x1-room.x0+2*edge))
+	k := math.Min(1, (column-2*edge)/(room.x1-room.x0))
 	for i := range d.items {
 		d.items[i].moveTo(k, edge-k*room.x0, edge-k*room.y0)
 	}

@@ -42,7 +42,7 @@ func (s *sketch) group(f *eval.Figure) *Drawing {
 	}
 	list, governs := s.fasteners(f)
 	if len(list) == 0 {
-		return s.refuse("not drawn: a position or a force has no value", title)
+		return s.refuse("not drawn: a position or a force has no value, or one out of the range of drawings", title)
 	}
 	s.place(list)
 	largest := list[governs].force
@@ -99,7 +99,7 @@ func (s *sketch) fasteners(f *eval.Figure) (list []fastener, governs int) {
 		m.fx, m.fy = force(e)
 		m.force = math.Hypot(m.fx, m.fy)
 		for _, v := range []float64{m.x, m.y, m.force} {
-			if math.IsNaN(v) || math.IsInf(v, 0) {
+			if !drawable(v) {
 				return nil, 0
 			}
 		}

@@ -10,10 +10,7 @@ import (
 // sheared surface unrolled.
 func (s *sketch) pulledThrough() *Drawing {
 	const title = "Plate pulled through by a head"
-	if why := s.finite("d", "t"); why != "" {
-		return s.refuse(why, title)
-	}
-	if why := s.positive("d", "t", "d_s"); why != "" {
+	if why := s.sizes("d", "t", "d_s"); why != "" {
 		return s.refuse(why, title)
 	}
 	d, t := s.arg("d").x, s.arg("t").x
@@ -49,11 +46,13 @@ func (s *sketch) pulledThrough() *Drawing {
 	}
 	foot := h + stub + 6
 	if s.has("d_s") {
-		s.dimension(Point{rs, h + stub + 2}, Point{-rs, h + stub + 2}, 9, s.given("d_s"))
 		foot += 12
 	}
 	s.arrow(stroke{ink, firm, nil}, Point{0, foot}, Point{0, foot + 18})
 	s.near(s.label(maths.Symbol{Head: "P"}), Point{0, foot + 18}, 3, everywhere, -math.Pi/2)
+	if s.has("d_s") {
+		s.dimension(Point{rs, h + stub + 2}, Point{-rs, h + stub + 2}, 9, s.given("d_s"))
+	}
 	s.dimension(Point{-r, -headHeight}, Point{r, -headHeight}, 15, s.given("d"))
 	s.dimension(Point{-half, h}, Point{-half, 0}, 13, s.given("t"))
 	// The cylinder that is sheared, unrolled.

@@ -14,14 +14,11 @@ const mostInLap = 12
 // sheared areas in the plane between the plates.
 func (s *sketch) lap() *Drawing {
 	const title = "Lap with a row of fasteners"
-	if why := s.finite("t_1", "t_2", "d", "n"); why != "" {
-		return s.refuse(why, title)
-	}
-	if why := s.positive("t_1", "t_2", "d", "p"); why != "" {
+	if why := s.sizes("t_1", "t_2", "d", "p"); why != "" {
 		return s.refuse(why, title)
 	}
 	count := math.Round(s.arg("n").x)
-	if count < 1 || count > 1e6 {
+	if !(count >= 1 && count <= 1e6) {
 		return s.refuse(fmt.Sprintf("not drawn: %s is no number of fasteners", plainOf(equals(s.symbolOf("n"), s.valueOf("n")))), title)
 	}
 	d, pitch := s.arg("d").x, 3*s.arg("d").x

@@ -16,11 +16,10 @@ type stress struct {
 	size      float64
 }
 
-// newStress takes a state in Pa. Components below a billionth of the largest
-// are drawn as they are; a state below vanishing is no stress.
+// newStress takes a state in Pa.
 func newStress(x, y, tau float64) stress {
 	size := math.Max(math.Max(math.Abs(x), math.Abs(y)), math.Abs(tau))
-	if !(size > vanishing) {
+	if size == 0 {
 		return stress{}
 	}
 	return stress{x / size, y / size, tau / size, size}
@@ -158,14 +157,4 @@ func (s *sketch) mohrLabels(st stress, c, r float64, x, y Point, radius float64)
 	_, _, angle := st.circle()
 	s.near(s.label(equals(s.name("σ_m"), value("sigma_x", c))), Point{}, 5, everywhere, math.Pi-angle, 3*math.Pi/4)
 	s.near(s.result(s.name("θ_p"), degrees(s.pad, angle)), Point{radius, radius}, 2, everywhere, 0, -math.Pi/4)
-}
-
-// finite tells which of the parameters named has no value that can be drawn.
-func (s *sketch) finite(names ...string) (fault string) {
-	for _, n := range names {
-		if a := s.arg(n); a.step == nil || math.IsNaN(a.x) || math.IsInf(a.x, 0) {
-			return fmt.Sprintf("not drawn: %s has no value", plainOf(s.symbolOf(n)))
-		}
-	}
-	return ""
 }

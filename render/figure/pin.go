@@ -34,15 +34,15 @@ func (s *sketch) sheared(c Point, r float64, of, what string) {
 // each of its two planes has.
 func (s *sketch) pin() *Drawing {
 	const title = "Pin in double shear"
-	if why := s.finite("d", "t_1", "t_2"); why != "" {
-		return s.refuse(why, title)
-	}
-	if why := s.positive("d", "t_1", "t_2"); why != "" {
+	if why := s.sizes("d", "t_1", "t_2"); why != "" {
 		return s.refuse(why, title)
 	}
 	gap := 0.0
 	if s.has("g") {
-		if gap = s.arg("g").x; !(gap >= 0) || math.IsInf(gap, 0) {
+		if why := s.finite("g"); why != "" {
+			return s.refuse(why, title)
+		}
+		if gap = s.arg("g").x; gap < 0 {
 			return s.refuse(fmt.Sprintf("not drawn: %s is no gap", plainOf(equals(s.symbolOf("g"), s.valueOf("g")))), title)
 		}
 	}
@@ -96,6 +96,9 @@ func (s *sketch) plate(x0, x1, y0, y1 float64, up bool) {
 // broken draws the line where a part goes on that is not drawn.
 func (s *sketch) broken(a, b Point) {
 	length := math.Hypot(b.X-a.X, b.Y-a.Y)
+	if length == 0 {
+		return
+	}
 	ux, uy := (b.X-a.X)/length, (b.Y-a.Y)/length
 	const tooth, out = 3.0, 2.6
 	m := Point{(a.X + b.X) / 2, (a.Y + b.Y) / 2}

@@ -217,11 +217,34 @@ func degrees(d *pad, angle float64) maths.Node {
 	return d.number(deg.FromSI(angle), deg, 4)
 }
 
-// positive tells whether all the parameters named can be drawn as sizes; if not
-// it says so in the drawing.
-func (s *sketch) positive(names ...string) (fault string) {
+// drawable tells whether a value is of a magnitude that sketches work with: no
+// product of three such values is out of a double's range.
+func drawable(x float64) bool {
+	const largest, least = 1e100, 1e-100
+	return x == 0 || math.Abs(x) <= largest && math.Abs(x) >= least
+}
+
+// finite tells which of the parameters named has no value that can be drawn.
+func (s *sketch) finite(names ...string) (fault string) {
 	for _, n := range names {
-		if a := s.arg(n); a.step != nil && !(a.x > 0 && a.x < math.Inf(1)) {
+		switch a := s.arg(n); {
+		case a.step == nil:
+		case math.IsNaN(a.x) || math.IsInf(a.x, 0):
+			return fmt.Sprintf("not drawn: %s has no value", plainOf(s.symbolOf(n)))
+		case !drawable(a.x):
+			return fmt.Sprintf("not drawn: %s is out of the range of drawings", plainOf(s.symbolOf(n)))
+		}
+	}
+	return ""
+}
+
+// sizes tells which of the parameters named is no size that can be drawn.
+func (s *sketch) sizes(names ...string) (fault string) {
+	if why := s.finite(names...); why != "" {
+		return why
+	}
+	for _, n := range names {
+		if a := s.arg(n); a.step != nil && !(a.x > 0) {
 			return fmt.Sprintf("not drawn: %s is no size", plainOf(equals(s.symbolOf(n), s.valueOf(n))))
 		}
 	}

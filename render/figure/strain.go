@@ -32,11 +32,17 @@ func exaggeration(angle float64) float64 {
 	return shifted(mantissa, exponent)
 }
 
+// largestAngle bounds the angles, or strains, that a block is drawn for.
+const largestAngle = 1000
+
 // shearAngle draws a block sheared by an angle.
 func (s *sketch) shearAngle() *Drawing {
 	const title = "Block in shear"
 	if why := s.finite("gamma"); why != "" {
 		return s.refuse(why, title)
+	}
+	if math.Abs(s.arg("gamma").x) > largestAngle {
+		return s.refuse(fmt.Sprintf("not drawn: %s is no angle of a block", plainOf(equals(s.symbolOf("gamma"), s.valueOf("gamma")))), title)
 	}
 	const width, height, gap = 120.0, 84.0, 6.0
 	gamma := s.arg("gamma").x
@@ -96,17 +102,14 @@ const (
 // stressStrain draws an elastic-plastic curve with the point where the part is.
 func (s *sketch) stressStrain() *Drawing {
 	const title = "Stress and strain in shear"
-	if why := s.finite("G", "tau_y", "gamma"); why != "" {
+	if why := s.sizes("G", "tau_y"); why != "" {
 		return s.refuse(why, title)
 	}
-	if why := s.positive("G", "tau_y"); why != "" {
+	if why := s.finite("gamma"); why != "" {
 		return s.refuse(why, title)
 	}
 	g, yield, gamma := s.arg("G").x, s.arg("tau_y").x, s.arg("gamma").x
 	atYield := yield / g
-	if !(atYield > vanishing) || math.IsInf(atYield, 0) {
-		return s.refuse("not drawn: the strain at yield is out of range", title)
-	}
 	response := func(x float64) float64 { return math.Copysign(math.Min(math.Abs(x)*g, yield), x) }
 	far := math.Max(2*atYield, 1.2*math.Abs(gamma))
 	strain, stress := s.arg("gamma").step.Unit, s.arg("tau_y").step.Unit

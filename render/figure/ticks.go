@@ -53,6 +53,9 @@ func newScale(over [2]float64, tight bool, most int) scale {
 		s.ticks = append(s.ticks, shifted(n*mantissa, exponent))
 	}
 	s.decimals = max(0, -exponent)
+	if len(s.ticks) < 2 {
+		return newScale(over, tight, 2*most)
+	}
 	return s
 }
 
