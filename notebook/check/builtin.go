@@ -192,7 +192,7 @@ func (l *lower) builtinDims(x *syntax.Call, n *Node, b builtin) bool {
 				"divide it by a value of its own dimension first")
 			return false
 		}
-		if lit := x.Args[0].Value; b.rule == angled && n.Args[0].bare && n.Args[0].Num != 0 {
+		if lit := x.Args[0].Value; b.rule == angled && n.Args[0].bare && !n.Args[0].zero {
 			l.report(diag.Warning, diag.BareAngle, lit.Span(), fmt.Sprintf("the bare number %s is read as radians", l.print(lit)),
 				fmt.Sprintf("write `%s(%s deg)` for degrees, `%s(%s rad)` to say radians", n.Fn, l.print(lit), n.Fn, l.print(lit)))
 		}

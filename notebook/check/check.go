@@ -34,6 +34,10 @@ type checker struct {
 	depth      int      // nesting of helpers and functions being lowered
 	expanding  map[*syntax.Helper]bool
 	own        []*helper // the calc's own helper blocks so far
+	// caseMarks are the names of columns of marks of load cases. A second set
+	// of load cases may head its own by the same word (`case`), and has it
+	// under its name then (`wind.case`).
+	caseMarks map[string]bool
 }
 
 // Check checks a file. Its program can be evaluated even where it has errors:
@@ -49,6 +53,7 @@ func Check(in *Input) *Program {
 		later:      map[string]int{},
 		laterFuncs: map[string]int{},
 		expanding:  map[*syntax.Helper]bool{},
+		caseMarks:  map[string]bool{},
 	}
 	c.top = &env{c: c, src: in.Source, scope: c.prog.Scope, names: map[string]*Def{}, funcs: map[string]*function{}, helpers: map[string]*helper{}}
 	c.keys()
@@ -195,7 +200,7 @@ func (c *checker) checkBlock(b *syntax.Block) {
 func (c *checker) refs() {
 	for i := range c.in.Texts {
 		ref := &c.in.Texts[i]
-		l := &lower{e: c.top}
+		l := &lower{e: c.top, inText: true}
 		plan := RefPlan{}
 		n := l.name(ref.Name)
 		switch {

@@ -358,7 +358,7 @@ func (l *lower) askFreq(x syntax.Expr, n *Node, asked Freq, who string) *Node {
 func (l *lower) declaredPoint(s *syntax.Definition, x syntax.Expr, n *Node) *Node {
 	if n.Type.Kind == Point {
 		return l.fail(diag.DimensionMismatch, x.Span(), fmt.Sprintf("%s is declared in %s, a temperature difference, but %s is a temperature point", s.Name.Text, s.Unit.Text, l.print(x)),
-			"declare it in degC or degF, or subtract a point for a difference")
+			"declare it in degC or degF; "+l.asDifference(x))
 	}
 	unit := "K"
 	if s.Unit.Text == "degF" || s.Unit.Text == "°F" {
@@ -372,7 +372,7 @@ func (l *lower) declaredPoint(s *syntax.Definition, x syntax.Expr, n *Node) *Nod
 func (l *lower) declareWhere(s *syntax.Definition, x syntax.Expr, n *Node) *Node {
 	if n.Type.Kind != Number || !n.Type.Dim.IsNumber() {
 		return l.fail(diag.DimensionMismatch, x.Span(), fmt.Sprintf("with `where` the formula gives a plain number in %s, but %s is %s", s.Unit.Text, l.print(x), l.e.c.describe(n.Type)),
-			"name every value that has a dimension behind `where`, with the unit that the rule assumes")
+			everyName)
 	}
 	t := n.Type
 	t.Dim = s.Unit.Dim

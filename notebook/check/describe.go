@@ -131,6 +131,21 @@ func (l *lower) mismatch(at diag.Span, message string, want, found Type) {
 	l.fail(diag.DimensionMismatch, at, message, l.wayOut(want, found)...)
 }
 
+// everyName is the way out where a formula with `where` holds a dimension.
+const everyName = "name every value that has a dimension behind `where`, with the unit that the rule assumes"
+
+// asDifference says how a temperature point becomes the difference that is asked.
+func (l *lower) asDifference(x syntax.Expr) string {
+	if lit, ok := x.(*syntax.Number); ok && len(lit.Pieces) == 1 {
+		unit := "K"
+		if strings.HasSuffix(lit.Pieces[0].Unit.String(), "F") {
+			unit = "degR"
+		}
+		return fmt.Sprintf("a difference is given in K or degR: write `%s %s`", strings.TrimSpace(strings.TrimSuffix(l.print(x), lit.Pieces[0].Unit.String())), unit)
+	}
+	return "a difference is given in K or degR; subtract a point from it"
+}
+
 // simple are the quantities by which a formula is most often off.
 var simple = []struct{ name, unit string }{
 	{"length", "m"}, {"area", "m^2"}, {"volume", "m^3"}, {"fourth power of a length", "m^4"}, {"force", "N"}, {"stress", "Pa"},
@@ -139,7 +154,10 @@ var simple = []struct{ name, unit string }{
 
 func (l *lower) wayOut(want, found Type) []string {
 	var hints []string
-	if want.Kind == Number && found.Kind == Number {
+	switch {
+	case len(l.where) > 0 && want.Dim.IsNumber() != found.Dim.IsNumber():
+		return []string{everyName}
+	case want.Kind == Number && found.Kind == Number:
 		hints = l.missingFactor(want.Dim, found.Dim)
 	}
 	for _, s := range l.spaced {

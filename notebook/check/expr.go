@@ -29,6 +29,9 @@ type lower struct {
 	siteIn *env
 	inside string
 	cost   int // calls that the statement comes to
+	// inText tells that a value in text is looked up, which may stand above its
+	// definition.
+	inText bool
 }
 
 var invalid = &Node{}

@@ -66,6 +66,10 @@ func figureUsage(k *FigureKind) string {
 func (c *checker) figure(block int, t *syntax.Figure) {
 	plan := &FigurePlan{Tree: t}
 	c.prog.Figures[block] = plan
+	if t.Kind == "" { // reported where it was read
+		plan.Failed = true
+		return
+	}
 	l := &lower{e: c.top, uses: make([]*Def, t.Slots), declared: true}
 	defer func() { plan.Failed, plan.Uses = l.failed, l.uses }()
 	var names []string

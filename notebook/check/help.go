@@ -291,6 +291,9 @@ func (l *lower) argument(x *syntax.Call, h *helper, p *syntax.Param, value synta
 	who := fmt.Sprintf("%s of %s", p.Name.Text, h.tree.Name.Text)
 	if got.Kind != want.Kind || got.Dim != want.Dim {
 		message := fmt.Sprintf("%s takes %s, but `%s` is %s", who, l.e.c.describe(want), l.print(value), l.e.c.describe(got))
+		if want.Kind == Number && got.Kind == Point {
+			return l.fail(diag.DimensionMismatch, value.Span(), message, l.asDifference(value))
+		}
 		l.mismatch(value.Span(), message, want, got)
 		return invalid
 	}

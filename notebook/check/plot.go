@@ -39,7 +39,11 @@ const (
 func (c *checker) plot(block int, t *syntax.Plot) {
 	plan := &PlotPlan{Tree: t}
 	c.prog.Plots[block] = plan
-	if t.Checks {
+	switch {
+	case t.Checks:
+		return
+	case t.Against == nil || t.From == nil || t.To == nil: // reported where it was read
+		plan.Failed = true
 		return
 	}
 	l := &lower{e: c.top, uses: make([]*Def, t.Slots), declared: true}

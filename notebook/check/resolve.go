@@ -109,18 +109,19 @@ func (l *lower) unknown(x *syntax.Name) {
 		return
 	}
 	near := diag.Nearest(x.ID, l.e.inScope(func(*Def) bool { return true }))
-	if units.IsUnitName(x.Text) {
+	if units.IsUnitName(x.Text) && !l.inText {
 		l.fail(diag.MissingUnit, x.At, fmt.Sprintf("`%s` stands here as a value, but no value of that name is defined; it is a unit", x.Text),
 			fmt.Sprintf("a unit stands directly after a number: write `1 %s`", x.Text))
 		return
 	}
-	var hints []string
-	if near != "" {
-		hints = append(hints, "did you mean `"+near+"`?")
-	} else {
-		hints = append(hints, "a name is defined above its first use: `"+x.Text+" = …`")
+	hint := "a name is defined above its first use: `" + x.Text + " = …`"
+	switch {
+	case near != "":
+		hint = "did you mean `" + near + "`?"
+	case l.inText:
+		hint = "a calc block defines it; for braces in the text write `\\{" + x.Text + "}`"
 	}
-	l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is not defined", x.Text), hints...)
+	l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is not defined", x.Text), hint)
 }
 
 // unknownDotted reports `bolts.z`, `loads.Q`, `jnt.F_x` that do not exist.

@@ -213,7 +213,7 @@ func (t *tableCheck) column(i int, rows *Rows) {
 		return
 	}
 	name := *col.Name
-	if t.block.Kind == syntax.ScheduleBlock {
+	if t.block.Kind == syntax.ScheduleBlock || i == t.marks && t.c.caseMarks[name.ID] {
 		name.ID, name.Text = t.name+"."+col.Name.ID, t.name+"."+col.Name.Text
 	}
 	p := &Plan{Line: t.c.in.Source.LineAt(min(t.block.Table.At.Start, len(t.c.in.Source.Text))), Block: t.body.block, IsGiven: true}
@@ -221,6 +221,9 @@ func (t *tableCheck) column(i int, rows *Rows) {
 		p.Line = t.src.LineAt(col.At.Start)
 	}
 	t.body.plans = append(t.body.plans, p)
+	if t.block.Kind == syntax.CasesBlock && i == t.marks {
+		t.c.caseMarks[name.ID] = true
+	}
 	l := t.lower(0)
 	free := t.freshColumn(l, &name, col)
 	d := &Def{ID: name.ID, Symbol: name.Text, Line: p.Line, At: col.At, Plan: p, Scope: t.c.top.scope, Slot: t.c.top.scope.newSlot()}

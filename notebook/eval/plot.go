@@ -34,7 +34,7 @@ func (m *machine) plot(p *check.PlotPlan) *Plot {
 	}
 	var dep depends
 	if err != nil && !errors.As(err, &dep) {
-		d := diag.Diagnostic{ID: diag.OutOfRange, Source: m.top.src, Span: p.Tree.At, Message: err.Error()}
+		d := diag.Diagnostic{ID: diag.OutOfRange, Source: m.top.src, Span: p.Tree.From.Span().To(p.Tree.To.Span()), Message: err.Error()}
 		var e *fault
 		if errors.As(err, &e) {
 			d.ID, d.Hints, d.Message = e.id, e.hints, e.message

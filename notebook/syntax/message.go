@@ -60,8 +60,10 @@ func (p *parser) leftover() {
 		p.syntax(p.start, p.pos, fmt.Sprintf("%s belongs to `first of … with …`, which is the whole right side of a definition", here))
 	case tOver:
 		p.syntax(p.start, p.pos, "`over` stands only inside a reduction, as in `max(F over bolts)`")
-	case tIf, tOtherwise:
-		p.syntax(p.start, p.pos, fmt.Sprintf("%s stands only behind a branch of a definition, and `if` behind a check", here))
+	case tIf:
+		p.syntax(p.start, p.pos, "`if` stands only behind a branch of a definition or behind a check, outside all brackets")
+	case tOtherwise:
+		p.syntax(p.start, p.pos, "`otherwise` stands only behind the last branch of a definition, outside all brackets")
 	case tWhere:
 		p.syntax(p.start, p.pos, "`where` stands only behind the formula of a definition")
 	default:
@@ -411,6 +413,11 @@ func (p *parser) strange(i int) {
 		return
 	} else if meant != "" {
 		p.syntax(i, i+2, fmt.Sprintf("%s is written %s", quoted(p.s[i:i+2]), quoted(meant)), "write "+quoted(meant))
+		return
+	}
+	if e := nameEnd(p.s, i+1, p.end); r == '.' && e > i+1 && i > 0 && p.s[i-1] == ')' {
+		p.syntax(i, e, "one of a helper's results is picked from a name, not from the call",
+			fmt.Sprintf("give the call a line of its own, as in `jnt = helper(…)`; then `jnt%s` picks one", p.s[i:e]))
 		return
 	}
 	if subscript(r) > 0 {

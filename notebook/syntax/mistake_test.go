@@ -143,6 +143,9 @@ var mistakes = []struct{ source, id, under, corrected string }{
 	{"x = sqrt 2", "syntax", "sqrt 2", "x = sqrt(2)"},
 	{"x = 1.5,200", "syntax", ",", "x = 1.5"},
 	{"x = a.5", "syntax", "a.5", "x = a*.5"},
+	{"x = pin(a, b).tau*2", "syntax", ".tau", "x = pin.tau*2"},
+	{"k = (3 if a < b\n= 4 otherwise", "syntax", "if", "k = 3 if a < b\n= 4 otherwise"},
+	{"x = max(a otherwise)", "syntax", "otherwise", "x = max(a)"},
 	// characters
 	{"x = a + אב", "unsupported-character", "א", "x = a + b"},
 	{"x = e\u0301", "unsupported-character", "\u0301", "x = é"},
