@@ -12,9 +12,11 @@ import (
 const (
 	entryPad    = 3.4 // above and below what stands in a row
 	bandPad     = 4.5 // the same on a band
+	bandGap     = 1.5 // between bands
 	notesAt     = 36 * mm
 	entryIndent = 14.0
 	groupGap    = 9.0
+	helperGap   = 5.0 // below the lines of a helper
 	lineGap     = 3.0 // between the lines of a formula
 )
 
@@ -23,6 +25,9 @@ func (b *prose) entries(index int) {
 	list := b.doc.page.Blocks[index]
 	b.space(blockGap - entryPad)
 	for i := 0; i < len(list); i++ {
+		if i > 0 && list[i].Indent < list[i-1].Indent {
+			b.space(helperGap)
+		}
 		if list[i].Kind == render.Line {
 			n := i + 1
 			for n < len(list) && list[n].Kind == render.Line && list[n].Indent == list[i].Indent {
@@ -132,6 +137,7 @@ func (b *prose) formulaEntry(e *render.Entry) {
 	pad := entryPad
 	if e.Kind == render.Check {
 		pad = bandPad
+		b.space(bandGap)
 	}
 	b.finish(r, e, pad)
 	if len(e.Trials) > 0 {
@@ -219,8 +225,9 @@ func (b *prose) references(parts []slab, e *render.Entry) {
 		}
 		p := &paragraph{}
 		p.write(st, ref.Text)
-		p = p.fitted(width)
-		for _, l := range p.lines(width) {
+		// A source that is longer stands whole in the list of sources.
+		p, lines := p.few(width, 12)
+		for _, l := range lines {
 			p.set(k, l, width-l.width, y)
 			y += leading
 		}
@@ -240,9 +247,7 @@ func (b *prose) outputBeside(s *slab, e *render.Entry) {
 	x, width := b.doc.paper.output()
 	y := s.baseline - s.pad
 	if e.Output != nil {
-		p := b.doc.outputWords(e.Output, width)
-		p = p.fitted(width)
-		lines := p.lines(width)
+		p, lines := b.doc.outputWords(e.Output, width).few(width, 20)
 		for i, l := range lines {
 			p.set(&s.ink, l, x, y+float64(i)*outputLeading)
 		}
@@ -292,8 +297,8 @@ func (d *document) smallOutput(s *slab, words string, y float64) float64 {
 	st := style{face: fonts.Sans, size: 7.6, colour: softColour}
 	p := &paragraph{}
 	p.write(st, words)
-	p = p.fitted(width)
-	for i, l := range p.lines(width) {
+	p, lines := p.few(width, 6)
+	for i, l := range lines {
 		if i > 0 {
 			y += 9.6
 		}

@@ -13,9 +13,11 @@ const (
 
 // mathsBox makes a box of a formula that was set for paper.
 func mathsBox(m *maths.Box, c colour) *box {
-	return &box{width: m.Width, ascent: m.Ascent, descent: m.Descent, ink: ink{
-		texts: []text{{scale: 1, items: m.Items, style: style{colour: c}}},
-	}}
+	b := &box{width: m.Width, ascent: m.Ascent, descent: m.Descent}
+	if len(m.Items) > 0 { // a formula may be nothing but space
+		b.ink.texts = []text{{scale: 1, items: m.Items, style: style{colour: c}}}
+	}
+	return b
 }
 
 // besideFace is the face of figures and units beside a text.

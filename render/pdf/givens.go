@@ -26,6 +26,10 @@ type lineColumns struct {
 	lines         []lineParts
 }
 
+// longNote is the length from which on a note stands below its line, where it
+// has more room.
+const longNote = 240
+
 // lineParts is a line set in two boxes; whole tells that it cannot be, and
 // goes over the full width with its note below.
 type lineParts struct {
@@ -55,7 +59,7 @@ func columnsOf(list []render.Entry, width float64) lineColumns {
 	}
 	for i := range c.lines {
 		l := &c.lines[i]
-		if l.whole {
+		if l.whole = l.whole || len(list[i].Note) > longNote; l.whole {
 			continue
 		}
 		end := c.values + l.value.Width

@@ -109,6 +109,32 @@ func lineCost(set, width float64, words int, last bool) float64 {
 	return each + free*free
 }
 
+// few breaks a paragraph to a width into at most so many lines; where there
+// are more the last one ends with an ellipsis.
+func (p *paragraph) few(width float64, most int) (*paragraph, []line) {
+	whole := p.fitted(width)
+	lines := whole.lines(width)
+	if len(lines) <= most {
+		return whole, lines
+	}
+	const room = 14 // for the ellipsis
+	cut := p.fitted(width - room)
+	lines = cut.lines(width - room)[:most]
+	last := &lines[most-1]
+	end := cut.words[last.to-1]
+	st := cut.pieces[end.to-1].style
+	if st.face == nil {
+		st = cellStyle
+	}
+	more := piece{style: st, text: "…", width: st.width("…")}
+	out := &paragraph{pieces: append(append([]piece(nil), cut.pieces[:end.to]...), more)}
+	out.words = append(out.words, cut.words[:last.to]...)
+	out.words[last.to-1].to++
+	out.words[last.to-1].width += more.width
+	last.width += more.width
+	return out, lines
+}
+
 // set draws a line with its baseline at (x, y). Neighbours of one style are
 // one text: with ragged lines a line is mostly a single one.
 func (p *paragraph) set(k *ink, l line, x, y float64) {

@@ -86,7 +86,7 @@ func TestPaginateKeeps(t *testing.T) {
 						to++
 					}
 					// Nothing leaves the first page empty.
-				if from > 0 && extent(slabs[from:to+1], true) <= 100 {
+					if from > 0 && extent(slabs[from:to+1], true) <= 100 {
 						t.Fatalf("slabs %d to %d are kept together and are not", from, to)
 					}
 				}

@@ -99,8 +99,8 @@ func (d *document) cell(k *ink, c render.Cell, x, y float64) float64 {
 	for _, s := range []string{c.Text, c.Date} {
 		p := &paragraph{}
 		p.write(cellStyle, s)
-		p = p.fitted(width)
-		for _, l := range p.lines(width) {
+		p, lines := p.few(width, 3)
+		for _, l := range lines {
 			if k != nil {
 				p.set(k, l, x+cellPad, at)
 			}
@@ -136,8 +136,8 @@ func (d *document) titleName(width float64) (ink, float64) {
 		}
 		p := &paragraph{}
 		p.write(st, s)
-		p = p.fitted(room)
-		for _, l := range p.lines(room) {
+		p, lines := p.few(room, 5)
+		for _, l := range lines {
 			p.set(&k, l, x, y+0.78*leading)
 			y += leading
 		}
@@ -258,19 +258,16 @@ func (l *layout) strip(count string) ink {
 		number += " rev " + f.Rev
 	}
 	p := &paragraph{}
-	p.append(stripStyle.in(fonts.SansSemiBold), number)
+	p.write(stripStyle.in(fonts.SansSemiBold), number)
 	p.blank(stripStyle)
 	title := l.page.Title.Title
 	if title != f.Calc {
 		p.write(stripStyle, "· "+title)
 	}
 	room := markAt - 14
-	p = p.fitted(room)
-	if lines := p.lines(room); len(lines) > 0 {
-		p.set(&k, lines[0], 0, base)
-		if len(lines) > 1 {
-			k.texts = append(k.texts, text{x: lines[0].width + 2, y: base, style: stripStyle, text: "…"})
-		}
+	p, lines := p.few(room, 1)
+	for _, l := range lines {
+		p.set(&k, l, 0, base)
 	}
 	k.texts = append(k.texts,
 		text{x: markAt, y: base, style: mark, text: working},

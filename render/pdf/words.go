@@ -40,6 +40,7 @@ type paragraph struct {
 const (
 	hyphenCost = 0.4
 	slashCost  = 1.5
+	numberCost = 1.4 // before a number, which belongs to the word before it: Table 3
 )
 
 // write appends a text in a style. Blanks and ends of lines in it part words.
@@ -148,6 +149,9 @@ func (p *paragraph) place(st style, b *box) {
 
 func (p *paragraph) grow(c piece) {
 	if !p.open {
+		if n := len(p.words); n > 0 && c.text != "" && c.text[0] >= '0' && c.text[0] <= '9' {
+			p.words[n-1].cost = math.Max(p.words[n-1].cost, numberCost)
+		}
 		p.words = append(p.words, word{from: len(p.pieces)})
 		p.open = true
 	}
