@@ -11,14 +11,17 @@ import (
 // readHelpers reads the files of the author's own helpers.
 func (d *Draft) readHelpers() {
 	for _, l := range d.front.Helpers {
+		h := &check.HelperFile{Key: l.Key, Path: l.Path, Line: d.source.LineAt(l.At.Start)}
+		d.helpers = append(d.helpers, h)
 		src, f := d.file(l.Path)
 		if f != nil {
 			d.diags = append(d.diags, f.of(l.Path).at(d.source, l.At))
+			h.Failed = true
 			continue
 		}
 		helpers, diags := readHelperFile(src)
 		d.diags = append(d.diags, diags...)
-		d.helpers = append(d.helpers, &check.HelperFile{Key: l.Key, Path: l.Path, Helpers: helpers})
+		h.Helpers = helpers
 	}
 }
 

@@ -82,6 +82,10 @@ func (l *lower) unknownFunction(x *syntax.Call) *Node {
 		l.expr(a.Value)
 	}
 	id := x.Fun.ID
+	if f := l.e.c.top.funcs[id]; f != nil && l.site == nil && l.e.closed() {
+		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is a function of the calc (line %d), and a helper calls built-in functions and other helpers only", x.Fun.Text, f.line),
+			"make it a helper above this one")
+	}
 	if line, ok := l.e.c.laterFunction(id); ok && l.site == nil {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is not yet defined: its definition stands at line %d", x.Fun.Text, line),
 			"a function is defined above its first use, and cannot call itself")
@@ -113,6 +117,9 @@ func (l *lower) callDotted(x *syntax.Call, key, name string) *Node {
 			hint = "did you mean `" + near + "`?"
 		}
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("there is no helper file `%s`", key), hint)
+	}
+	if s.file.Failed {
+		return l.depend(s.line)
 	}
 	var names []string
 	for _, h := range s.helpers {

@@ -86,7 +86,7 @@ func (c *checker) keys() {
 			c.report(diag.Diagnostic{ID: diag.Redefined, Source: c.in.Source, Message: fmt.Sprintf("`%s` is %s and a helper file", h.Key, s.what), Hints: []string{"give one of them another key"}})
 			continue
 		}
-		c.spaces[h.Key] = &space{what: "a helper file", line: 1, file: h, helpers: c.helperFile(h)}
+		c.spaces[h.Key] = &space{what: "a helper file", line: max(h.Line, 1), file: h, helpers: c.helperFile(h)}
 	}
 }
 

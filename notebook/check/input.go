@@ -34,9 +34,12 @@ type Carry struct {
 	Picked    map[string]*Rows    // the schedule a `first of` picked a value from
 }
 
-// HelperFile is a file of the author's own helpers under a key.
+// HelperFile is a file of the author's own helpers under a key. Failed tells
+// that it could not be read, which has been reported.
 type HelperFile struct {
 	Key, Path string
+	Line      int // of the calc, where the file is named
+	Failed    bool
 	Helpers   []*syntax.Helper
 }
 

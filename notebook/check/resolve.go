@@ -84,7 +84,14 @@ func (l *lower) unknown(x *syntax.Name) {
 		l.unknownDotted(x, space, name)
 		return
 	}
-	if line, ok := c.later[x.ID]; ok && l.site == nil {
+	line, ok := c.later[x.ID]
+	ok = ok && l.site == nil
+	if ok && l.e.closed() {
+		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is a value of the calc (line %d), and a helper sees its own parameters and lines only", x.Text, line),
+			"make it a parameter of the helper")
+		return
+	}
+	if ok {
 		if l.e.c.defining == x.ID {
 			l.fail(diag.UsedBefore, x.At, fmt.Sprintf("%s is used in its own definition", x.Text), "a name is defined once, above its first use; give the new value a name of its own")
 			return

@@ -23,6 +23,15 @@ type env struct {
 	library bool // a library helper's body, which may call functions in Go
 }
 
+// closed tells that the names of the calc are out of reach: a helper sees its
+// own parameters and lines only.
+func (e *env) closed() bool {
+	for e.parent != nil {
+		e = e.parent
+	}
+	return e != e.c.top
+}
+
 // function is an author's function before it is used.
 type function struct {
 	def    *syntax.Definition
