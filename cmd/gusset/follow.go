@@ -29,6 +29,9 @@ const (
 type interest struct {
 	files   []string // files that matter, whether or not they exist
 	folders []string // folders in which any Markdown file or folder matters
+	// since is when the files that were not followed before were begun to be
+	// read: what changed later is told.
+	since time.Time
 }
 
 // follower tells of changes to files, gathered until they have come to rest. It
@@ -73,16 +76,20 @@ func (s stamp) empty() bool { return s.info == nil || s.info.Mode().IsRegular() 
 // follow starts a follower. The error tells why it gets no events: it then sees
 // changes at each round alone.
 func follow() (*follower, error) {
+	system, err := fsnotify.NewWatcher()
+	if err != nil {
+		return followBy(nil), err
+	}
+	return followBy(system), nil
+}
+
+func followBy(system *fsnotify.Watcher) *follower {
 	f := &follower{
-		changes: make(chan []string), want: make(chan interest), done: make(chan struct{}),
+		changes: make(chan []string), want: make(chan interest), done: make(chan struct{}), system: system,
 		watched: map[string]stamp{}, files: map[string]stamp{}, folders: map[string]bool{}, pending: map[string]time.Time{},
 	}
-	system, err := fsnotify.NewWatcher()
-	if err == nil {
-		f.system = system
-	}
 	go f.loop()
-	return f, err
+	return f
 }
 
 // set says what to follow from now on.
@@ -112,7 +119,10 @@ func (f *follower) loop() {
 		case <-f.done:
 			return
 		case i := <-f.want:
-			f.take(i)
+			if f.take(i) {
+				out = nil
+				rest.Reset(f.patience())
+			}
 		case e := <-events:
 			if f.note(e) {
 				out = nil
@@ -133,7 +143,7 @@ func (f *follower) loop() {
 			case f.settled():
 				out = f.changes
 			default:
-				rest.Reset(f.patience())
+				rest.Reset(quiet)
 			}
 		case out <- slices.Sorted(maps.Keys(f.pending)):
 			out = nil
@@ -184,8 +194,8 @@ func (f *follower) note(e fsnotify.Event) bool {
 		return false
 	}
 	f.add(e.Name)
-	if isFolder(e.Name) { // what is in it comes without events of its own
-		f.look()
+	if _, file := f.files[e.Name]; !file || isFolder(e.Name) {
+		f.look() // what lies in a folder moves without events of its own
 	}
 	return true
 }
@@ -224,14 +234,20 @@ func (f *follower) look() bool {
 }
 
 // take takes on what is to be followed. What was followed before keeps its
-// stamp, so that a change in between is seen at the next round.
-func (f *follower) take(i interest) {
+// stamp, so that a change in between is seen at the next round. It reports
+// whether a file changed that was not followed yet.
+func (f *follower) take(i interest) bool {
+	changed := false
 	old := f.files
 	f.files, f.folders = map[string]stamp{}, map[string]bool{}
 	for _, path := range slices.Concat(i.files, i.folders) {
 		s, known := old[path]
 		if !known {
 			s = stampOf(path)
+			if s.info != nil && s.info.Mode().IsRegular() && !s.info.ModTime().Before(i.since) {
+				f.add(path)
+				changed = true
+			}
 		}
 		f.files[path] = s
 	}
@@ -239,6 +255,7 @@ func (f *follower) take(i interest) {
 		f.folders[folder] = true
 	}
 	f.watch()
+	return changed
 }
 
 // watch asks the system for events of every folder that holds what is followed

@@ -58,12 +58,10 @@ func watch(ctx context.Context, t *terminal, p *printer, paths []string) error {
 		t.problem(fmt.Errorf("the system tells of no changes (%w), so the files are looked at once a second", cause(err)))
 	}
 	defer f.close()
-	w := &watcher{t: t, p: p, paths: paths, found: first, store: store.New(), calcs: map[string]*watched{}, said: map[string]string{}}
-	f.set(w.interest())
-	fmt.Fprintf(t.out, "watching %s; Ctrl-C ends\n", plural(len(first.files), "calc file"))
-	w.tell("paths", first.problems...)
+	w := &watcher{t: t, p: p, f: f, paths: paths, store: store.New(), calcs: map[string]*watched{}, said: map[string]string{}}
+	w.search(time.Now())
+	fmt.Fprintf(t.out, "watching %s; Ctrl-C ends\n", plural(len(w.found.files), "calc file"))
 	w.build(nil)
-	f.set(w.interest())
 	repair := time.NewTicker(round)
 	defer repair.Stop()
 	for {
@@ -73,7 +71,6 @@ func watch(ctx context.Context, t *terminal, p *printer, paths []string) error {
 			return nil
 		case changed := <-f.changes:
 			w.build(changed)
-			f.set(w.interest())
 		case <-repair.C:
 			w.repair()
 		}
@@ -84,6 +81,7 @@ func watch(ctx context.Context, t *terminal, p *printer, paths []string) error {
 type watcher struct {
 	t     *terminal
 	p     *printer
+	f     *follower
 	paths []string
 	found found
 	store *store.Store
@@ -101,11 +99,10 @@ type watched struct {
 	warning string          // the warnings last shown
 }
 
-// interest is what a change of matters: everything that the calcs were made
-// from, the folders that were named, and the registers that would move a root.
-func (w *watcher) interest() interest {
-	var i interest
-	i.files = w.store.Files()
+// follow follows everything that the calcs were made from, the folders that
+// were named, and the registers that would move a root.
+func (w *watcher) follow(since time.Time) {
+	i := interest{files: w.store.Files(), since: since}
 	seen := map[string]bool{}
 	for _, file := range w.found.files {
 		full := absolute(file)
@@ -123,7 +120,7 @@ func (w *watcher) interest() interest {
 	}
 	slices.Sort(i.files)
 	i.files = slices.Compact(i.files)
-	return i
+	w.f.set(i)
 }
 
 // absolute is a path as the system's events name it, the links of its folder
@@ -144,9 +141,10 @@ func (w *watcher) build(changed []string) {
 	start := time.Now()
 	w.store.Changed(slices.DeleteFunc(slices.Clone(changed), isFolder))
 	if w.moves(changed) {
-		w.search()
+		w.search(start)
 	}
 	results := w.store.Compile(w.found.files)
+	w.follow(start)
 	stems, clashes := w.p.stems(results)
 	var fresh []store.Result
 	var freshStems []string
@@ -210,9 +208,22 @@ func (w *watcher) moves(changed []string) bool {
 	return false
 }
 
-// search walks the folders again. A calc file that was named and is gone stays
-// on the list, so that it is seen when it comes back.
-func (w *watcher) search() {
+// search walks the folders again until it follows every folder that it finds:
+// what comes into a folder before that makes no event.
+func (w *watcher) search(since time.Time) {
+	for {
+		followed := w.found.folders
+		w.walk()
+		w.follow(since)
+		if !slices.ContainsFunc(w.found.folders, func(f string) bool { return !slices.Contains(followed, f) }) {
+			return
+		}
+	}
+}
+
+// walk walks the folders. A calc file that was named and is gone stays on the
+// list, so that it is seen when it comes back.
+func (w *watcher) walk() {
 	var there, missing []string
 	var problems []error
 	for _, path := range w.paths {

@@ -1,0 +1,144 @@
+package main
+
+import (
+	"encoding/json"
+	"errors"
+	"io"
+	"os"
+	"os/exec"
+	"path/filepath"
+	"slices"
+	"strings"
+	"testing"
+)
+
+// order lists the packages so that each may import only those of the lines
+// above its own; those of one line do not know each other.
+var order = [][]string{
+	{"units", "notebook/diag"},
+	{"notebook/syntax"},
+	{"notebook/check"},
+	{"notebook/eval", "notebook/library"},
+	{"notebook"},
+	{"notebook/store"},
+	{"notebook/register", "notebook/trace", "notebook/compare"},
+	{"render/fonts"},
+	{"render/maths"},
+	{"render/figure"},
+	{"render"},
+	{"render/html", "render/pdf"},
+	{"render/live"},
+	{"cmd/gusset"},
+}
+
+const module = "gusset"
+
+// listed is what the go command says of a package.
+type listed struct {
+	ImportPath string
+	Imports    []string
+}
+
+func packages(t *testing.T) []listed {
+	t.Helper()
+	cmd := exec.Command("go", "list", "-json=ImportPath,Imports", "./...")
+	cmd.Dir = filepath.Join("..", "..")
+	cmd.Stderr = os.Stderr
+	out, err := cmd.Output()
+	if err != nil {
+		t.Fatalf("go list: %v", err)
+	}
+	var list []listed
+	for d := json.NewDecoder(strings.NewReader(string(out))); ; {
+		var p listed
+		if err := d.Decode(&p); errors.Is(err, io.EOF) {
+			break
+		} else if err != nil {
+			t.Fatal(err)
+		}
+		list = append(list, p)
+	}
+	if len(list) < 10 {
+		t.Fatalf("go list knows only %d packages", len(list))
+	}
+	return list
+}
+
+// TestImportsRunOneWay reads the import graph and fails on an arrow against the
+// order, and on a package that has no place in it.
+func TestImportsRunOneWay(t *testing.T) {
+	for _, arrow := range wrongArrows(packages(t)) {
+		t.Error(arrow)
+	}
+}
+
+// TestWrongArrowsAreFound holds the reading of the graph to arrows that are wrong.
+func TestWrongArrowsAreFound(t *testing.T) {
+	list := []listed{
+		{"gusset/units", []string{"gusset/notebook/diag"}},
+		{"gusset/notebook/syntax", []string{"gusset/units", "fmt"}},
+		{"gusset/notebook/eval", []string{"gusset/render"}},
+		{"gusset/notebook/common", nil},
+	}
+	want := []string{
+		"units imports notebook/diag, which stands no lower",
+		"notebook/eval imports render, which stands no lower",
+		"notebook/common has no place in the order of packages",
+	}
+	if got := wrongArrows(list); !slices.Equal(got, want) {
+		t.Errorf("got %q, want %q", got, want)
+	}
+}
+
+func wrongArrows(list []listed) []string {
+	rank := map[string]int{}
+	for i, line := range order {
+		for _, p := range line {
+			rank[module+"/"+p] = i
+		}
+	}
+	short := func(path string) string { return strings.TrimPrefix(path, module+"/") }
+	var wrong []string
+	for _, p := range list {
+		from, known := rank[p.ImportPath]
+		if !known {
+			wrong = append(wrong, short(p.ImportPath)+" has no place in the order of packages")
+			continue
+		}
+		for _, imported := range p.Imports {
+			if to, ours := rank[imported]; ours && to >= from {
+				wrong = append(wrong, short(p.ImportPath)+" imports "+short(imported)+", which stands no lower")
+			}
+		}
+	}
+	return wrong
+}
+
+// TestPackagesAreDescribed wants every package in the table of DEVELOPERS.md,
+// and no other there.
+func TestPackagesAreDescribed(t *testing.T) {
+	text, err := os.ReadFile(filepath.Join("..", "..", "DEVELOPERS.md"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	described := map[string]bool{}
+	for line := range strings.Lines(string(text)) {
+		if cell, _, ok := strings.Cut(strings.TrimPrefix(line, "| `"), "` |"); ok && strings.HasPrefix(line, "| `") && rankOf(cell) >= 0 {
+			described[cell] = true
+		}
+	}
+	for _, p := range packages(t) {
+		name := strings.TrimPrefix(p.ImportPath, module+"/")
+		if !described[name] {
+			t.Errorf("%s is not in the table of packages in DEVELOPERS.md", name)
+		}
+		delete(described, name)
+	}
+	for name := range described {
+		t.Errorf("DEVELOPERS.md describes %s, and there is no such package", name)
+	}
+}
+
+func rankOf(name string) int {
+	return slices.IndexFunc(order, func(line []string) bool { return slices.Contains(line, name) })
+}

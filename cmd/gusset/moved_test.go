@@ -1,0 +1,73 @@
+package main
+
+import (
+	"slices"
+	"testing"
+	"testing/fstest"
+
+	"gusset/notebook"
+)
+
+const movable = "---\ncalc: C-1\n---\n```calc\n"
+
+func sheetOf(t *testing.T, lines string) *notebook.Sheet {
+	t.Helper()
+	fsys := fstest.MapFS{"c.md": {Data: []byte(movable + lines + "\n```\n")}}
+	s := notebook.Compile(&notebook.Context{FS: fsys, Panics: true}, "c.md")
+	if s.Failed() {
+		t.Fatalf("%s", s.Diagnostics[0].Text())
+	}
+	return s
+}
+
+func TestMoved(t *testing.T) {
+	for _, test := range []struct {
+		name, before, after string
+		want                []string
+	}{
+		{"nothing", "a = 2 mm", "a = 2 mm # a note", nil},
+		{"a value, its unit once", "a = 2 mm", "a = 3 mm", []string{"a 2 → 3 mm"}},
+		{"another unit", "a = 2 mm", "a = 2 cm", []string{"a 2 mm → 2 cm"}},
+		{"a number", "n = 2", "n = 3", []string{"n 2 → 3"}},
+		{"a text", `g = "S 235"`, `g = "S 355"`, []string{"g S 235 → S 355"}},
+		{"new and gone", "a = 2 mm", "b = 2 mm", []string{"b new", "a gone"}},
+		{"a verdict goes first", "a = 2 mm\ncheck a <= 2 mm", "a = 3 mm\ncheck a <= 2 mm",
+			[]string{"check (1) now NG", "a 2 → 3 mm"}},
+		{"a verdict is matched by the check's text", "a = 2 mm\ncheck a <= 2 mm", "a = 3 mm\nb = 2*a\ncheck b <= 9 mm\ncheck a <= 2 mm",
+			[]string{"check (2) new, OK", "check (3) now NG", "a 2 → 3 mm", "b new"}},
+		{"checks of one text keep their order", "a = 2 mm\ncheck a <= 2 mm\ncheck a <= 2 mm", "a = 2 mm\ncheck a <= 2 mm",
+			[]string{"check (2) gone"}},
+		{"not required any more", "a = 2 mm\ncheck a <= 2 mm if a > 1 mm", "a = 1 mm\ncheck a <= 2 mm if a > 1 mm",
+			[]string{"check (1) now not required", "a 2 → 1 mm"}},
+	} {
+		if got := moved(sheetOf(t, test.before), sheetOf(t, test.after)); !slices.Equal(got, test.want) {
+			t.Errorf("%s:\ngot  %q\nwant %q", test.name, got, test.want)
+		}
+	}
+}
+
+func TestMovedLine(t *testing.T) {
+	for _, test := range []struct {
+		list []string
+		want string
+	}{
+		{nil, "no value moved"},
+		{[]string{"a", "b"}, "a, b"},
+		{[]string{"1", "2", "3", "4", "5", "6", "7"}, "1, 2, 3, 4, 5, 6, 7"},
+		{[]string{"1", "2", "3", "4", "5", "6", "7", "8"}, "1, 2, 3, 4, 5, 6, and 2 more"},
+	} {
+		if got := movedLine(test.list); got != test.want {
+			t.Errorf("got %q, want %q", got, test.want)
+		}
+	}
+}
+
+func TestBuildLine(t *testing.T) {
+	lines := []string{"a: " + nothingMoved, "b: x 1 → 2", "c: " + nothingMoved, "d", "e", "f", "g", "h"}
+	if got, want := buildLine(lines), "b: x 1 → 2; d; e; f; g; and 3 more calcs"; got != want {
+		t.Errorf("got %q, want %q", got, want)
+	}
+	if got, want := buildLine([]string{"a", "b"}), "a; b"; got != want {
+		t.Errorf("got %q, want %q", got, want)
+	}
+}
