@@ -75,6 +75,9 @@ func (s *Sheet) carry(d *Draft, l Link, find func(string) *Draft, sheet func(str
 	c := &check.Carry{Key: l.Key, Path: l.Path, Line: d.source.LineAt(l.At.Start), Failed: true}
 	e := &eval.Carry{Key: l.Key}
 	name := d.source.Slice(l.At)
+	if l.Path == "" {
+		return c, e
+	}
 	if chain := Cycle(d, l.Path, find); chain != nil {
 		failed(diag.Error, diag.CarriedCycle, "the calc files carry values from each other in a cycle: "+strings.Join(chain, " → "),
 			"move what they share to a file of its own")

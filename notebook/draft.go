@@ -45,9 +45,11 @@ type table struct {
 
 // Carries lists the calc files it carries values from, in order.
 func (d *Draft) Carries() []string {
-	paths := make([]string, len(d.front.From))
-	for i, l := range d.front.From {
-		paths[i] = l.Path
+	var paths []string
+	for _, l := range d.front.From {
+		if l.Path != "" {
+			paths = append(paths, l.Path)
+		}
 	}
 	return paths
 }

@@ -318,20 +318,17 @@ func (f *frontReader) links(e entry, example string) []Link {
 			f.errorf(part.keyAt, "`%s` is a word of the notation and cannot be a key", part.key)
 			continue
 		}
-		ref := f.text(part.key, part.value)
-		if ref == "" {
-			if target(part.value).Kind == yaml.ScalarNode {
-				f.errorf(part.keyAt, "`%s` names no file", part.key)
+		link := Link{Key: key, At: f.span(part.value), keyAt: part.keyAt}
+		if ref := f.text(part.key, part.value); ref != "" {
+			file, bad := f.draft.within(f.dir, ref)
+			if bad != nil {
+				f.diags = append(f.diags, bad.at(f.src, link.At))
 			}
-			continue
+			link.Path = file
+		} else if target(part.value).Kind == yaml.ScalarNode {
+			f.errorf(part.keyAt, "`%s` names no file", part.key)
 		}
-		at := f.span(part.value)
-		file, bad := f.draft.within(f.dir, ref)
-		if bad != nil {
-			f.diags = append(f.diags, bad.at(f.src, at))
-			continue
-		}
-		list = append(list, Link{Key: key, Path: file, At: at, keyAt: part.keyAt})
+		list = append(list, link)
 	}
 	return list
 }

@@ -13,6 +13,10 @@ func (d *Draft) readHelpers() {
 	for _, l := range d.front.Helpers {
 		h := &check.HelperFile{Key: l.Key, Path: l.Path, Line: d.source.LineAt(l.At.Start)}
 		d.helpers = append(d.helpers, h)
+		if l.Path == "" {
+			h.Failed = true
+			continue
+		}
 		src, f := d.file(l.Path)
 		if f != nil {
 			d.diags = append(d.diags, f.of(l.Path).at(d.source, l.At))

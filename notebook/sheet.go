@@ -77,7 +77,7 @@ type Person struct{ Name, Date string }
 
 // Link is a file named in the front matter under a key.
 type Link struct {
-	Key, Path string // Path is within the root
+	Key, Path string // Path is within the root; "" where there is none, which has been reported
 	At        diag.Span
 	keyAt     diag.Span
 }

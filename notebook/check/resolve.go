@@ -173,6 +173,9 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 			known = append(known, col)
 		}
 		what = "the schedule " + space + " has no column"
+	case s.file.Failed:
+		l.depend(s.line)
+		return
 	default:
 		for _, h := range s.file.Helpers {
 			known = append(known, h.Name.ID)
