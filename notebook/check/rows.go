@@ -13,7 +13,15 @@ import (
 func (l *lower) reduce(x *syntax.Call, arg *Node) *Node {
 	fn := x.Fun.ID
 	a := x.Args[0]
-	if len(arg.Type.Rows) == 0 {
+	var over, kept []*Rows
+	for _, r := range arg.Type.Rows {
+		if r.Swept {
+			kept = append(kept, r)
+		} else {
+			over = append(over, r)
+		}
+	}
+	if len(over) == 0 {
 		hints := []string{"a value has rows where it comes from a schedule or from load cases"}
 		if fn == "min" || fn == "max" {
 			hints = append(hints, fmt.Sprintf("`%s(a, b)` compares several plain values", fn))
@@ -26,8 +34,8 @@ func (l *lower) reduce(x *syntax.Call, arg *Node) *Node {
 	if arg.Type.Kind == Point && (fn == "sum" || fn == "extreme") {
 		return l.fail(diag.DimensionMismatch, a.Value.Span(), fmt.Sprintf("temperature points have no %s", fn), "points go through min, max, mean and interpolate")
 	}
-	n := &Node{Op: Reduce, Fn: fn, Expr: x, Args: []*Node{arg}, Type: arg.Type, Over: arg.Type.Rows}
-	n.Type.Freq, n.Type.Rows = NoFreq, nil
+	n := &Node{Op: Reduce, Fn: fn, Expr: x, Args: []*Node{arg}, Type: arg.Type, Over: over}
+	n.Type.Freq, n.Type.Rows = NoFreq, kept
 	if fn == "count" {
 		n.Type.Kind, n.Type.Dim = Number, units.Dimension{}
 	}
@@ -38,10 +46,10 @@ func (l *lower) reduce(x *syntax.Call, arg *Node) *Node {
 	if rows == nil {
 		return invalid
 	}
-	n.Over = []*Rows{rows}
+	n.Over, n.Type.Rows = []*Rows{rows}, nil
 	for _, r := range arg.Type.Rows {
 		if r != rows {
-			n.Type.Rows = append(n.Type.Rows[:len(n.Type.Rows):len(n.Type.Rows)], r)
+			n.Type.Rows = append(n.Type.Rows, r)
 		}
 	}
 	return n

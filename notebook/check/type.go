@@ -29,6 +29,7 @@ type Rows struct {
 	File  string   // the file that defines it, as diagnostics show it
 	Seq   int      // its place among the sets of that file
 	Named bool     // the marks are the author's, no row numbers
+	Swept bool     // the points of a plot: no rows to the author, so nothing reduces them
 }
 
 // Freq tells rotations per second from radians per second, which have one
