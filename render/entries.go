@@ -48,6 +48,9 @@ func (c *composer) steps(steps []*eval.Step, indent int, full bool) []Entry {
 			group = append(group, s)
 		}
 		for _, r := range s.Results {
+			if len(group) > 0 && !(hasRows(r) && sameRows(group[0].Value.Type, r.Value.Type)) {
+				flush()
+			}
 			if hasRows(r) {
 				group = append(group, r)
 			}
