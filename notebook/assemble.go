@@ -1,12 +1,15 @@
 package notebook
 
 import (
+	"fmt"
+	"net/url"
 	"strconv"
 	"strings"
 
 	"github.com/yuin/goldmark/ast"
 
 	"gusset/notebook/check"
+	"gusset/notebook/diag"
 	"gusset/notebook/eval"
 	"gusset/notebook/syntax"
 )
@@ -26,6 +29,36 @@ func (s *Sheet) assemble(d *Draft, result *eval.Result) {
 	s.number(ids)
 	s.nameRemarks(d, ids)
 	s.nameHeadings(d, ids)
+	s.checkTargets(d, ids)
+}
+
+// checkTargets warns of links within the page that lead to nothing.
+func (s *Sheet) checkTargets(d *Draft, ids anchors) {
+	for n := range nodes(s.Doc) {
+		l, ok := n.(*ast.Link)
+		if !ok || len(l.Destination) < 2 || l.Destination[0] != '#' {
+			continue
+		}
+		target := string(l.Destination[1:])
+		if name, err := url.PathUnescape(target); err == nil {
+			target = name
+		}
+		if ids[target] > 0 {
+			continue
+		}
+		bad := diag.Diagnostic{
+			Severity: diag.Warning, ID: diag.DroppedLink, Source: s.Source, Span: d.linkSpan(l, l.Destination),
+			Message: fmt.Sprintf("the link leads nowhere: nothing on the page is called `#%s`", clip(target)),
+		}
+		var known []string
+		for _, h := range s.Headings {
+			known = append(known, h.Anchor)
+		}
+		if near := diag.Nearest(target, known); near != "" {
+			bad.Hints = []string{"did you mean `#" + near + "`?"}
+		}
+		s.Diagnostics = append(s.Diagnostics, bad)
+	}
 }
 
 func newBlock(tree *syntax.Block, r *eval.BlockResult) *Block {

@@ -72,14 +72,15 @@ func readBounded(fsys fs.FS, path string) ([]byte, *fault) {
 		return nil, missing(reason(err))
 	}
 	defer file.Close()
-	text, err := io.ReadAll(io.LimitReader(file, maxFile+1))
-	if err != nil {
+	var text bytes.Buffer
+	text.Grow(int(info.Size()) + bytes.MinRead)
+	if _, err := text.ReadFrom(io.LimitReader(file, maxFile+1)); err != nil {
 		return nil, missing(reason(err))
 	}
-	if len(text) > maxFile {
-		return nil, tooLarge(int64(len(text)))
+	if text.Len() > maxFile {
+		return nil, tooLarge(int64(text.Len()))
 	}
-	return text, nil
+	return text.Bytes(), nil
 }
 
 func tooLarge(size int64) *fault {
