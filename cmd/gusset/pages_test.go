@@ -134,3 +134,22 @@ func TestEpoch(t *testing.T) {
 		}
 	}
 }
+
+// TestProgress wants a line on a terminal that is gone at the end, and nothing
+// elsewhere.
+func TestProgress(t *testing.T) {
+	var err strings.Builder
+	term := &terminal{err: &err, live: true}
+	end := term.progress(func() string { return "computing" })
+	time.Sleep(patience + patience/10)
+	end()
+	if got := err.String(); !strings.HasPrefix(got, "\r\x1b[Kcomputing") || !strings.HasSuffix(got, "\r\x1b[K") {
+		t.Errorf("got %q", got)
+	}
+	err.Reset()
+	term.progress(func() string { return "computing" })()
+	(&terminal{err: &err}).progress(func() string { return "computing" })()
+	if err.Len() > 0 {
+		t.Errorf("got %q", err.String())
+	}
+}
