@@ -78,13 +78,18 @@ func nameAt(p *eval.Plot) float64 {
 	return 11
 }
 
-// curves gives each curve and limit its line and its name.
+// curves gives each curve and limit its line and its name: the mark alone where
+// all are of one quantity.
 func (d *pad) curves(p *eval.Plot) []curve {
 	var out []curve
 	for i := range p.Curves {
 		c := &p.Curves[i]
 		s := stroke{curveColours[i%len(curveColours)], 1.2, dashes[i%len(dashes)]}
-		out = append(out, curve{Curve: c, stroke: s, name: d.nameOf(c, nil)})
+		name := d.nameOf(c, nil)
+		if c.Mark != "" && len(d.symbols(p.Curves)) == 1 {
+			name = d.wrap(c.Mark, fonts.Sans, labelSize, nameRoom)
+		}
+		out = append(out, curve{Curve: c, stroke: s, name: name})
 	}
 	for i := range p.Limits {
 		c := &p.Limits[i]
@@ -97,23 +102,22 @@ func (d *pad) curves(p *eval.Plot) []curve {
 	return out
 }
 
+// nameRoom is the width of the names beside a plot.
+const nameRoom = 92
+
 // nameOf is how a curve is called beside its end: its symbol, with the value of one
 // that stays the same, and its mark.
 func (d *pad) nameOf(c *eval.Curve, value maths.Node) []label {
-	const room = 92
 	symbol := d.name(c.Symbol)
 	lines := []label{d.label(symbol)}
 	if value != nil {
-		if whole := d.label(equals(symbol, value)); whole.set.Width <= room {
+		if whole := d.label(equals(symbol, value)); whole.set.Width <= nameRoom {
 			lines[0] = whole
 		} else {
 			lines = append(lines, d.label(value))
 		}
 	}
-	for _, l := range d.wrap(c.Mark, fonts.Sans, noteSize, room) {
-		lines = append(lines, l)
-	}
-	return lines
+	return append(lines, d.wrap(c.Mark, fonts.Sans, noteSize, nameRoom)...)
 }
 
 // steady tells whether a curve stays where it is.

@@ -12,7 +12,7 @@ import (
 // that the page embeds, and placed letter for letter as on paper.
 func (d *Drawing) SVG(dst []byte, prefix string) []byte {
 	w := &svg{dst}
-	w.raw(`<svg class="drawing" role="img" aria-labelledby="`)
+	w.raw(`<svg class="art" role="img" aria-labelledby="`)
 	w.text(prefix)
 	w.raw(`-title `)
 	w.text(prefix)
