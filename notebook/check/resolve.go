@@ -145,11 +145,15 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 		}
 		return
 	}
+	s, ok := c.spaces[space]
+	if ok && s.failed && l.site == nil {
+		l.depend(s.line)
+		return
+	}
 	if line, ok := c.later[x.ID]; ok && l.site == nil {
 		l.fail(diag.UsedBefore, x.At, fmt.Sprintf("%s is used here, but defined below, at line %d", x.Text, line), "move the schedule above this line")
 		return
 	}
-	s, ok := c.spaces[space]
 	if !ok || l.site != nil {
 		hint := "`a.b` is a schedule's column, a value carried from another calc, or one of a helper's results"
 		if near := diag.Nearest(space, sortedKeys(c.spaces)); near != "" {
@@ -164,10 +168,6 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 	case s.from != nil:
 		known, what = sortedKeys(s.from.Values), s.from.Path+" defines no value"
 	case s.rows != nil:
-		if s.failed {
-			l.depend(s.line)
-			return
-		}
 		for _, id := range l.e.inScope(func(d *Def) bool { h, _, _ := head(d.ID); return h == space }) {
 			_, col, _ := head(id)
 			known = append(known, col)

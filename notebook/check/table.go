@@ -36,6 +36,7 @@ func (c *checker) table(b *syntax.Block) {
 	line := src.LineAt(t.At.Start)
 	if len(t.Rows) > maxRows {
 		l.fail(diag.BoundExceeded, b.Table.At, fmt.Sprintf("%s has %d rows, and the bound is %d", name, len(t.Rows), maxRows))
+		c.failedTable(b, t)
 		return
 	}
 	if t.Name != nil {
@@ -61,10 +62,18 @@ func (c *checker) table(b *syntax.Block) {
 // failedTable enters the names of a table that could not be read, so that
 // nothing is said again where they are used.
 func (c *checker) failedTable(b *syntax.Block, t *syntax.Table) {
-	if t == nil || t.Name == nil {
-		return
+	line := c.in.Source.LineAt(b.Table.At.Start)
+	if b.Kind == syntax.CasesBlock {
+		for i := range t.Columns {
+			if n := t.Columns[i].Name; n != nil && c.top.names[n.ID] == nil {
+				d := c.top.define(n, Type{})
+				d.Failed, d.Because, d.Line = true, line, line
+			}
+		}
 	}
-	c.spaces[t.Name.ID] = &space{what: "a schedule", line: c.in.Source.LineAt(b.Table.At.Start), rows: &Rows{Name: t.Name.ID}, failed: true}
+	if t.Name != nil {
+		c.spaces[t.Name.ID] = &space{what: "a schedule", line: line, rows: &Rows{Name: t.Name.ID}, failed: true}
+	}
 }
 
 // tableCheck is the checking of one table.

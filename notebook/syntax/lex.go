@@ -123,7 +123,14 @@ func (p *parser) word(i int) {
 	p.tok = tName
 	if j-i <= len("otherwise") {
 		p.tok = reserved(p.s[i:j])
-	} else if j-i > maxName && utf8.RuneCountInString(p.s[i:j]) > maxName {
+	} else {
+		p.holdName(i, j)
+	}
+}
+
+// holdName reports a name that is too long.
+func (p *parser) holdName(i, j int) {
+	if j-i > maxName && utf8.RuneCountInString(p.s[i:j]) > maxName {
 		p.fail(p.span(i, j), diag.BoundExceeded, fmt.Sprintf("a name is longer than the bound of %d characters", maxName))
 	}
 }
@@ -239,9 +246,7 @@ func (p *parser) foreign(i int) {
 		case isNameLetter(r):
 			p.pos = dottedEnd(p.s, i, p.end)
 			p.tok, p.dots = tName, strings.IndexByte(p.s[i:p.pos], '.') >= 0
-			if p.pos-i > maxName && utf8.RuneCountInString(p.s[i:p.pos]) > maxName {
-				p.fail(p.span(i, p.pos), diag.BoundExceeded, fmt.Sprintf("a name is longer than the bound of %d characters", maxName))
-			}
+			p.holdName(i, p.pos)
 		case superFigure(r) != 0:
 			p.pos = superEnd(p.s, i, p.end)
 			p.tok = tSuper

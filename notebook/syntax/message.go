@@ -454,7 +454,7 @@ func (p *parser) strange(i int) {
 	case unicode.Is(unicode.Cf, r) || unicode.Is(unicode.Zl, r) || unicode.Is(unicode.Zp, r):
 		message = fmt.Sprintf("the invisible character U+%04X cannot stand in a statement", r)
 	case unicode.IsLetter(r):
-		message = fmt.Sprintf("the letter %q cannot stand in a statement; names are of Latin and Greek letters", r)
+		message = fmt.Sprintf("the letter %q (U+%04X) cannot stand in a statement; names are of Latin and Greek letters", r, r)
 	case r < utf8.RuneSelf:
 		id, message = diag.Syntax, fmt.Sprintf("%s has no meaning here", quoted(string(r)))
 	default:

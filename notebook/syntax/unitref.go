@@ -120,6 +120,9 @@ func ParseValueRef(src *diag.Source, at diag.Span) (ref ValueRef, ok bool, d *di
 	if j == l.Start || IsReserved(p.s[l.Start:j]) {
 		return ref, false, nil
 	}
+	if p.holdName(l.Start, j); p.failed {
+		return ref, false, &p.diags[0]
+	}
 	i := blanksEnd(p.s, j)
 	if i < l.End && (p.s[i] != '[' || p.s[l.End-1] != ']' || strings.IndexByte(p.s[i:l.End], ']') != l.End-1-i) {
 		return ref, false, nil
