@@ -25,6 +25,11 @@ type (
 // Sheet is a compiled calc file: the prose as goldmark's tree, whose fences of
 // ours are FenceNodes and whose values in text are ValueNodes, and beside it
 // everything that was computed. A sheet never changes.
+//
+// The tree holds nothing that a page may not show: no raw HTML, no link that may
+// not be followed, no image that cannot be shown. A link's destination is resolved
+// and escaped, ready to be printed; an image's is its key in Images. A quote that is
+// a remark has lost its leading word, which the page prints with the remark's number.
 type Sheet struct {
 	Path        string // within the root, slashes
 	Source      *diag.Source
