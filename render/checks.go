@@ -83,7 +83,7 @@ func (c *composer) relation(s *eval.Step, sides []eval.Side, ops []syntax.Op, t 
 		if put := c.maths.Put(sides[i].Expr, s, t, entry); put != nil && !single(sides[i].Expr) {
 			chain.Steps = append(chain.Steps, maths.Step{Sign: "=", Right: put})
 		}
-		if value := c.side(s, &sides[i], t, entry); value != nil && plain(value) != plain(written) {
+		if value := c.side(s, &sides[i], t, entry); value != nil && !same(value, written) {
 			chain.Steps = append(chain.Steps, maths.Step{Sign: "=", Right: value})
 		}
 	}

@@ -1,6 +1,8 @@
 package render
 
 import (
+	"slices"
+
 	"gusset/notebook"
 	"gusset/notebook/check"
 	"gusset/notebook/eval"
@@ -182,7 +184,7 @@ func (c *composer) computed(s *eval.Step, e *Entry) {
 	value := d.Branches[maths.Taken(s, s.Entry)].Value
 	if !wholeCall(value, s) && len(s.Trials) == 0 {
 		put := c.maths.Put(value, s, s.Value.Type, s.Entry)
-		if put != nil && plain(put) != plain(e.Output) {
+		if put != nil && !same(put, e.Output) {
 			e.Formula.Steps = append(e.Formula.Steps, maths.Step{Sign: "=", Right: put})
 		}
 	}
@@ -195,7 +197,24 @@ func (c *composer) computed(s *eval.Step, e *Entry) {
 	e.Refs = append(e.Refs, carriedFrom(s)...)
 }
 
-func plain(n maths.Node) string { return string(maths.AppendPlain(nil, n)) }
+// same tells whether two nodes are one value, printed alike.
+func same(a, b maths.Node) bool {
+	switch a := a.(type) {
+	case maths.Number:
+		b, ok := b.(maths.Number)
+		return ok && a.Value == b.Value && slices.Equal(a.Unit, b.Unit)
+	case maths.Text:
+		b, ok := b.(maths.Text)
+		return ok && a.Text == b.Text
+	case maths.Row:
+		b, ok := b.(maths.Row)
+		return ok && slices.EqualFunc(a, b, same)
+	case maths.Space:
+		b, ok := b.(maths.Space)
+		return ok && a == b
+	}
+	return false
+}
 
 // wholeCall tells whether an expression is the call of a helper and nothing
 // else: its value is the output.

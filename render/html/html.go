@@ -22,12 +22,15 @@ import (
 // Append appends the HTML file of a page.
 func Append(dst []byte, p *render.Page) []byte {
 	w := &writer{page: p, sheet: p.Sheet, source: p.Sheet.Source.Text}
-	w.b = make([]byte, 0, 16*len(w.source)+1<<16)
+	w.b = make([]byte, 0, grown*len(w.source)+1<<16)
 	w.body()
 	dst = w.head(dst)
 	dst = append(dst, w.b...)
 	return append(dst, "</body>\n</html>\n"...)
 }
+
+// grown is how many bytes of a page a byte of a calc grows to, and a little more.
+const grown = 28
 
 // writer writes the body of a page.
 type writer struct {

@@ -15,13 +15,13 @@ import (
 // in ten formulas is set once. One goroutine uses it at a time; the trees are
 // for everyone.
 type Builder struct {
-	symbols map[string]Symbol
-	units   map[string]Unit
-	values  map[valueKey]Node
-	written map[*eval.Step]Node
-	anchors map[*eval.Step]string
-	// functions are the author's own, by name
-	functions map[string]*eval.Step
+	symbols   map[string]Symbol
+	units     map[string]Unit
+	values    map[valueKey]Node
+	written   map[*eval.Step]Node
+	anchors   map[*eval.Step]string
+	functions map[string]*eval.Step // the author's own, by name
+	tip       []byte                // room for the tip in the making
 }
 
 type valueKey struct {
@@ -166,7 +166,7 @@ func (b *Builder) Output(s *eval.Step, entry int) Node { return b.Pieces(s.Print
 // Tip is a value's derivation one level deep as plain text:
 // `τ = P/(2·A) = 48.89 MPa (1.2)`.
 func (b *Builder) Tip(s *eval.Step, entry int) string {
-	t := AppendPlain(nil, b.Plain(s))
+	t := AppendPlain(b.tip[:0], b.Plain(s))
 	if n := b.rightSide(s, entry); n != nil {
 		t = append(t, " = "...)
 		t = AppendPlain(t, n)
@@ -188,6 +188,7 @@ func (b *Builder) Tip(s *eval.Step, entry int) string {
 	if s.Source != "" {
 		t = append(append(append(t, " ["...), s.Source...), ']')
 	}
+	b.tip = t
 	return string(t)
 }
 

@@ -91,6 +91,9 @@ func (w *builder) expr(e syntax.Expr) (Node, rank) {
 
 // literal sets a number as its author wrote it.
 func (w *builder) literal(n *syntax.Number) Node {
+	if len(n.Pieces) == 1 && !n.Neg && strings.IndexByte(n.Pieces[0].Figures, '_') < 0 {
+		return Number{Value: n.Pieces[0].Figures, Unit: w.Unit(n.Pieces[0].Unit)}
+	}
 	var row Row
 	for i, p := range n.Pieces {
 		figures := strings.ReplaceAll(p.Figures, "_", "")
@@ -171,7 +174,8 @@ func (w *builder) compare(e *syntax.Compare) Node {
 // product sets a product of any number of factors. Brackets that the author
 // put round a product within it are not needed.
 func (w *builder) product(e *syntax.Binary) (Node, rank) {
-	factors := w.factors(nil, e)
+	var room [8]syntax.Expr
+	factors := w.factors(room[:0], e)
 	if first, ok := unbracketed(factors[0]).(*syntax.Unary); ok && first.Op == syntax.Neg {
 		factors[0] = first.X
 		return Row{Minus, w.times(factors)}, rankedNeg

@@ -46,8 +46,8 @@ func AppendChain(dst []byte, c Chain) []byte {
 	w := markup{b: dst, room: columnWidth}
 	w.raw(`<span class="chain">`)
 	if leads(c.Left) {
-		w.room -= leftWidth * float64(width(c.Left))
 		w.math(atoms(nil, c.Left), Open)
+		w.room -= leftWidth * float64(width(c.Left))
 		w.raw("<span>")
 	} else {
 		w.raw("<span>")
@@ -123,15 +123,13 @@ func (w *markup) text(s string) {
 // room.
 func (w *markup) math(list []Node, prev Class) {
 	w.raw(`<math displaystyle="true"`)
-	if length(list) > shortStep {
-		switch k := w.shrink(list); {
-		case k < 0.8:
-			w.raw(` class="s7"`)
-		case k < 0.9:
-			w.raw(` class="s8"`)
-		case k < 1:
-			w.raw(` class="s9"`)
-		}
+	switch k := w.shrink(list); {
+	case k < 0.8:
+		w.raw(` class="s7"`)
+	case k < 0.9:
+		w.raw(` class="s8"`)
+	case k < 1:
+		w.raw(` class="s9"`)
 	}
 	w.raw(">")
 	w.list(list, prev, true)
@@ -156,13 +154,25 @@ func (w *markup) row(n Node, prev Class) {
 // parted, its first operator keeps the form it has between two terms.
 func (w *markup) list(list []Node, prev Class, parted bool) {
 	for i, n := range list {
+		left, right := n.edges()
 		if o, ok := n.(Op); ok {
 			w.operator(o, prev, i == 0 && parted)
 		} else {
+			if prev == Func && i > 0 && apart(list[i-1], n) && gap(prev, left, false) > 0 {
+				w.space(Thin)
+			}
 			w.node(n)
 		}
-		_, prev = n.edges()
+		prev = right
 	}
+}
+
+// apart reports whether the space between a function's name and its argument
+// has to be written: a browser sets sin and θ as if they were one word.
+func apart(left, right Node) bool {
+	_, operator := left.(Op)
+	_, space := right.(Space)
+	return !operator && !space
 }
 
 // operator writes an operator in the form that its place asks for.

@@ -21,6 +21,9 @@ const (
 
 // shrink is how small atoms have to be set for their room, at most 1.
 func (w *markup) shrink(list []Node) float64 {
+	if ems(list) <= w.room {
+		return 1
+	}
 	s := setter{size: 1, text: fonts.Serif, metrics: fonts.MathMetrics()}
 	return min(1, w.room/s.row(Row(list), style{display: true}).width)
 }
@@ -45,7 +48,7 @@ func (w *markup) parts(list []Node, prev Class, most int) {
 	}
 	rank := breakable(list)
 	if rank == rankNone || rank == rankBeside && n < 2*shortStep {
-		if n > shortStep && w.shrink(list) < leastScale {
+		if w.shrink(list) < leastScale {
 			if open := opened(list); open != nil {
 				w.parts(open, prev, longPart)
 				return
@@ -130,4 +133,65 @@ func inner(n Node) []Node {
 		return nil
 	}
 	return written(n)
+}
+
+// ems is what atoms take at most in width: what is short enough by that needs
+// no measuring.
+func ems(list []Node) float64 {
+	sum := 0.0
+	for _, n := range list {
+		sum += widest(n)
+	}
+	return sum
+}
+
+// The widest that a figure and a letter are on average.
+const (
+	figure = 0.61
+	letter = 0.75
+)
+
+func widest(n Node) float64 {
+	switch n := n.(type) {
+	case Row:
+		return ems(n)
+	case Op:
+		if n.Sign == Beside.Sign {
+			return 0.2
+		}
+		if n.Class == Punct {
+			return 0.5
+		}
+		return 1.15 + letter*float64(max(len(n.Sign)-3, 0))
+	case Fraction:
+		return max(widest(n.Num), widest(n.Den)) + 0.25
+	case Script:
+		return widest(n.Base) + 0.8*max(widest(n.Sub), widest(n.Sup))
+	case Root:
+		return 1 + widest(n.Body)
+	case Fence:
+		return 1.1 + widest(n.Body) // the brackets may have grown
+	case Number:
+		w := figure*float64(len(n.Value)) + widest(n.Unit)
+		if _, _, power := figures(n.Value); power != "" {
+			w += 2 // ×10
+		}
+		return w
+	case Unit:
+		w := 0.0
+		for _, t := range n {
+			w += 0.35 + 0.92*float64(len(t.Name))
+			if t.Open || t.Close || t.Num < 0 || t.Den > 1 {
+				w += 0.7
+			}
+		}
+		return w
+	case Choice:
+		w := 0.0
+		for _, b := range n.Branches {
+			w = max(w, widest(b.Value)+widest(b.Cond))
+		}
+		return w + 8
+	}
+	return letter * (float64(width(n)) + 0.5)
 }

@@ -4,21 +4,21 @@ package maths
 // the brackets that then are needed, subscripts as the names are written.
 func AppendPlain(dst []byte, n Node) []byte {
 	w := line{dst}
-	w.list(atoms(nil, n))
+	w.node(n)
 	return w.b
 }
 
 // AppendPlainChain appends a chain as one line of plain text.
 func AppendPlainChain(dst []byte, c Chain) []byte {
 	w := line{dst}
-	w.list(atoms(nil, c.Left))
+	w.node(c.Left)
 	for i, s := range c.Steps {
 		if i > 0 || c.Left != nil {
 			w.raw(" ")
 		}
 		w.raw(Relation(s.Sign).Sign)
 		w.raw(" ")
-		w.list(atoms(nil, s.Right))
+		w.node(s.Right)
 	}
 	return w.b
 }
@@ -81,7 +81,8 @@ func (w *line) node(n Node) {
 	switch n := n.(type) {
 	case nil:
 	case Row:
-		w.list(atoms(nil, n))
+		var room [12]Node
+		w.list(atoms(room[:0], n))
 	case Symbol:
 		w.symbol(n)
 	case Number:
@@ -99,9 +100,10 @@ func (w *line) node(n Node) {
 			w.raw(" ")
 		}
 	case Fraction:
-		w.part(n.Num, loosest(atoms(nil, n.Num)) < rankProduct)
+		var room [12]Node
+		w.part(n.Num, loosest(atoms(room[:0], n.Num)) < rankProduct)
 		w.raw("/")
-		d := atoms(nil, n.Den)
+		d := atoms(room[:0], n.Den)
 		w.part(n.Den, len(d) == 1 && !simple(d[0]) || len(d) > 1 && !called(d))
 	case Script:
 		w.script(n)
