@@ -66,21 +66,12 @@ func (b *prose) summary(s *render.Summary) {
 	p.write(note, s.Note)
 	r.paragraph(p, noteVoice.leading)
 	r.space(1)
-	p = &paragraph{}
-	b.doc.chain(p, s.Formula, style{face: fonts.Serif, size: smallSize + 0.6, colour: inkColour})
-	if s.Mark != "" {
-		if len(p.words) > 0 {
-			p.words[len(p.words)-1].space = 9
-			p.open = false
-		}
-		p.write(noteVoice.style(), s.Mark)
-	}
-	r.paragraph(p, noteVoice.leading+1.5)
+	r.formula(s.Formula, smallSize+0.6, b.doc.tallest())
 	for i := range s.Reason {
 		r.space(1)
 		r.paragraph(b.doc.phrase(&s.Reason[i], noteVoice), noteVoice.leading+1)
 	}
-	e := render.Entry{Kind: render.Check, Number: s.Number, Verdict: s.Verdict}
+	e := render.Entry{Kind: render.Check, Number: s.Number, Mark: s.Mark, Verdict: s.Verdict}
 	from := len(b.slabs)
 	b.finish(r, &e, 3.2)
 	for i := from; i < len(b.slabs); i++ {

@@ -37,6 +37,9 @@ func (l *layout) write(date time.Time) ([]byte, error) {
 			if h := page[j].heading; h != nil && !page[j].repeat {
 				marks.bookmark(c, h, page[j].y)
 			}
+			if !page[j].repeat {
+				page[j].ink = ink{} // what is drawn need not be held
+			}
 		}
 		if i == 0 {
 			marks.annotate(c, &l.title.ink, sideMargin, topMargin)
