@@ -39,16 +39,32 @@ const (
 func (c *checker) plot(block int, t *syntax.Plot) {
 	plan := &PlotPlan{Tree: t}
 	c.prog.Plots[block] = plan
+	l := &lower{e: c.top, uses: make([]*Def, t.Slots), declared: true}
 	switch {
 	case t.Checks:
-		return
+		c.plotChecks(l, t)
 	case t.Against == nil || t.From == nil || t.To == nil: // reported where it was read
 		plan.Failed = true
 		return
+	default:
+		c.sweep(l, plan, t)
 	}
-	l := &lower{e: c.top, uses: make([]*Def, t.Slots), declared: true}
-	c.sweep(l, plan, t)
 	plan.Failed = l.failed
+}
+
+// plotChecks refuses a plot of checks that would stay empty, and one that asks
+// for curves too.
+func (c *checker) plotChecks(l *lower, t *syntax.Plot) {
+	if t.Against != nil || len(t.Limits) > 0 {
+		l.fail(diag.Syntax, t.At, "a plot of checks draws nothing else", "curves stand in a plot of their own")
+		return
+	}
+	for _, p := range c.prog.Plans {
+		if _, ok := p.Stmt.(*syntax.Check); ok {
+			return
+		}
+	}
+	l.fail(diag.UnknownName, t.At, "there are no checks in this file to plot")
 }
 
 func (c *checker) sweep(l *lower, plan *PlotPlan, t *syntax.Plot) {
