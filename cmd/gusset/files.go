@@ -65,7 +65,10 @@ func (f *finder) add(file string) {
 
 func (f *finder) walk(folder string) {
 	any := false
-	_ = filepath.WalkDir(folder, func(path string, entry fs.DirEntry, err error) error {
+	folder = filepath.Clean(folder)
+	through := folder + string(filepath.Separator) // through the link that it may be
+	_ = filepath.WalkDir(through, func(path string, entry fs.DirEntry, err error) error {
+		path = filepath.Clean(path)
 		switch {
 		case err != nil:
 			f.problem(path, err)

@@ -81,23 +81,25 @@ func (r *runner) run(t *terminal, files []string) error {
 			return fmt.Errorf("there is no stage `%s`; the stages are %s", r.stage, stageNames())
 		}
 	}
-	results := compile(t, store.New(), files)
 	var done outcome
-	for i, result := range results {
+	for _, result := range compile(t, store.New(), files) {
 		if result.Err != nil {
 			t.problem(hint(result.Err))
 			done.unusable = true
 			continue
 		}
 		done.sheets = append(done.sheets, result.Sheet)
+	}
+	done.sheets = notebook.Together(done.sheets)
+	for i, sheet := range done.sheets {
 		if i > 0 && !r.json {
 			fmt.Fprintln(t.out)
 		}
-		if err := write(t, result.Sheet); err != nil {
+		if err := write(t, sheet); err != nil {
 			return fmt.Errorf("the results cannot be written (%w)", cause(err))
 		}
 		if !r.json {
-			t.diagnostics(result.Sheet, r.notes)
+			t.diagnostics(sheet, r.notes)
 		}
 	}
 	return done.status()

@@ -113,7 +113,11 @@ func (w *watcher) follow(since time.Time) {
 		}
 	}
 	for _, folder := range w.found.folders {
-		i.folders = append(i.folders, absolute(folder))
+		full := absolute(folder)
+		if real, err := filepath.EvalSymlinks(full); err == nil {
+			full = real
+		}
+		i.folders = append(i.folders, full)
 	}
 	for _, path := range w.paths {
 		i.files = append(i.files, absolute(path))

@@ -184,6 +184,24 @@ func TestWatchBuildsOnlyWhatChanged(t *testing.T) {
 	}
 }
 
+// TestWatchLinks watches through a folder that is a link.
+func TestWatchLinks(t *testing.T) {
+	t.Parallel()
+	dir := t.TempDir()
+	write(t, filepath.Join(dir, "real", "a.md"), lug("48"))
+	if err := os.Symlink("real", filepath.Join(dir, "link")); err != nil {
+		t.Fatal(err)
+	}
+	p := startWatch(t, dir, "link", "--to", "out", "--only", "html")
+	write(t, filepath.Join(dir, "real", "a.md"), lug("49"))
+	p.wait(t, "link/a.md: P 48 → 49 kN")
+	write(t, filepath.Join(dir, "link", "b.md"), strings.Replace(lug("48"), "C-1", "C-2", 1))
+	p.wait(t, "link/b.md: 1 check, OK → out/C-2.html")
+	write(t, filepath.Join(dir, "link", "b.md"), strings.Replace(lug("47"), "C-1", "C-2", 1))
+	p.wait(t, "link/b.md: P 48 → 47 kN")
+	p.interrupt(t)
+}
+
 // TestWatchErrors wants a save with errors to show them and to leave the pages.
 func TestWatchErrors(t *testing.T) {
 	t.Parallel()
