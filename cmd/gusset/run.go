@@ -90,7 +90,6 @@ func (r *runner) run(t *terminal, files []string) error {
 		}
 		done.sheets = append(done.sheets, result.Sheet)
 	}
-	done.sheets = notebook.Together(done.sheets)
 	for i, sheet := range done.sheets {
 		if i > 0 && !r.json {
 			fmt.Fprintln(t.out)
@@ -111,12 +110,24 @@ func (r *runner) list(t *terminal, s *notebook.Sheet) error {
 	return err
 }
 
-// compile compiles files, all at once, and says so where it takes long.
+// compile compiles files, all at once, and says so where it takes long. A value
+// that another of the files uses is used.
 func compile(t *terminal, s *store.Store, files []string) []store.Result {
 	if len(files) > 1 {
 		defer t.progress(func() string { return fmt.Sprintf("computing %d calc files …", len(files)) })()
 	}
-	return s.Compile(files)
+	results := s.Compile(files)
+	var read []*store.Result
+	var sheets []*notebook.Sheet
+	for i := range results {
+		if results[i].Err == nil {
+			read, sheets = append(read, &results[i]), append(sheets, results[i].Sheet)
+		}
+	}
+	for i, sheet := range notebook.Together(sheets) {
+		read[i].Sheet = sheet
+	}
+	return results
 }
 
 // hint adds to an error what can be done about it.
