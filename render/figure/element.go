@@ -1,7 +1,6 @@
 package figure
 
 import (
-	"fmt"
 	"math"
 
 	"gusset/render/maths"
@@ -64,7 +63,14 @@ func (s *sketch) element() *Drawing {
 	s.near(s.given("sigma_y"), Point{0, top}, 4, everywhere, math.Pi/2)
 	s.near(s.given("tau_xy").in(teal), Point{h + shearGap, -h - shearGap}, 3, everywhere, math.Pi/4)
 	s.tripod(Point{-h - gap - arrowLength(st.x) - 34, h + gap + arrowLength(st.y)})
-	return s.done("Stress element", "Arrows that point outwards are tension.", fmt.Sprintf("The shear stress on the right face points %s.", map[bool]string{true: "up", false: "down"}[st.tau >= 0]))
+	sentences := []string{"Arrows that point outwards are tension."}
+	switch {
+	case st.tau > 0:
+		sentences = append(sentences, "The shear stress on the right face points up.")
+	case st.tau < 0:
+		sentences = append(sentences, "The shear stress on the right face points down.")
+	}
+	return s.done("Stress element", sentences...)
 }
 
 // tripod draws the directions x and y from a corner.

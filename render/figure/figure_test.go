@@ -9,10 +9,13 @@ import (
 	"io"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"testing"
+	"testing/fstest"
 
 	"gusset/notebook"
+	"gusset/notebook/eval"
 	"gusset/render"
 	"gusset/render/figure"
 )
@@ -280,4 +283,52 @@ func TestTexts(t *testing.T) {
 			}
 		}
 	}
+}
+
+// The circle on paper says what the helper plane_stress computes.
+func TestMohrAgreesWithHelper(t *testing.T) {
+	for _, state := range [][3]string{{"80", "20", "30"}, {"-80", "30", "-25"}, {"10", "10", "-5"}, {"20", "50", "0"}, {"-7.5", "-90", "12"}} {
+		calc := fmt.Sprintf("---\ncalc: C-1\nunits: [MPa, deg]\n---\n\n```calc\nx = %s MPa\ny = %s MPa\nxy = %s MPa\np = plane_stress(x, y, xy)\n```\n\n```figure mohr x, y, xy\n```\n", state[0], state[1], state[2])
+		sheet := notebook.Compile(&notebook.Context{FS: fstest.MapFS{"a.md": {Data: []byte(calc)}}, Panics: true}, "a.md")
+		if sheet.Failed() {
+			t.Fatal(sheet.Diagnostics)
+		}
+		got := texts(figure.Sketch(sheet.Blocks[1].Figure))
+		for id, name := range map[string]string{"p.sigma_1": "σ1", "p.sigma_2": "σ2", "p.tau_max": "τmax", "p.theta_p": "θp"} {
+			found := false
+			for _, s := range sheet.Steps {
+				for _, r := range s.Results {
+					if r.ID == id {
+						found = true
+						want := name + "=" + strings.NewReplacer("-", "−", " ", "").Replace(eval.PlainText(r.Printed(0)))
+						if !slices.Contains(got, want) {
+							t.Errorf("%v: %q is not among %q", state, want, got)
+						}
+					}
+				}
+			}
+			if !found {
+				t.Errorf("no value %s", id)
+			}
+		}
+	}
+}
+
+func BenchmarkDrawing(b *testing.B) {
+	calc := "---\ncalc: C-1\n---\n\n```calc\nd = 25 mm\nr = 1e3*d^2 + d*1 m*sin(d/1 mm)\n```\n\n```plot\nr against d from 1 mm to 40 mm\n```\n\n```figure mohr 80 MPa, 20 MPa, 30 MPa\n```\n"
+	sheet := notebook.Compile(&notebook.Context{FS: fstest.MapFS{"a.md": {Data: []byte(calc)}}}, "a.md")
+	if sheet.Failed() {
+		b.Fatal(sheet.Diagnostics)
+	}
+	var buf []byte
+	b.Run("plot", func(b *testing.B) {
+		for b.Loop() {
+			buf = figure.Plot(sheet.Blocks[1].Plot).SVG(buf[:0], "a")
+		}
+	})
+	b.Run("mohr", func(b *testing.B) {
+		for b.Loop() {
+			buf = figure.Sketch(sheet.Blocks[2].Figure).SVG(buf[:0], "a")
+		}
+	})
 }

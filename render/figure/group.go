@@ -73,7 +73,7 @@ func (s *sketch) group(f *eval.Figure) *Drawing {
 	if s.mark != "" {
 		s.notes = append(s.notes, "forces of "+s.mark+", which governs")
 	}
-	return s.finish(title, sentence)
+	return s.finish(title, s.described([]string{sentence}))
 }
 
 // fasteners are the members of the group with the forces of the entry that

@@ -54,18 +54,22 @@ func (r rect) inside(s span) float64 {
 }
 
 // trouble is how much a label in a rectangle would cover or be crossed by; 0 is
-// a free place. Other labels weigh more than lines.
-func (d *pad) trouble(r, within rect) float64 {
+// a free place. Other labels weigh more than lines. It need not be known beyond
+// a bound.
+func (d *pad) trouble(r, within rect, bound float64) float64 {
 	r = r.grown(1)
-	sum := 0.0
+	area := (r.x1 - r.x0) * (r.y1 - r.y0)
+	sum := 8 * (area - r.shared(within))
 	for _, o := range d.labels {
 		sum += 4 * r.shared(o)
 	}
-	for _, s := range d.lines {
-		sum += 3 * r.inside(s)
+	for i := 0; i < len(d.lines) && sum < bound; i++ {
+		s := &d.lines[i]
+		if max(s.a.X, s.b.X) >= r.x0 && min(s.a.X, s.b.X) <= r.x1 && max(s.a.Y, s.b.Y) >= r.y0 && min(s.a.Y, s.b.Y) <= r.y1 {
+			sum += 3 * r.inside(*s)
+		}
 	}
-	area := (r.x1 - r.x0) * (r.y1 - r.y0)
-	return sum + 8*(area-r.shared(within))
+	return sum
 }
 
 // everywhere is no bound on where a label may stand.
@@ -94,7 +98,7 @@ func (d *pad) near(l label, p Point, gap float64, within rect, directions ...flo
 				angle += turn
 			}
 			at := l.beside(p, angle, out)
-			t := d.trouble(l.rect(at), within) + 0.6*float64(ring)
+			t := d.trouble(l.rect(at), within, least) + 0.6*float64(ring)
 			if t < least-1e-9 {
 				best, least = at, t
 			}

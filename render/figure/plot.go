@@ -66,7 +66,7 @@ func Plot(p *eval.Plot) *Drawing {
 	if title == "" {
 		title = fmt.Sprintf("%s against %s", plainList(symbols), maths.AppendPlain(nil, along))
 	}
-	return d.finish(title, d.describe(p))
+	return d.finish(title, d.described([]string{d.describe(p)}))
 }
 
 // nameAt is how far from the field the names of the curves stand: where there

@@ -272,7 +272,15 @@ func (s *sketch) done(title string, sentences ...string) *Drawing {
 			sentences = append(sentences, plainOf(equals(s.symbolOf(n), s.valueOf(n)))+".")
 		}
 	}
-	return s.finish(title, strings.Join(append(sentences, s.notes...), " "))
+	return s.finish(title, s.described(sentences))
+}
+
+// described is what a drawing shows in sentences, its notes among them.
+func (d *pad) described(sentences []string) string {
+	for _, n := range d.notes {
+		sentences = append(sentences, n+".")
+	}
+	return strings.Join(sentences, " ")
 }
 
 func plainOf(n maths.Node) string { return string(maths.AppendPlain(nil, n)) }
