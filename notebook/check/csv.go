@@ -34,6 +34,10 @@ func (c *checker) readCSV(t *syntax.Table) (*syntax.Table, *diag.Source, bool) {
 		f.l.fail(diag.Syntax, diag.Span{Start: 0, End: 0}, "the file has no header", "the first line names the columns, with units: `mark,x [mm],y [mm]`")
 		ok = false
 	}
+	if n := len(out.Columns); n > 0 && len(out.Rows) == 0 && !f.l.failed {
+		f.l.fail(diag.Syntax, out.Columns[0].At.To(out.Columns[n-1].At), "the file has no rows below its header")
+		ok = false
+	}
 	return out, src, ok
 }
 

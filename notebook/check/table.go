@@ -39,6 +39,10 @@ func (c *checker) table(b *syntax.Block) {
 		c.failedTable(b, t)
 		return
 	}
+	if len(t.Rows) == 0 { // reported where it was read
+		c.failedTable(b, t)
+		return
+	}
 	if t.Name != nil {
 		line = c.in.Source.LineAt(t.Name.At.Start)
 	}
@@ -116,7 +120,7 @@ func (t *tableCheck) sort() {
 }
 
 func (t *tableCheck) isText(i int, col *syntax.Column) bool {
-	if i == 0 && col.Name.ID == "mark" {
+	if i == 0 && (col.Name.ID == "mark" || col.Name.ID == "case") { // figures or not: `1`, `101`
 		return true
 	}
 	literals, values, texts := 0, 0, 0

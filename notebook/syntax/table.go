@@ -72,6 +72,9 @@ func (p *parser) table(t *Table) {
 	if t.Columns == nil && t.From == "" && len(p.diags) == 0 {
 		p.report(diag.Error, t.At, diag.Syntax, "the table has no header", "its first line names the columns, as in `mark | x [mm] | y [mm]`")
 	}
+	if n := len(t.Columns); n > 0 && len(t.Rows) == 0 && len(p.diags) == 0 {
+		p.report(diag.Error, t.Columns[0].At.To(t.Columns[n-1].At), diag.Syntax, "the table has no rows below its header")
+	}
 }
 
 // cells splits a line at its pipes; `\|` is none, nor is one in quotes.
