@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"errors"
 	"fmt"
+	"slices"
 	"strconv"
 	"strings"
 	"unicode/utf8"
@@ -53,14 +54,43 @@ func (y *yamlReader) entries() []entry {
 		return nil
 	}
 	var doc yaml.Node
-	if err := yaml.Unmarshal(text, &doc); err != nil {
-		y.notYAML(err)
-		return nil
+	mended := map[int]bool{}
+	for err := yaml.Unmarshal(text, &doc); err != nil; err = yaml.Unmarshal(text, &doc) {
+		if text = y.mend(text, mended); text == nil {
+			y.notYAML(err)
+			return nil
+		}
 	}
 	if doc.Kind == 0 {
 		return []entry{}
 	}
-	return y.mapping(doc.Content[0], "the "+y.what)
+	// A list on a mended line is left out: its items are not where YAML has them.
+	return slices.DeleteFunc(y.mapping(doc.Content[0], "the "+y.what), func(e entry) bool {
+		return target(e.value).Kind == yaml.SequenceNode && mended[y.src.LineAt(e.keyAt.Start)]
+	})
+}
+
+// maxMended bounds how often a text is parsed again.
+const maxMended = 20
+
+// mend reports the first text that needs quotes and has not been mended yet, and
+// returns the YAML with it in quotes, its lines where they were, so that what is
+// wrong in the other keys is found in the same run. nil says that there is none.
+func (y *yamlReader) mend(text []byte, mended map[int]bool) []byte {
+	first := y.src.LineAt(y.at.Start)
+	lines := bytes.SplitAfter(text, []byte("\n"))
+	for i, line := range lines {
+		start, end, fixed := needsQuotes(string(line))
+		if mended[first+i] || fixed == "" || len(mended) == maxMended {
+			continue
+		}
+		at := y.src.LineStart(first + i)
+		y.report(diag.Error, diag.Span{Start: at + start, End: at + end}, "the "+y.what+" is no YAML: this text needs quotes", "write `"+fixed+"`")
+		mended[first+i] = true
+		lines[i] = []byte(fixed + "\n")
+		return bytes.Join(lines, nil)
+	}
+	return nil
 }
 
 // mapping returns the keys of a mapping, each once.
@@ -185,20 +215,13 @@ func (y *yamlReader) span(n *yaml.Node) diag.Span {
 	return diag.Span{Start: start + column, End: start + column + size}
 }
 
-// notYAML reports a fault of the YAML itself. Most are a text that needs quotes;
-// the line at fault is looked for by hand, since the parser's own line is often
-// one further down.
+// notYAML reports a fault of the YAML itself that no quotes mend.
 func (y *yamlReader) notYAML(err error) {
 	text := y.src.Text[y.at.Start:y.at.End]
 	offset := y.at.Start
 	for line := range bytes.Lines(text) {
 		if indent := len(line) - len(bytes.TrimLeft(line, " \t")); bytes.IndexByte(line[:indent], '\t') >= 0 && indent < len(bytes.TrimRight(line, "\r\n")) {
 			y.report(diag.Error, diag.Span{Start: offset, End: offset + indent}, "the "+y.what+" is no YAML: a tab may not indent a line", "indent with blanks")
-			return
-		}
-		if start, end, fixed := needsQuotes(string(line)); fixed != "" {
-			y.report(diag.Error, diag.Span{Start: offset + start, End: offset + end}, "the "+y.what+" is no YAML: this text needs quotes",
-				"write `"+fixed+"`")
 			return
 		}
 		offset += len(line)

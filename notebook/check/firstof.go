@@ -2,6 +2,7 @@ package check
 
 import (
 	"fmt"
+	"strings"
 
 	"gusset/notebook/diag"
 	"gusset/notebook/syntax"
@@ -10,6 +11,9 @@ import (
 // firstOf lowers `first of … with …`.
 func (l *lower) firstOf(f *syntax.FirstOf, s *syntax.Definition, d *Def) Choice {
 	out := &FirstOf{Expr: f}
+	if l.unitOnLast(f.Values) {
+		return Choice{}
+	}
 	t := Type{}
 	for _, v := range f.Values {
 		n := l.value(v)
@@ -39,6 +43,28 @@ func (l *lower) firstOf(f *syntax.FirstOf, s *syntax.Definition, d *Def) Choice 
 		out.Column, out.Rows, out.Values = out.Values[0], t.Rows[0], nil
 	}
 	return l.firstOfCond(f, s, d, out, t)
+}
+
+// unitOnLast reports `first of 8, 10, 12 mm`, where one unit is to serve all.
+func (l *lower) unitOnLast(values []syntax.Expr) bool {
+	last, ok := values[len(values)-1].(*syntax.Number)
+	if !ok || len(last.Pieces) != 1 || !last.Pieces[0].HasUnit {
+		return false
+	}
+	unit, bare := " "+l.e.src.Slice(last.Pieces[0].UnitAt), 0
+	words := make([]string, len(values))
+	for i, v := range values {
+		words[i] = l.print(v)
+		if n, ok := v.(*syntax.Number); ok && len(n.Pieces) == 1 && !n.Pieces[0].HasUnit {
+			words[i] += unit
+			bare++
+		}
+	}
+	if bare == 0 {
+		return false
+	}
+	l.fail(diag.DimensionMismatch, values[0].Span().To(last.At), "each candidate has a unit of its own", "write `"+strings.Join(words, ", ")+"`")
+	return true
 }
 
 func (l *lower) firstOfCond(f *syntax.FirstOf, s *syntax.Definition, d *Def, out *FirstOf, t Type) Choice {

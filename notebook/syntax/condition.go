@@ -37,6 +37,10 @@ func (p *parser) needCondition(x Expr) Expr {
 	if _, bad := x.(*Bad); bad || isCondition(x) {
 		return x
 	}
+	if p.tok == tAssign {
+		p.syntax(p.start, p.pos, "a condition compares with `==`", "write `==`")
+		return x
+	}
 	at := x.Span()
 	p.fail(at, "syntax", fmt.Sprintf("%s is a value, not a condition", quoted(p.src.Slice(at))),
 		"compare it with another value by `<`, `<=`, `>`, `>=`, `==` or `!=`")

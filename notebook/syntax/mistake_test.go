@@ -180,6 +180,8 @@ var mistakes = []struct{ source, id, under, corrected string }{
 	{"x = 3 if a <> b", "syntax", "<>", "x = 3 if a != b"},
 	{"x = 3 if a < b && c < d", "syntax", "&&", "x = 3 if a < b and c < d"},
 	{"x = 3 if", "syntax", "if", "x = 3 if a < b"},
+	{"x = 3 if a = b", "syntax", "=", "x = 3 if a == b"},
+	{"check a <= b if c = \"x\"", "syntax", "=", "check a <= b if c == \"x\""},
 	// checks
 	{"check a", "syntax", "a", "check a <= b"},
 	{"check", "syntax", "check", "check a <= b"},
