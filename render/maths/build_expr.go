@@ -1,6 +1,7 @@
 package maths
 
 import (
+	"slices"
 	"strings"
 
 	"gusset/notebook/syntax"
@@ -17,6 +18,7 @@ const (
 	rankedCompare
 	rankedSum
 	rankedNeg
+	rankedSlash // a division with a slash
 	rankedProduct
 	rankedMeasure // figures with a unit or a power of ten
 	rankedPower
@@ -136,7 +138,7 @@ func (w *builder) unary(e *syntax.Unary) (Node, rank) {
 	if e.Op == syntax.Not {
 		return Row{Not, w.part(e.X, rankedCompare, true)}, rankedNot
 	}
-	x := w.part(e.X, rankedProduct, false)
+	x := w.part(e.X, rankedSlash, false)
 	return Row{Minus, x}, rankedNeg
 }
 
@@ -299,22 +301,15 @@ func oneLetter(s Symbol) bool {
 // quotient sets a division as a fraction; a slash is used in exponents and
 // inside other fractions. Division from the left, a/b/c, is one fraction.
 func (w *builder) quotient(e *syntax.Binary) (Node, rank) {
-	num, dens := syntax.Expr(e), []syntax.Expr(nil)
-	for {
-		b, ok := unbracketed(num).(*syntax.Binary)
-		if !ok || b.Op != syntax.Div {
-			break
-		}
-		dens = append(dens, b.Y)
-		num = b.X
+	num, dens := e.X, []syntax.Expr{e.Y}
+	for b, ok := num.(*syntax.Binary); ok && b.Op == syntax.Div; b, ok = num.(*syntax.Binary) {
+		num, dens = b.X, append(dens, b.Y)
 	}
-	for i, j := 0, len(dens)-1; i < j; i, j = i+1, j-1 {
-		dens[i], dens[j] = dens[j], dens[i]
-	}
+	slices.Reverse(dens)
 	if w.inline > 0 || w.depth > 0 {
 		n := w.part(num, rankedProduct, true)
 		d, r := w.denominator(dens)
-		return Row{n, Slash, bracketed(d, r, rankedPower, false)}, rankedProduct
+		return Row{n, Slash, bracketed(d, r, rankedPower, false)}, rankedSlash
 	}
 	w.depth++
 	n := w.side(num)

@@ -202,7 +202,7 @@ func (w *builder) looked(e *syntax.AtMark, mark Node) (Node, rank) {
 	symbols := *w
 	symbols.values = false
 	x := symbols.part(e.X, rankedAtom, true)
-	return Row{x, Blank, Text{Text: "at"}, Blank, mark}, rankedMeasure
+	return Row{x, Blank, Text{Text: "at"}, Blank, mark}, rankedSum
 }
 
 // lookup is a whole side that only looks an entry up. Its value stands in the

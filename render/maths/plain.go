@@ -32,13 +32,27 @@ func (w *line) raw(s string) { w.b = append(w.b, s...) }
 func (w *line) list(list []Node) {
 	prev := Open
 	for i, n := range list {
+		left, right := n.edges()
 		if o, ok := n.(Op); ok {
 			w.op(o, prev, i > 0 && measured(list[i-1]))
 		} else {
+			if prev == Func && i > 0 && left != Open && apart(list[i-1], n) {
+				w.raw(" ")
+			}
 			w.node(n)
 		}
-		_, prev = n.edges()
+		prev = right
 	}
+}
+
+// spaced reports whether atoms are set apart by blanks, as 12 ft 6 in is.
+func spaced(list []Node) bool {
+	for _, n := range list {
+		if s, ok := n.(Space); ok && s > Thin {
+			return true
+		}
+	}
+	return false
 }
 
 // measured reports whether an atom ends in a unit: a dot right behind it would
@@ -101,7 +115,8 @@ func (w *line) node(n Node) {
 		}
 	case Fraction:
 		var room [12]Node
-		w.part(n.Num, loosest(atoms(room[:0], n.Num)) < rankProduct)
+		num := atoms(room[:0], n.Num)
+		w.part(n.Num, loosest(num) < rankProduct || spaced(num))
 		w.raw("/")
 		d := atoms(room[:0], n.Den)
 		w.part(n.Den, len(d) == 1 && !simple(d[0]) || len(d) > 1 && !called(d))
@@ -240,7 +255,8 @@ func (w *line) script(s Script) {
 		return
 	}
 	w.raw("^")
-	w.part(s.Sup, !simple(s.Sup))
+	_, again := s.Sup.(Script)
+	w.part(s.Sup, !simple(s.Sup) || again)
 }
 
 // whole reports whether figures are a whole number, signed or not.
