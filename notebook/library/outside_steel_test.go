@@ -271,7 +271,7 @@ func panelRows() []row {
 		{call: "web_shear_ec3(h_w=1000 mm, t_w=8 mm, a=1000 m, f_yw=235 MPa)", want: "r.lambda_w = 1000/(86.4*8); r.k_tau = 5.34; r.chi_w = 0.83*86.4*8/1000", tol: 1e-3, source: "EN 1993-1-5 (5.5), no intermediate stiffeners"},
 		{call: "web_shear_ec3(h_w=300 mm, t_w=10 mm, a=1 m, f_yw=355 MPa)", want: "r.chi_w = 1.2; r.V_bw_Rd = 1.2*355 MPa*3000 mm^2/sqrt(3)", source: "EN 1993-1-5, Table 5.1, stocky web"},
 	}
-	for _, c := range []struct{ h, t, a, f, rigid float64 }{{1200, 6, 1500, 355, 1}, {1200, 6, 1500, 355, 0}, {1200, 6, 800, 355, 1}, {800, 8, 1600, 275, 1}} {
+	for _, c := range []struct{ h, t, a, f, rigid float64 }{{1200, 6, 1500, 355, 1}, {1200, 6, 1500, 355, 0}, {1200, 6, 800, 355, 1}, {800, 8, 1600, 275, 1}, {800, 12, 1600, 355, 1}} {
 		k := 5.34 + 4*math.Pow(c.h/c.a, 2)
 		if c.a < c.h {
 			k = 4 + 5.34*math.Pow(c.h/c.a, 2)
