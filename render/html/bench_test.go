@@ -2,43 +2,97 @@ package html_test
 
 import (
 	"fmt"
+	"io"
 	"strings"
 	"testing"
 	"testing/fstest"
+	"time"
+
+	"github.com/yuin/goldmark"
+	"github.com/yuin/goldmark/extension"
+	"github.com/yuin/goldmark/parser"
 
 	"gusset/notebook"
 	"gusset/render"
 	"gusset/render/html"
 )
 
-// long is a calc of about 50 pages: computed statements with prose between.
-func long(statements int) []byte {
+// fiftyPages is a calc file of about fifty printed pages and 90 kB: 600
+// computed statements among givens, checks and prose.
+func fiftyPages(statements int) []byte {
 	var b strings.Builder
-	b.WriteString("---\ncalc: C-600\ntitle: A long calc\nrev: A\n---\n\n# Members\n\n```calc\nP = 48 kN # Pull [load schedule]\nd = 25 mm # Diameter [drawing S-12]\nf_y = 355 MPa # Yield strength [EN 10025-2]\n```\n")
-	for i := range statements / 6 {
-		fmt.Fprintf(&b, "\n## Member %d\n\nThe pull on member %d is shared by *two* shear planes, and the plates are snug; the stress is {tau_%d} at most.\n\n```calc\n", i, i, i)
-		fmt.Fprintf(&b, "A_%d = pi*d^2/4 # Area of one shear plane\n", i)
-		fmt.Fprintf(&b, "tau_%d [MPa] = P/(2*A_%d) # Average shear stress\n", i, i)
-		fmt.Fprintf(&b, "W_%d = pi*d^3/32 # Section modulus\n", i)
-		fmt.Fprintf(&b, "M_%d [kN*m] = P/8*(25 mm + 4*2 mm + 2*15 mm) # Bending moment\n", i)
-		fmt.Fprintf(&b, "sigma_%d = sqrt((M_%d/W_%d)^2 + 3*tau_%d^2) # Equivalent stress\n", i, i, i, i)
-		fmt.Fprintf(&b, "check tau_%d <= 0.6*f_y # Shear [EN 1993-1-8, Table 3.10]\n```\n", i)
+	b.WriteString("---\ncalc: C-500\ntitle: A long calculation\nrev: A\nunits: [kN, mm, MPa, kN*m]\n---\n")
+	for j := 0; j < statements/10; j++ {
+		fmt.Fprintf(&b, "\n# Joint %d\n\nThe pull is shared by two shear planes. The plates are *snug*, so bending of the pin is taken up in the\n"+
+			"next section with no gap, and `friction` between the plates is left out. At the design pull the stress is\n{tau_%[2]d}, "+
+			"which the **pin** carries with ease; the plates are thicker than the drawing asks, for the sake of the\nweld, and the edge distances follow the drawing.\n\n", j+1, j)
+		fmt.Fprintf(&b, "- the load comes from the schedule, row %d\n- the plates are of one grade\n\n```calc\n", j+1)
+		fmt.Fprintf(&b, "P_%[1]d = %[2]d kN       # Pull on one lug, factored [load schedule, row %[1]d]\nd_%[1]d = 25 mm       # Pin diameter [drawing S-12 rev C]\n"+
+			"t_%[1]d = 12 mm       # Inner plate [drawing S-12 rev C]\nf_%[1]d = 355 MPa     # Yield strength [EN 10025-2, Table 7]\n\n", j, 40+j%9)
+		fmt.Fprintf(&b, "A_%[1]d = pi*d_%[1]d^2/4   # Area of one shear plane\ntau_%[1]d [MPa] = P_%[1]d/(2*A_%[1]d)   # Average shear stress, two planes\n"+
+			"tau_d_%[1]d = f_%[1]d/(sqrt(3)*1.5)   # Design shear strength [von Mises]\ncheck tau_%[1]d <= tau_d_%[1]d   # Pin in double shear\n"+
+			"sigma_b_%[1]d = P_%[1]d/(d_%[1]d*t_%[1]d)   # Bearing on the inner plate\ncheck sigma_b_%[1]d <= 0.9*f_%[1]d   # Bearing [basis of design 4.3]\n"+
+			"M_%[1]d = P_%[1]d*(2*t_%[1]d + d_%[1]d)/8   # Bending of the pin\nW_%[1]d = pi*d_%[1]d^3/32   # Section modulus\n"+
+			"sigma_m_%[1]d = M_%[1]d/W_%[1]d   # Bending stress\nu_%[1]d = (sigma_m_%[1]d/f_%[1]d)^2 + (tau_%[1]d/tau_d_%[1]d)^2   # Together\n```\n", j)
 	}
 	return []byte(b.String())
 }
 
-func compileText(b testing.TB, text []byte) *notebook.Sheet {
-	b.Helper()
-	c := &notebook.Context{FS: fstest.MapFS{"long.md": {Data: text}}, Panics: true}
-	s := notebook.Compile(c, "long.md")
+func compileBytes(b *testing.B, text []byte) *notebook.Sheet {
+	root := fstest.MapFS{"calc.md": &fstest.MapFile{Data: text}}
+	s := notebook.Compile(&notebook.Context{FS: root, Panics: true}, "calc.md")
 	if s.Failed() {
 		b.Fatal(s.Diagnostics[0].Text())
 	}
 	return s
 }
 
+// BenchmarkFiftyPages compiles the file, compiles it to HTML, and lets
+// goldmark with tables and heading ids render the same bytes, in turns, and
+// prints how many times goldmark each takes.
+func BenchmarkFiftyPages(b *testing.B) {
+	text := fiftyPages(600)
+	md := goldmark.New(goldmark.WithExtensions(extension.Table), goldmark.WithParserOptions(parser.WithAutoHeadingID()))
+	var gold, compile, both time.Duration
+	var dst []byte
+	b.SetBytes(int64(len(text)))
+	for b.Loop() {
+		t := time.Now()
+		if err := md.Convert(text, io.Discard); err != nil {
+			b.Fatal(err)
+		}
+		gold += time.Since(t)
+		t = time.Now()
+		s := compileBytes(b, text)
+		compile += time.Since(t)
+		dst = html.Append(dst[:0], render.NewPage(s))
+		both += time.Since(t)
+	}
+	n := float64(b.N)
+	b.ReportMetric(gold.Seconds()*1e3/n, "goldmark-ms")
+	b.ReportMetric(float64(compile)/float64(gold), "compile/goldmark")
+	b.ReportMetric(float64(both)/float64(gold), "page/goldmark")
+}
+
+// BenchmarkTenTimes compiles 600 statements and 6,000 in turns: linear growth
+// is a ratio of 10.
+func BenchmarkTenTimes(b *testing.B) {
+	small, large := fiftyPages(600), fiftyPages(6000)
+	var one, ten time.Duration
+	for b.Loop() {
+		t := time.Now()
+		html.Append(nil, render.NewPage(compileBytes(b, small)))
+		one += time.Since(t)
+		t = time.Now()
+		html.Append(nil, render.NewPage(compileBytes(b, large)))
+		ten += time.Since(t)
+	}
+	b.ReportMetric(float64(ten)/float64(one), "ratio")
+}
+
+// BenchmarkPage decides what the file prints, and BenchmarkHTML writes it.
 func BenchmarkPage(b *testing.B) {
-	s := compileText(b, long(600))
+	s := compileBytes(b, fiftyPages(600))
 	b.ReportAllocs()
 	for b.Loop() {
 		render.NewPage(s)
@@ -46,19 +100,11 @@ func BenchmarkPage(b *testing.B) {
 }
 
 func BenchmarkHTML(b *testing.B) {
-	p := render.NewPage(compileText(b, long(600)))
+	p := render.NewPage(compileBytes(b, fiftyPages(600)))
 	var dst []byte
 	b.ReportAllocs()
 	for b.Loop() {
 		dst = html.Append(dst[:0], p)
 	}
 	b.SetBytes(int64(len(dst)))
-}
-
-func BenchmarkCompile(b *testing.B) {
-	text := long(600)
-	b.ReportAllocs()
-	for b.Loop() {
-		compileText(b, text)
-	}
 }
