@@ -4,9 +4,11 @@ import (
 	"encoding/json"
 	"errors"
 	"io"
+	"io/fs"
 	"os"
 	"os/exec"
 	"path/filepath"
+	"regexp"
 	"slices"
 	"strings"
 	"testing"
@@ -140,6 +142,30 @@ func TestPackagesAreDescribed(t *testing.T) {
 	}
 	for name := range described {
 		t.Errorf("DEVELOPERS.md describes %s, and there is no such package", name)
+	}
+}
+
+// TestGuardsExist wants every test that DEVELOPERS.md names to be there.
+func TestGuardsExist(t *testing.T) {
+	root := filepath.Join("..", "..")
+	var tests strings.Builder
+	err := filepath.WalkDir(root, func(path string, _ fs.DirEntry, err error) error {
+		if err == nil && strings.HasSuffix(path, "_test.go") {
+			tests.WriteString(read(t, path))
+		}
+		return err
+	})
+	if err != nil {
+		t.Fatal(err)
+	}
+	named := regexp.MustCompile("`((?:Test|Fuzz)\\w+)`").FindAllStringSubmatch(read(t, filepath.Join(root, "DEVELOPERS.md")), -1)
+	if len(named) < 20 {
+		t.Fatalf("DEVELOPERS.md names %d tests", len(named))
+	}
+	for _, name := range named {
+		if !strings.Contains(tests.String(), "func "+name[1]+"(") {
+			t.Errorf("DEVELOPERS.md names %s, and there is no such test", name[1])
+		}
 	}
 }
 
