@@ -54,7 +54,7 @@ func (s *sketch) group(f *eval.Figure) *Drawing {
 	tips := nowhere
 	for i := range list {
 		if i < mostDrawn || i == governs {
-			s.fastener(&list[i], i == governs)
+			s.fastener(&list[i], i == governs && largest > 0)
 			tip := list[i].tip(largest)
 			s.arrowTo(&list[i], tip, i == governs)
 			tips = tips.reach(tip).and(rect{list[i].at.X, list[i].at.Y, list[i].at.X, list[i].at.Y}.grown(fastenerSize))

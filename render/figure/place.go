@@ -57,7 +57,7 @@ func (r rect) inside(s span) float64 {
 // a free place. Other labels weigh more than lines. It need not be known beyond
 // a bound.
 func (d *pad) trouble(r, within rect, bound float64) float64 {
-	r = r.grown(1)
+	r = r.grown(1.8)
 	area := (r.x1 - r.x0) * (r.y1 - r.y0)
 	sum := 8 * (area - r.shared(within))
 	for _, o := range d.labels {
@@ -74,6 +74,21 @@ func (d *pad) trouble(r, within rect, bound float64) float64 {
 
 // everywhere is no bound on where a label may stand.
 var everywhere = rect{-1e9, -1e9, 1e9, 1e9}
+
+// leaderFrom is how far beyond its gap a label gets a line to its point.
+const leaderFrom = 9
+
+// crossed is how much a line from a label to its point would cross other
+// labels.
+func (d *pad) crossed(leader span) float64 {
+	sum := 0.0
+	for _, o := range d.labels {
+		if o.distance(leader.a) > 0 {
+			sum += 3 * o.inside(leader)
+		}
+	}
+	return sum
+}
 
 // near puts a label at the freest place about a point: by the first of the
 // directions if that is free, else round it and further out. A label that
@@ -99,6 +114,9 @@ func (d *pad) near(l label, p Point, gap float64, within rect, directions ...flo
 			}
 			at := l.beside(p, angle, out)
 			t := d.trouble(l.rect(at), within, least) + 0.6*float64(ring)
+			if r := l.rect(at); t < least && r.distance(p) > gap+leaderFrom {
+				t += d.crossed(span{p, r.nearest(p)})
+			}
 			if t < least-1e-9 {
 				best, least = at, t
 			}
@@ -108,8 +126,8 @@ func (d *pad) near(l label, p Point, gap float64, within rect, directions ...flo
 		}
 	}
 	r := l.rect(best)
-	if away := r.distance(p); away > gap+9 {
-		d.faint(fine, p, r.nearest(p))
+	if r.distance(p) > gap+leaderFrom {
+		d.line(fine, p, r.nearest(p))
 	}
 	d.fill(white, box(r.x0+0.5, r.y0+1, r.x1-r.x0-1, r.y1-r.y0-2)...)
 	d.put(l, best)

@@ -158,19 +158,29 @@ func (s *sketch) has(name string) bool { return s.arg(name).step != nil }
 // parameter's own name.
 func (s *sketch) symbolOf(name string) maths.Node {
 	const room = 90
-	switch x := s.arg(name).expr.(type) {
-	case nil, *syntax.Number:
+	expr := s.arg(name).expr
+	if n, _ := literal(expr); expr == nil || n != nil {
 		return s.name(name)
-	case *syntax.Unary:
-		if _, literal := x.X.(*syntax.Number); literal {
-			return s.name(name)
-		}
 	}
-	n := s.maths.Write(s.arg(name).expr, nil)
+	n := s.maths.Write(expr, nil)
 	if s.label(n).set.Width > room {
 		return s.name(name)
 	}
 	return n
+}
+
+// literal is an expression that is only a number, with its sign; nil where it
+// is more.
+func literal(x syntax.Expr) (n *syntax.Number, negative bool) {
+	switch x := x.(type) {
+	case *syntax.Number:
+		return x, x.Neg
+	case *syntax.Unary:
+		if n, ok := x.X.(*syntax.Number); ok && x.Op == syntax.Neg {
+			return n, !n.Neg
+		}
+	}
+	return nil, false
 }
 
 // factorOf is the same where it is multiplied or raised to a power.
@@ -182,11 +192,22 @@ func (s *sketch) factorOf(name string) maths.Node {
 	return maths.Paren(n)
 }
 
-// valueOf is a parameter's value as printed.
+// valueOf is a parameter's value as printed; of a literal the author's own
+// figures.
 func (s *sketch) valueOf(name string) maths.Node {
 	a := s.arg(name)
 	if a.step == nil {
 		return maths.Text{Text: "–"}
+	}
+	if n, negative := literal(a.expr); n != nil {
+		pieces := make([]eval.Piece, len(n.Pieces))
+		for i, p := range n.Pieces {
+			pieces[i] = eval.Piece{Figures: strings.ReplaceAll(p.Figures, "_", ""), Unit: p.Unit}
+		}
+		if negative {
+			pieces[0].Figures = "-" + pieces[0].Figures
+		}
+		return s.maths.Pieces(pieces, maths.Ref{})
 	}
 	return s.maths.Pieces(a.step.Printed(a.entry), maths.Ref{})
 }
