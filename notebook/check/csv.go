@@ -166,8 +166,11 @@ func (f *csvFile) row(t *syntax.Table, record []string) {
 		}
 		text := record[i]
 		where, quoted := f.field(i, text)
-		cell := syntax.ParseCell(f.src, where, quoted)
-		if quoted {
+		cell := syntax.ParseCell(f.src, where, false)
+		// Quotes are the file's, not the calc's: "10" is a number like 10. Only a
+		// mark, and what is no number in a column without a unit, is a text by them.
+		if quoted && (i == 0 || t.Columns[i].Unit == nil && (cell.Expr == nil || !literal(cell.Expr))) {
+			cell = syntax.ParseCell(f.src, where, true)
 			cell.Text = text // a doubled quote inside stands for one
 		}
 		row.Cells = append(row.Cells, cell)

@@ -260,14 +260,16 @@ func (l *lower) logical(x *syntax.Binary) *Node {
 
 // compare lowers a chain of comparisons of values of one dimension.
 func (l *lower) compare(x *syntax.Compare) *Node {
-	n := &Node{Op: Compare, Expr: x, Type: Type{Kind: Condition}, Cmp: x.Ops}
-	bad := false
-	for _, operand := range x.Operands {
-		o := l.value(operand)
-		bad = bad || !o.ok()
-		n.Args = append(n.Args, o)
+	n := &Node{Op: Compare, Expr: x, Type: Type{Kind: Condition}, Cmp: x.Ops, Args: l.operands(x)}
+	if where := l.where; len(where) > 0 && n.Args != nil && !alike(n.Args) {
+		// `if d <= 8 mm` above `where d [mm]` compares the value, not its number
+		l.where = nil
+		if whole := l.operands(x); whole != nil {
+			n.Args = whole
+		}
+		l.where = where
 	}
-	if bad {
+	if n.Args == nil {
 		return invalid
 	}
 	for i := range x.Ops {
@@ -283,6 +285,30 @@ func (l *lower) compare(x *syntax.Compare) *Node {
 		n.Type.Rows = rows
 	}
 	return n
+}
+
+// operands lowers what is compared; nil where any of it fails.
+func (l *lower) operands(x *syntax.Compare) []*Node {
+	args, bad := make([]*Node, len(x.Operands)), false
+	for i, operand := range x.Operands {
+		args[i] = l.value(operand)
+		bad = bad || !args[i].ok()
+	}
+	if bad {
+		return nil
+	}
+	return args
+}
+
+// alike tells that each operand has the dimension of the one before it.
+func alike(args []*Node) bool {
+	for i := 1; i < len(args); i++ {
+		a, b := args[i-1], args[i]
+		if !a.zero && !b.zero && (a.Type.Dim != b.Type.Dim || a.Type.Kind != b.Type.Kind) {
+			return false
+		}
+	}
+	return true
 }
 
 func (l *lower) comparable(x *syntax.Compare, i int, a, b *Node) bool {

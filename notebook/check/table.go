@@ -26,11 +26,12 @@ func (c *checker) table(b *syntax.Block) {
 	name := "cases"
 	if t.Name != nil {
 		name = t.Name.ID
-		if !body.fresh(l, t.Name, false) {
-			return
-		}
-	} else if s, ok := c.spaces[name]; ok {
+	}
+	if s, ok := c.spaces[name]; ok && name == "cases" && s.rows != nil {
 		l.fail(diag.Redefined, b.Table.At, fmt.Sprintf("the load cases of this file stand already at line %d", s.line), "name the second block: `cases wind`")
+		return
+	}
+	if t.Name != nil && !body.fresh(l, t.Name, false) {
 		return
 	}
 	line := src.LineAt(t.At.Start)
@@ -302,6 +303,12 @@ func (t *tableCheck) numbers(l *lower, i int, col *syntax.Column, p *Plan) {
 	}
 }
 
+const noCell = "a column of numbers has a value in each row"
+
+// noValue is what stands in tables where there is no value, though it could be
+// read as a formula.
+var noValue = map[string]bool{"n/a": true, "N/A": true, "NA": true, "nil": true, "none": true, "TBC": true, "tbc": true, "TBD": true, "tbd": true}
+
 // cell lowers one cell: a number in the header's unit, a quantity with its
 // own unit, or an expression of names above.
 func (t *tableCheck) cell(l *lower, cell *syntax.Cell, col *syntax.Column, d *Def) *Node {
@@ -312,7 +319,7 @@ func (t *tableCheck) cell(l *lower, cell *syntax.Cell, col *syntax.Column, d *De
 			l.failed = true
 			return invalid
 		case cell.Text == "":
-			return l.fail(diag.Syntax, cell.At, fmt.Sprintf("the cell under %s is empty", col.Name.Text), "a column of numbers has a value in each row")
+			return l.fail(diag.Syntax, cell.At, fmt.Sprintf("the cell under %s is empty", col.Name.Text), noCell)
 		case cell.Err != nil:
 			l.failed = true
 			e := *cell.Err
@@ -321,6 +328,9 @@ func (t *tableCheck) cell(l *lower, cell *syntax.Cell, col *syntax.Column, d *De
 			return invalid
 		}
 		return l.fail(diag.Syntax, cell.At, fmt.Sprintf("`%s` under %s cannot be read as a number", cell.Text, col.Name.Text))
+	}
+	if noValue[cell.Text] {
+		return l.fail(diag.Syntax, cell.At, fmt.Sprintf("the cell under %s has no value, but `%s`", col.Name.Text, cell.Text), noCell)
 	}
 	if cell.Err != nil {
 		e := *cell.Err // a warning, since the cell could be read

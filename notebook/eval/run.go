@@ -81,7 +81,7 @@ func (m *machine) load0() {
 		from := file.Steps[d.Key]
 		origin := file.Origin
 		origin.Key, origin.Step = d.Carry.Key, from
-		s := &Step{Kind: Constant, ID: d.ID, Symbol: d.Symbol, Value: from.Value, Figures: m.figures(), Origin: &origin, Note: from.Note, Picks: from.Picks}
+		s := &Step{Kind: Constant, ID: d.ID, Symbol: d.Symbol, Value: from.Value, Figures: m.figures(), Origin: &origin, Note: from.Note, Entry: from.Entry, Picks: from.Picks}
 		s.Unit = m.unitFor(d.Type)
 		if from.Declared || from.Kind == Given || from.Kind == Carried {
 			s.Unit, s.Literal, s.Negated, s.Cells = from.Unit, from.Literal, from.Negated, from.Cells

@@ -267,7 +267,7 @@ func (p *parser) noFactor(lit, u, i, j int) {
 	if p.s[sign] == '/' || strings.HasPrefix(p.s[sign:], "÷") {
 		does = "divide by"
 	}
-	p.fail(p.span(lit, e), diag.WrongUnitSpelling, fmt.Sprintf("%s in %s is no unit", quoted(p.s[i:j]), whole),
+	p.fail(p.span(lit, e), diag.WrongUnitSpelling, fmt.Sprintf("%s in %s is no unit", quoted(p.s[i:dottedEnd(p.s, i, p.end)]), whole),
 		fmt.Sprintf("to %s the value write %s; only a unit is written tight, as in `48 kN/m`", does,
 			quoted(p.s[lit:sign]+" "+p.s[sign:i]+" "+p.s[i:e])))
 }
