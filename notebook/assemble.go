@@ -2,7 +2,6 @@ package notebook
 
 import (
 	"fmt"
-	"net/url"
 	"strconv"
 	"strings"
 
@@ -39,10 +38,7 @@ func (s *Sheet) checkTargets(d *Draft, ids anchors) {
 		if !ok || len(l.Destination) < 2 || l.Destination[0] != '#' {
 			continue
 		}
-		target := string(l.Destination[1:])
-		if name, err := url.PathUnescape(target); err == nil {
-			target = name
-		}
+		target := unescapePath(string(l.Destination[1:]))
 		if ids[target] > 0 {
 			continue
 		}

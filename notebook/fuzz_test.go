@@ -34,6 +34,9 @@ func FuzzCompile(f *testing.F) {
 			for _, file := range archive.Files {
 				if filepath.Ext(file.Name) == ".md" {
 					f.Add(file.Data)
+					if _, body, ok := cutFront(file.Data); ok {
+						f.Add(file.Data[body:])
+					}
 				}
 			}
 		}
@@ -51,10 +54,15 @@ func FuzzCompile(f *testing.F) {
 	}
 	_, parts := Notation()
 	for _, p := range parts {
-		f.Add([]byte(calc(p.Text)))
+		for _, ex := range examplesIn(f, p) {
+			f.Add([]byte(ex.body))
+		}
 	}
 	loads := []byte("---\ncalc: C-101\n---\n\n```calc\nP_u = 48 kN\nP = 3 m\n```\n\n```cases\ncase | N [kN]\nLC1 | 1\nLC2 | 2\n```\n")
 	f.Fuzz(func(t *testing.T, text []byte) {
+		if !bytes.HasPrefix(text, []byte("---")) { // most changes to a whole file end in its front matter
+			text = append([]byte("---\ncalc: C-1\nfrom: {loads: loads.md}\n---\n"), text...)
+		}
 		root := fstest.MapFS{"calc.md": {Data: text}, "loads.md": {Data: loads}, "shop.md": {Data: []byte("# Shop\n")}}
 		s := compile(root, "calc.md")
 		sound(t, s)

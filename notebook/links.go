@@ -7,6 +7,7 @@ import (
 	"path"
 	"slices"
 	"strings"
+	"unicode/utf8"
 
 	"github.com/yuin/goldmark/ast"
 	"github.com/yuin/goldmark/text"
@@ -130,10 +131,7 @@ func (d *Draft) placeImage(n *ast.Image) {
 	}
 	ref, _, _ := strings.Cut(string(target), "?")
 	ref, _, _ = strings.Cut(ref, "#")
-	if plain, err := url.PathUnescape(ref); err == nil {
-		ref = plain
-	}
-	file, f := d.within(path.Dir(d.Path), ref)
+	file, f := d.within(path.Dir(d.Path), unescapePath(ref))
 	if f == nil {
 		f = d.image(file)
 	}
@@ -143,4 +141,13 @@ func (d *Draft) placeImage(n *ast.Image) {
 		return
 	}
 	n.Destination = []byte(file)
+}
+
+// unescapePath resolves the percent signs of an address. What is no text then
+// stays as it was.
+func unescapePath(ref string) string {
+	if plain, err := url.PathUnescape(ref); err == nil && utf8.ValidString(plain) && strings.IndexFunc(plain, hidden) < 0 {
+		return plain
+	}
+	return ref
 }

@@ -30,7 +30,7 @@ type example struct {
 
 // examplesIn gathers the examples of a part. A block in front matter begins a
 // file of its own.
-func examplesIn(t *testing.T, part NotationPart) []example {
+func examplesIn(t testing.TB, part NotationPart) []example {
 	list := []example{{front: "---\ncalc: C-1\n---\n"}}
 	lines := strings.Split(part.Text, "\n")
 	for i := 0; i < len(lines); i++ {
