@@ -68,7 +68,7 @@ func (s *sketch) mohr() *Drawing {
 	s.circle(outline, Point{}, k*r)
 	x, y := at(st.x, st.tau), at(st.y, -st.tau)
 	s.line(stroke{teal, firm, nil}, x, y)
-	s.line(hidden, Point{}, Point{0, -k * r})
+	s.line(hidden, Point{0, k * r}, Point{0, -k * r})
 	for _, p := range []Point{{}, at(c+r, 0), at(c-r, 0), {0, -k * r}, x, y} {
 		s.dot(p)
 	}
@@ -155,6 +155,6 @@ func (s *sketch) mohrLabels(st stress, c, r float64, x, y Point, radius float64)
 	s.near(pair("x", bare(st.x), bare(st.tau)).in(teal), x, 5, everywhere, math.Atan2(-x.Y, x.X))
 	s.near(pair("y", bare(st.y), bare(-st.tau)).in(teal), y, 5, everywhere, math.Atan2(-y.Y, y.X))
 	_, _, angle := st.circle()
-	s.near(s.label(equals(s.name("σ_m"), value("sigma_x", c))), Point{}, 5, everywhere, math.Pi-angle, 3*math.Pi/4)
+	s.near(s.label(equals(s.name("σ_m"), value("sigma_x", c))), Point{0, radius}, 4, everywhere, -math.Pi/2, -math.Pi/3, -2*math.Pi/3)
 	s.near(s.result(s.name("θ_p"), degrees(s.pad, angle)), Point{radius, radius}, 2, everywhere, 0, -math.Pi/4)
 }
