@@ -75,13 +75,14 @@ func destination(raw []byte) (target []byte, scheme string) {
 		}
 		return r
 	}, string(target))
-	if i := strings.IndexAny(plain, ":/?#"); i >= 0 && plain[i] == ':' {
-		return target, strings.ToLower(plain[:i+1])[:i]
+	i := strings.IndexAny(plain, ":/?#")
+	switch {
+	case i < 0 || plain[i] != ':':
+		return target, ""
+	case i == 0:
+		return target, ":" // no scheme at all: nothing that may be followed
 	}
-	if strings.HasPrefix(plain, ":") {
-		return target, ":"
-	}
-	return target, ""
+	return target, strings.ToLower(plain[:i])
 }
 
 func (d *Draft) dropLink(n ast.Node, raw []byte, scheme string) {
