@@ -114,7 +114,7 @@ func (p *parser) sideBySide() {
 	switch {
 	case p.tok == tName && p.prev == tNumber && p.unitInParts(from):
 		return
-	case p.prev == tName && isFunction(left):
+	case p.prev == tName && isFunction(left) && right != "(":
 		if p.tok == tOpen {
 			right = right[1 : len(right)-1]
 		}

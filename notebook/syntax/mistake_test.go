@@ -220,6 +220,9 @@ var mistakes = []struct{ source, id, under, corrected string }{
 	{"f(a.b) = 3", "syntax", "a.b", "f(a) = 3"},
 	{"f(2) = 3", "syntax", "2", "f(a) = 3"},
 	{"f(a [mm]) = 3", "syntax", "[", "f(a) = 3"},
+	{"f(max(a)) = 3", "syntax", "(", "f(a) = 3"},
+	{"f(a b) = 3", "syntax", "b", "f(a, b) = 3"},
+	{"f(a=1) = 3", "syntax", "=", "f(a) = 3"},
 	{"f(if) = 3", "syntax", "if", "f(a) = 3"},
 	// branches
 	{"k = 3 if a < b\n= 4", "syntax", "4", "k = 3 if a < b\n= 4 otherwise"},

@@ -210,6 +210,10 @@ func (p *parser) parameters(def *Definition) bool {
 		p.syntax(p.start, p.pos, "a parameter has no unit; dimensions are checked at each use of the function")
 		return false
 	}
+	if p.tok != tClose && p.tok != tEnd && p.tok != tFailed {
+		p.syntax(p.start, p.pos, fmt.Sprintf("the brackets behind %s hold the names of its parameters, parted by commas; %s is out of place", quoted(def.Name.Text), quoted(p.here())))
+		return false
+	}
 	_, ok := p.closing(open)
 	return ok
 }
