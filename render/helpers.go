@@ -39,9 +39,6 @@ func (c *composer) call(dst []Entry, call *eval.Call, indent int) []Entry {
 	head.Formula.Left = c.arguments(call.Args)
 	dst = append(dst, head)
 	dst = append(dst, c.steps(call.Steps, indent, false)...)
-	if call.Residual != "" {
-		dst = append(dst, Entry{Kind: NoteLine, Indent: indent, Note: call.Residual})
-	}
 	return dst
 }
 
@@ -93,6 +90,15 @@ func (c *composer) column(a *eval.Step) maths.Node {
 	return maths.Paren(row)
 }
 
+// blockAnchor is where a block stands on the page; a helper's has a dot, so that
+// no heading has the same.
+func blockAnchor(b *notebook.Block) string {
+	if b.Kind == syntax.HelperBlock {
+		return "helper." + b.Name
+	}
+	return b.Anchor
+}
+
 // helperBlock lists a helper of the author's own as it is defined: its
 // parameters and its formulas, without numbers.
 func (c *composer) helperBlock(b *notebook.Block) []Entry {
@@ -108,7 +114,7 @@ func (c *composer) helperBlock(b *notebook.Block) []Entry {
 		}
 	}
 	entries := []Entry{{
-		Kind: HelperHead, Anchor: b.Anchor, Note: helperTitle(h), Refs: sources(h.Note.Source),
+		Kind: HelperHead, Anchor: blockAnchor(b), Note: helperTitle(h), Refs: sources(h.Note.Source),
 		Formula: maths.Chain{Left: maths.Call(maths.Word{Text: h.Name.Text}, params...)},
 	}}
 	for _, s := range h.Stmts {

@@ -158,6 +158,7 @@ func (m *machine) runHelper(hc *check.HelperCall, f *frame, entry int) (*frame, 
 			return nil, err
 		}
 		m.bindParam(g, p, v)
+		g.steps[p.Slot].Note, g.steps[p.Slot].Source = hc.Helper.Params[i].Note.Text, hc.Helper.Params[i].Note.Source
 		if lit, negated := literalOf(hc, i); lit != nil && len(v.Type.Rows) == 0 {
 			g.steps[p.Slot].Literal, g.steps[p.Slot].Negated = lit, negated
 		} else if s := m.argStep(hc, i, f); s != nil && len(v.Type.Rows) == 0 && len(s.Value.Type.Rows) == 0 {

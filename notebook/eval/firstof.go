@@ -15,8 +15,10 @@ func (m *machine) firstOf(fo *check.FirstOf, f *frame, t *check.Type, entry int,
 	var col []float64
 	count := len(fo.Values)
 	if fo.Column != nil {
-		col = m.column(fo.Column, f, &fo.Column.Type)
-		count = len(col)
+		count = fo.Rows.N()
+		if fo.Column.Type.Kind != check.Text {
+			col = m.column(fo.Column, f, &fo.Column.Type)
+		}
 	}
 	step := &Step{Kind: Constant, ID: fo.Def.ID, Symbol: fo.Def.Symbol, Unit: m.candidateUnit(fo, f), Figures: m.figures()}
 	f.steps[fo.Def.Slot] = step
@@ -24,15 +26,20 @@ func (m *machine) firstOf(fo *check.FirstOf, f *frame, t *check.Type, entry int,
 	why := ""
 	for k := 0; k < count; k++ {
 		v := Value{Type: fo.Def.Type}
-		if fo.Column != nil {
-			v.Num = []float64{col[k]}
-		} else {
-			x, err := m.entry(fo.Values[k], f, t, entry)
-			if err != nil {
-				return nil, 0, err
-			}
-			v.set(x)
+		var x any
+		var err error
+		switch {
+		case col != nil:
+			x = col[k]
+		case fo.Column != nil:
+			x, err = m.entry(fo.Column, f, &fo.Column.Type, k)
+		default:
+			x, err = m.entry(fo.Values[k], f, t, entry)
 		}
+		if err != nil {
+			return nil, 0, err
+		}
+		v.set(x)
 		f.vals[fo.Def.Slot], step.Value = v, v
 		at := 0
 		for _, r := range ct.Rows {

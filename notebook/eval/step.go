@@ -126,7 +126,6 @@ type Call struct {
 	Args     []*Step // the parameters in order, with the values they took
 	Steps    []*Step // Computed, NoteLine, Gap and Limit
 	Results  []*Step // those that `gives` names
-	Residual string  // for a helper computed in Go: the residual its equations are met with
 	Cautions []string
 	Mark     string // the entry it was run for, "" for a plain call
 }

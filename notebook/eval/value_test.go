@@ -190,6 +190,8 @@ func TestRows(t *testing.T) {
 		{"q = steels.f_y at members.grade", "355.0 MPa | 235.0 MPa | 355.0 MPa"}, {"g = V*bolts.x\nq = g at \"B2\"", "2.100 kN·m | 4.200 kN·m"}, {"g = V*bolts.x\nq = g at \"LC2\"", "-4.200 kN·m | 4.200 kN·m | 0 kN·m"},
 		{"h = steels.f_y/1.1\nq = h at \"S235\"", "213.6 MPa"}, {"q = interpolate(plates.t, plates.t^2, 7 mm)", "50.00 mm²"}, {"q = interpolate(plates.t, plates.t, V*0.1 mm/kN + 3 mm)", "6.000 mm | 9.000 mm"},
 		{"q = first of plates.t with members.N/(q*100 mm) <= 400 MPa", "6.000 mm | 6.000 mm | 8.000 mm"},
+		{"q = first of plates.mark with members.N/(plates.t*100 mm) <= 400 MPa", "P6 | P6 | P8"},
+		{"s = first of plates.mark with members.N/(plates.t*100 mm) <= 400 MPa\nq = plates.t at s", "6.000 mm | 6.000 mm | 8.000 mm"},
 		{"q = first of 2 mm, 10 mm with members.N/(q*100 mm) <= 400 MPa", "10.00 mm | 2.000 mm | 10.00 mm"},
 		{"s = first of plates.t with s > 7 mm\nw = plates.t*2\nq = w at s", "16.00 mm"},
 		{"q = 1 if V > 40 kN\n  = 2 otherwise", "2.000 | 1.000"}, {"q = 1 kN/(V - 30 kN) if V > 30 kN\n  = 7 otherwise", "7.000 | 0.03333"},
