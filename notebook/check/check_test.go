@@ -93,6 +93,7 @@ func TestMistakes(t *testing.T) {
 		{"s = bolts.F at B1", diag.UnknownName, "it is a mark of bolts", "at \"B1\"", "s = bolts.F at \"B1\""},
 		{"s = bolts.F at \"B9\"", diag.UnknownMark, "bolts has no row `B9`", "B1", "s = bolts.F at \"B1\""},
 		{"s = bolts.z", diag.UnknownName, "the schedule bolts has no column `z`", "x", "s = bolts.x"},
+		{"s = cases.V", diag.UnknownName, "the columns of load cases are plain names", "write `V`", "s = V"},
 		{"s = max(P)", diag.RowMismatch, "it has no rows for max to reduce", "compares several", "s = max(P, 2 kN)"},
 		{"s = max(V over bolts)", diag.RowMismatch, "no rows of bolts: it has one entry for each of cases", "", "s = max(V over cases)"},
 		{"s = max(V over walls)", diag.UnknownName, "there are no rows called `walls`", "cases", "s = max(V over cases)"},

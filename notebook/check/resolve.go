@@ -172,6 +172,10 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 			_, col, _ := head(id)
 			known = append(known, col)
 		}
+		if len(known) == 0 {
+			l.fail(diag.UnknownName, x.At, fmt.Sprintf("the columns of load cases are plain names: %s has no `%s`", space, name), "write `"+name+"`")
+			return
+		}
 		what = "the schedule " + space + " has no column"
 	case s.file.Failed:
 		l.depend(s.line)
