@@ -182,6 +182,11 @@ func solveIC(u, v []float64, e, theta float64) (icMotion, error) {
 	if err != nil {
 		return icMotion{}, err
 	}
+	for i := range 2 {
+		if math.Abs(q[i]) <= 10*icTolerance { // finer than the search resolves: a group that is symmetrical does not move so
+			q[i] = 0
+		}
+	}
 	largest := g.largest(q)
 	return icMotion{q[0] / largest, q[1] / largest, q[2] / largest / r}, nil
 }

@@ -199,3 +199,13 @@ func TestNativesHaveNamesOfTheirOwn(t *testing.T) {
 		}
 	}
 }
+
+// A group that is symmetrical about the line of the load moves along and turns, and
+// nothing else: no dust of the search is left on the page.
+func TestSymmetricalBoltGroupLeavesNoDust(t *testing.T) {
+	u, v := []float64{0, 0, 0, 0}, []float64{-4.5, -1.5, 1.5, 4.5}
+	m, err := solveIC(u, v, 1.5, 0)
+	if err != nil || m.shiftX != 0 || m.y() != 0 || m.x() >= 0 {
+		t.Errorf("got %+v, %v: want no movement across the load and a centre on the other side", m, err)
+	}
+}
