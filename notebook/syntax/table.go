@@ -28,6 +28,7 @@ func (p *parser) tableHead(b *Block, seg Line) {
 			if t.Name = p.plainName("a " + kind + "'s name"); t.Name != nil && p.tok != tEnd {
 				p.syntax(p.start, p.pos, fmt.Sprintf("%s is out of place in a name", quoted(p.here())))
 			}
+		case len(p.diags) > 0: // said once
 		default:
 			p.report(diag.Error, p.span(start, end), diag.Syntax, fmt.Sprintf("%s is out of place behind `%s`", quoted(word), kind),
 				fmt.Sprintf("the line is `%s NAME`, then `from FILE.csv` or `full`", kind))
