@@ -58,7 +58,7 @@ func (c *composer) summary() []Summary {
 		}
 		list = append(list, line)
 	}
-	slices.SortStableFunc(list, func(a, b Summary) int {
+	return inOrder(list, func(a, b *Summary) int {
 		if d := cmp.Compare(a.Verdict.standing(), b.Verdict.standing()); d != 0 {
 			return d
 		}
@@ -67,7 +67,6 @@ func (c *composer) summary() []Summary {
 		}
 		return -cmp.Compare(a.Verdict.Ratio, b.Verdict.Ratio)
 	})
-	return list
 }
 
 // standing is the place of a verdict's group in the summary.
@@ -114,7 +113,7 @@ func (c *composer) defined() []*eval.Step {
 			if s.ID == "" || s.Failed || b.Rows != nil && i == b.Marks {
 				continue
 			}
-			if s.Value.Type.Kind != check.Bundle {
+			if s.Value.Type.Kind != check.Bundle && len(s.Results) == 0 {
 				list = append(list, s)
 			}
 			list = append(list, s.Results...)
@@ -135,10 +134,24 @@ func (c *composer) symbols() []SymbolLine {
 		}
 		list[i] = line
 	}
-	slices.SortStableFunc(list, func(a, b SymbolLine) int {
+	return inOrder(list, func(a, b *SymbolLine) int {
 		return compareSymbols(a.Symbol.(maths.Symbol), b.Symbol.(maths.Symbol))
 	})
-	return list
+}
+
+// inOrder sorts lines, equal ones as they stand. It moves their numbers
+// rather than the lines, which are large.
+func inOrder[T any](list []T, compare func(a, b *T) int) []T {
+	order := make([]int, len(list))
+	for i := range order {
+		order[i] = i
+	}
+	slices.SortFunc(order, func(a, b int) int { return cmp.Or(compare(&list[a], &list[b]), cmp.Compare(a, b)) })
+	sorted := make([]T, len(list))
+	for i, k := range order {
+		sorted[i] = list[k]
+	}
+	return sorted
 }
 
 // meanings tells what a symbol stands for: its note, for a column the name of
@@ -223,7 +236,7 @@ func (c *composer) sources() []SourceLine {
 			if b.Kind == syntax.PlotBlock || b.Kind == syntax.FigureBlock {
 				name = "figure " + b.Number
 			}
-			rest(b.Source, Resting{Symbol: maths.Text{Text: name}, Anchor: b.Anchor})
+			rest(b.Source, Resting{Symbol: maths.Text{Text: name}, Anchor: blockAnchor(b)})
 			continue
 		}
 		for _, s := range b.Steps {
@@ -237,6 +250,14 @@ func (c *composer) sources() []SourceLine {
 				continue
 			}
 			rest(s.Source, on)
+			if s.Origin != nil {
+				rest(maths.Origin(s.Origin), on)
+			}
+			for _, u := range s.Uses {
+				if u != nil && maths.IsCarried(u) {
+					rest(maths.Origin(u.Origin), on)
+				}
+			}
 			eachCall([]*eval.Step{s}, func(_ *eval.Step, call *eval.Call) {
 				rest(call.Helper.Note.Source, on)
 			})
