@@ -2,6 +2,7 @@ package render
 
 import (
 	"slices"
+	"strconv"
 
 	"gusset/notebook"
 	"gusset/notebook/check"
@@ -202,7 +203,7 @@ func same(a, b maths.Node) bool {
 	switch a := a.(type) {
 	case maths.Number:
 		b, ok := b.(maths.Number)
-		return ok && a.Value == b.Value && slices.Equal(a.Unit, b.Unit)
+		return ok && slices.Equal(a.Unit, b.Unit) && sameFigures(a.Value, b.Value)
 	case maths.Text:
 		b, ok := b.(maths.Text)
 		return ok && a.Text == b.Text
@@ -214,6 +215,16 @@ func same(a, b maths.Node) bool {
 		return ok && a == b
 	}
 	return false
+}
+
+// sameFigures tells whether figures stand for one number: 48 and 48.00 do.
+func sameFigures(a, b string) bool {
+	if a == b {
+		return true
+	}
+	x, errX := strconv.ParseFloat(a, 64)
+	y, errY := strconv.ParseFloat(b, 64)
+	return errX == nil && errY == nil && x == y
 }
 
 // wholeCall tells whether an expression is the call of a helper and nothing

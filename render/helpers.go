@@ -27,6 +27,9 @@ func (c *composer) place(call *eval.Call) {
 // the values that it was given, then its own formulas and limits.
 func (c *composer) call(dst []Entry, call *eval.Call, indent int) []Entry {
 	h := call.Helper
+	if h == nil { // a function of the author's own: its formula with the caller's values
+		return append(dst, c.steps(call.Steps, indent, false)...)
+	}
 	head := Entry{Kind: HelperHead, Indent: indent, Note: helperTitle(h), Refs: sources(h.Note.Source), Mark: call.Mark}
 	if len(call.Args) > 0 {
 		head.Anchor = c.maths.Anchor(call.Args[0])

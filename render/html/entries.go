@@ -198,10 +198,17 @@ func (w *writer) trials(list []render.Trial) {
 	w.raw("</tbody></table>")
 }
 
+// longTable is from how many rows on a table may go over a page's foot.
+const longTable = 24
+
 // table writes a table over rows. All rows are there; those that paper leaves
 // out are hidden when the page is printed.
 func (w *writer) table(t *render.Table) {
-	w.raw(`<div class="rows" tabindex="0"><table>`)
+	if t.Rows-t.Left() > longTable {
+		w.raw(`<div class="rows long" tabindex="0"><table>`)
+	} else {
+		w.raw(`<div class="rows" tabindex="0"><table>`)
+	}
 	if t.Caption != "" || t.Left() > 0 {
 		w.raw("<caption>")
 		w.text(t.Caption)

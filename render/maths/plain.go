@@ -239,6 +239,11 @@ func (w *line) unit(u Unit) {
 }
 
 func (w *line) script(s Script) {
+	if mark, ok := s.Sup.(Text); ok && s.Sub == nil { // of a note
+		w.node(s.Base)
+		w.raw(mark.Text)
+		return
+	}
 	if s.Base != nil {
 		_, again := s.Base.(Script)
 		w.part(s.Base, !simple(s.Base) || again)
