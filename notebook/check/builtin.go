@@ -94,6 +94,9 @@ func (l *lower) unknownFunction(x *syntax.Call) *Node {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is a value (line %d), no function", x.Fun.Text, d.Line),
 			fmt.Sprintf("write `%s*(…)` for a product", x.Fun.Text))
 	}
+	if own, ok := otherNames[id]; ok {
+		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("there is no function `%s`", x.Fun.Text), own)
+	}
 	var known []string
 	known = append(known, Builtins()...)
 	known = append(known, l.e.functionNames()...)
@@ -102,6 +105,14 @@ func (l *lower) unknownFunction(x *syntax.Call) *Node {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("there is no function or helper `%s`", x.Fun.Text), "did you mean `"+near+"`?", hint)
 	}
 	return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("there is no function or helper `%s`", x.Fun.Text), hint)
+}
+
+// otherNames say what the functions of other notations are here.
+var otherNames = map[string]string{
+	"log": "`ln` is the natural logarithm, `log10` the decimal one", "lg": "did you mean `log10`?",
+	"arcsin": "did you mean `asin`?", "arccos": "did you mean `acos`?", "arctan": "did you mean `atan`?", "tg": "did you mean `tan`?",
+	"average": "did you mean `mean`?", "avg": "did you mean `mean`?", "ceiling": "did you mean `ceil`?", "int": "did you mean `floor`?", "trunc": "did you mean `floor`?",
+	"pow": "a power is written `x^y`",
 }
 
 // callDotted lowers a call of a helper of the author's own file: `shop.bracket(…)`.

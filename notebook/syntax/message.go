@@ -126,6 +126,10 @@ func (p *parser) sideBySide() {
 			fmt.Sprintf("a product is written with `*`; the unit of a result is declared behind its name, as in `x [%s] = …`", p.here()))
 		return
 	}
+	if p.tok == tOpen && p.prev == tNumber && p.unitBracket(p.start) == end && isDigit(left[len(left)-1]) {
+		p.syntax(from, end, "a unit stands behind its number without brackets", "write "+quoted(left+" "+right[1:len(right)-1]))
+		return
+	}
 	times := "*"
 	if p.prev == tNumber && !isDigit(left[len(left)-1]) {
 		times = " * " // tight, it might be read as part of the unit
@@ -349,23 +353,27 @@ func (p *parser) feetAndInches(start, i int) {
 		return
 	}
 	m, end := p.inchMark(i)
-	text := p.s[start:i] + " in"
+	foot, inch, what := " ft", " in", "feet and inches"
+	if before := strings.TrimRight(p.s[:start], " "); strings.HasSuffix(before, "°") || strings.HasSuffix(before, "deg") {
+		foot, inch, what = " arcmin", " arcsec", "minutes and seconds of an angle"
+	}
+	text := p.s[start:i] + inch
 	if m == footMark {
-		text = p.s[start:i] + " ft"
+		text = p.s[start:i] + foot
 		k := end
 		for k < p.end && (p.s[k] == ' ' || p.s[k] == '-') {
 			k++
 		}
 		if k < p.end && isDigit(p.s[k]) {
 			e := figureRunEnd(p.s, k, p.end)
-			text += " " + p.s[k:e] + " in"
+			text += " " + p.s[k:e] + inch
 			end = e
 			if m, behind := p.inchMark(e); m == inchMark {
 				end = behind
 			}
 		}
 	}
-	p.syntax(start, end, "feet and inches are written as units", "write "+quoted(text))
+	p.syntax(start, end, what+" are written as units", "write "+quoted(text))
 }
 
 type mark int
@@ -475,11 +483,12 @@ func subscript(r rune) rune {
 var slipRunes = map[rune]string{
 	'&': "conditions are joined by `and`", '|': "conditions are joined by `or`, a magnitude is `abs(x)`",
 	'!': "a condition is turned round by `not`", ':': "a name is defined with `=`",
-	';': "a statement ends with its line", '{': "values stand in round brackets", '}': "values stand in round brackets",
+	';': "arguments are parted by commas, and a statement ends with its line", '{': "values stand in round brackets", '}': "values stand in round brackets",
 	'–': "a minus is written `-`", '—': "a minus is written `-`", '‐': "a minus is written `-`",
 	'“': "a text stands in straight quotes, as in `\"S355\"`", '”': "a text stands in straight quotes, as in `\"S355\"`", '„': "a text stands in straight quotes, as in `\"S355\"`",
 	'’': "a prime is written `'`", '′': "a prime is written `'`", '‘': "a prime is written `'`",
 	'½': "write `1/2`", '¼': "write `1/4`", '¾': "write `3/4`",
+	'?': "a choice is written `2 if a > b`, its further branches on the lines below",
 	'≈': "a comparison is made with `==`, within a relative 1e-9", '∞': "values are finite",
 	'%': "a percent sign stands behind a number only", '°': "a degree sign stands behind a number only",
 	'_': "a name starts with a letter", '\'': "a text stands in double quotes, as in `\"S355\"`",

@@ -52,7 +52,12 @@ var mistakes = []struct{ source, id, under, corrected string }{
 	{"T = 5 degC 3 degC", "syntax", "5 degC 3 degC", "T = 5 degC * 3 degC"},
 	{"x = 6-1/2 in", "syntax", "6-1/2 in", "x = 6 1/2 in"},
 	{"x = (12 ft 6-1/2 in)", "syntax", "6-1/2 in", "x = (12 ft 6 1/2 in)"},
+	{"a = 30° 15'", "syntax", "15'", "a = 30° 15 arcmin"},
+	{"a = 30 deg 15'20\"", "syntax", "15'20\"", "a = 30 deg 15 arcmin 20 arcsec"},
 	// units
+	{"x = 3 (kN/m)", "syntax", "3 (kN/m)", "x = 3 kN/m"},
+	{"x = max(a; b)", "syntax", ";", "x = max(a, b)"},
+	{"x = a > b ? 2 : 3", "syntax", "?", "x = 2 if a > b\n= 3 otherwise"},
 	{"x = 5 kN.m", "wrong-unit-spelling", "kN.m", "x = 5 kN*m"},
 	{"x = 5 N.mm/m + 3", "wrong-unit-spelling", "N.mm", "x = 5 N*mm/m + 3"},
 	{"x = 5 kN.q", "syntax", ".", "x = 5 kN * q"},
@@ -196,6 +201,7 @@ var mistakes = []struct{ source, id, under, corrected string }{
 	{"check a <= b if c", "syntax", "c", "check a <= b if c > d"},
 	{"check a <= b otherwise", "syntax", "otherwise", "check a <= b"},
 	{"check a <= b, c <= d", "syntax", ",", "check a <= b"},
+	{"Check tau <= tau_d", "syntax", "Check", "check tau <= tau_d"},
 	{"tau <= tau_d", "syntax", "tau <= tau_d", "check tau <= tau_d"},
 	// statements
 	{"P", "syntax", "P", "P = 3"},

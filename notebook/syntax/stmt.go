@@ -148,6 +148,8 @@ func (p *parser) noAssign(def *Definition) {
 	start := def.Name.At.Start - p.off
 	whole := p.s[start:p.segs[len(p.segs)-1].End]
 	switch {
+	case def.Name.Text != "check" && strings.EqualFold(def.Name.Text, "check") && p.tok != tEnd && !def.Func && def.Unit == nil:
+		p.fail(def.Name.At, diag.Syntax, "`check` is written in small letters", "write `check`")
 	case p.tok == tEq && len(p.segs) == 1:
 		p.syntax(p.start, p.pos, "`==` compares; a name is defined with `=`", "write `=`")
 	case levels[p.tok] == levelCompare && len(p.segs) == 1:
