@@ -175,6 +175,9 @@ func (c *composer) computed(s *eval.Step, e *Entry) {
 		return
 	}
 	e.Kind = Formula
+	if d.Func {
+		e.Formula.Left = c.signature(d.Name, d.Params)
+	}
 	e.Formula.Steps = equal(c.maths.Written(s))
 	for _, t := range s.Trials {
 		e.Trials = append(e.Trials, Trial{Value: t.Value, Mark: t.Mark, Why: t.Why, OK: t.OK})

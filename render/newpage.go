@@ -120,7 +120,9 @@ func state(s *notebook.Sheet, checks []Summary) State {
 func eachCall(steps []*eval.Step, visit func(*eval.Step, *eval.Call)) {
 	for _, s := range steps {
 		for _, call := range s.Calls {
-			visit(s, call)
+			if call.Helper != nil { // nil for a function of the author's own
+				visit(s, call)
+			}
 			eachCall(call.Steps, visit)
 		}
 	}

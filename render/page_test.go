@@ -285,7 +285,7 @@ func TestBar(t *testing.T) {
 // A page without checks, sources, remarks or cautions has none of their lists.
 func TestListsAreAbsent(t *testing.T) {
 	l := render.NewPage(compile(t, "---\ncalc: T-1\n---\n\nOnly words.\n")).Lists
-	if l.Checks != nil || l.Unsourced != nil || l.Assumptions != nil || l.Holds != nil || l.Sources != nil || l.Cautions != nil || len(l.Symbols) > 0 {
+	if len(l.Checks)+len(l.Unsourced)+len(l.Assumptions)+len(l.Holds)+len(l.Sources)+len(l.Cautions)+len(l.Symbols) > 0 {
 		t.Errorf("%+v", l)
 	}
 	if len(l.Notes) != 3 {

@@ -57,6 +57,7 @@ func (b *breaker) pieces(list []Node, prev Class) []piece {
 	for i, n := range list {
 		left, right := classes(n, prev)
 		p := piece{part: b.atom(n, prev, b.st), node: n, left: left, right: right, rank: rankNone}
+		p.width += p.lean // what follows stands clear of a slanted letter
 		o, ok := n.(Op)
 		switch {
 		case i == 0:

@@ -34,12 +34,11 @@ func reduces(c *syntax.Call) bool {
 
 func (w *builder) call(c *syntax.Call) (Node, rank) {
 	if run := w.run(c); run != nil {
-		return w.helper(c, run), rankedAtom
+		n := w.helper(c, run)
+		return n, rankOfValue(n)
 	}
-	if s := w.functions[c.Fun.ID]; s != nil {
-		f := w.Name(c.Fun.Text)
-		f.Target = w.Anchor(s)
-		return Call(f, w.args(c)...), rankedAtom
+	if w.functions[c.Fun.ID] != nil {
+		return w.own(c), rankedAtom
 	}
 	switch c.Fun.ID {
 	case "sqrt", "cbrt", "abs", "hypot":
@@ -175,14 +174,30 @@ func (w *builder) run(c *syntax.Call) *eval.Call {
 	return nil
 }
 
-// helper sets the call of a helper: as written, or as the value it gave where
-// it is part of a bigger formula.
+// helper sets the call of a helper or of a function of the author's own: as
+// written, or as the value it gave, which its own lines tell of.
 func (w *builder) helper(c *syntax.Call, run *eval.Call) Node {
-	if w.values && len(run.Results) == 1 {
+	results := run.Results
+	if run.Helper == nil {
+		results = run.Steps
+	}
+	if w.values && len(results) == 1 {
 		w.changed = true
-		return w.Value(run.Results[0], 0)
+		return w.Value(results[0], 0)
+	}
+	if run.Helper == nil {
+		return w.own(c)
 	}
 	return Call(Word{Text: c.Fun.Text}, w.args(c)...)
+}
+
+// own sets the call of a function of the author's own.
+func (w *builder) own(c *syntax.Call) Node {
+	f := w.Name(c.Fun.Text)
+	if s := w.functions[c.Fun.ID]; s != nil {
+		f.Target = w.Anchor(s)
+	}
+	return Call(f, w.args(c)...)
 }
 
 // marked sets the arguments of a function; of min and max the argument that

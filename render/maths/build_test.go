@@ -123,7 +123,7 @@ func TestExpressions(t *testing.T) {
 		{"a = hypot(P, N)", "√(P² + N²)", "√((48 kN)² + (−3 kN)²)"},
 		{"a = max(x, n)", "max(x, n)", "max(2, 4)"},
 		{"a = ceil(d, 2 mm)", "ceil(d, 2 mm)", "ceil(25 mm, 2 mm)"},
-		{"a = bearing(P, d, t)", "bearing(P, d, t)", "bearing(48 kN, 25 mm, 5 mm)"},
+		{"a = x*bearing(P, d, t)", "x·bearing(P, d, t)", "2·384.0 MPa"},
 		// rows
 		{"a = sum(bolts.x^2)", "Σ_bolts(x_bolts²)", "(−70 mm)² + (70 mm)² + … + (70 mm)²"},
 		{"a = sum(steels.f_y)", "Σ_steels(f_y_steels)", "235 MPa + 355 MPa"},

@@ -5,7 +5,9 @@ package maths
 // this, conditions stand below their values, and what is longer than a line
 // breaks.
 func (s *setter) choice(c Choice, st style, width float64) part {
-	within := style{level: st.level, cramped: st.cramped}
+	// What a choice on a line of its own offers is read as closely as any
+	// formula there.
+	within := st
 	em := s.em(st)
 	indent := widestBrace * em // kept free for the brace
 	body := s.start()

@@ -15,7 +15,7 @@ func (s *setter) row(n Node, st style) part {
 		left, right := classes(a, prev)
 		space := 0.0
 		if i > 0 {
-			space = s.mu(gap(prev, left, st.level > 0), st)
+			space = p.lean + s.mu(gap(prev, left, st.level > 0), st)
 		}
 		p = s.join(p, s.atom(a, prev, st), space, 0)
 		prev = right

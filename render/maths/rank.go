@@ -7,8 +7,8 @@ import "unicode/utf8"
 const (
 	rankOr = iota
 	rankAnd
-	rankRelation
 	rankComma
+	rankRelation
 	rankSum
 	rankProduct
 	rankBeside
