@@ -80,7 +80,7 @@ func (c *composer) relation(s *eval.Step, sides []eval.Side, ops []syntax.Op, t 
 		} else {
 			chain.Steps = append(chain.Steps, maths.Step{Sign: ops[i-1].String(), Right: written})
 		}
-		if put := c.maths.Put(sides[i].Expr, s, t, entry); put != nil && !single(sides[i].Expr) {
+		if put := c.maths.Put(sides[i].Expr, s, t, entry); put != nil && !single(s, sides[i].Expr) {
 			chain.Steps = append(chain.Steps, maths.Step{Sign: "=", Right: put})
 		}
 		if value := c.side(s, &sides[i], t, entry); value != nil && !same(value, written) {
@@ -90,10 +90,20 @@ func (c *composer) relation(s *eval.Step, sides []eval.Side, ops []syntax.Op, t 
 	return chain
 }
 
-// single tells whether an expression is a name alone.
-func single(e syntax.Expr) bool {
-	_, ok := bare(e).(*syntax.Name)
-	return ok
+// single tells whether an expression is a name alone, or a call whose own
+// lines stand below: its value is all that can be put in.
+func single(s *eval.Step, e syntax.Expr) bool {
+	switch e := bare(e).(type) {
+	case *syntax.Name:
+		return true
+	case *syntax.Call:
+		for _, call := range s.Calls {
+			if call.Expr == e {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // bare takes an author's brackets off.

@@ -210,8 +210,9 @@ func (l *lower) instance(x *syntax.Call, f *function, args []*Node, usage string
 	if l.site != nil {
 		site, in = l.site, l.siteIn
 	}
-	inner := &lower{e: e, site: site, siteIn: in, inside: "`" + usage + "`", declared: f.def.Unit != nil}
+	inner := &lower{e: e, site: site, siteIn: in, inside: "`" + usage + "`", declared: f.def.Unit != nil, uses: make([]*Def, f.def.Slots)}
 	inst.Body = inner.choice(f.def, &Def{ID: f.def.Name.ID})
+	inst.Uses = inner.uses
 	inst.cost = inner.cost + 1
 	if inner.failed {
 		l.failed = true

@@ -139,6 +139,7 @@ type Function struct {
 	Body   Choice
 	Where  []syntax.WhereItem
 	Unit   *syntax.UnitRef
+	Uses   []*Def // by slot of the definition's names
 	cost   int
 }
 

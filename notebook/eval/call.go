@@ -36,14 +36,47 @@ func (m *machine) callFunc(n *check.Node, f *frame, target *check.Type, entry in
 			v.set(x)
 		}
 		m.bindParam(g, p, v)
+		if len(v.Type.Rows) == 0 {
+			m.ownFiguresOf(g.steps[p.Slot], arg, f)
+		}
 	}
-	if alone {
-		v, _, err := m.choice(inst.Body, g, &check.Type{}, 0)
-		return v, m.inFunction(err, n, f)
+	t := check.Type{}
+	if !alone {
+		t = inst.Body.Type
 	}
-	t := inst.Body.Type
-	v, _, err := m.choice(inst.Body, g, &t, max(target.Project(entry, t), 0))
+	outer := m.recording
+	var step *Step
+	if outer != nil {
+		step = m.functionStep(inst, g)
+		m.recording = &step.Calls
+	}
+	v, taken, err := m.choice(inst.Body, g, &t, max(target.Project(entry, t), 0))
+	m.recording = outer
+	if err == nil && step != nil {
+		step.Value.set(v)
+		if len(inst.Body.Branches) > 1 {
+			step.Taken = []int{taken}
+		}
+		*outer = append(*outer, &Call{Expr: n.Expr.(*syntax.Call), Steps: []*Step{step}})
+	}
 	return v, m.inFunction(err, n, f)
+}
+
+// functionStep is the line that prints a function's formula with the values
+// that it was called with.
+func (m *machine) functionStep(inst *check.Function, g *frame) *Step {
+	def := inst.Def
+	s := &Step{Kind: Computed, Stmt: def, Line: g.src.LineAt(def.At.Start), ID: def.Name.ID, Symbol: def.Name.Text, Note: def.Note.Text, Source: def.Note.Source,
+		Figures: m.figures(), Declared: def.Unit != nil && def.Unit.Quantity == ""}
+	s.Value.Type = check.Type{Kind: inst.Body.Type.Kind, Dim: inst.Body.Type.Dim}
+	s.Unit = m.unitFor(s.Value.Type)
+	if s.Declared {
+		s.Unit = def.Unit.Unit
+	}
+	for _, d := range inst.Uses {
+		s.Uses = append(s.Uses, m.stepFor(d, g))
+	}
+	return s
 }
 
 func (v *Value) set(x any) {
@@ -159,10 +192,8 @@ func (m *machine) runHelper(hc *check.HelperCall, f *frame, entry int) (*frame, 
 		}
 		m.bindParam(g, p, v)
 		g.steps[p.Slot].Note, g.steps[p.Slot].Source = hc.Helper.Params[i].Note.Text, hc.Helper.Params[i].Note.Source
-		if lit, negated := literalOf(hc, i); lit != nil && len(v.Type.Rows) == 0 {
-			g.steps[p.Slot].Literal, g.steps[p.Slot].Negated = lit, negated
-		} else if s := m.argStep(hc, i, f); s != nil && len(v.Type.Rows) == 0 && len(s.Value.Type.Rows) == 0 {
-			g.steps[p.Slot].Literal, g.steps[p.Slot].Negated, g.steps[p.Slot].Anchor = s.Literal, s.Negated, s.Anchor
+		if len(v.Type.Rows) == 0 && (hc.Given[i] || hc.Args[i].Op == check.Const) {
+			m.ownFiguresOf(g.steps[p.Slot], hc.Args[i], f)
 		}
 		if call != nil {
 			call.Args = append(call.Args, g.steps[p.Slot])
@@ -182,24 +213,25 @@ func (m *machine) runHelper(hc *check.HelperCall, f *frame, entry int) (*frame, 
 	return g, nil
 }
 
-// literalOf is an argument's literal, whose figures the helper's page shows.
-func literalOf(hc *check.HelperCall, i int) (*syntax.Number, bool) {
-	switch x := hc.Args[i].Expr.(type) {
+// ownFiguresOf lets a parameter print as its argument does: with the author's
+// figures of a literal or of a given, to which it links.
+func (m *machine) ownFiguresOf(param *Step, arg *check.Node, f *frame) {
+	switch x := arg.Expr.(type) {
 	case *syntax.Number:
-		return x, false
+		param.Literal = x
+		return
 	case *syntax.Unary:
 		if lit, ok := x.X.(*syntax.Number); ok && x.Op == syntax.Neg {
-			return lit, true
+			param.Literal, param.Negated = lit, true
+			return
 		}
 	}
-	return nil, false
-}
-
-func (m *machine) argStep(hc *check.HelperCall, i int, f *frame) *Step {
-	if n := hc.Args[i]; n.Op == check.Load && hc.Given[i] {
-		return m.stepFor(n.Def, f)
+	if arg.Op != check.Load {
+		return
 	}
-	return nil
+	if s := m.stepFor(arg.Def, f); s != nil && len(s.Value.Type.Rows) == 0 {
+		param.Literal, param.Negated, param.Anchor = s.Literal, s.Negated, s.Anchor
+	}
 }
 
 // argument is the value a parameter takes for one entry of the loop: a plain
@@ -317,16 +349,17 @@ func (m *machine) limit(p *check.Plan, g *frame, step *Step) error {
 func (m *machine) outside(p *check.Plan, s *syntax.Needs, g *frame, t *check.Type, entry int) error {
 	message := fmt.Sprintf("the limit `%s` does not hold", syntax.Print(g.src, s.Cond))
 	if c := p.Check; c.Sides != nil {
-		for i, side := range c.Sides {
-			if side.Op == check.Const || side.Op == check.TextLit {
+		sign := ": "
+		for _, side := range c.Sides {
+			bare := side
+			if bare.Op == check.Neg {
+				bare = bare.Args[0]
+			}
+			if bare.Op == check.Const || bare.Op == check.TextLit {
 				continue
 			}
-			v := m.show(side, g, t, entry)
-			if i == 0 || c.Sides[0].Op == check.Const {
-				message += fmt.Sprintf(": %s is %s", syntax.Print(g.src, side.Expr), v)
-			} else {
-				message += fmt.Sprintf(", %s is %s", syntax.Print(g.src, side.Expr), v)
-			}
+			message += fmt.Sprintf("%s%s is %s", sign, syntax.Print(g.src, side.Expr), m.show(side, g, t, entry))
+			sign = ", "
 		}
 	} else if values := m.valuesIn(p.Check.Cond, g, t, entry); values != "" {
 		message += ": " + values

@@ -71,21 +71,35 @@ func (m *machine) checkResult(p *check.Plan, f *frame) *CheckResult {
 // unit of the side it is compared with.
 func (m *machine) side(n *check.Node, f *frame, shared *check.Node) Side {
 	s := Side{Expr: n.Expr, Figures: m.figures(), Unit: m.nodeUnit(n, f)}
-	if _, own := m.namedUnit(n, n.Type, f); !own && shared != nil && shared.Type.Dim == n.Type.Dim && shared.Type.Kind == n.Type.Kind {
+	if shared != nil && !named(n) && shared.Type.Dim == n.Type.Dim && shared.Type.Kind == n.Type.Kind {
 		s.Unit = m.nodeUnit(shared, f)
 	}
 	s.Value = m.columnValue(n, f)
 	return s
 }
 
-// sidesUnit is the first side that brings a unit of its own.
+// sidesUnit is the side whose unit the others are shown in: the first that is
+// only a name or a literal, else the first that holds one of its dimension.
 func (m *machine) sidesUnit(sides []*check.Node, f *frame) *check.Node {
+	for _, n := range sides {
+		if _, own := m.namedUnit(n, n.Type, f); own && named(n) {
+			return n
+		}
+	}
 	for _, n := range sides {
 		if _, own := m.namedUnit(n, n.Type, f); own {
 			return n
 		}
 	}
 	return nil
+}
+
+// named tells that a side is only a name or a literal, perhaps with a sign.
+func named(n *check.Node) bool {
+	if n.Op == check.Neg {
+		n = n.Args[0]
+	}
+	return n.Op == check.Load || n.Op == check.Const
 }
 
 // utilisation is demand over capacity, the larger of a chain's; NaN where a
@@ -123,18 +137,17 @@ func (r *CheckResult) at(side, entry int) float64 {
 // before one that holds, and of those the largest utilisation.
 func (r *CheckResult) worst() int {
 	best := 0
-	rank := func(e int) (int, float64) {
-		u := r.Ratio[e]
-		if !finite(u) {
-			u = math.Inf(-1)
-		}
+	rank := func(e int) (group int, order float64) {
 		switch {
 		case !r.Required[e]:
-			return 0, u
-		case r.OK[e]:
-			return 1, u
+			return 0, 0
+		case !r.OK[e]:
+			group = 2
 		}
-		return 2, u
+		if u := r.Ratio[e]; finite(u) {
+			return group + 2, u
+		}
+		return group + 1, -r.margin(e) // without a utilisation the nearest to its limit
 	}
 	bk, bu := rank(0)
 	for e := 1; e < len(r.OK); e++ {
@@ -143,6 +156,25 @@ func (r *CheckResult) worst() int {
 		}
 	}
 	return best
+}
+
+// margin is what is left between the sides of an entry, the least of a chain's; negative where it fails.
+func (r *CheckResult) margin(entry int) float64 {
+	out := nan
+	for i, op := range r.Ops {
+		a, b := r.at(i, entry), r.at(i+1, entry)
+		if op == syntax.Gt || op == syntax.Ge {
+			a, b = b, a
+		}
+		left := b - a
+		if op == syntax.Eq {
+			left = -math.Abs(left)
+		}
+		if finite(left) && (!finite(out) || left < out) {
+			out = left
+		}
+	}
+	return out
 }
 
 // equalSides tells that the check fails under < or > only because its sides are equal.

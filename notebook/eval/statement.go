@@ -49,7 +49,25 @@ func (m *machine) newStep(p *check.Plan, f *frame) *Step {
 	for _, d := range p.Uses {
 		s.Uses = append(s.Uses, m.stepFor(d, f))
 	}
+	if p.Column != nil {
+		s.Uses = m.columnUses(p.Column, f)
+	}
 	return s
+}
+
+// columnUses are the values that a column's cells name, each once.
+func (m *machine) columnUses(c *check.ColumnPlan, f *frame) []*Step {
+	var out []*Step
+	seen := map[*check.Def]bool{}
+	for _, cell := range c.Uses {
+		for _, d := range cell {
+			if d != nil && !seen[d] {
+				seen[d] = true
+				out = append(out, m.stepFor(d, f))
+			}
+		}
+	}
+	return out
 }
 
 // compute computes one statement into its frame. The step, where there is

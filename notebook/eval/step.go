@@ -118,10 +118,11 @@ type Trial struct {
 	Why   string
 }
 
-// Call is one call of a helper: its steps with the caller's values put in.
+// Call is one call of a helper, or of a function of the author's own: its
+// steps with the caller's values put in. A function has one step.
 type Call struct {
 	Expr     *syntax.Call
-	Helper   *syntax.Helper
+	Helper   *syntax.Helper // nil for a function of the author's own
 	Library  bool    // ships with the program
 	Args     []*Step // the parameters in order, with the values they took
 	Steps    []*Step // Computed, NoteLine, Gap and Limit
