@@ -34,8 +34,7 @@ func reduces(c *syntax.Call) bool {
 
 func (w *builder) call(c *syntax.Call) (Node, rank) {
 	if run := w.run(c); run != nil {
-		n := w.helper(c, run)
-		return n, rankOfValue(n)
+		return w.helper(c, run)
 	}
 	if w.functions[c.Fun.ID] != nil {
 		return w.own(c), rankedAtom
@@ -176,19 +175,20 @@ func (w *builder) run(c *syntax.Call) *eval.Call {
 
 // helper sets the call of a helper or of a function of the author's own: as
 // written, or as the value it gave, which its own lines tell of.
-func (w *builder) helper(c *syntax.Call, run *eval.Call) Node {
+func (w *builder) helper(c *syntax.Call, run *eval.Call) (Node, rank) {
 	results := run.Results
 	if run.Helper == nil {
 		results = run.Steps
 	}
 	if w.values && len(results) == 1 {
 		w.changed = true
-		return w.Value(results[0], 0)
+		n := w.Value(results[0], 0)
+		return n, rankOfValue(n)
 	}
 	if run.Helper == nil {
-		return w.own(c)
+		return w.own(c), rankedAtom
 	}
-	return Call(Word{Text: c.Fun.Text}, w.args(c)...)
+	return Call(Word{Text: c.Fun.Text}, w.args(c)...), rankedAtom
 }
 
 // own sets the call of a function of the author's own.
