@@ -49,15 +49,27 @@ func (n *Node) rat() *big.Rat {
 	if !ok || x.Pieces[0].HasUnit || len(x.Pieces) > 1 {
 		return nil
 	}
-	r, err := x.Pieces[0].Rat()
-	if err != nil {
-		return nil
+	r, ok := small(x.Pieces[0])
+	if !ok {
+		var err error
+		if r, err = x.Pieces[0].Rat(); err != nil {
+			return nil
+		}
 	}
 	if x.Neg {
 		r.Neg(r)
 	}
 	n.exact = r
 	return r
+}
+
+// small is a whole number without a detour over its figures.
+func small(p syntax.Piece) (*big.Rat, bool) {
+	mant, exp, ok := p.Decimal()
+	if !ok || exp != 0 {
+		return nil, false
+	}
+	return new(big.Rat).SetInt64(mant), true
 }
 
 func (l *lower) binary(x *syntax.Binary) *Node {

@@ -5,6 +5,8 @@ import (
 	"math"
 	"strings"
 
+	"github.com/Knetic/govaluate"
+
 	"gusset/notebook/check"
 	"gusset/notebook/diag"
 	"gusset/notebook/syntax"
@@ -57,6 +59,8 @@ type machine struct {
 	out     *Result
 	marks   map[*check.Rows]map[string]int
 	consts  map[*check.Def]*Step
+	forms   map[string]*govaluate.EvaluableExpression // compilations by the form of the expression
+	form    []byte                                    // room for the next one's
 	// recording collects the helper calls of the statement being printed.
 	recording *[]*Call
 	warned    map[warning]bool
@@ -110,6 +114,10 @@ func (m *machine) unitFor(t check.Type) units.Unit {
 // leaf computes one entry of what govaluate takes as a parameter.
 func (m *machine) leaf(n *check.Node, f *frame, target *check.Type, entry int) (any, error) {
 	switch n.Op {
+	case check.Const:
+		return n.Num, nil
+	case check.TextLit:
+		return n.Str, nil
 	case check.Load:
 		return m.load(n, f, target, entry)
 	case check.Reduce:

@@ -5,6 +5,8 @@ import (
 	"math"
 	"sort"
 
+	"github.com/Knetic/govaluate"
+
 	"gusset/notebook/check"
 	"gusset/notebook/diag"
 	"gusset/units"
@@ -44,7 +46,7 @@ type RefResult struct {
 // matter's keys. What fails is reported and, with all that depends on it, left out.
 func Run(p *check.Program, carried map[string]*Carry) *Result {
 	m := &machine{prog: p, carried: carried, out: &Result{Blocks: make([]BlockResult, len(p.In.Blocks))},
-		marks: map[*check.Rows]map[string]int{}, consts: map[*check.Def]*Step{}, warned: map[warning]bool{}}
+		marks: map[*check.Rows]map[string]int{}, consts: map[*check.Def]*Step{}, warned: map[warning]bool{}, forms: map[string]*govaluate.EvaluableExpression{}}
 	m.out.Diagnostics = append(m.out.Diagnostics, p.Diagnostics...)
 	m.top = newFrame(p.Scope, nil, p.In.Source)
 	m.load0()

@@ -12,17 +12,19 @@ import (
 	"gusset/notebook/syntax"
 )
 
-// One entry of an expression is computed by govaluate. An expression is
-// compiled once to tokens, every operation inside another in its own brackets. What
-// govaluate is trusted with is multiplication, signs and logic; division,
-// powers, sums and comparisons are functions of ours, since an infinity in the
-// middle of an expression (`1/(1/0)`) would otherwise vanish from its result
-// unseen. Names, reductions and calls are parameters, found by their number.
+// One entry of an expression is computed by govaluate. What govaluate is trusted
+// with is multiplication, signs and logic; division, powers, sums and
+// comparisons are functions of ours, since an infinity in the middle of an
+// expression (`1/(1/0)`) would otherwise vanish from its result unseen. Names,
+// literals, reductions and calls are parameters, found by their number, so that
+// expressions of one form (`P/(2*A)` and `V/(3*B)`) share one compilation: to
+// tokens, every operation inside another in its own brackets.
 
 // compiled is what the evaluators keep of a node.
 type compiled struct {
 	expr   *govaluate.EvaluableExpression
-	leaves []*check.Node
+	leaves []*check.Node // the parameters, by number
+	ops    []*check.Node // the operations of ours, by number
 	column *columnProgram
 }
 
@@ -38,11 +40,6 @@ func memo(n *check.Node) *compiled {
 // slots are the names of parameters: a parameter's name is its number.
 const slotBase = 0x20000 // from here up a number is always one code point
 
-type builder struct {
-	tokens []govaluate.ExpressionToken
-	leaves []*check.Node
-}
-
 var (
 	tokOpen      = govaluate.ExpressionToken{Kind: govaluate.CLAUSE, Value: '('}
 	tokClose     = govaluate.ExpressionToken{Kind: govaluate.CLAUSE_CLOSE, Value: ')'}
@@ -54,9 +51,17 @@ var (
 	tokOr        = govaluate.ExpressionToken{Kind: govaluate.LOGICALOP, Value: "||"}
 )
 
-func compile(n *check.Node) (*compiled, error) {
+func (m *machine) compile(n *check.Node) (*compiled, error) {
 	c := memo(n)
 	if c.expr != nil {
+		return c, nil
+	}
+	r := reading{form: m.form[:0], leaves: make([]*check.Node, 0, 8), ops: make([]*check.Node, 0, 8)}
+	r.node(n)
+	m.form = r.form
+	c.leaves, c.ops = r.leaves, r.ops
+	if expr, ok := m.forms[string(r.form)]; ok {
+		c.expr = expr
 		return c, nil
 	}
 	b := builder{tokens: make([]govaluate.ExpressionToken, 0, 24)}
@@ -66,8 +71,55 @@ func compile(n *check.Node) (*compiled, error) {
 		return nil, err
 	}
 	expr.ChecksTypes = false // the checker has run
-	c.expr, c.leaves = expr, b.leaves
+	m.forms[string(r.form)] = expr
+	c.expr = expr
 	return c, nil
+}
+
+// reading takes an expression apart: its form, by which it may share a
+// compilation, and what stands in the form's places.
+type reading struct {
+	form        []byte
+	leaves, ops []*check.Node
+}
+
+func (r *reading) node(n *check.Node) {
+	switch n.Op {
+	case check.Sum, check.Div, check.Pow, check.Compare, check.Builtin, check.ToUnit, check.FromUnit:
+		r.ops = append(r.ops, n)
+	case check.Neg, check.Not, check.Mul, check.And, check.Or:
+	default:
+		r.form = append(r.form, 'x')
+		r.leaves = append(r.leaves, n)
+		return
+	}
+	r.form = append(r.form, '(', 'A'+byte(n.Op))
+	for _, minus := range n.Minus {
+		if minus {
+			r.form = append(r.form, '-')
+		} else {
+			r.form = append(r.form, '+')
+		}
+	}
+	for _, op := range n.Cmp {
+		r.form = append(r.form, 'a'+byte(op))
+	}
+	r.form = append(r.form, n.Fn...)
+	if n.Op == check.ToUnit || n.Op == check.FromUnit {
+		r.form = append(append(append(r.form, '['), n.Unit.String()...), ']')
+	}
+	r.form = append(r.form, ' ')
+	for _, a := range n.Args {
+		r.node(a)
+	}
+	r.form = append(r.form, ')')
+}
+
+// builder writes an expression as govaluate's tokens; it numbers leaves and
+// operations as a reading does.
+type builder struct {
+	tokens      []govaluate.ExpressionToken
+	leaves, ops int
 }
 
 func (b *builder) put(t ...govaluate.ExpressionToken) { b.tokens = append(b.tokens, t...) }
@@ -85,9 +137,10 @@ func (b *builder) operand(n *check.Node) {
 	}
 }
 
-func (b *builder) function(f govaluate.ExpressionFunction, args []*check.Node) {
-	b.put(govaluate.ExpressionToken{Kind: govaluate.FUNCTION, Value: f}, tokOpen)
-	for i, a := range args {
+func (b *builder) function(n *check.Node) {
+	b.put(govaluate.ExpressionToken{Kind: govaluate.FUNCTION, Value: operation(n, failedOp(b.ops))}, tokOpen)
+	b.ops++
+	for i, a := range n.Args {
 		if i > 0 {
 			b.put(tokSeparator)
 		}
@@ -98,10 +151,6 @@ func (b *builder) function(f govaluate.ExpressionFunction, args []*check.Node) {
 
 func (b *builder) node(n *check.Node) {
 	switch n.Op {
-	case check.Const:
-		b.put(govaluate.ExpressionToken{Kind: govaluate.NUMERIC, Value: n.Num})
-	case check.TextLit:
-		b.put(govaluate.ExpressionToken{Kind: govaluate.STRING, Value: n.Str})
 	case check.Neg:
 		b.put(tokMinus)
 		b.operand(n.Args[0])
@@ -115,10 +164,10 @@ func (b *builder) node(n *check.Node) {
 	case check.Or:
 		b.infix(tokOr, n)
 	case check.Sum, check.Div, check.Pow, check.Compare, check.Builtin, check.ToUnit, check.FromUnit:
-		b.function(operation(n), n.Args)
+		b.function(n)
 	default:
-		b.put(govaluate.ExpressionToken{Kind: govaluate.VARIABLE, Value: string(rune(slotBase + len(b.leaves)))})
-		b.leaves = append(b.leaves, n)
+		b.put(govaluate.ExpressionToken{Kind: govaluate.VARIABLE, Value: string(rune(slotBase + b.leaves))})
+		b.leaves++
 	}
 }
 
@@ -128,23 +177,28 @@ func (b *builder) infix(op govaluate.ExpressionToken, n *check.Node) {
 	b.operand(n.Args[1])
 }
 
+// failedOp is the error of an operation without a finite result, by its number.
+type failedOp int
+
+func (failedOp) Error() string { return "no finite result" }
+
 // undefined is the error of an operation without a finite result.
 type undefined struct{ node *check.Node }
 
 func (e undefined) Error() string { return "no finite result" }
 
-// operation is a node's own function: it refuses what is not finite.
-func operation(n *check.Node) govaluate.ExpressionFunction {
+// operation is the function of a node's form: it refuses what is not finite.
+func operation(n *check.Node, failed failedOp) govaluate.ExpressionFunction {
 	numeric := func(f func(args []any) float64) govaluate.ExpressionFunction {
 		return func(args ...any) (any, error) {
 			for _, a := range args {
 				if x, ok := a.(float64); ok && !finite(x) {
-					return nil, undefined{n}
+					return nil, failed
 				}
 			}
 			r := f(args)
 			if !finite(r) {
-				return nil, undefined{n}
+				return nil, failed
 			}
 			return r, nil
 		}
@@ -162,7 +216,7 @@ func operation(n *check.Node) govaluate.ExpressionFunction {
 	case check.FromUnit:
 		return numeric(func(args []any) float64 { return n.Unit.ToSI(num(args[0])) })
 	case check.Compare:
-		return func(args ...any) (any, error) { return compareChain(n, args) }
+		return func(args ...any) (any, error) { return compareChain(n.Cmp, failed, args) }
 	}
 	return numeric(func(args []any) float64 {
 		xs := make([]float64, len(args))
@@ -186,8 +240,8 @@ func sum(minus []bool, args []any) float64 {
 	return settle(total, largest)
 }
 
-func compareChain(n *check.Node, args []any) (any, error) {
-	for i, op := range n.Cmp {
+func compareChain(ops []syntax.Op, failed failedOp, args []any) (any, error) {
+	for i, op := range ops {
 		switch a := args[i].(type) {
 		case string:
 			b, _ := args[i+1].(string)
@@ -197,7 +251,7 @@ func compareChain(n *check.Node, args []any) (any, error) {
 		case float64:
 			b, _ := args[i+1].(float64)
 			if !finite(a) || !finite(b) {
-				return nil, undefined{n}
+				return nil, failed
 			}
 			if !compare(op, a, b) {
 				return false, nil
@@ -235,12 +289,15 @@ func (m *machine) entry(n *check.Node, f *frame, target *check.Type, entry int) 
 	case check.Load, check.Reduce, check.At, check.AtRow, check.Interp, check.CallFunc, check.CallHelp, check.CallGo:
 		return m.leaf(n, f, target, entry)
 	}
-	c, err := compile(n)
+	c, err := m.compile(n)
 	if err != nil {
 		return nil, err
 	}
 	v, err := c.expr.Eval(&params{m, c, f, target, entry})
 	if err != nil {
+		if op, ok := err.(failedOp); ok {
+			err = undefined{c.ops[op]}
+		}
 		return nil, m.explain(err, f, target, entry)
 	}
 	if x, ok := v.(float64); ok && !finite(x) {

@@ -123,10 +123,10 @@ type Trial struct {
 type Call struct {
 	Expr     *syntax.Call
 	Helper   *syntax.Helper // nil for a function of the author's own
-	Library  bool    // ships with the program
-	Args     []*Step // the parameters in order, with the values they took
-	Steps    []*Step // Computed, NoteLine, Gap and Limit
-	Results  []*Step // those that `gives` names
+	Library  bool           // ships with the program
+	Args     []*Step        // the parameters in order, with the values they took
+	Steps    []*Step        // Computed, NoteLine, Gap and Limit
+	Results  []*Step        // those that `gives` names
 	Cautions []string
 	Mark     string // the entry it was run for, "" for a plain call
 }
