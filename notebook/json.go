@@ -119,8 +119,28 @@ func (s *Sheet) valueJSON(v, line *Step) valueJSON {
 		return j
 	}
 	j.Value = nested(func(b []byte, i int) []byte { return appendNumber(b, v.Unit.FromSI(v.Value.Num[i])) })
+	if x, ok := ownFigures(v); ok {
+		j.Value = appendNumber(nil, x)
+	}
 	j.SI = nested(func(b []byte, i int) []byte { return appendNumber(b, v.Value.Num[i]) })
 	return j
+}
+
+// ownFigures is the number that the author gave, which the way through SI units
+// and back may miss by the last bit.
+func ownFigures(v *Step) (x float64, ok bool) {
+	if v.Literal == nil || len(v.Literal.Pieces) != 1 || !v.Literal.Pieces[0].Unit.Equal(v.Unit) {
+		return 0, false
+	}
+	r, err := v.Literal.Pieces[0].Rat()
+	if err != nil {
+		return 0, false
+	}
+	x, _ = r.Float64()
+	if v.Literal.Neg != v.Negated {
+		x = -x
+	}
+	return x, true
 }
 
 // dimension names what a value measures: the quantity, or the base units where
