@@ -172,6 +172,7 @@ func (c *composer) needed(s *eval.Step) []Phrase {
 	} else if put := c.maths.Put(stmt.If, s, r.Type, r.Governs); put != nil {
 		p.Formula.Steps = []maths.Step{{Sign: ":", Right: put}}
 	}
+	p.Formula = maths.InlineChain(p.Formula)
 	if r.Governs < len(r.Required) && !r.Required[r.Governs] {
 		p.Before, p.After = "not required:", "does not hold"
 	}
@@ -193,7 +194,8 @@ func (c *composer) limit(s *eval.Step, e *Entry) {
 	case ok:
 		e.Formula.Left = c.maths.Write(needs.Cond, s)
 		if put := c.maths.Put(needs.Cond, s, check.Type{}, 0); put != nil {
-			e.Below = []Phrase{{Before: "with values:", Formula: maths.Chain{Left: put}}}
+			e.Below = []Phrase{{Before: "with values:", Formula: maths.Chain{Left: maths.Inline(put)}}}
 		}
 	}
+	e.Formula = maths.InlineChain(e.Formula)
 }

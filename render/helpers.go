@@ -129,7 +129,7 @@ func (c *composer) helperBlock(b *notebook.Block) []Entry {
 			e.Kind, e.Note, e.Refs = NoteLine, s.Note.Text, sources(s.Note.Source)
 		case *syntax.Needs:
 			e.Kind, e.Note, e.Refs = Limit, s.Note.Text, sources(s.Note.Source)
-			e.Formula.Left = c.maths.Write(s.Cond, nil)
+			e.Formula.Left = maths.Inline(c.maths.Write(s.Cond, nil))
 		case *syntax.Definition:
 			e.Note, e.Refs = s.Note.Text, sources(s.Note.Source)
 			e.Formula = maths.Chain{Left: c.maths.Name(s.Name.Text), Steps: equal(c.maths.Function(s, nil))}

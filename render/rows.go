@@ -197,7 +197,7 @@ func (c *composer) entriesTable(s *eval.Step, full bool) *Table {
 		if len(side.Value.Type.Rows) == 0 {
 			continue
 		}
-		t.Heads = append(t.Heads, Head{Symbol: c.maths.Write(side.Expr, s), Unit: c.maths.Unit(side.Unit), Right: true})
+		t.Heads = append(t.Heads, Head{Symbol: maths.Inline(c.maths.Write(side.Expr, s)), Unit: c.maths.Unit(side.Unit), Right: true})
 		t.columns = append(t.columns, column{governs: r.Governs, cell: func(dst []byte, row int) []byte {
 			return appendFigures(dst, side.Value.Printed(r.Type.Project(row, side.Value.Type), side.Unit, side.Figures))
 		}})

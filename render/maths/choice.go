@@ -46,7 +46,7 @@ func (s *setter) choice(c Choice, st style, width float64) part {
 const widestBrace = 0.9
 
 // branchGap is the room between two branches in thousandths of an em.
-const branchGap = 350
+const branchGap = 450
 
 // condition is what stands behind a branch's value. An arrow marks the branch
 // that was taken.

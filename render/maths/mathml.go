@@ -162,8 +162,25 @@ func (w *markup) list(list []Node, prev Class, parted bool) {
 				w.space(Thin)
 			}
 			w.node(n)
+			if i+1 < len(list) || parted {
+				w.lean(n)
+			}
 		}
 		prev = right
+	}
+}
+
+// lean writes the room that a slanted letter needs to stay clear of what
+// follows it.
+func (w *markup) lean(n Node) {
+	s, ok := n.(Symbol)
+	if !ok || len(s.Sub) > 0 || s.Primes > 0 {
+		return
+	}
+	if letters, figs := split(s.Head); figs == "" {
+		if lean := overhang(letters) / 10; lean >= leastLean {
+			w.blank(lean)
+		}
 	}
 }
 
@@ -560,7 +577,7 @@ func tall(n Node) bool {
 }
 
 func (w *markup) choice(c Choice) {
-	w.raw(`<mrow><mo>{</mo><mtable>`)
+	w.raw(`<mrow><mo>{</mo><mtable displaystyle="true">`)
 	for _, b := range c.Branches {
 		if b.Taken {
 			w.raw(`<mtr class="taken">`)

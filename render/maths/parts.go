@@ -48,7 +48,7 @@ func (w *markup) parts(list []Node, prev Class, most int) {
 	}
 	rank := breakable(list)
 	if rank == rankNone || rank == rankBeside && n < 2*shortStep {
-		if w.shrink(list) < leastScale {
+		if n > shortStep && flatCall(list) || w.shrink(list) < leastScale {
 			if open := opened(list); open != nil {
 				w.parts(open, prev, longPart)
 				return
@@ -69,6 +69,35 @@ func (w *markup) parts(list []Node, prev Class, most int) {
 		_, prev = list[i-1].edges()
 		from = i
 	}
+}
+
+// flatCall reports whether the last of atoms is a function's brackets with
+// nothing in them that they have to grow for.
+func flatCall(list []Node) bool {
+	i := len(list) - 1
+	if i < 1 {
+		return false
+	}
+	f, ok := list[i].(Fence)
+	_, right := list[i-1].edges()
+	return ok && right == Func && f.Open == "(" && flat(f.Body)
+}
+
+func flat(n Node) bool {
+	switch n := n.(type) {
+	case Row:
+		for _, c := range n {
+			if !flat(c) {
+				return false
+			}
+		}
+		return true
+	case Fence:
+		return n.Open == "" && flat(n.Body)
+	case Symbol, Number, Word, Text, Op, Space:
+		return true
+	}
+	return false
 }
 
 // breakable is the loosest rank at which atoms can be parted.

@@ -28,19 +28,27 @@ func besideFace(st style) *fonts.Face {
 	return fonts.Serif
 }
 
-// formula puts a formula into running text. One that is wider than any line
-// is written as words.
+// formula puts a formula into running text, which may break between its
+// parts. A part that is wider than any line is written as words.
 func (d *document) formula(p *paragraph, n maths.Node, st style) {
 	if t, ok := n.(maths.Text); ok {
 		p.write(st, t.Text)
 		return
 	}
-	m := maths.Layout(n, st.size, besideFace(st))
-	if m.Width > d.widest() {
-		p.write(st, string(maths.AppendPlain(nil, n)))
-		return
+	face := besideFace(st)
+	fits := func(n maths.Node) bool { return maths.Layout(n, st.size, face).Width <= d.widest() }
+	for i, part := range maths.Parts(n, fits) {
+		if i > 0 && p.open {
+			p.words[len(p.words)-1].space = part.Gap * st.size
+			p.open = false
+		}
+		m := maths.Layout(part.Node, st.size, face)
+		if m.Width > d.widest() {
+			p.write(st, string(maths.AppendPlain(nil, part.Node)))
+			continue
+		}
+		p.place(st, mathsBox(&m, st.colour))
 	}
-	p.place(st, mathsBox(&m, st.colour))
 }
 
 // chain puts a chain of relations into running text, which may break before
