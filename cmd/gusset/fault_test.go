@@ -2,14 +2,12 @@ package main
 
 import (
 	"bytes"
-	"errors"
 	"fmt"
 	"math/rand/v2"
 	"os"
 	"os/exec"
 	"path/filepath"
 	"strings"
-	"syscall"
 	"testing"
 	"time"
 )
@@ -82,6 +80,7 @@ const kills = 100
 // TestPrintKilled kills print at random moments. Every page is the old one or
 // the new one, whole.
 func TestPrintKilled(t *testing.T) {
+	t.Parallel()
 	dir := t.TempDir()
 	v := newVersions(t, dir)
 	v.write(t, dir, 0)
@@ -112,6 +111,7 @@ func TestPrintKilled(t *testing.T) {
 
 // TestWatchKilled kills watch at random moments after a save.
 func TestWatchKilled(t *testing.T) {
+	t.Parallel()
 	dir := t.TempDir()
 	v := newVersions(t, dir)
 	v.write(t, dir, 0)
@@ -135,82 +135,6 @@ func TestWatchKilled(t *testing.T) {
 		}
 	}
 	t.Logf("%d of %d kills came between the first page and the last", mixed, kills)
-}
-
-// smallDisk mounts a disk of a few hundred kilobytes, which root alone may do.
-func smallDisk(t *testing.T, size string) string {
-	t.Helper()
-	dir := t.TempDir()
-	if err := syscall.Mount("tmpfs", dir, "tmpfs", 0, "size="+size); err != nil {
-		t.Skipf("a disk cannot be mounted here: %v", err)
-	}
-	t.Cleanup(func() { _ = syscall.Unmount(dir, syscall.MNT_DETACH) })
-	return dir
-}
-
-// fill takes all that is left of a disk.
-func fill(t *testing.T, file string) {
-	t.Helper()
-	f, err := os.Create(file)
-	if err != nil {
-		t.Fatal(err)
-	}
-	defer f.Close()
-	for block := make([]byte, 4096); err == nil; {
-		_, err = f.Write(block)
-	}
-	if !errors.Is(err, syscall.ENOSPC) {
-		t.Fatal(err)
-	}
-}
-
-// TestFullDisk fills the disk that pages are written to: the old ones stay, the
-// message says so, and once there is room the new ones are written.
-func TestFullDisk(t *testing.T) {
-	dir, disk := t.TempDir(), smallDisk(t, "2m")
-	page := filepath.Join(disk, "C-1.html")
-	write(t, filepath.Join(dir, "lug.md"), lug("48"))
-	p := startWatch(t, dir, "lug.md", "--to", disk)
-	old := read(t, page)
-	fill(t, filepath.Join(disk, "filling"))
-
-	write(t, filepath.Join(dir, "lug.md"), lug("49"))
-	p.wait(t, "C-1.html: cannot be written: the disk is full; the old one stays")
-	p.wait(t, "lug.md: not written; the last good pages stay")
-	out, status := gussetIn(t, dir, "print", "lug.md", "--to", disk)
-	if want := "gusset: " + page + ": cannot be written: the disk is full; the old one stays\n"; status != statusMisuse || !strings.Contains(out, want) {
-		t.Errorf("status %d: %s", status, out)
-	}
-	if read(t, page) != old {
-		t.Error("the old page did not stay")
-	}
-	if left, _ := filepath.Glob(filepath.Join(disk, temporary+"*")); len(left) > 0 {
-		t.Errorf("something is left beside the pages: %v", left)
-	}
-
-	if err := os.Remove(filepath.Join(disk, "filling")); err != nil {
-		t.Fatal(err)
-	}
-	p.wait(t, "lug.md: P 48 → 49 kN")
-	p.interrupt(t)
-}
-
-// TestReadOnlyDisk turns the disk that pages are written to read-only and back.
-func TestReadOnlyDisk(t *testing.T) {
-	dir, disk := t.TempDir(), smallDisk(t, "4m")
-	write(t, filepath.Join(dir, "lug.md"), lug("48"))
-	p := startWatch(t, dir, "lug.md", "--to", disk)
-	remount := func(flags uintptr) {
-		if err := syscall.Mount("tmpfs", disk, "tmpfs", syscall.MS_REMOUNT|flags, "size=4m"); err != nil {
-			t.Fatal(err)
-		}
-	}
-	remount(syscall.MS_RDONLY)
-	write(t, filepath.Join(dir, "lug.md"), lug("49"))
-	p.wait(t, "C-1.html: cannot be written: the disk is read-only; the old one stays")
-	remount(0)
-	p.wait(t, "lug.md: P 48 → 49 kN")
-	p.interrupt(t)
 }
 
 // TestReadOnlyFolder takes away the right to write into a folder, which keeps
@@ -270,29 +194,6 @@ func TestBadFiles(t *testing.T) {
 				t.Errorf("status %d: %.2000s", status, out)
 			}
 		})
-	}
-}
-
-// TestUnreadable wants a file that may not be read told by name.
-func TestUnreadable(t *testing.T) {
-	dir := t.TempDir()
-	if err := syscall.Mkfifo(filepath.Join(dir, "pipe.md"), 0o666); err != nil {
-		t.Skip(err)
-	}
-	out, status := gussetIn(t, dir, "run", "pipe.md")
-	if status != statusMisuse || !strings.Contains(out, "gusset: pipe.md: it is no ordinary file") {
-		t.Errorf("status %d: %s", status, out)
-	}
-	if os.Geteuid() == 0 {
-		return // root may read everything
-	}
-	write(t, filepath.Join(dir, "secret.md"), lug("48"))
-	if err := os.Chmod(filepath.Join(dir, "secret.md"), 0); err != nil {
-		t.Fatal(err)
-	}
-	out, status = gussetIn(t, dir, "run", "secret.md")
-	if status != statusMisuse || !strings.Contains(out, "gusset: secret.md: it may not be read") {
-		t.Errorf("status %d: %s", status, out)
 	}
 }
 

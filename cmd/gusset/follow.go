@@ -123,8 +123,10 @@ func (f *follower) loop() {
 				out = nil
 				rest.Reset(f.patience())
 			}
-		case e := <-events:
-			if f.note(e) {
+		case e, open := <-events:
+			if !open {
+				events = nil
+			} else if f.note(e) {
 				out = nil
 				rest.Reset(f.patience())
 			}
