@@ -384,7 +384,7 @@ func columnRows(rows, loop []*Rows) []*Rows {
 // callHelper lowers a helper's call inside an expression, where it stands for its one result.
 func (l *lower) callHelper(x *syntax.Call, h *helper) *Node {
 	hc := l.helperCall(x, h)
-	if hc == nil {
+	if hc == nil || len(hc.Results) == 0 { // a helper that gives nothing was reported where it stands
 		l.failed = true
 		return invalid
 	}

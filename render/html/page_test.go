@@ -61,6 +61,7 @@ var faults = []struct{ what, script string }{
 	{"an id stands twice", `const seen=new Set();for(const e of document.querySelectorAll('[id]')){if(seen.has(e.id))out.push(e.id);seen.add(e.id)}`},
 	{"the page runs over its side", `const d=document.documentElement;if(d.scrollWidth>d.clientWidth)out.push(d.scrollWidth+' > '+d.clientWidth)`},
 	{"something runs over the side of its column", `for(const e of document.querySelectorAll('.row>*,.row>.more>*')){const r=e.getBoundingClientRect(),p=e.parentElement.getBoundingClientRect();if(r.right>p.right+1)out.push(r.right+' > '+p.right+': '+e.outerHTML.slice(0,200))}`},
+	{"a value's derivation is not shown while it has the focus", `const a=document.querySelector('a[data-tip]');if(a){a.focus();const s=getComputedStyle(a,'::after');if(!s.content.includes('=')||s.position!=='fixed')out.push(s.content)}`},
 	{"a face was not found", `for(const f of document.fonts)if(f.status==='error')out.push(f.family)`},
 }
 

@@ -76,7 +76,7 @@ func (w *writer) int(n int) { w.b = strconv.AppendInt(w.b, int64(n), 10) }
 // stateBox says how the calc stands.
 func (w *writer) stateBox() {
 	s := &w.page.State
-	w.raw(`<ul class="state" aria-label="State of the calc">`)
+	w.raw(`<ul class="state">`)
 	w.count(s.Checks, "check", "checks", "")
 	if s.NG > 0 {
 		w.count(s.NG, "NG", "NG", "ng")
