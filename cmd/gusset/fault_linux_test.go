@@ -89,7 +89,7 @@ func TestReadOnlyDisk(t *testing.T) {
 func TestUnreadable(t *testing.T) {
 	dir := t.TempDir()
 	if err := syscall.Mkfifo(filepath.Join(dir, "pipe.md"), 0o666); err != nil {
-		t.Skip(err)
+		t.Fatal(err)
 	}
 	out, status := gussetIn(t, dir, "run", "pipe.md")
 	if status != statusMisuse || !strings.Contains(out, "gusset: pipe.md: it is no ordinary file") {
