@@ -33,13 +33,30 @@ func (b *prose) entries(index int) {
 			for n < len(list) && list[n].Kind == render.Line && list[n].Indent == list[i].Indent {
 				n++
 			}
+			b.mayHang = false
 			b.lines(list[i:n])
 			i = n - 1
-			continue
+		} else {
+			b.mayHang = i+1 < len(list) && mayHang(&list[i]) && takesHanging(&list[i+1])
+			b.entry(&list[i])
 		}
-		b.entry(&list[i])
+		if i+1 < len(list) && list[i+1].Kind == render.HelperHead {
+			b.keep() // a call stands with the head of the helper's lines
+		}
 	}
 	b.space(blockGap - entryPad)
+}
+
+// mayHang reports whether the references of an entry may hang down beside the
+// next one.
+func mayHang(e *render.Entry) bool {
+	return e.Kind != render.Check && len(e.Tables) == 0 && len(e.Trials) == 0
+}
+
+// takesHanging reports whether the reference column beside an entry is free
+// for what hangs down from the entry above.
+func takesHanging(e *render.Entry) bool {
+	return (e.Kind == render.Limit || e.Kind == render.Formula) && e.Number == "" && len(e.Refs) == 0
 }
 
 // indented runs a function with the column moved in by the entry's steps, with
@@ -128,7 +145,7 @@ func (b *box) scaled(k float64) *box {
 func (b *prose) formulaEntry(e *render.Entry) {
 	r := b.row()
 	r.words(noteVoice, e.Note)
-	r.space(1.5)
+	r.space(2.5)
 	r.formula(e.Formula, formulaSize, b.doc.tallest())
 	for i := range e.Below {
 		r.space(lineGap)
@@ -182,7 +199,7 @@ func (b *prose) finish(r *row, e *render.Entry, pad float64) {
 	parts[0].gap = 0
 	parts[0].pad, parts[0].height, parts[0].baseline = pad, parts[0].height+pad, parts[0].baseline+pad
 	parts[len(parts)-1].height += pad
-	b.references(parts, e)
+	lack := b.references(parts, e)
 	if e.Kind == render.Check {
 		b.verdictBeside(parts, e)
 	} else {
@@ -191,8 +208,16 @@ func (b *prose) finish(r *row, e *render.Entry, pad float64) {
 	if e.Anchor != "" {
 		b.anchors = append(b.anchors, e.Anchor)
 	}
+	lack = math.Max(lack, b.hanging) - height(parts)
+	b.hanging = 0
+	hangs := lack > 0 && b.mayHang
+	if hangs {
+		b.hanging = lack
+	} else if lack > 0 {
+		parts[len(parts)-1].height += lack
+	}
 	for i := range parts {
-		parts[i].keep = i < len(parts)-1
+		parts[i].keep = i < len(parts)-1 || hangs
 		if e.Kind == render.Check {
 			x, width := b.doc.paper.calculation()
 			parts[i].bands = []band{{
@@ -205,8 +230,8 @@ func (b *prose) finish(r *row, e *render.Entry, pad float64) {
 }
 
 // references sets the number and the sources flush right in their column,
-// from the first baseline down. Parts grow where there are many.
-func (b *prose) references(parts []slab, e *render.Entry) {
+// from the first baseline down, and returns how far down they go.
+func (b *prose) references(parts []slab, e *render.Entry) float64 {
 	const leading = 10.4
 	pad := parts[0].pad
 	y := parts[0].baseline - pad
@@ -236,9 +261,7 @@ func (b *prose) references(parts []slab, e *render.Entry) {
 	own := &parts[0].ink
 	own.texts = append(k.texts, own.texts...)
 	own.areas = append(own.areas, k.areas...)
-	if lack := pad + y - leading + 4 - height(parts); lack > 0 {
-		parts[len(parts)-1].height += lack
-	}
+	return pad + y - leading + 4
 }
 
 // outputBeside sets a value in the output column on the baseline of a part,

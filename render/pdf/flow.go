@@ -13,6 +13,10 @@ type flow struct {
 	gap     float64  // space asked for above the next slab
 	snug    float64  // the most that it gets, where it is not 0
 	anchors []string // ids that the next slab starts
+	// hanging is how far references hang down beside the entries that follow,
+	// where mayHang says that those have none of their own.
+	hanging float64
+	mayHang bool
 }
 
 // space asks for a distance above the next slab. The largest that is asked

@@ -16,6 +16,9 @@ func (b *prose) lines(list []render.Entry) {
 		c := columnsOf(list, b.width)
 		for i := range list {
 			b.line(&list[i], &c.lines[i], c)
+			if i == 0 && len(list) > 1 || i == len(list)-2 {
+				b.keep() // no page begins or ends with a single one of them
+			}
 		}
 	})
 }
@@ -133,21 +136,28 @@ func (b *prose) helperHead(e *render.Entry) {
 	b.keep()
 }
 
-// limit sets a limit of validity: small, with what it says behind it.
+// noteSpace is the room between a limit and what it says.
+const noteSpace = 10.0
+
+// limit sets a limit of validity: small, with what it says behind it, or
+// below it where the line has no room.
 func (b *prose) limit(e *render.Entry) {
 	r := b.row()
 	p := &paragraph{}
 	st := noteVoice.in(inkColour).style()
 	st.face, st.size = fonts.Serif, smallSize+0.5
 	b.doc.chain(p, e.Formula, st)
-	if e.Note != "" {
-		if len(p.words) > 0 {
-			p.words[len(p.words)-1].space = 10
-			p.open = false
-		}
-		p.write(noteVoice.style(), e.Note)
+	note := &paragraph{}
+	note.write(noteVoice.style(), e.Note)
+	long, _ := p.natural()
+	behind, _ := note.natural()
+	if len(p.words) > 0 && long+noteSpace+behind <= r.width {
+		p.words[len(p.words)-1].space = noteSpace
+		note = p.followed(note)
+	} else {
+		r.paragraph(p, noteVoice.leading+1)
 	}
-	r.paragraph(p, noteVoice.leading+1)
+	r.paragraph(note, noteVoice.leading+1)
 	for i := range e.Below {
 		r.space(1)
 		r.paragraph(b.doc.phrase(&e.Below[i], noteVoice), noteVoice.leading+1)

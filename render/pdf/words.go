@@ -6,6 +6,7 @@ import (
 	"unicode"
 	"unicode/utf8"
 
+	"gusset/render"
 	"gusset/render/fonts"
 )
 
@@ -41,6 +42,7 @@ const (
 	hyphenCost = 0.4
 	slashCost  = 1.5
 	numberCost = 1.4 // before a number, which belongs to the word before it: Table 3
+	unitCost   = 12  // between a number and its unit
 )
 
 // write appends a text in a style. Blanks and ends of lines in it part words.
@@ -58,6 +60,9 @@ func (p *paragraph) write(st style, s string) {
 		p.letters(st, s[:i])
 		if s[i] == ' ' {
 			p.blank(st)
+			if measured := render.Measured(s[:i], s[i+1:]); measured && len(p.words) > 0 {
+				p.words[len(p.words)-1].cost = unitCost
+			}
 			s = s[i+1:]
 		} else {
 			p.part(0)
