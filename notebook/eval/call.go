@@ -178,6 +178,7 @@ func (m *machine) runHelper(hc *check.HelperCall, f *frame, entry int) (*frame, 
 	g := newFrame(hc.Scope, nil, hc.Helper.Source)
 	g.depth = f.depth + 1
 	loop := check.Type{Rows: hc.Loop}
+	g.mark = loop.Mark(entry)
 	outer := m.recording
 	var call *Call
 	if outer != nil {
@@ -402,7 +403,10 @@ func (m *machine) warn(s *syntax.Needs, e *fault, g *frame) {
 	}
 	m.warned[key] = true
 	at := m.running.Stmt.Span()
-	name := ""
+	name, where := "", ""
+	if g.mark != "" {
+		where = ", at " + g.mark // the first entry of those that it happens for
+	}
 	switch st := m.running.Stmt.(type) {
 	case *syntax.Definition:
 		at = st.Branches[0].Value.Span()
@@ -411,7 +415,7 @@ func (m *machine) warn(s *syntax.Needs, e *fault, g *frame) {
 		at = st.Cond.Span()
 	}
 	m.report(diag.Diagnostic{Severity: diag.Warning, ID: diag.OutOfRange, Source: m.top.src, Span: at,
-		Message: name + e.message, Hints: e.hints})
+		Message: name + e.message + where, Hints: e.hints})
 }
 
 func (m *machine) report(d diag.Diagnostic) { m.out.Diagnostics = append(m.out.Diagnostics, d) }

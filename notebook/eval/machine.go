@@ -24,6 +24,7 @@ type frame struct {
 	steps  []*Step
 	picks  map[int][]int // rows that `first of` picked, by slot
 	depth  int
+	mark   string // inside a helper: the entry it is run for, "" for a plain call
 }
 
 func newFrame(s *check.Scope, parent *frame, src *diag.Source) *frame {
