@@ -44,7 +44,7 @@ var figureKinds = []*FigureKind{
 	{"shear-angle", "a block sheared by its angle", []FigureParam{{Name: "gamma", Unit: ""}}},
 	{"stress-strain", "an elastic-plastic curve with the present point", []FigureParam{{Name: "G", Unit: "Pa"}, {Name: "tau_y", Unit: "Pa"}, {Name: "gamma", Unit: ""}}},
 	{"pin", "a pin in double shear", []FigureParam{{Name: "d", Unit: "m"}, {Name: "t_1", Unit: "m"}, {Name: "t_2", Unit: "m"}, {Name: "g", Unit: "m", Optional: true}}},
-	{"head", "a plate pulled through by a head", []FigureParam{{Name: "d", Unit: "m"}, {Name: "t", Unit: "m"}, {Name: "d_s", Unit: "m", Optional: true}}},
+	{"head", "a plate pulled through by a head", []FigureParam{{Name: "d", Unit: "m"}, {Name: "t", Unit: "m"}, {Name: "d_s", Unit: "m", Optional: true}, {Name: "l", Unit: "m", Optional: true}}},
 	{"lap", "a lap with a row of fasteners", []FigureParam{{Name: "t_1", Unit: "m"}, {Name: "t_2", Unit: "m"}, {Name: "d", Unit: "m"}, {Name: "n", Unit: ""}, {Name: "p", Unit: "m", Optional: true}}},
 }
 

@@ -10,7 +10,7 @@ import (
 // sheared surface unrolled.
 func (s *sketch) pulledThrough() *Drawing {
 	const title = "Plate pulled through by a head"
-	if why := s.sizes("d", "t", "d_s"); why != "" {
+	if why := s.sizes("d", "t", "d_s", "l"); why != "" {
 		return s.refuse(why, title)
 	}
 	d, t := s.arg("d").x, s.arg("t").x
@@ -20,7 +20,8 @@ func (s *sketch) pulledThrough() *Drawing {
 			return s.refuse("not drawn: the shank is no thinner than the outline of the head", title)
 		}
 	}
-	k := math.Min(math.Min(136/(2.2*d), 150/(math.Pi*d)), 96/(t+0.9*d))
+	perimeter, outlineOf := s.outlineOfHead(d)
+	k := math.Min(math.Min(136/(2.2*d), 150/perimeter), 96/(t+0.9*d))
 	r, rs, h := k*d/2, k*shank/2, k*t
 	headHeight, stub, half := 0.7*r, 0.8*r+10, 2.2*r
 	// The plate lies with its upper face at 0; the head sits on it.
@@ -55,18 +56,27 @@ func (s *sketch) pulledThrough() *Drawing {
 	}
 	s.dimension(Point{-r, -headHeight}, Point{r, -headHeight}, 15, s.given("d"))
 	s.dimension(Point{-half, h}, Point{-half, 0}, 13, s.given("t"))
-	// The cylinder that is sheared, unrolled.
-	length := 2 * math.Pi * r
+	// The surface that is sheared, unrolled.
+	length := k * perimeter
 	x := half + 44
 	s.hatch(hatching, 3.2, box(x, 0, length, h)...)
 	s.polygon(outline, box(x, 0, length, h)...)
-	round := maths.Row{s.name("π"), maths.Beside, s.factorOf("d")}
-	s.dimension(Point{x + length, h}, Point{x, h}, 15, s.label(maths.Row{round, maths.Relation("="), s.like("d", math.Pi*d)}))
+	s.dimension(Point{x + length, h}, Point{x, h}, 15, s.label(maths.Row{outlineOf, maths.Relation("="), s.like("d", perimeter)}))
 	s.putAt(s.words("the sheared surface, unrolled"), Point{x + length/2, -26}, middle)
-	area := maths.Row{s.name("A"), maths.Relation("="), round, maths.Beside, s.factorOf("t"), maths.Relation("="), s.area("d", math.Pi*d*t)}
+	area := maths.Row{s.name("A"), maths.Relation("="), outlineOf, maths.Beside, s.factorOf("t"), maths.Relation("="), s.area("d", perimeter*t)}
 	s.putAt(s.label(area), Point{x + length/2, -13}, middle)
 	if !s.has("d_s") {
 		s.notes = append(s.notes, "the size of the shank is not given")
 	}
-	return s.done(title, "The plate is sheared along a cylinder below the edge of the head, with the area "+plainOf(s.area("d", math.Pi*d*t))+".")
+	return s.done(title, "The plate is sheared along a surface below the edge of the head, with the area "+plainOf(s.area("d", perimeter*t))+".")
+}
+
+// outlineOfHead is the outline that a head is sheared along: a circle of
+// diameter d, or with a length given a rectangle of that length and the width d.
+func (s *sketch) outlineOfHead(d float64) (float64, maths.Node) {
+	if !s.has("l") {
+		return math.Pi * d, maths.Row{s.name("π"), maths.Beside, s.factorOf("d")}
+	}
+	sum := maths.Row{s.symbolOf("d"), maths.Plus, s.symbolOf("l")}
+	return 2 * (d + s.arg("l").x), maths.Row{maths.Number{Value: "2"}, maths.Beside, maths.Paren(sum)}
 }
