@@ -16,6 +16,13 @@ func NewPage(s *notebook.Sheet) *Page {
 	p := &Page{Sheet: s, Title: title(&s.Front)}
 	p.Blocks = make([][]Entry, len(s.Blocks))
 	c.numberCautions()
+	c.picks = picks{}
+	for _, b := range s.Blocks {
+		c.picks.add(b.Steps)
+	}
+	for _, r := range s.Refs {
+		c.picks.whole(r.Step)
+	}
 	for i, b := range s.Blocks {
 		p.Blocks[i] = c.block(b)
 	}
@@ -35,6 +42,7 @@ type composer struct {
 	sheet    *notebook.Sheet
 	cautions []CautionLine
 	calls    int // helpers placed so far
+	picks    picks
 }
 
 func title(f *notebook.Front) Title {

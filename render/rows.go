@@ -146,7 +146,9 @@ func (c *composer) schedule(b *notebook.Block) Entry {
 			return appendFigures(dst, s.Printed(row))
 		}})
 	}
-	if !b.Full && t.Rows > wholeRows && len(keep) > 0 {
+	if used := c.picks.printed(b.Tree, b.Rows); used != nil && !b.Full {
+		t.print(used)
+	} else if !b.Full && t.Rows > wholeRows && len(keep) > 0 {
 		keep[0], keep[t.Rows-1] = true, true
 		t.print(keep)
 	}

@@ -1,6 +1,7 @@
 package pdf
 
 import (
+	"math"
 	"strconv"
 
 	"gusset/render"
@@ -13,7 +14,12 @@ func (b *prose) tabular(e *render.Entry) {
 	if e.Note != "" || e.Number != "" || len(e.Refs) > 0 {
 		r := b.row()
 		r.words(noteVoice, e.Note)
+		// Two lines of sources stand beside the head of the table.
+		b.mayHang = len(e.Tables) > 0 && len(e.Refs) == 1
 		b.finish(r, e, entryPad)
+		b.mayHang, b.hanging = false, math.Max(0, b.hanging-2*tableVoice.leading)
+		b.space(b.hanging)
+		b.hanging = 0
 		b.keep()
 	} else if e.Anchor != "" {
 		b.anchors = append(b.anchors, e.Anchor)
