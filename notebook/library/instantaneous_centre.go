@@ -65,7 +65,7 @@ func (g *boltGroup) movement() (vec3, error) {
 	miss := g.miss(q)
 	for range icSteps {
 		if miss.norm() <= icTolerance {
-			return q, nil
+			return q.dusted(), nil
 		}
 		step, ok := g.newton(q, miss)
 		if !ok {
@@ -86,7 +86,7 @@ func (g *boltGroup) movement() (vec3, error) {
 	if miss.norm() > 1e-9 {
 		return vec3{}, errNoCentre
 	}
-	return q, nil
+	return q.dusted(), nil
 }
 
 // miss is the part of the forces that is not along the load, as part of them.
@@ -134,6 +134,16 @@ func (a vec3) unit() vec3 {
 		return a
 	}
 	return vec3{a[0] / n, a[1] / n, a[2] / n}
+}
+
+// dusted returns a unit vector without the dust of rounding, which would be read as a movement.
+func (a vec3) dusted() vec3 {
+	for i, x := range a {
+		if math.Abs(x) < 1e-12 {
+			a[i] = 0
+		}
+	}
+	return a
 }
 
 // normals returns two vectors that are square to a unit vector and to each other.
