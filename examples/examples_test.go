@@ -216,7 +216,8 @@ func (w *walker) uses(st *eval.Step, depth int) {
 	}
 }
 
-// call holds the lines of a helper to its arguments and to each other.
+// call holds the lines of a helper to its arguments and to each other; a
+// function of the author's own may use lines of the calc too.
 func (w *walker) call(st *eval.Step, call *eval.Call) {
 	known := map[*eval.Step]bool{}
 	for _, a := range call.Args {
@@ -225,8 +226,11 @@ func (w *walker) call(st *eval.Step, call *eval.Call) {
 	for _, in := range call.Steps {
 		known[in] = true
 		for _, u := range in.Uses {
-			if u != nil && !known[u] && u.ID != "pi" && u.ID != "g_n" {
-				w.t.Errorf("line %d: in %s, %s uses %s from outside", st.Line, call.Helper.Name.ID, in.ID, u.ID)
+			outside := u != nil && !known[u] && u.ID != "pi" && u.ID != "g_n"
+			if call.Helper == nil && outside && w.line[u] != nil {
+				w.walk(w.line[u], 1)
+			} else if outside {
+				w.t.Errorf("line %d: in %s, %s uses %s from outside", st.Line, call.Expr.Fun.ID, in.ID, u.ID)
 			}
 		}
 		for _, inner := range in.Calls {

@@ -146,7 +146,7 @@ func stepsOf(s *notebook.Sheet, names ...string) []*eval.Step {
 		for _, call := range st.Calls {
 			for _, in := range call.Steps {
 				for _, name := range names {
-					if in.ID == name && call.Helper.Name.ID == "bolt_group_elastic" {
+					if in.ID == name && call.Expr.Fun.ID == "bolt_group_elastic" {
 						list = append(list, in)
 					}
 				}

@@ -57,7 +57,11 @@ func (m *machine) callFunc(n *check.Node, f *frame, target *check.Type, entry in
 		if len(inst.Body.Branches) > 1 {
 			step.Taken = []int{taken}
 		}
-		*outer = append(*outer, &Call{Expr: n.Expr.(*syntax.Call), Steps: []*Step{step}})
+		call := &Call{Expr: n.Expr.(*syntax.Call), Steps: []*Step{step}}
+		for _, p := range inst.Params {
+			call.Args = append(call.Args, g.steps[p.Slot])
+		}
+		*outer = append(*outer, call)
 	}
 	return v, m.inFunction(err, n, f)
 }
