@@ -7,6 +7,7 @@ import (
 	east "github.com/yuin/goldmark/extension/ast"
 
 	"gusset/notebook"
+	"gusset/render"
 )
 
 // document writes the prose and the blocks within it, one row of the three
@@ -265,18 +266,33 @@ func (w *writer) inline(n ast.Node) {
 // prose writes a run of text, its backslashes and references resolved.
 func (w *writer) prose(n *ast.Text) {
 	raw := n.Segment.Value(w.source)
+	text := ""
 	switch {
 	case n.IsRaw() || bytes.IndexByte(raw, '\\') < 0 && bytes.IndexByte(raw, '&') < 0:
-		w.text(string(raw))
+		text = string(raw)
 	default:
-		w.text(notebook.Unescape(raw))
+		text = notebook.Unescape(raw)
 	}
+	w.words(text)
 	switch {
 	case n.HardLineBreak():
 		w.raw("<br>\n")
 	case n.SoftLineBreak():
 		w.raw("\n")
 	}
+}
+
+// words writes prose whose numbers stay on one line with their units.
+func (w *writer) words(text string) {
+	from := 0
+	for i := 1; i < len(text); i++ {
+		if text[i] == ' ' && text[i-1] >= '0' && text[i-1] <= '9' && render.Measured(text[:i], text[i+1:]) {
+			w.text(text[from:i])
+			w.raw("\u00a0")
+			from = i + 1
+		}
+	}
+	w.text(text[from:])
 }
 
 func (w *writer) codeSpan(n ast.Node) {

@@ -21,6 +21,7 @@ var constructs = []struct {
 	want           []string
 }{
 	{"paragraphs", "one one\ntwo\n\nthree", []string{"<p>one one\ntwo</p>", "<p>three</p>"}},
+	{"numbers and units", "over 12 mm or 5 kN/m, 20 bolts, in 2 lines", []string{"over 12\u00a0mm or 5\u00a0kN/m, 20 bolts, in 2 lines"}},
 	{"hard break", "one  \ntwo\\\nthree", []string{"one<br>\ntwo<br>\nthree"}},
 	{"atx headings", "# Top\n\n## Under\n\n### Third\n\n#### Fourth\n\n##### Fifth\n\n###### Sixth",
 		[]string{`<h2 id="top"><span class="no">1</span> Top</h2>`, `<h3 id="under"><span class="no">1.1</span> Under</h3>`, "Third</h4>", "Fourth</h5>", "Fifth</h6>", "Sixth</h6>"}},
