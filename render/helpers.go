@@ -13,8 +13,12 @@ import (
 func (c *composer) place(call *eval.Call) {
 	c.calls++
 	at := "h" + strconv.Itoa(c.calls) + "."
+	given := at + "given"
+	if call.Helper == nil && len(call.Steps) > 0 { // a function has no head
+		given = at + call.Steps[0].ID
+	}
 	for _, a := range call.Args {
-		c.maths.Place(a, at+"given")
+		c.maths.Place(a, given)
 	}
 	for _, s := range call.Steps {
 		if s.ID != "" {

@@ -89,10 +89,14 @@ func printed(t *testing.T, ctx context.Context) {
 	}
 }
 
-// media sets what the page is shown for: "screen" or "print".
+// media sets what the page is shown for, "screen" or "print", and lets it have
+// the focus.
 func media(name string) chromedp.Action[chromedp.Void] {
 	return chromedp.Func(func(ctx context.Context, target *chromedp.Target) error {
-		_, err := cdp.Call(ctx, target, emulation.SetEmulatedMedia, emulation.SetEmulatedMediaParams{Media: name})
+		if _, err := cdp.Call(ctx, target, emulation.SetEmulatedMedia, emulation.SetEmulatedMediaParams{Media: name}); err != nil {
+			return err
+		}
+		_, err := cdp.Call(ctx, target, emulation.SetFocusEmulationEnabled, emulation.SetFocusEmulationEnabledParams{Enabled: true})
 		return err
 	})
 }
