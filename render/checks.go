@@ -15,7 +15,7 @@ func (c *composer) check(s *eval.Step, e *Entry, full bool) {
 	r := s.Check
 	e.Kind = Check
 	e.Verdict = verdict(r)
-	e.Formula = c.relation(s, r.Sides, r.Ops, r.Type, r.Governs)
+	e.Formula = c.relation(s, r.Sides, r.Ops, r.Type, r.Governs, e.Verdict.OK)
 	if !e.Verdict.Required {
 		e.Formula = c.asWritten(s, r)
 	}
@@ -71,7 +71,10 @@ func verdict(r *eval.CheckResult) *Verdict {
 }
 
 // relation sets a chain of comparisons with the values of an entry: τ = 48.89 MPa ≤ 0.9 f_y = 0.9·355 MPa = 319.5 MPa.
-func (c *composer) relation(s *eval.Step, sides []eval.Side, ops []syntax.Op, t check.Type, entry int) maths.Chain {
+func (c *composer) relation(s *eval.Step, sides []eval.Side, ops []syntax.Op, t check.Type, entry int, holds bool) maths.Chain {
+	if len(ops) == 1 && ops[0] == syntax.Eq {
+		return c.equality(s, sides, t, entry, holds)
+	}
 	var chain maths.Chain
 	for i := range sides {
 		written := c.maths.Write(sides[i].Expr, s)
@@ -86,6 +89,30 @@ func (c *composer) relation(s *eval.Step, sides []eval.Side, ops []syntax.Op, t 
 		if value := c.side(s, &sides[i], t, entry); value != nil && !same(value, written) {
 			chain.Steps = append(chain.Steps, maths.Step{Sign: "=", Right: value})
 		}
+	}
+	return chain
+}
+
+// equality sets a comparison with ==, whose sign must not be read as that of a
+// value: k = 0.85 where it holds, else k = 0.85: 0.8533 ≠ 0.85.
+func (c *composer) equality(s *eval.Step, sides []eval.Side, t check.Type, entry int, holds bool) maths.Chain {
+	var written, values [2]maths.Node
+	for i := range written {
+		written[i] = c.maths.Write(sides[i].Expr, s)
+		if values[i] = c.side(s, &sides[i], t, entry); values[i] == nil {
+			values[i] = written[i]
+		}
+	}
+	equality := maths.Row{written[0], maths.Relation("=="), written[1]}
+	if !holds {
+		return maths.Chain{
+			Left:  append(equality, maths.Op{Sign: ":", Class: maths.Punct}, maths.Blank, values[0]),
+			Steps: []maths.Step{{Sign: "!=", Right: values[1]}},
+		}
+	}
+	chain := maths.Chain{Left: written[0], Steps: []maths.Step{{Sign: "==", Right: written[1]}}}
+	if !same(values[1], written[1]) {
+		chain.Steps = append(chain.Steps, maths.Step{Sign: "=", Right: values[1]})
 	}
 	return chain
 }
@@ -168,9 +195,9 @@ func (c *composer) needed(s *eval.Step) []Phrase {
 	r := s.Check
 	p := Phrase{Before: "required, since", Formula: maths.Chain{Left: c.maths.Write(stmt.If, s)}}
 	if compare, ok := bare(stmt.If).(*syntax.Compare); ok && len(r.NeededIf) == len(compare.Operands) {
-		p.Formula = c.relation(s, r.NeededIf, compare.Ops, r.Type, r.Governs)
+		p.Formula = c.relation(s, r.NeededIf, compare.Ops, r.Type, r.Governs, r.Governs < len(r.Required) && r.Required[r.Governs])
 	} else if put := c.maths.Put(stmt.If, s, r.Type, r.Governs); put != nil {
-		p.Formula.Steps = []maths.Step{{Sign: ":", Right: put}}
+		p.Formula.Left = maths.Row{p.Formula.Left, maths.Op{Sign: ":", Class: maths.Punct}, maths.Blank, put}
 	}
 	p.Formula = maths.InlineChain(p.Formula)
 	if r.Governs < len(r.Required) && !r.Required[r.Governs] {
@@ -190,7 +217,7 @@ func (c *composer) limit(s *eval.Step, e *Entry) {
 	needs, ok := s.Stmt.(*syntax.Needs)
 	switch {
 	case r != nil && len(r.Sides) > 0:
-		e.Formula = c.relation(s, r.Sides, r.Ops, r.Type, r.Governs)
+		e.Formula = c.relation(s, r.Sides, r.Ops, r.Type, r.Governs, e.Verdict.OK)
 	case ok:
 		e.Formula.Left = c.maths.Write(needs.Cond, s)
 		if put := c.maths.Put(needs.Cond, s, check.Type{}, 0); put != nil {

@@ -33,7 +33,6 @@ func (b *prose) entries(index int) {
 			for n < len(list) && list[n].Kind == render.Line && list[n].Indent == list[i].Indent {
 				n++
 			}
-			b.mayHang = false
 			b.lines(list[i:n])
 			i = n - 1
 		} else {
@@ -56,7 +55,11 @@ func mayHang(e *render.Entry) bool {
 // takesHanging reports whether the reference column beside an entry is free
 // for what hangs down from the entry above.
 func takesHanging(e *render.Entry) bool {
-	return (e.Kind == render.Limit || e.Kind == render.Formula) && e.Number == "" && len(e.Refs) == 0
+	switch e.Kind {
+	case render.Limit, render.Formula, render.Line:
+		return e.Number == "" && len(e.Refs) == 0
+	}
+	return false
 }
 
 // indented runs a function with the column moved in by the entry's steps, with
@@ -199,7 +202,14 @@ func (b *prose) finish(r *row, e *render.Entry, pad float64) {
 	parts[0].gap = 0
 	parts[0].pad, parts[0].height, parts[0].baseline = pad, parts[0].height+pad, parts[0].baseline+pad
 	parts[len(parts)-1].height += pad
-	lack := b.references(parts, e)
+	lack := math.Max(b.references(parts, e), b.hanging) - height(parts)
+	b.hanging = 0
+	hangs := lack > 0 && b.mayHang
+	if hangs {
+		b.hanging = lack
+	} else if lack > 0 {
+		parts[len(parts)-1].height += lack
+	}
 	if e.Kind == render.Check {
 		b.verdictBeside(parts, e)
 	} else {
@@ -207,14 +217,6 @@ func (b *prose) finish(r *row, e *render.Entry, pad float64) {
 	}
 	if e.Anchor != "" {
 		b.anchors = append(b.anchors, e.Anchor)
-	}
-	lack = math.Max(lack, b.hanging) - height(parts)
-	b.hanging = 0
-	hangs := lack > 0 && b.mayHang
-	if hangs {
-		b.hanging = lack
-	} else if lack > 0 {
-		parts[len(parts)-1].height += lack
 	}
 	for i := range parts {
 		parts[i].keep = i < len(parts)-1 || hangs
@@ -250,6 +252,11 @@ func (b *prose) references(parts []slab, e *render.Entry) float64 {
 		}
 		p := &paragraph{}
 		p.write(st, ref.Text)
+		for i := range p.words {
+			if p.words[i].cost == numberCost {
+				p.words[i].cost = tableCost
+			}
+		}
 		// A source that is longer stands whole in the list of sources.
 		p, lines := p.few(width, 12)
 		for _, l := range lines {

@@ -22,8 +22,11 @@ func mathsBox(m *maths.Box, c colour) *box {
 
 // besideFace is the face of figures and units beside a text.
 func besideFace(st style) *fonts.Face {
-	if st.face == fonts.Sans || st.face == fonts.SansSemiBold {
-		return fonts.Sans
+	switch st.face {
+	case fonts.Sans, fonts.SansSemiBold, fonts.SerifSemiBold:
+		return st.face
+	case fonts.SerifSemiBoldItalic:
+		return fonts.SerifSemiBold
 	}
 	return fonts.Serif
 }

@@ -15,6 +15,7 @@ func (b *prose) lines(list []render.Entry) {
 	b.indented(&list[0], func() {
 		c := columnsOf(list, b.width)
 		for i := range list {
+			b.mayHang = i+1 < len(list) && mayHang(&list[i]) && takesHanging(&list[i+1])
 			b.line(&list[i], &c.lines[i], c)
 			if i == 0 && len(list) > 1 || i == len(list)-2 {
 				b.keep() // no page begins or ends with a single one of them

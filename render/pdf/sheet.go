@@ -99,7 +99,7 @@ func (d *document) cell(k *ink, c render.Cell, x, y float64) float64 {
 	for _, s := range []string{c.Text, c.Date} {
 		p := &paragraph{}
 		p.write(cellStyle, s)
-		p, lines := p.few(width, 3)
+		p, lines := p.few(width, 5)
 		for _, l := range lines {
 			if k != nil {
 				p.set(k, l, x+cellPad, at)

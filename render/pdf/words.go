@@ -42,6 +42,7 @@ const (
 	hyphenCost = 0.4
 	slashCost  = 1.5
 	numberCost = 1.4 // before a number, which belongs to the word before it: Table 3
+	tableCost  = 8   // the same in the narrow column of references
 	unitCost   = 12  // between a number and its unit
 )
 
@@ -154,7 +155,7 @@ func (p *paragraph) place(st style, b *box) {
 
 func (p *paragraph) grow(c piece) {
 	if !p.open {
-		if n := len(p.words); n > 0 && c.text != "" && c.text[0] >= '0' && c.text[0] <= '9' {
+		if n := len(p.words); n > 0 && startsNumber(c.text) {
 			p.words[n-1].cost = math.Max(p.words[n-1].cost, numberCost)
 		}
 		p.words = append(p.words, word{from: len(p.pieces)})
@@ -169,6 +170,14 @@ func (p *paragraph) grow(c piece) {
 	}
 	w.to = len(p.pieces)
 	w.width += c.width
+}
+
+// startsNumber reports whether a text begins a number: 3, or J3.2 of a code.
+func startsNumber(s string) bool {
+	if s != "" && s[0] >= 'A' && s[0] <= 'Z' {
+		s = s[1:]
+	}
+	return s != "" && s[0] >= '0' && s[0] <= '9'
 }
 
 // blank ends the open word with a space.
