@@ -279,9 +279,9 @@ func (w *writer) tableHead(h *render.Head) {
 	w.text(h.Words)
 	w.symbol(h.Symbol)
 	if len(h.Unit) > 0 {
-		w.raw(` <span>`)
+		w.raw(` <span>[`)
 		w.unit(h.Unit)
-		w.raw("</span>")
+		w.raw("]</span>")
 	}
 	w.raw("</th>")
 }

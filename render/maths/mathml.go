@@ -18,7 +18,7 @@ math .g{font-weight:600}
 math mn.l{line-height:0}
 math a{color:inherit;text-decoration:none}
 math a:is(:hover,:focus){text-decoration:underline;text-decoration-thickness:.06em;text-underline-offset:.2em}
-math mtd{text-align:left;padding:.15em .5em .15em 0}
+math mtd{text-align:left;padding:.28em .5em .28em 0}
 math mtd:first-child{padding-left:.25em}
 .chain,.chain>span,.chain>span>span{display:flex;align-items:baseline}
 .chain>span,.chain>span>span{flex-wrap:wrap;row-gap:.35em;min-width:0}
@@ -212,8 +212,11 @@ func (w *markup) op(o Op, form string) {
 		return
 	}
 	w.raw("<mo")
-	if o.Class == Func {
+	switch {
+	case o.Class == Func:
 		w.raw(` lspace="0" rspace=".17em"`)
+	case o.Sign == Slash.Sign:
+		w.raw(` lspace="0" rspace="0"`)
 	}
 	if form != "" {
 		w.raw(` form="`)
