@@ -73,11 +73,10 @@ var (
 	quantitiesByName = indexQuantities()
 	quantitiesByDim  = indexDimensions()
 
-	dimForce       = quantitiesByName["force"]
-	dimLength      = quantitiesByName["length"]
-	dimMoment      = quantitiesByName["moment"]
-	dimFrequency   = quantitiesByName["frequency"]
-	dimTemperature = quantitiesByName["temperature difference"]
+	dimForce     = quantitiesByName["force"]
+	dimLength    = quantitiesByName["length"]
+	dimMoment    = quantitiesByName["moment"]
+	dimFrequency = quantitiesByName["frequency"]
 )
 
 func indexQuantities() map[string]Dimension {

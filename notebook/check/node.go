@@ -186,8 +186,6 @@ type CheckPlan struct {
 	IfOps   []syntax.Op
 	Type    Type // the rows it runs over
 	Warn    bool // a limit that only warns
-	// Refs are the printed units of the sides, nil where a preference decides.
-	Units []*units.Unit
 }
 
 // ColumnPlan is one column of a schedule: an expression for each row, nil

@@ -159,9 +159,6 @@ var functions2 = map[string]func(x, y float64) float64{
 	"round": stepped(round), "floor": stepped(floor), "ceil": stepped(ceil),
 }
 
-// functionsN are those that go on with a third argument as they did with the second.
-var functionsN = map[string]bool{"min": true, "max": true, "hypot": true}
-
 // apply computes a built-in function of its arguments.
 func apply(fn string, args []float64) float64 {
 	for _, a := range args {
