@@ -39,8 +39,8 @@ func (b *prose) entries(index int) {
 			b.mayHang = i+1 < len(list) && mayHang(&list[i]) && takesHanging(&list[i+1])
 			b.entry(&list[i])
 		}
-		if i+1 < len(list) && list[i+1].Kind == render.HelperHead {
-			b.keep() // a call stands with the head of the helper's lines
+		if i+1 < len(list) && list[i+1].Indent > list[i].Indent {
+			b.keep() // a call stands with the first of the lines that it leads to
 		}
 	}
 	b.space(blockGap - entryPad)

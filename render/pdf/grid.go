@@ -41,6 +41,9 @@ const (
 	rowRule   = 0.4
 )
 
+// shortTable is the most rows that are kept together.
+const shortTable = 6
+
 // grid pushes a table. It is built in the voice asked for, and in smaller ones
 // where its words do not fit side by side. A row taller than the limit may
 // break between lines.
@@ -74,8 +77,9 @@ func (f *flow) grid(v voice, build func(v voice) *grid, limit float64) {
 			if last && (!g.plain || i == len(g.rows)-1) {
 				s.ink.fill(f.x, s.height-rowRule, whole, rowRule, hairColour)
 			}
-			// The first row does not leave the head, nor the last the one before it.
-			s.keep = i == 0 && len(g.rows) > 1 || i == len(g.rows)-2 || !last
+			// The first row does not leave the head, nor the last the one before
+			// it; a short table stands on one page.
+			s.keep = i == 0 && len(g.rows) > 1 || i == len(g.rows)-2 || !last || len(g.rows) <= shortTable
 			if i == len(g.rows)-1 && last || height(parts) > limit {
 				s.keep = false
 			}

@@ -109,6 +109,18 @@ func lineCost(set, width float64, words int, last bool) float64 {
 	return each + free*free
 }
 
+// balanced is the least width at which a paragraph, as of a title, has no more
+// lines than at a width: then they are of much the same length.
+func (p *paragraph) balanced(width float64) float64 {
+	const step = 6
+	whole := p.fitted(width)
+	_, least := whole.natural()
+	for count := len(whole.lines(width)); width-step > least && len(whole.lines(width-step)) == count; {
+		width -= step
+	}
+	return width
+}
+
 // few breaks a paragraph to a width into at most so many lines; where there
 // are more the last one ends with an ellipsis.
 func (p *paragraph) few(width float64, most int) (*paragraph, []line) {

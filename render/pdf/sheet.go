@@ -136,7 +136,7 @@ func (d *document) titleName(width float64) (ink, float64) {
 		}
 		p := &paragraph{}
 		p.write(st, s)
-		p, lines := p.few(room, 5)
+		p, lines := p.few(p.balanced(room), 5)
 		for _, l := range lines {
 			p.set(&k, l, x, y+0.78*leading)
 			y += leading

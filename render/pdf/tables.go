@@ -69,7 +69,9 @@ func (d *document) rowsGrid(t *render.Table, v voice) *grid {
 		p.write(st, h.Words)
 		if h.Symbol != nil {
 			p.blank(st)
-			d.formula(p, h.Symbol, st)
+			symbol := st
+			symbol.face = v.regular
+			d.formula(p, h.Symbol, symbol)
 		}
 		if len(h.Unit) > 0 {
 			p.blank(st)
