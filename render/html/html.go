@@ -11,6 +11,7 @@ package html
 
 import (
 	"encoding/binary"
+	"slices"
 	"unicode/utf8"
 
 	"gusset/notebook"
@@ -21,16 +22,20 @@ import (
 
 // Append appends the HTML file of a page.
 func Append(dst []byte, p *render.Page) []byte {
+	from := len(dst)
 	w := &writer{page: p, sheet: p.Sheet, source: p.Sheet.Source.Text}
-	w.b = make([]byte, 0, grown*len(w.source)+1<<16)
+	w.b = slices.Grow(dst, headSize+grown*len(w.source))
 	w.body()
-	dst = w.head(dst)
-	dst = append(dst, w.b...)
-	return append(dst, "</body>\n</html>\n"...)
+	w.raw("</body>\n</html>\n")
+	return slices.Insert(w.b, from, w.head(w.b[from:])...)
 }
 
-// grown is how many bytes of a page a byte of a calc grows to, and a little more.
-const grown = 28
+// grown is how many bytes of a page a byte of a calc grows to, and headSize how
+// many its head has with the faces, and a little more.
+const (
+	grown    = 22
+	headSize = 1 << 19
+)
 
 // writer writes the body of a page.
 type writer struct {
@@ -42,10 +47,10 @@ type writer struct {
 	strong bool // the page has text that is both bold and italic
 }
 
-// head appends everything before the body's content: the characters of the
-// body tell which parts of the faces it needs.
-func (w *writer) head(dst []byte) []byte {
-	h := &writer{b: dst}
+// head is everything before the body's content: the characters of the body
+// tell which parts of the faces it needs.
+func (w *writer) head(body []byte) []byte {
+	h := &writer{b: make([]byte, 0, headSize)}
 	f := &w.sheet.Front
 	h.raw("<!DOCTYPE html>\n<html lang=\"en\">\n<head>\n<meta charset=\"utf-8\">\n" +
 		// A reader of a file from outside is safe even from what the writer lets through.
@@ -68,7 +73,7 @@ func (w *writer) head(dst []byte) []byte {
 	}
 	h.raw("<style>\n")
 	var runes fonts.Runes
-	addRunes(&runes, w.b)
+	addRunes(&runes, body)
 	addRunes(&runes, h.b)
 	faces := []*fonts.Face{fonts.Serif, fonts.SerifItalic, fonts.SerifSemiBold, fonts.Sans, fonts.SansSemiBold, fonts.Math}
 	if w.mono {

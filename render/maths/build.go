@@ -15,53 +15,116 @@ import (
 // in ten formulas is set once. One goroutine uses it at a time; the trees are
 // for everyone.
 type Builder struct {
-	symbols   map[string]Symbol
+	names     map[string]Node // Symbols
 	units     map[string]Unit
-	values    map[valueKey]Node
-	written   map[*eval.Step]Node
-	anchors   map[*eval.Step]string
+	forms     map[*eval.Step]*forms
 	functions map[string]*eval.Step // the author's own, by name
+	chunk     []forms               // room for the next forms
+	nodes     []Node                // room for the next rows
 	tip       []byte                // room for the tip in the making
+	tips      strings.Builder       // the tips, one after another
 }
 
-type valueKey struct {
-	step  *eval.Step
-	entry int
+// forms are the ways in which a step has been set.
+type forms struct {
+	anchor  string // where it stands, if its step does not say
+	plain   Node   // its symbol
+	symbol  Node   // its symbol by the name, which leads to where it stands
+	name    string
+	written Node // its right side
+	values  []form
 }
+
+// form is an entry of a step's value as it has been set.
+type form struct {
+	entry         int
+	output, value Node // without a link and with one; nil for not yet
+	tip           string
+}
+
+// chunk is how many forms or nodes room is made for at a time.
+const chunk = 64
 
 // NewBuilder returns a builder that has built nothing yet.
 func NewBuilder() *Builder {
 	return &Builder{
-		symbols: map[string]Symbol{},
-		units:   map[string]Unit{},
-		values:  map[valueKey]Node{},
-		written: map[*eval.Step]Node{},
-		anchors: map[*eval.Step]string{},
-
+		names:     map[string]Node{},
+		units:     map[string]Unit{},
+		forms:     map[*eval.Step]*forms{},
 		functions: map[string]*eval.Step{},
 	}
 }
 
+// of returns the forms of a step.
+func (b *Builder) of(s *eval.Step) *forms {
+	f := b.forms[s]
+	if f == nil {
+		if len(b.chunk) == 0 {
+			b.chunk = make([]forms, chunk)
+		}
+		f, b.chunk = &b.chunk[0], b.chunk[1:]
+		b.forms[s] = f
+	}
+	return f
+}
+
+// at returns the form of an entry of a step's value; it is good until the next
+// call for the step.
+func (f *forms) at(entry int) *form {
+	for i := range f.values {
+		if f.values[i].entry == entry {
+			return &f.values[i]
+		}
+	}
+	f.values = append(f.values, form{entry: entry})
+	return &f.values[len(f.values)-1]
+}
+
+// room returns an empty row with room for n nodes.
+func (b *Builder) room(n int) Row {
+	if len(b.nodes) < n {
+		b.nodes = make([]Node, max(n, chunk))
+	}
+	row := b.nodes[:0:n]
+	b.nodes = b.nodes[n:]
+	return row
+}
+
+// row returns nodes side by side.
+func (b *Builder) row(list ...Node) Row { return append(b.room(len(list)), list...) }
+
 // Place tells where a step without an anchor of its own stands on the page.
-func (b *Builder) Place(s *eval.Step, anchor string) { b.anchors[s] = anchor }
+func (b *Builder) Place(s *eval.Step, anchor string) {
+	f := b.of(s)
+	f.anchor, f.symbol = anchor, nil
+}
 
 // Anchor is where a step stands on the page, "" for nowhere.
 func (b *Builder) Anchor(s *eval.Step) string {
 	if s.Anchor != "" {
 		return s.Anchor
 	}
-	return b.anchors[s]
+	if f := b.forms[s]; f != nil {
+		return f.anchor
+	}
+	return ""
 }
 
 // Define tells of a function of the author's own, which calls of it lead to.
 func (b *Builder) Define(s *eval.Step) { b.functions[s.ID] = s }
 
-// Name returns a name as a symbol. The names before a dot, a schedule's or
+// Name returns a name as a Symbol. The names before a dot, a schedule's or
 // another calc's, stand last in its subscript.
-func (b *Builder) Name(name string) Symbol {
-	if s, ok := b.symbols[name]; ok {
-		return s
+func (b *Builder) Name(name string) Node {
+	n := b.names[name]
+	if n == nil {
+		n = symbol(name)
+		b.names[name] = n
 	}
+	return n
+}
+
+func symbol(name string) Symbol {
 	var s Symbol
 	qualifier, last, dotted := "", name, false
 	if i := strings.LastIndexByte(name, '.'); i >= 0 {
@@ -78,24 +141,37 @@ func (b *Builder) Name(name string) Symbol {
 	if dotted {
 		s.Sub = append(s.Sub, qualifier)
 	}
-	b.symbols[name] = s
 	return s
 }
 
 // Symbol returns the symbol of a step, which leads to where it stands.
-func (b *Builder) Symbol(s *eval.Step) Symbol {
-	symbol := b.Plain(s)
-	symbol.Target = b.Anchor(s)
-	return symbol
+func (b *Builder) Symbol(s *eval.Step) Node { return b.linked(stepName(s), s) }
+
+// linked is a name as a symbol that leads to where a step stands.
+func (b *Builder) linked(name string, s *eval.Step) Node {
+	f := b.of(s)
+	if f.symbol == nil || f.name != name {
+		symbol := b.Name(name).(Symbol)
+		symbol.Target = b.Anchor(s)
+		f.symbol, f.name = symbol, name
+	}
+	return f.symbol
 }
 
 // Plain returns the symbol of a step without a link.
-func (b *Builder) Plain(s *eval.Step) Symbol {
-	name := s.Symbol
-	if name == "" {
-		name = s.ID
+func (b *Builder) Plain(s *eval.Step) Node {
+	f := b.of(s)
+	if f.plain == nil {
+		f.plain = b.Name(stepName(s))
 	}
-	return b.Name(name)
+	return f.plain
+}
+
+func stepName(s *eval.Step) string {
+	if s.Symbol == "" {
+		return s.ID
+	}
+	return s.Symbol
 }
 
 // Unit returns a unit as it is set.
@@ -140,15 +216,35 @@ func (b *Builder) piece(p eval.Piece, ref Ref) Node {
 // Value returns an entry of a step's value as printed. It leads to where the
 // value was defined and tells how it came about.
 func (b *Builder) Value(s *eval.Step, entry int) Node {
-	key := valueKey{s, entry}
-	if n, ok := b.values[key]; ok {
+	f := b.of(s)
+	if n := f.at(entry).value; n != nil {
 		return n
 	}
-	n := b.Pieces(s.Printed(entry), Ref{Target: b.Anchor(s), Tip: b.Tip(s, entry)})
+	ref := Ref{Target: b.Anchor(s), Tip: b.Tip(s, entry)}
+	n := refer(b.Output(s, entry), ref)
 	if IsCarried(s) {
 		n = Script{Base: n, Sup: Text{Text: CarriedMark}}
 	}
-	b.values[key] = n
+	f.at(entry).value = n
+	return n
+}
+
+// refer gives a printed value something behind it.
+func refer(n Node, ref Ref) Node {
+	switch n := n.(type) {
+	case Number:
+		n.Ref = ref
+		return n
+	case Text:
+		n.Ref = ref
+		return n
+	case Row:
+		row := make(Row, len(n))
+		for i, c := range n {
+			row[i] = refer(c, ref)
+		}
+		return row
+	}
 	return n
 }
 
@@ -161,18 +257,28 @@ const CarriedMark = "†"
 func IsCarried(s *eval.Step) bool { return s.Origin != nil && s.Stmt == nil }
 
 // Output returns an entry of a step's value as printed, without a link.
-func (b *Builder) Output(s *eval.Step, entry int) Node { return b.Pieces(s.Printed(entry), Ref{}) }
+func (b *Builder) Output(s *eval.Step, entry int) Node {
+	f := b.of(s).at(entry)
+	if f.output == nil {
+		f.output = b.Pieces(s.Printed(entry), Ref{})
+	}
+	return f.output
+}
 
 // Tip is a value's derivation one level deep as plain text:
 // `τ = P/(2·A) = 48.89 MPa (1.2)`.
 func (b *Builder) Tip(s *eval.Step, entry int) string {
+	f := b.of(s)
+	if tip := f.at(entry).tip; tip != "" {
+		return tip
+	}
 	t := AppendPlain(b.tip[:0], b.Plain(s))
 	if n := b.rightSide(s, entry); n != nil {
 		t = append(t, " = "...)
 		t = AppendPlain(t, n)
 	}
 	t = append(t, " = "...)
-	t = AppendPlain(t, b.Pieces(s.Printed(entry), Ref{}))
+	t = AppendPlain(t, b.Output(s, entry))
 	if mark := s.Value.Type.Mark(entry); mark != "" {
 		t = append(append(t, ", "...), mark...)
 	}
@@ -189,7 +295,20 @@ func (b *Builder) Tip(s *eval.Step, entry int) string {
 		t = append(append(append(t, " ["...), s.Source...), ']')
 	}
 	b.tip = t
-	return string(t)
+	tip := b.keep(t)
+	f.at(entry).tip = tip
+	return tip
+}
+
+// keep returns a text as a string. Strings share their room.
+func (b *Builder) keep(text []byte) string {
+	if b.tips.Cap()-b.tips.Len() < len(text) {
+		b.tips = strings.Builder{}
+		b.tips.Grow(max(len(text), 1<<12))
+	}
+	from := b.tips.Len()
+	b.tips.Write(text)
+	return b.tips.String()[from:]
 }
 
 // Origin names the calc that a value was carried from: C-101 rev B, Load takedown.
@@ -219,13 +338,11 @@ func Taken(s *eval.Step, entry int) int {
 // Written returns the right side of a definition as it was written, a choice
 // with its brace; the branch taken by the step's entry is marked.
 func (b *Builder) Written(s *eval.Step) Node {
-	if n, ok := b.written[s]; ok {
-		return n
+	f := b.of(s)
+	if f.written == nil {
+		f.written = b.branches(s.Stmt.(*syntax.Definition), s)
 	}
-	d := s.Stmt.(*syntax.Definition)
-	n := b.branches(d, s)
-	b.written[s] = n
-	return n
+	return f.written
 }
 
 func (b *Builder) branches(d *syntax.Definition, s *eval.Step) Node {
@@ -351,12 +468,11 @@ func (w *builder) name(n *syntax.Name) Node {
 }
 
 // symbol is a name as a symbol that leads to its definition.
-func (w *builder) symbol(n *syntax.Name, s *eval.Step) Symbol {
-	symbol := w.Name(n.Text)
-	if n.ID != "pi" {
-		symbol.Target = w.Anchor(s)
+func (w *builder) symbol(n *syntax.Name, s *eval.Step) Node {
+	if n.ID == "pi" {
+		return w.Name(n.Text)
 	}
-	return symbol
+	return w.linked(n.Text, s)
 }
 
 // measured is a value as the plain number of a unit, as an empirical rule takes it.

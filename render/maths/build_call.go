@@ -195,7 +195,7 @@ func (w *builder) helper(c *syntax.Call, run *eval.Call) (Node, rank) {
 func (w *builder) own(c *syntax.Call) Node {
 	f := w.Name(c.Fun.Text)
 	if s := w.functions[c.Fun.ID]; s != nil {
-		f.Target = w.Anchor(s)
+		f = w.linked(c.Fun.Text, s)
 	}
 	return Call(f, w.args(c)...)
 }

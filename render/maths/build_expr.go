@@ -136,18 +136,18 @@ func rankOfValue(n Node) rank {
 
 func (w *builder) unary(e *syntax.Unary) (Node, rank) {
 	if e.Op == syntax.Not {
-		return Row{Not, w.part(e.X, rankedCompare, true)}, rankedNot
+		return w.row(not, w.part(e.X, rankedCompare, true)), rankedNot
 	}
 	x := w.part(e.X, rankedSlash, false)
-	return Row{Minus, x}, rankedNeg
+	return w.row(minus, x), rankedNeg
 }
 
 func (w *builder) binary(e *syntax.Binary) (Node, rank) {
 	switch e.Op {
 	case syntax.Add:
-		return Row{w.part(e.X, rankedSum, true), Plus, w.part(e.Y, rankedSum, false)}, rankedSum
+		return w.row(w.part(e.X, rankedSum, true), plus, w.part(e.Y, rankedSum, false)), rankedSum
 	case syntax.Sub:
-		return Row{w.part(e.X, rankedSum, true), Minus, w.part(e.Y, rankedNeg, false)}, rankedSum
+		return w.row(w.part(e.X, rankedSum, true), minus, w.part(e.Y, rankedNeg, false)), rankedSum
 	case syntax.Mul:
 		return w.product(e)
 	case syntax.Div:
@@ -155,18 +155,18 @@ func (w *builder) binary(e *syntax.Binary) (Node, rank) {
 	case syntax.Pow:
 		return w.power(e)
 	case syntax.And:
-		return Row{w.part(e.X, rankedAnd, true), And, w.part(e.Y, rankedAnd, true)}, rankedAnd
+		return w.row(w.part(e.X, rankedAnd, true), and, w.part(e.Y, rankedAnd, true)), rankedAnd
 	case syntax.Or:
-		return Row{w.part(e.X, rankedOr, true), Or, w.part(e.Y, rankedOr, true)}, rankedOr
+		return w.row(w.part(e.X, rankedOr, true), or, w.part(e.Y, rankedOr, true)), rankedOr
 	}
 	return nil, rankedAtom
 }
 
 func (w *builder) compare(e *syntax.Compare) Node {
-	row := make(Row, 0, 2*len(e.Operands))
+	row := w.room(2 * len(e.Operands))
 	for i, x := range e.Operands {
 		if i > 0 {
-			row = append(row, Relation(e.Ops[i-1].String()))
+			row = append(row, relation(e.Ops[i-1].String()))
 		}
 		row = append(row, w.part(x, rankedSum, true))
 	}
@@ -180,14 +180,14 @@ func (w *builder) product(e *syntax.Binary) (Node, rank) {
 	factors := w.factors(room[:0], e)
 	if first, ok := unbracketed(factors[0]).(*syntax.Unary); ok && first.Op == syntax.Neg {
 		factors[0] = first.X
-		return Row{Minus, w.times(factors)}, rankedNeg
+		return w.row(minus, w.times(factors)), rankedNeg
 	}
 	return w.times(factors), rankedProduct
 }
 
 // times sets factors side by side.
 func (w *builder) times(factors []syntax.Expr) Node {
-	row := make(Row, 0, 2*len(factors))
+	row := w.room(2 * len(factors))
 	for i, f := range factors {
 		last := i == len(factors)-1
 		n, r := w.expr(f)
@@ -224,11 +224,11 @@ func unbracketed(e syntax.Expr) syntax.Expr {
 
 // between is the sign between two factors: none where they are told apart
 // without one, else a dot.
-func between(left, right Node) Op {
+func between(left, right Node) Node {
 	if !bare1(right) || !standsBefore(left, right) {
-		return Dot
+		return dot
 	}
-	return Beside
+	return beside
 }
 
 // bare1 tells whether a factor can follow another without a sign: it does not
@@ -301,7 +301,8 @@ func oneLetter(s Symbol) bool {
 // quotient sets a division as a fraction; a slash is used in exponents and
 // inside other fractions. Division from the left, a/b/c, is one fraction.
 func (w *builder) quotient(e *syntax.Binary) (Node, rank) {
-	num, dens := e.X, []syntax.Expr{e.Y}
+	var room [4]syntax.Expr
+	num, dens := e.X, append(room[:0], e.Y)
 	for b, ok := num.(*syntax.Binary); ok && b.Op == syntax.Div; b, ok = num.(*syntax.Binary) {
 		num, dens = b.X, append(dens, b.Y)
 	}
@@ -309,7 +310,7 @@ func (w *builder) quotient(e *syntax.Binary) (Node, rank) {
 	if w.inline > 0 || w.depth > 0 {
 		n := w.part(num, rankedProduct, true)
 		d, r := w.denominator(dens)
-		return Row{n, Slash, bracketed(d, r, rankedPower, false)}, rankedSlash
+		return w.row(n, slash, bracketed(d, r, rankedPower, false)), rankedSlash
 	}
 	w.depth++
 	n := w.side(num)

@@ -90,6 +90,29 @@ var (
 	Not    = Op{"not", Func}
 )
 
+// The operators as nodes, so that a formula need not make them.
+var (
+	plus, minus, dot Node = Plus, Minus, Dot
+	slash, beside    Node = Slash, Beside
+	comma            Node = Comma
+	and, or, not     Node = And, Or, Not
+	equals           Node = Op{"=", Rel}
+	atMost, atLeast  Node = Op{"≤", Rel}, Op{"≥", Rel}
+)
+
+// relation is Relation as a node.
+func relation(sign string) Node {
+	switch sign {
+	case "=", "==":
+		return equals
+	case "<=":
+		return atMost
+	case ">=":
+		return atLeast
+	}
+	return Relation(sign)
+}
+
 // Relation returns the operator for a relation in its typeset or its ASCII
 // spelling.
 func Relation(sign string) Op {
@@ -167,10 +190,10 @@ func Abs(n Node) Fence { return Fence{"|", n, "|"} }
 
 // Call is a function's name with its arguments in brackets.
 func Call(name Node, args ...Node) Row {
-	var body Row
+	body := make(Row, 0, 2*len(args))
 	for i, a := range args {
 		if i > 0 {
-			body = append(body, Comma)
+			body = append(body, comma)
 		}
 		body = append(body, a)
 	}
