@@ -118,7 +118,11 @@ var otherNames = map[string]string{
 // callDotted lowers a call of a helper of the author's own file: `shop.bracket(…)`.
 func (l *lower) callDotted(x *syntax.Call, key, name string) *Node {
 	s, ok := l.e.c.spaces[key]
-	if !ok || s.file == nil || l.site != nil {
+	if ok && s.file != nil && l.e.closed() {
+		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("a helper does not reach the calc's helper file `%s`", key),
+			"it calls the library that ships, and the helpers above it")
+	}
+	if !ok || s.file == nil {
 		var keys []string
 		for _, f := range l.e.c.in.Helpers {
 			keys = append(keys, f.Key)
