@@ -1,7 +1,9 @@
 package html
 
 import (
+	"slices"
 	"strconv"
+	"unicode"
 
 	"gusset/render"
 	"gusset/render/maths"
@@ -92,10 +94,22 @@ func (w *writer) references(e *render.Entry) {
 	}
 	for _, r := range e.Refs {
 		w.raw("<span>")
-		w.jump(r.Target, r.Text)
+		w.jump(r.Target, withNumbers(r.Text))
 		w.raw("</span>")
 	}
 	w.raw("</div>")
+}
+
+// withNumbers is a source whose numbers stand on the line of the word before
+// them: Table 3.4, Part 7.
+func withNumbers(s string) string {
+	b := []byte(s)
+	for i := len(b) - 2; i > 0; i-- {
+		if b[i] == ' ' && unicode.IsLetter(rune(b[i-1])) && unicode.IsDigit(rune(b[i+1])) {
+			b = slices.Replace(b, i, i+1, []byte("\u00a0")...)
+		}
+	}
+	return string(b)
 }
 
 func (w *writer) output(e *render.Entry) {

@@ -45,7 +45,7 @@ func (w *writer) listRef(class, anchor, words string) {
 func (w *writer) note(s string) {
 	if s != "" {
 		w.raw(`<div class="note">`)
-		w.text(s)
+		w.text(measured(s))
 		w.raw("</div>")
 	}
 }

@@ -2,6 +2,7 @@ package html
 
 import (
 	"bytes"
+	"strings"
 
 	"github.com/yuin/goldmark/ast"
 	east "github.com/yuin/goldmark/extension/ast"
@@ -293,6 +294,24 @@ func (w *writer) words(text string) {
 		}
 	}
 	w.text(text[from:])
+}
+
+// measured is a text whose numbers stay on the line of their units.
+func measured(s string) string {
+	var b strings.Builder
+	from := 0
+	for i := 1; i < len(s)-1; i++ {
+		if s[i] == ' ' && render.Measured(s[:i], s[i+1:]) {
+			b.WriteString(s[from:i])
+			b.WriteString("\u00a0")
+			from = i + 1
+		}
+	}
+	if from == 0 {
+		return s
+	}
+	b.WriteString(s[from:])
+	return b.String()
 }
 
 func (w *writer) codeSpan(n ast.Node) {
