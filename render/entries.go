@@ -24,13 +24,12 @@ func (c *composer) block(b *notebook.Block) []Entry {
 			Drawing: drawing(b),
 		}}
 	}
-	return c.steps(b.Steps, 0, b.Full)
+	return c.steps(make([]Entry, 0, len(b.Steps)), b.Steps, 0, b.Full)
 }
 
-// steps makes the entries of lines. Values in a sequence over the same rows are
-// followed by one table of all their entries.
-func (c *composer) steps(steps []*eval.Step, indent int, full bool) []Entry {
-	entries := make([]Entry, 0, len(steps))
+// steps appends the entries of lines. Values in a sequence over the same rows
+// are followed by one table of all their entries.
+func (c *composer) steps(entries []Entry, steps []*eval.Step, indent int, full bool) []Entry {
 	var group []*eval.Step // the values whose table is yet to come
 	flush := func() {
 		for len(group) > 0 {
@@ -46,7 +45,7 @@ func (c *composer) steps(steps []*eval.Step, indent int, full bool) []Entry {
 		if s.Kind != eval.Gap && len(group) > 0 && !(hasRows(s) && sameRows(group[0].Value.Type, s.Value.Type)) {
 			flush()
 		}
-		entries = append(entries, c.step(s, indent, full)...)
+		entries = c.step(entries, s, indent, full)
 		if hasRows(s) {
 			group = append(group, s)
 		}
@@ -80,35 +79,40 @@ func sameRows(a, b check.Type) bool {
 	return true
 }
 
-// step makes the entries of one line: its own, and those of the helpers that it
-// calls.
-func (c *composer) step(s *eval.Step, indent int, full bool) []Entry {
+// step appends the entries of one line: its own, and those of the helpers that
+// it calls.
+func (c *composer) step(entries []Entry, s *eval.Step, indent int, full bool) []Entry {
 	for _, call := range s.Calls {
 		c.place(call)
 	}
-	e := Entry{Indent: indent, Anchor: c.maths.Anchor(s), Number: s.Number, Refs: sources(s.Source), Note: s.Note}
+	entries = append(entries, Entry{Indent: indent})
+	e := &entries[len(entries)-1]
+	if s.Kind == eval.Gap {
+		e.Kind = Gap
+		return entries
+	}
+	e.Anchor, e.Number, e.Refs, e.Note = c.maths.Anchor(s), s.Number, sources(s.Source), s.Note
 	switch s.Kind {
-	case eval.Gap:
-		return []Entry{{Kind: Gap, Indent: indent}}
 	case eval.NoteLine:
 		e.Kind = NoteLine
-		return []Entry{e}
+		return entries
 	case eval.Given:
 		e.Kind = Line
 		e.Formula = maths.Chain{Left: c.maths.Plain(s), Steps: equal(c.maths.Output(s, s.Entry))}
-		return []Entry{e}
+		return entries
 	case eval.Carried:
-		return []Entry{c.carried(s, e)}
+		c.carried(s, e)
+		return entries
 	case eval.Function:
-		return []Entry{c.function(s, e)}
+		c.function(s, e)
+		return entries
 	case eval.Check:
-		c.check(s, &e, full)
+		c.check(s, e, full)
 	case eval.Limit:
-		c.limit(s, &e)
+		c.limit(s, e)
 	default:
-		c.computed(s, &e)
+		c.computed(s, e)
 	}
-	entries := []Entry{e}
 	if !s.Brief {
 		for _, call := range s.Calls {
 			entries = c.call(entries, call, indent+1)
@@ -130,7 +134,7 @@ func sources(source string) []Ref {
 func equal(n maths.Node) []maths.Step { return []maths.Step{{Sign: "=", Right: n}} }
 
 // carried is a line whose right side is only another calc's value.
-func (c *composer) carried(s *eval.Step, e Entry) Entry {
+func (c *composer) carried(s *eval.Step, e *Entry) {
 	e.Kind = Line
 	e.Formula = maths.Chain{Left: c.maths.Plain(s), Steps: equal(c.maths.Written(s))}
 	e.Formula.Steps = append(e.Formula.Steps, equal(c.maths.Output(s, s.Entry))...)
@@ -138,17 +142,15 @@ func (c *composer) carried(s *eval.Step, e Entry) Entry {
 		e.Refs = append([]Ref{{Text: maths.Origin(s.Origin)}}, e.Refs...)
 	}
 	e.Mark = s.Value.Type.Mark(s.Entry)
-	return e
 }
 
 // function is the definition of a function of the author's own.
-func (c *composer) function(s *eval.Step, e Entry) Entry {
+func (c *composer) function(s *eval.Step, e *Entry) {
 	e.Kind = Definition
 	c.maths.Define(s)
 	d := s.Stmt.(*syntax.Definition)
 	e.Formula = maths.Chain{Left: c.signature(d.Name, d.Params), Steps: equal(c.maths.Function(d, s))}
 	e.Below = c.whereUnits(d, d.Unit)
-	return e
 }
 
 // signature is a function's name with its parameters.
@@ -178,7 +180,7 @@ func (c *composer) computed(s *eval.Step, e *Entry) {
 	if d.Func {
 		e.Formula.Left = c.signature(d.Name, d.Params)
 	}
-	e.Formula.Steps = equal(c.maths.Written(s))
+	e.Formula.Steps = append(make([]maths.Step, 0, 2), maths.Step{Sign: "=", Right: c.maths.Written(s)})
 	for _, t := range s.Trials {
 		e.Trials = append(e.Trials, Trial{Value: t.Value, Mark: t.Mark, Why: t.Why, OK: t.OK})
 	}

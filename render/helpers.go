@@ -32,7 +32,7 @@ func (c *composer) place(call *eval.Call) {
 func (c *composer) call(dst []Entry, call *eval.Call, indent int) []Entry {
 	h := call.Helper
 	if h == nil { // a function of the author's own: its formula with the caller's values
-		return append(dst, c.steps(call.Steps, indent, false)...)
+		return c.steps(dst, call.Steps, indent, false)
 	}
 	head := Entry{Kind: HelperHead, Indent: indent, Note: helperTitle(h), Refs: sources(h.Note.Source), Mark: call.Mark}
 	if len(call.Args) > 0 {
@@ -44,9 +44,7 @@ func (c *composer) call(dst []Entry, call *eval.Call, indent int) []Entry {
 		}
 	}
 	head.Formula.Left = c.arguments(call.Args)
-	dst = append(dst, head)
-	dst = append(dst, c.steps(call.Steps, indent, false)...)
-	return dst
+	return c.steps(append(dst, head), call.Steps, indent, false)
 }
 
 // helperTitle is a helper's title, else its name.

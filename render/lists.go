@@ -3,6 +3,7 @@ package render
 import (
 	"cmp"
 	"slices"
+	"sort"
 	"strings"
 
 	"gusset/notebook"
@@ -58,7 +59,8 @@ func (c *composer) summary() []Summary {
 		}
 		list = append(list, line)
 	}
-	return inOrder(list, func(a, b *Summary) int {
+	return inOrder(list, func(i, j int) int {
+		a, b := &list[i], &list[j]
 		if d := cmp.Compare(a.Verdict.standing(), b.Verdict.standing()); d != 0 {
 			return d
 		}
@@ -107,7 +109,7 @@ func (c *composer) unsourced() []Unsourced {
 // defined are all steps that define a symbol, in order, the columns of
 // schedules included.
 func (c *composer) defined() []*eval.Step {
-	var list []*eval.Step
+	list := make([]*eval.Step, 0, len(c.sheet.Steps))
 	for _, b := range c.sheet.Blocks {
 		for i, s := range b.Steps {
 			if s.ID == "" || s.Failed || b.Rows != nil && i == b.Marks {
@@ -127,26 +129,31 @@ func (c *composer) symbols() []SymbolLine {
 	steps := c.defined()
 	meaning := c.meanings()
 	list := make([]SymbolLine, len(steps))
+	keys := make([]symbolKey, len(steps))
 	for i, s := range steps {
 		line := SymbolLine{Symbol: c.maths.Plain(s), Meaning: meaning(s), Anchor: s.Anchor, Where: c.where(s)}
 		if k := s.Value.Type.Kind; k == check.Number || k == check.Point {
 			line.Unit = c.maths.Unit(s.Unit)
 		}
 		list[i] = line
+		symbol := line.Symbol.(maths.Symbol)
+		keys[i] = symbolKey{strings.ToLower(symbol.Head), symbol.Head, symbol.Sub, symbol.Primes}
 	}
-	return inOrder(list, func(a, b *SymbolLine) int {
-		return compareSymbols(a.Symbol.(maths.Symbol), b.Symbol.(maths.Symbol))
-	})
+	return inOrder(list, func(a, b int) int { return keys[a].compare(&keys[b]) })
 }
 
-// inOrder sorts lines, equal ones as they stand. It moves their numbers
-// rather than the lines, which are large.
-func inOrder[T any](list []T, compare func(a, b *T) int) []T {
+// inOrder sorts lines, equal ones as they stand; compare is given their places.
+func inOrder[T any](list []T, compare func(a, b int) int) []T {
 	order := make([]int, len(list))
 	for i := range order {
 		order[i] = i
 	}
-	slices.SortFunc(order, func(a, b int) int { return cmp.Or(compare(&list[a], &list[b]), cmp.Compare(a, b)) })
+	slices.SortFunc(order, func(a, b int) int {
+		if d := compare(a, b); d != 0 {
+			return d
+		}
+		return a - b
+	})
 	sorted := make([]T, len(list))
 	for i, k := range order {
 		sorted[i] = list[k]
@@ -181,87 +188,105 @@ func (c *composer) where(s *eval.Step) string {
 	if s.Number != "" {
 		return "(" + s.Number + ")"
 	}
-	section := ""
-	for _, h := range c.sheet.Headings {
-		if h.Line > s.Line {
-			break
-		}
-		if h.Number != "" {
-			section = "section " + h.Number
+	before := sort.Search(len(c.sheet.Headings), func(i int) bool { return c.sheet.Headings[i].Line > s.Line })
+	for before--; before >= 0; before-- {
+		if n := c.sheet.Headings[before].Number; n != "" {
+			return "section " + n
 		}
 	}
-	return section
+	return ""
 }
 
-// compareSymbols orders symbols by their letters, small and large ones of a
-// letter together, then by their subscripts.
-func compareSymbols(a, b maths.Symbol) int {
-	return cmp.Or(
-		strings.Compare(strings.ToLower(a.Head), strings.ToLower(b.Head)),
-		strings.Compare(a.Head, b.Head),
-		slices.Compare(a.Sub, b.Sub),
-		cmp.Compare(a.Primes, b.Primes),
-	)
+// symbolKey is what symbols are ordered by: their letters, small and large ones
+// of a letter together, then their subscripts.
+type symbolKey struct {
+	lower, head string
+	sub         []string
+	primes      int
+}
+
+func (a *symbolKey) compare(b *symbolKey) int {
+	if d := strings.Compare(a.lower, b.lower); d != 0 {
+		return d
+	}
+	if d := strings.Compare(a.head, b.head); d != 0 {
+		return d
+	}
+	if d := slices.Compare(a.sub, b.sub); d != 0 {
+		return d
+	}
+	return a.primes - b.primes
 }
 
 // sources lists what is cited, in order, with what rests on it.
 func (c *composer) sources() []SourceLine {
 	var list []SourceLine
 	at := map[string]int{}
-	type place struct {
-		source         int
-		anchor, number string
-	}
-	seen := map[place]bool{}
 	rest := func(source string, on Resting) {
-		if source == "" {
-			return
-		}
 		i, ok := at[source]
 		if !ok {
 			i = len(list)
 			at[source] = i
 			list = append(list, SourceLine{Source: source})
 		}
-		if here := (place{i, on.Anchor, on.Number}); seen[here] {
-			return
-		} else {
-			seen[here] = true
+		n := len(list[i].On)
+		if n > 0 && list[i].On[n-1].Anchor == on.Anchor && list[i].On[n-1].Number == on.Number {
+			return // cited twice in one place
 		}
 		list[i].On = append(list[i].On, on)
 	}
+	var cited []string
 	for _, b := range c.sheet.Blocks {
 		if b.Kind != syntax.CalcBlock {
 			name := b.Name
 			if b.Kind == syntax.PlotBlock || b.Kind == syntax.FigureBlock {
 				name = "figure " + b.Number
 			}
-			rest(b.Source, Resting{Symbol: maths.Text{Text: name}, Anchor: blockAnchor(b)})
+			if b.Source != "" {
+				rest(b.Source, Resting{Symbol: maths.Text{Text: name}, Anchor: blockAnchor(b)})
+			}
 			continue
 		}
 		for _, s := range b.Steps {
-			on := Resting{Anchor: s.Anchor}
-			switch {
-			case s.Number != "":
-				on.Number = "(" + s.Number + ")"
-			case s.ID != "":
-				on.Symbol = c.maths.Plain(s)
-			default:
+			if s.Number == "" && s.ID == "" {
 				continue
 			}
-			rest(s.Source, on)
-			if s.Origin != nil {
-				rest(maths.Origin(s.Origin), on)
+			if cited = citedBy(cited[:0], s); len(cited) == 0 {
+				continue
 			}
-			for _, u := range s.Uses {
-				if u != nil && maths.IsCarried(u) {
-					rest(maths.Origin(u.Origin), on)
-				}
+			on := Resting{Anchor: s.Anchor}
+			if s.Number != "" {
+				on.Number = "(" + s.Number + ")"
+			} else {
+				on.Symbol = c.maths.Plain(s)
 			}
-			eachCall([]*eval.Step{s}, func(_ *eval.Step, call *eval.Call) {
-				rest(call.Helper.Note.Source, on)
-			})
+			for _, source := range cited {
+				rest(source, on)
+			}
 		}
 	}
 	return list
+}
+
+// citedBy appends the sources that a step rests on: its own, the calcs that its
+// values were carried from, and those of the helpers it calls.
+func citedBy(dst []string, s *eval.Step) []string {
+	add := func(source string) {
+		if source != "" {
+			dst = append(dst, source)
+		}
+	}
+	add(s.Source)
+	if s.Origin != nil {
+		add(maths.Origin(s.Origin))
+	}
+	for _, u := range s.Uses {
+		if u != nil && maths.IsCarried(u) {
+			add(maths.Origin(u.Origin))
+		}
+	}
+	if len(s.Calls) > 0 {
+		eachCall([]*eval.Step{s}, func(_ *eval.Step, call *eval.Call) { add(call.Helper.Note.Source) })
+	}
+	return dst
 }

@@ -12,17 +12,10 @@ import (
 
 // NewPage decides what a compiled calc prints. The sheet has no errors.
 func NewPage(s *notebook.Sheet) *Page {
-	c := &composer{maths: maths.NewBuilder(), sheet: s}
+	c := &composer{maths: maths.NewBuilder(), sheet: s, picks: newPicks(s)}
 	p := &Page{Sheet: s, Title: title(&s.Front)}
 	p.Blocks = make([][]Entry, len(s.Blocks))
 	c.numberCautions()
-	c.picks = picks{}
-	for _, b := range s.Blocks {
-		c.picks.add(b.Steps)
-	}
-	for _, r := range s.Refs {
-		c.picks.whole(r.Step)
-	}
 	for i, b := range s.Blocks {
 		p.Blocks[i] = c.block(b)
 	}

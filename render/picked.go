@@ -4,6 +4,7 @@ import (
 	"slices"
 	"strings"
 
+	"gusset/notebook"
 	"gusset/notebook/check"
 	"gusset/notebook/eval"
 	"gusset/notebook/syntax"
@@ -29,9 +30,29 @@ func (p picks) of(r *check.Rows) *picked {
 	return p[r]
 }
 
+// fromLibrary tells whether a table ships with the program.
+func fromLibrary(b *syntax.Block) bool {
+	return b.Table != nil && strings.HasPrefix(b.Table.From, libraryTable)
+}
+
+// newPicks notes what a calc looks up, if there are tables of the library.
+func newPicks(s *notebook.Sheet) picks {
+	if !slices.ContainsFunc(s.Blocks, func(b *notebook.Block) bool { return fromLibrary(b.Tree) }) {
+		return nil
+	}
+	p := picks{}
+	for _, b := range s.Blocks {
+		p.add(b.Steps)
+	}
+	for _, r := range s.Refs {
+		p.whole(r.Step)
+	}
+	return p
+}
+
 // printed are the rows of a table that paper shows, nil for all of them.
 func (p picks) printed(b *syntax.Block, r *check.Rows) map[int]bool {
-	if b.Table == nil || !strings.HasPrefix(b.Table.From, libraryTable) {
+	if !fromLibrary(b) {
 		return nil
 	}
 	used := p[r]
