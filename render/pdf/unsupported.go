@@ -1,21 +1,24 @@
 package pdf
 
 import (
+	"bytes"
 	"fmt"
 	"strings"
 	"unicode/utf8"
 
 	"gusset/notebook/diag"
+	"gusset/notebook/eval"
 	"gusset/render"
 	"gusset/render/fonts"
 )
 
 // Unsupported warns of the characters of a calc that none of the faces has and
-// that a PDF can show only as their codes: each once, where it first stands.
+// that a PDF can show only as their codes: each once, where it first stands. What
+// other files bring in is told where the calc takes it from them, and of a
+// helper's lines where they stand.
 func Unsupported(p *render.Page) []diag.Diagnostic {
 	src := p.Sheet.Source
-	var out []diag.Diagnostic
-	seen := map[rune]bool{}
+	c := &codes{seen: map[rune]bool{}}
 	for at := 0; at < len(src.Text); {
 		if src.Text[at] < utf8.RuneSelf {
 			at++
@@ -24,17 +27,84 @@ func Unsupported(p *render.Page) []diag.Diagnostic {
 		r, size := utf8.DecodeRune(src.Text[at:])
 		here := diag.Span{Start: at, End: at + size}
 		at += size
-		if seen[r] || printable(r) || silent(src, here) {
-			continue
+		if !silent(src, here) {
+			c.report(r, src, here)
 		}
-		seen[r] = true
-		out = append(out, diag.Diagnostic{
-			Severity: diag.Warning, ID: diag.UnsupportedCharacter, Source: src, Span: here,
-			Message: fmt.Sprintf("no face has the character %s; a PDF shows its code", codeText(r)),
-			Hints:   []string{"write it in words"},
-		})
 	}
-	return out
+	for _, b := range p.Sheet.Blocks {
+		for _, s := range b.Steps {
+			at := b.Tree.At
+			if s.Stmt != nil {
+				at = s.Stmt.Span()
+			}
+			if s.Origin != nil {
+				c.text(s.Origin.Name(), src, at)
+			}
+			c.text(s.Symbol, src, at)
+			for _, t := range s.Value.Text {
+				c.text(t, src, at)
+			}
+			c.calls(s.Calls)
+		}
+	}
+	f := p.Sheet.Front
+	for _, t := range []string{f.Firm, f.Client, f.Project, f.Job} { // the register may set them
+		c.text(t, src, diag.Span{})
+	}
+	return c.found
+}
+
+// codes gathers the characters that are shown as codes, each once.
+type codes struct {
+	seen  map[rune]bool
+	found []diag.Diagnostic
+}
+
+func (c *codes) report(r rune, src *diag.Source, at diag.Span) {
+	if r < utf8.RuneSelf || c.seen[r] || printable(r) {
+		return
+	}
+	c.seen[r] = true
+	c.found = append(c.found, diag.Diagnostic{
+		Severity: diag.Warning, ID: diag.UnsupportedCharacter, Source: src, Span: at,
+		Message: fmt.Sprintf("no face has the character %s; a PDF shows its code", codeText(r)),
+		Hints:   []string{"write it in words"},
+	})
+}
+
+// text reports a text that comes from another file, at the place that asks for it.
+func (c *codes) text(s string, src *diag.Source, at diag.Span) {
+	for _, r := range s {
+		c.report(r, src, at)
+	}
+}
+
+// calls reports what helpers print of themselves.
+func (c *codes) calls(calls []*eval.Call) {
+	for _, call := range calls {
+		h := call.Helper
+		texts := append([]string{}, call.Cautions...)
+		if h != nil {
+			texts = append(texts, h.Note.Text, h.Note.Source)
+		}
+		for _, s := range call.Steps {
+			texts = append(texts, s.Symbol, s.Note, s.Source)
+			texts = append(texts, s.Value.Text...)
+			c.calls(s.Calls)
+		}
+		if h == nil {
+			continue // a function of the author's own stands in the calc
+		}
+		for _, t := range texts {
+			for _, r := range t {
+				at := diag.Span{Start: h.At.Start, End: h.At.End}
+				if i := bytes.IndexRune(h.Source.Text[h.At.Start:], r); i >= 0 {
+					at = diag.Span{Start: h.At.Start + i, End: h.At.Start + i + utf8.RuneLen(r)}
+				}
+				c.report(r, h.Source, at)
+			}
+		}
+	}
 }
 
 // printable reports whether a character, by itself or composed with what may

@@ -2,11 +2,14 @@ package pdf
 
 import (
 	"bytes"
+	"fmt"
 	"strings"
 	"sync"
 	"testing"
 	"testing/fstest"
 	"time"
+
+	"github.com/google/go-cmp/cmp"
 
 	"gusset/notebook"
 	"gusset/render"
@@ -105,6 +108,32 @@ func TestUnsupported(t *testing.T) {
 	want := "unsupported-character warning no face has the character U+1F600|unsupported-character warning no face has the character U+6881"
 	if strings.Join(got, "|") != want {
 		t.Errorf("got %q", got)
+	}
+}
+
+// Characters that other files bring in are told at the place that takes them,
+// those of a helper's lines in the helper's file.
+func TestUnsupportedElsewhere(t *testing.T) {
+	const text = `---
+calc: C-1
+from: {loads: loads.md}
+helpers: {shop: shop.md}
+---
+` + "```calc\nP = loads.P\ntau = shop.spread(P, 20 mm^2)\n```\n```schedule s from s.csv\n```\n"
+	p := pageOf(t, text, map[string]string{
+		"register.yaml": "firm: 公 works\n",
+		"loads.md":      "---\ncalc: L-1\ntitle: 梁 loads\n---\n\n荷\n\n```calc\nP = 3 kN # never printed there: 荷\n```\n",
+		"shop.md":       "# 店, never printed\n\n```helper spread # 均 [源]\nV [force]\nA [area]\nt [stress] = V/A # 力\ngives t\n```\n",
+		"s.csv":         "mark,x [mm]\n甲,1\n",
+	})
+	var got []string
+	for _, d := range Unsupported(p) {
+		line, column := d.Source.Position(d.Span.Start)
+		got = append(got, fmt.Sprintf("%s:%d:%d %s", d.Source.Name, line, column, strings.Fields(d.Message)[5]))
+	}
+	want := []string{"calc.md:7:1 U+6881;", "shop.md:3:20 U+5747;", "shop.md:3:23 U+6E90;", "shop.md:6:20 U+529B;", "calc.md:10:1 U+7532;", "calc.md:1:1 U+516C;"}
+	if diff := cmp.Diff(want, got); diff != "" {
+		t.Error(diff)
 	}
 }
 
