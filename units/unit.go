@@ -71,6 +71,20 @@ func (u Unit) IsPoint() bool { return u.get().zero != nil }
 // IsAngular reports whether the unit is an angle per time, like rad/s. Hz and rpm count turns and are not.
 func (u Unit) IsAngular() bool { return u.get().angular }
 
+// CountsTurns reports whether the unit is a frequency by its name, Hz or rpm; 1/s says neither turns nor
+// radians.
+func (u Unit) CountsTurns() bool {
+	if u.Dim() != dimFrequency || u.IsAngular() {
+		return false
+	}
+	for _, at := range u.Names() {
+		if at.Name == "rpm" || strings.HasSuffix(at.Name, "Hz") {
+			return true
+		}
+	}
+	return false
+}
+
 // StarAfterSlash reports whether a * follows a / without brackets, as in J/kg*K, which reads from
 // the left and is easily read otherwise.
 func (u Unit) StarAfterSlash() bool { return u.get().starAfterSlash }

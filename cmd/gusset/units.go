@@ -98,11 +98,22 @@ func convert(value, unit string) (string, error) {
 	if from.IsPoint() != to.IsPoint() && from.Dim() == to.Dim() {
 		return convertPoint(value, x, from, to)
 	}
+	if from.CountsTurns() && to.IsAngular() || from.IsAngular() && to.CountsTurns() {
+		return "", fmt.Errorf("`%s` counts %s and `%s` %s: they differ by the factor 2π", from, turns(from), to, turns(to))
+	}
 	y, exact, err := units.Convert(x, from, to)
 	if err != nil {
 		return "", err
 	}
 	return fmt.Sprintf("%s = %s\n   %s\n", strings.TrimSpace(value), withUnit(y, to), exact), nil
+}
+
+// turns says what a unit of frequency or of angular speed counts.
+func turns(u units.Unit) string {
+	if u.IsAngular() {
+		return "radians"
+	}
+	return "turns"
 }
 
 // convertPoint converts between a scale of temperature and K or degR, which

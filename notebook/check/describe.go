@@ -13,9 +13,6 @@ import (
 	"gusset/units"
 )
 
-// perTime is the dimension of Hz and of rad/s.
-var perTime = mustDim("1/s")
-
 func mustDim(unit string) units.Dimension {
 	u, err := units.Parse(unit)
 	if err != nil {

@@ -190,16 +190,11 @@ func spacedUnit(figures, unit string, values []units.NameAt) string {
 }
 
 func freqOf(u units.Unit) Freq {
-	if u.Dim() != perTime {
-		return NoFreq
-	}
-	if u.IsAngular() {
+	switch {
+	case u.IsAngular():
 		return Radians
-	}
-	for _, at := range u.Names() {
-		if n := at.Name; n == "rpm" || len(n) >= 2 && n[len(n)-2:] == "Hz" {
-			return Hertz
-		}
+	case u.CountsTurns():
+		return Hertz
 	}
 	return NoFreq
 }
