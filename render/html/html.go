@@ -94,8 +94,13 @@ func (w *writer) head(body []byte) []byte {
 func addRunes(runes *fonts.Runes, text []byte) {
 	runes.Add([]byte("az09"))
 	const highBits = 0x8080808080808080
+	word := binary.LittleEndian.Uint64
 	for len(text) >= 8 {
-		if binary.LittleEndian.Uint64(text)&highBits == 0 {
+		if len(text) >= 32 && (word(text)|word(text[8:])|word(text[16:])|word(text[24:]))&highBits == 0 {
+			text = text[32:]
+			continue
+		}
+		if word(text)&highBits == 0 {
 			text = text[8:]
 			continue
 		}
@@ -129,41 +134,51 @@ func (w *writer) text(s string) {
 	from := 0
 	for i := 0; i < len(s); {
 		c := s[i]
-		size, with := 1, ""
-		switch {
-		case c == '&':
-			with = "&amp;"
-		case c == '<':
-			with = "&lt;"
-		case c == '>':
-			with = "&gt;"
-		case c == '"':
-			with = "&quot;"
-		case c < ' ' && c != '\n' && c != '\t' || c == 0x7f:
-			with = "\uFFFD"
-		case c < utf8.RuneSelf:
+		if ordinary[c] {
 			i++
 			continue
+		}
+		size, with := 1, "\uFFFD"
+		switch c {
+		case '&':
+			with = "&amp;"
+		case '<':
+			with = "&lt;"
+		case '>':
+			with = "&gt;"
+		case '"':
+			with = "&quot;"
 		default:
+			if c < utf8.RuneSelf {
+				break
+			}
 			var r rune
 			r, size = utf8.DecodeRuneInString(s[i:])
 			switch {
 			case r == utf8.RuneError && size == 1, noncharacter(r):
-				with = "\uFFFD"
 			case turns(r):
-				w.raw(s[from:i])
-				from = i + size
+				with = ""
+			default:
+				i += size
+				continue
 			}
 		}
-		if with != "" {
-			w.raw(s[from:i])
-			w.raw(with)
-			from = i + size
-		}
+		w.raw(s[from:i])
+		w.raw(with)
 		i += size
+		from = i
 	}
 	w.raw(s[from:])
 }
+
+// ordinary are the characters that stand in a page as they are.
+var ordinary = func() (set [256]bool) {
+	for c := ' '; c < 0x7f; c++ {
+		set[c] = c != '&' && c != '<' && c != '>' && c != '"'
+	}
+	set['\n'], set['\t'] = true, true
+	return set
+}()
 
 // noncharacter tells whether a character may not stand in a page.
 func noncharacter(r rune) bool {

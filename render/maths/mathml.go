@@ -44,21 +44,21 @@ func AppendMathML(dst []byte, n Node) []byte {
 // which a browser can break it.
 func AppendChain(dst []byte, c Chain) []byte {
 	w := markup{b: dst, room: columnWidth}
+	var room [16]Node
 	w.raw(`<span class="chain">`)
 	if leads(c.Left) {
-		w.math(atoms(nil, c.Left), Open)
+		w.math(atoms(room[:0], c.Left), Open)
 		w.room -= leftWidth * float64(width(c.Left))
 		w.raw("<span>")
 	} else {
 		w.raw("<span>")
 		if c.Left != nil {
-			w.step(atoms(nil, c.Left), false)
+			w.step(atoms(room[:0], c.Left), false)
 		}
 	}
-	var room [16]Node
 	for i, s := range c.Steps {
 		after := i > 0 && endsInChoice(c.Steps[i-1].Right)
-		w.step(atoms(append(room[:0], Relation(s.Sign)), s.Right), after)
+		w.step(atoms(append(room[:0], relation(s.Sign)), s.Right), after)
 	}
 	w.raw("</span></span>")
 	return w.b
@@ -86,35 +86,48 @@ type markup struct {
 
 func (w *markup) raw(s string) { w.b = append(w.b, s...) }
 
+// ordinaryText are the characters that stand in a page as they are.
+var ordinaryText = func() (set [256]bool) {
+	for c := ' '; c < utf8.RuneSelf; c++ {
+		set[c] = c != '&' && c != '<' && c != '>' && c != '"'
+	}
+	set['\n'], set['\t'] = true, true
+	return set
+}()
+
 // text appends character data or a part of an attribute.
 func (w *markup) text(s string) {
 	from := 0
 	for i := 0; i < len(s); {
 		c := s[i]
-		size, with := 1, ""
-		switch {
-		case c == '&':
+		if ordinaryText[c] {
+			i++
+			continue
+		}
+		size, with := 1, "\uFFFD"
+		switch c {
+		case '&':
 			with = "&amp;"
-		case c == '<':
+		case '<':
 			with = "&lt;"
-		case c == '>':
+		case '>':
 			with = "&gt;"
-		case c == '"':
+		case '"':
 			with = "&quot;"
-		case c < ' ' && c != '\n' && c != '\t':
-			with = "\uFFFD"
-		case c >= utf8.RuneSelf:
+		default:
+			if c < utf8.RuneSelf {
+				break
+			}
 			var r rune
-			if r, size = utf8.DecodeRuneInString(s[i:]); r == utf8.RuneError && size == 1 {
-				with = "\uFFFD"
+			if r, size = utf8.DecodeRuneInString(s[i:]); r != utf8.RuneError || size != 1 {
+				i += size
+				continue
 			}
 		}
-		if with != "" {
-			w.raw(s[from:i])
-			w.raw(with)
-			from = i + size
-		}
+		w.raw(s[from:i])
+		w.raw(with)
 		i += size
+		from = i
 	}
 	w.raw(s[from:])
 }

@@ -13,8 +13,10 @@ func figures(value string) (negative bool, mantissa, power string) {
 	if strings.HasPrefix(mantissa, "-") {
 		negative, mantissa = true, mantissa[1:]
 	}
-	if i := strings.IndexAny(mantissa, "eE"); i > 0 {
-		mantissa, power = mantissa[:i], strings.TrimPrefix(mantissa[i+1:], "+")
+	for i := 1; i < len(mantissa); i++ {
+		if mantissa[i]|0x20 == 'e' {
+			return negative, mantissa[:i], strings.TrimPrefix(mantissa[i+1:], "+")
+		}
 	}
 	return negative, mantissa, power
 }

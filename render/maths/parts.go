@@ -1,6 +1,10 @@
 package maths
 
-import "gusset/render/fonts"
+import (
+	"slices"
+
+	"gusset/render/fonts"
+)
 
 // A browser breaks a line only between formulas, so a right side is written
 // in parts: before its loosest operators where it is longer than shortStep,
@@ -25,7 +29,7 @@ func (w *markup) shrink(list []Node) float64 {
 		return 1
 	}
 	s := setter{size: 1, text: fonts.Serif, metrics: fonts.MathMetrics()}
-	return min(1, w.room/s.row(Row(list), style{display: true}).width)
+	return min(1, w.room/s.row(Row(slices.Clone(list)), style{display: true}).width)
 }
 
 // step writes one box of a chain. One after a choice has a line of its own.
