@@ -294,8 +294,7 @@ func (l *lower) argument(x *syntax.Call, h *helper, p *syntax.Param, value synta
 		if want.Kind == Number && got.Kind == Point {
 			return l.fail(diag.DimensionMismatch, value.Span(), message, l.asDifference(value))
 		}
-		l.mismatch(value.Span(), message, want, got)
-		return invalid
+		return l.fail(diag.DimensionMismatch, value.Span(), message, append(l.wayOut(want, got), "it is called as `"+usage(h.tree)+"`")...)
 	}
 	return l.askFreq(value, n, want.Freq, fmt.Sprintf("%s is asked in %s", who, want.Freq.words()))
 }
