@@ -62,8 +62,8 @@ func page(list []drawn) []byte {
 	}
 	var runes fonts.Runes
 	runes.Add(body.Bytes())
-	css := fonts.AppendCSS(nil, &runes, fonts.Faces()...)
-	return []byte("<!DOCTYPE html><html lang=en><meta charset=utf-8><title>Drawings</title><style>" + string(css) +
+	css := strings.Join(fonts.Rules(&runes, fonts.Faces()...), "")
+	return []byte("<!DOCTYPE html><html lang=en><meta charset=utf-8><title>Drawings</title><style>" + css +
 		"body{margin:0}figure{margin:0 0 20px}svg{display:block}</style>" + body.String() + "</html>")
 }
 

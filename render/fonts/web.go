@@ -51,18 +51,19 @@ type part struct {
 	rule   string // the whole style rule, data included
 }
 
-// AppendCSS appends the style rules for the faces of a page, each with the
-// parts that the characters of the page need, their data inside. The families
-// are called by their short names.
-func AppendCSS(dst []byte, page *Runes, faces ...*Face) []byte {
+// Rules returns the style rules for the faces of a page, each with the parts
+// that the characters of the page need, their data inside. The families are
+// called by their short names.
+func Rules(page *Runes, faces ...*Face) []string {
+	var rules []string
 	for _, f := range faces {
 		for _, p := range f.web() {
 			if page.meets(p.spans) {
-				dst = append(dst, p.rule...)
+				rules = append(rules, p.rule)
 			}
 		}
 	}
-	return dst
+	return rules
 }
 
 // webParts returns the parts of a face: as the face's package splits it, or for

@@ -22,12 +22,19 @@ import (
 
 // Append appends the HTML file of a page.
 func Append(dst []byte, p *render.Page) []byte {
-	from := len(dst)
 	w := &writer{page: p, sheet: p.Sheet, source: p.Sheet.Source.Text}
+	from := len(dst)
 	w.b = slices.Grow(dst, headSize+grown*len(w.source))
+	w.head()
+	faces := len(w.b)
+	w.styles()
+	body := len(w.b)
 	w.body()
 	w.raw("</body>\n</html>\n")
-	return slices.Insert(w.b, from, w.head(w.b[from:])...)
+	var runes fonts.Runes
+	addRunes(&runes, w.b[from:faces])
+	addRunes(&runes, w.b[body:])
+	return insert(w.b, faces, w.faces(&runes))
 }
 
 // grown is how many bytes of a page a byte of a calc grows to, and headSize how
@@ -37,7 +44,22 @@ const (
 	headSize = 1 << 19
 )
 
-// writer writes the body of a page.
+// insert inserts texts at a place of b.
+func insert(b []byte, at int, texts []string) []byte {
+	size := 0
+	for _, s := range texts {
+		size += len(s)
+	}
+	end := len(b)
+	b = slices.Grow(b, size)[:end+size]
+	copy(b[at+size:], b[at:end])
+	for _, s := range texts {
+		at += copy(b[at:], s)
+	}
+	return b
+}
+
+// writer writes a page.
 type writer struct {
 	b      []byte
 	page   *render.Page
@@ -47,34 +69,42 @@ type writer struct {
 	strong bool // the page has text that is both bold and italic
 }
 
-// head is everything before the body's content: the characters of the body
-// tell which parts of the faces it needs.
-func (w *writer) head(body []byte) []byte {
-	h := &writer{b: make([]byte, 0, headSize)}
+// head writes the head as far as its styles.
+func (w *writer) head() {
 	f := &w.sheet.Front
-	h.raw("<!DOCTYPE html>\n<html lang=\"en\">\n<head>\n<meta charset=\"utf-8\">\n" +
+	w.raw("<!DOCTYPE html>\n<html lang=\"en\">\n<head>\n<meta charset=\"utf-8\">\n" +
 		// A reader of a file from outside is safe even from what the writer lets through.
 		"<meta http-equiv=\"Content-Security-Policy\" content=\"default-src 'none'; style-src 'unsafe-inline'; img-src data:; font-src data:\">\n" +
 		"<meta name=\"viewport\" content=\"width=device-width, initial-scale=1\">\n<title>")
-	h.text(f.Calc)
+	w.text(f.Calc)
 	if f.Rev != "" {
-		h.raw(" rev ")
-		h.text(f.Rev)
+		w.raw(" rev ")
+		w.text(f.Rev)
 	}
 	if f.Title != "" {
-		h.raw(": ")
-		h.text(f.Title)
+		w.raw(": ")
+		w.text(f.Title)
 	}
-	h.raw("</title>\n")
+	w.raw("</title>\n")
 	if f.By.Name != "" {
-		h.raw(`<meta name="author" content="`)
-		h.text(f.By.Name)
-		h.raw("\">\n")
+		w.raw(`<meta name="author" content="`)
+		w.text(f.By.Name)
+		w.raw("\">\n")
 	}
-	h.raw("<style>\n")
-	var runes fonts.Runes
-	addRunes(&runes, body)
-	addRunes(&runes, h.b)
+	w.raw("<style>\n")
+}
+
+// styles writes the rest of the head, before which the faces come.
+func (w *writer) styles() {
+	w.raw(maths.CSS)
+	w.raw(sheetCSS)
+	w.paper(w.page)
+	w.raw("</style>\n</head>\n<body>\n")
+}
+
+// faces are the style rules for the faces of the page: its characters tell
+// which parts of them it needs.
+func (w *writer) faces(runes *fonts.Runes) []string {
 	faces := []*fonts.Face{fonts.Serif, fonts.SerifItalic, fonts.SerifSemiBold, fonts.Sans, fonts.SansSemiBold, fonts.Math}
 	if w.mono {
 		faces = append(faces, fonts.Mono)
@@ -82,25 +112,18 @@ func (w *writer) head(body []byte) []byte {
 	if w.strong {
 		faces = append(faces, fonts.SerifSemiBoldItalic)
 	}
-	h.b = fonts.AppendCSS(h.b, &runes, faces...)
-	h.raw(maths.CSS)
-	h.raw(sheetCSS)
-	h.paper(w.page)
-	h.raw("</style>\n</head>\n<body>\n")
-	return h.b
+	return fonts.Rules(runes, faces...)
 }
 
 // addRunes adds the characters of a text that is ASCII for the most part.
 func addRunes(runes *fonts.Runes, text []byte) {
 	runes.Add([]byte("az09"))
-	const highBits = 0x8080808080808080
-	word := binary.LittleEndian.Uint64
 	for len(text) >= 8 {
-		if len(text) >= 32 && (word(text)|word(text[8:])|word(text[16:])|word(text[24:]))&highBits == 0 {
+		if len(text) >= 32 && beyond(text)|beyond(text[8:])|beyond(text[16:])|beyond(text[24:]) == 0 {
 			text = text[32:]
 			continue
 		}
-		if word(text)&highBits == 0 {
+		if beyond(text) == 0 {
 			text = text[8:]
 			continue
 		}
@@ -113,6 +136,9 @@ func addRunes(runes *fonts.Runes, text []byte) {
 	}
 	runes.Add(text)
 }
+
+// beyond are the high bits of the next eight bytes: zero where they are ASCII.
+func beyond(text []byte) uint64 { return binary.LittleEndian.Uint64(text) & 0x8080808080808080 }
 
 func (w *writer) body() {
 	w.raw("<div class=\"sheet\">\n<header>\n")

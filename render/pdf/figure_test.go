@@ -197,7 +197,7 @@ func onScreen(t *testing.T, chromium string, list []*figure.Drawing) (out []dark
 	}
 	var runes fonts.Runes
 	runes.Add(body.Bytes())
-	css := fonts.AppendCSS(nil, &runes, fonts.Faces()...)
+	css := []byte(strings.Join(fonts.Rules(&runes, fonts.Faces()...), ""))
 	css = fmt.Appendf(css, "body{margin:0;display:grid;grid-template-columns:repeat(%d,max-content)}figure{margin:0;box-sizing:border-box;padding:%dpt;width:%gpx;height:%gpx}svg{display:block}", across, inset, pixelsWide/pixelsOfCSS, pixelsHigh/pixelsOfCSS)
 	file := filepath.Join(t.TempDir(), "figures.html")
 	page := "<!DOCTYPE html><meta charset=utf-8><style>" + string(css) + "</style>" + body.String()
