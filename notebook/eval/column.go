@@ -76,6 +76,7 @@ type source struct {
 	col       []float64
 	repeat, n int
 	index     []int32
+	whole     bool // the column lies as the target does, entry by entry
 }
 
 // column computes all entries of a node over the rows of a target, NaN where
@@ -298,7 +299,7 @@ func lay(col []float64, t, target *check.Type) source {
 		for _, r := range target.Rows[at+len(t.Rows):] {
 			repeat *= r.N()
 		}
-		return source{col: col, repeat: repeat, n: len(col)}
+		return source{col: col, repeat: repeat, n: len(col), whole: len(col) == target.Count()}
 	}
 	index := make([]int32, target.Count())
 	for e := range index {
@@ -352,7 +353,12 @@ func (p *columnProgram) run(regs [][]float64, sources []source, lo, hi int) {
 		op := &p.ops[i]
 		dst := regs[op.dst][:n]
 		if op.leaf >= 0 {
-			sources[op.leaf].read(dst, lo, hi)
+			src := &sources[op.leaf]
+			if src.whole && i < len(p.ops)-1 {
+				regs[op.dst] = src.col[lo:hi] // as it lies; no operation writes to a leaf
+			} else {
+				src.read(dst, lo, hi)
+			}
 			continue
 		}
 		arg := func(k int) []float64 { return regs[op.args[k]][:n] }

@@ -281,12 +281,17 @@ func (m *machine) disagree(ch check.Choice, t check.Type, entry int) error {
 func (m *machine) computeColumn(p *check.Plan, f *frame, step *Step) error {
 	d, c := p.Def, p.Column
 	v := Value{Type: d.Type, Text: c.Texts}
-	for _, n := range c.Cells {
-		x, err := m.number(n, f, &check.Type{}, 0)
+	v.Num = make([]float64, len(c.Cells))
+	plain := &check.Type{}
+	for r, n := range c.Cells {
+		x, err := n.Num, error(nil)
+		if n.Op != check.Const { // a formula
+			x, err = m.number(n, f, plain, 0)
+		}
 		if err != nil {
 			return err
 		}
-		v.Num = append(v.Num, x)
+		v.Num[r] = x
 	}
 	f.vals[d.Slot] = v
 	if step == nil {
@@ -316,7 +321,11 @@ func ownFigures(cell *syntax.Cell, u units.Unit) string {
 	if lit.Neg {
 		minus = "-"
 	}
-	return minus + strings.ReplaceAll(lit.Pieces[0].Figures, "_", "")
+	figures := strings.ReplaceAll(lit.Pieces[0].Figures, "_", "")
+	if minus == "" {
+		return figures
+	}
+	return minus + figures
 }
 
 // computeBundle runs a helper with several results, once for each entry of
