@@ -14,7 +14,7 @@ import (
 func (c *composer) check(s *eval.Step, e *Entry, full bool) {
 	r := s.Check
 	e.Kind = Check
-	e.Verdict = verdict(r)
+	e.Verdict = c.verdict(r)
 	e.Formula = c.relation(s, r.Sides, r.Ops, r.Type, r.Governs, e.Verdict.OK)
 	if !e.Verdict.Required {
 		e.Formula = c.asWritten(s, r)
@@ -48,9 +48,14 @@ func counted(r *eval.CheckResult, n int) string {
 	return text
 }
 
-// verdict is how a whole check came out.
-func verdict(r *eval.CheckResult) *Verdict {
+// verdict is how a whole check came out, the same for its entry and its line in
+// the summary.
+func (c *composer) verdict(r *eval.CheckResult) *Verdict {
+	if v := c.verdicts[r]; v != nil {
+		return v
+	}
 	v := &Verdict{OK: r.AllOK, Ratio: math.NaN()}
+	c.verdicts[r] = v
 	for _, required := range r.Required {
 		v.Required = v.Required || required
 	}

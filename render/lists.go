@@ -52,7 +52,7 @@ func (c *composer) summary() []Summary {
 		line := Summary{
 			Number: s.Number, Anchor: s.Anchor, Note: s.Note,
 			Formula: c.asWritten(s, s.Check),
-			Mark:    s.Check.Type.Mark(s.Check.Governs), Verdict: verdict(s.Check),
+			Mark:    s.Check.Type.Mark(s.Check.Governs), Verdict: c.verdict(s.Check),
 		}
 		if !line.Verdict.Required {
 			line.Reason, line.Mark = c.needed(s), ""

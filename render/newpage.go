@@ -12,7 +12,7 @@ import (
 
 // NewPage decides what a compiled calc prints. The sheet has no errors.
 func NewPage(s *notebook.Sheet) *Page {
-	c := &composer{maths: maths.NewBuilder(), sheet: s, picks: newPicks(s)}
+	c := &composer{maths: maths.NewBuilder(), sheet: s, picks: newPicks(s), verdicts: map[*eval.CheckResult]*Verdict{}}
 	p := &Page{Sheet: s, Title: title(&s.Front)}
 	p.Blocks = make([][]Entry, len(s.Blocks))
 	c.numberCautions()
@@ -36,6 +36,7 @@ type composer struct {
 	cautions []CautionLine
 	calls    int // helpers placed so far
 	picks    picks
+	verdicts map[*eval.CheckResult]*Verdict
 }
 
 func title(f *notebook.Front) Title {

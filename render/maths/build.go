@@ -15,7 +15,7 @@ import (
 // in ten formulas is set once. One goroutine uses it at a time; the trees are
 // for everyone.
 type Builder struct {
-	names     map[string]Node // Symbols
+	names     map[string]Node // symbols of what is no step
 	units     map[string]Unit
 	forms     map[*eval.Step]*forms
 	functions map[string]*eval.Step // the author's own, by name
@@ -130,7 +130,11 @@ func symbol(name string) Symbol {
 	if i := strings.LastIndexByte(name, '.'); i >= 0 {
 		qualifier, last, dotted = name[:i], name[i+1:], true
 	}
-	for i, p := range syntax.DisplayParts(last) {
+	parts := syntax.DisplayParts(last)
+	if n := len(parts); n > 1 || dotted {
+		s.Sub = make([]string, 0, n)
+	}
+	for i, p := range parts {
 		s.Primes += p.Primes
 		if i == 0 {
 			s.Head = p.Text
@@ -147,11 +151,15 @@ func symbol(name string) Symbol {
 // Symbol returns the symbol of a step, which leads to where it stands.
 func (b *Builder) Symbol(s *eval.Step) Node { return b.linked(stepName(s), s) }
 
-// linked is a name as a symbol that leads to where a step stands.
+// linked is a name of a step as a symbol that leads to where it stands.
 func (b *Builder) linked(name string, s *eval.Step) Node {
 	f := b.of(s)
 	if f.symbol == nil || f.name != name {
-		symbol := b.Name(name).(Symbol)
+		plain := b.Plain(s)
+		if name != stepName(s) {
+			plain = b.Name(name)
+		}
+		symbol := plain.(Symbol)
 		symbol.Target = b.Anchor(s)
 		f.symbol, f.name = symbol, name
 	}
@@ -162,7 +170,7 @@ func (b *Builder) linked(name string, s *eval.Step) Node {
 func (b *Builder) Plain(s *eval.Step) Node {
 	f := b.of(s)
 	if f.plain == nil {
-		f.plain = b.Name(stepName(s))
+		f.plain = symbol(stepName(s))
 	}
 	return f.plain
 }
