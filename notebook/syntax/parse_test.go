@@ -373,6 +373,11 @@ plot # Stress over diameter
   steps 400
   title Shear stress, double shear
 `},
+	{"plot with its steps behind the range", "plot", "tau against d from 1 mm to 2*steps steps 40 # Stress", `
+plot # Stress
+  curves tau against d from 1_mm to (* 2 steps)
+  steps 40
+`},
 	{"plot names that are words elsewhere", "plot", "limit, steps against title from 1 to 2", `
 plot
   curves limit steps against title from 1 to 2

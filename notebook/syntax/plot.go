@@ -119,7 +119,7 @@ func (p *parser) plotLine(plot *Plot) {
 	}
 }
 
-// curves reads `tau, sigma against d from 16 mm to 40 mm`.
+// curves reads `tau, sigma against d from 16 mm to 40 mm`, `steps 400` behind it too.
 func (p *parser) curves(plot *Plot) {
 	start := p.start
 	const form = "as in `tau against d from 16 mm to 40 mm`"
@@ -144,7 +144,12 @@ func (p *parser) curves(plot *Plot) {
 	if !p.keyword("to", form) {
 		return
 	}
+	p.stop = "steps"
 	plot.To = p.value()
+	p.stop = ""
+	if p.tok == tName && p.here() == "steps" {
+		p.steps(plot) // also read here, and not only on a line of its own
+	}
 }
 
 // keyword reads a word that has its meaning in a plot only.
