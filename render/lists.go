@@ -1,10 +1,12 @@
 package render
 
 import (
+	"bytes"
 	"cmp"
 	"slices"
 	"sort"
 	"strings"
+	"unicode/utf8"
 
 	"gusset/notebook"
 	"gusset/notebook/check"
@@ -129,17 +131,36 @@ func (c *composer) symbols() []SymbolLine {
 	steps := c.defined()
 	meaning := c.meanings()
 	list := make([]SymbolLine, len(steps))
-	keys := make([]symbolKey, len(steps))
+	ends := make([]int, len(steps))
+	var keys []byte
 	for i, s := range steps {
 		line := SymbolLine{Symbol: c.maths.Plain(s), Meaning: meaning(s), Anchor: s.Anchor, Where: c.where(s)}
 		if k := s.Value.Type.Kind; k == check.Number || k == check.Point {
 			line.Unit = c.maths.Unit(s.Unit)
 		}
 		list[i] = line
-		symbol := line.Symbol.(maths.Symbol)
-		keys[i] = symbolKey{strings.ToLower(symbol.Head), symbol.Head, symbol.Sub, symbol.Primes}
+		keys = appendSymbolKey(keys, line.Symbol.(maths.Symbol))
+		ends[i] = len(keys)
 	}
-	return inOrder(list, func(a, b int) int { return keys[a].compare(&keys[b]) })
+	key := func(i int) []byte {
+		if i == 0 {
+			return keys[:ends[0]]
+		}
+		return keys[ends[i-1]:ends[i]]
+	}
+	return inOrder(list, func(a, b int) int { return bytes.Compare(key(a), key(b)) })
+}
+
+// appendSymbolKey appends what symbols are ordered by: their letters, small and
+// large ones of a letter together, then their subscripts and primes. A zero byte
+// ends each, so that the shorter of two comes first.
+func appendSymbolKey(dst []byte, s maths.Symbol) []byte {
+	dst = append(append(dst, strings.ToLower(s.Head)...), 0)
+	dst = append(append(dst, s.Head...), 0)
+	for _, p := range s.Sub {
+		dst = append(append(dst, p...), 0)
+	}
+	return utf8.AppendRune(append(dst, 0), rune(s.Primes))
 }
 
 // inOrder sorts lines, equal ones as they stand; compare is given their places.
@@ -195,27 +216,6 @@ func (c *composer) where(s *eval.Step) string {
 		}
 	}
 	return ""
-}
-
-// symbolKey is what symbols are ordered by: their letters, small and large ones
-// of a letter together, then their subscripts.
-type symbolKey struct {
-	lower, head string
-	sub         []string
-	primes      int
-}
-
-func (a *symbolKey) compare(b *symbolKey) int {
-	if d := strings.Compare(a.lower, b.lower); d != 0 {
-		return d
-	}
-	if d := strings.Compare(a.head, b.head); d != 0 {
-		return d
-	}
-	if d := slices.Compare(a.sub, b.sub); d != 0 {
-		return d
-	}
-	return a.primes - b.primes
 }
 
 // sources lists what is cited, in order, with what rests on it.

@@ -18,6 +18,7 @@ type Builder struct {
 	names     map[string]Node // symbols of what is no step
 	units     map[string]Unit
 	forms     map[*eval.Step]*forms
+	latest    *forms                // asked for
 	functions map[string]*eval.Step // the author's own, by name
 	chunk     []forms               // room for the next forms
 	nodes     []Node                // room for the next rows
@@ -27,6 +28,7 @@ type Builder struct {
 
 // forms are the ways in which a step has been set.
 type forms struct {
+	step    *eval.Step
 	anchor  string // where it stands, if its step does not say
 	plain   Node   // its symbol
 	symbol  Node   // its symbol by the name, which leads to where it stands
@@ -57,14 +59,19 @@ func NewBuilder() *Builder {
 
 // of returns the forms of a step.
 func (b *Builder) of(s *eval.Step) *forms {
+	if b.latest != nil && b.latest.step == s {
+		return b.latest
+	}
 	f := b.forms[s]
 	if f == nil {
 		if len(b.chunk) == 0 {
 			b.chunk = make([]forms, chunk)
 		}
 		f, b.chunk = &b.chunk[0], b.chunk[1:]
+		f.step = s
 		b.forms[s] = f
 	}
+	b.latest = f
 	return f
 }
 
