@@ -374,7 +374,7 @@ plot # Stress over diameter
   title Shear stress, double shear
 `},
 	{"plot with its steps behind the range", "plot", "tau against d from 1 mm to 2*steps steps 40 # Stress", `
-plot # Stress
+plot
   curves tau against d from 1_mm to (* 2 steps)
   steps 40
 `},
