@@ -24,9 +24,9 @@ func (a *axes) field() rect { return rect{0, -a.height, a.width, 0} }
 
 // ticksAlong are as many steps as an axis of a length has room for, given the
 // largest figures along it.
-func (d *pad) ticksAlong(over [2]float64, length float64) scale {
+func (d *pad) ticksAlong(u units.Unit, over [2]float64, length float64) scale {
 	for most := 8; ; most-- {
-		s := newScale(over, true, most)
+		s := scaleIn(u, over, true, most)
 		widest := 0.0
 		for _, t := range s.ticks {
 			widest = math.Max(widest, d.tick(&s, t).set.Width)

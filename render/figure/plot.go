@@ -40,7 +40,7 @@ func Plot(p *eval.Plot) *Drawing {
 	symbols := d.symbols(p.Curves)
 	curves := d.curves(p)
 	a := &axes{height: math.Max(plotHeight, 1.1*stacked(curves))}
-	a.y = newScale(reach(p), false, 6)
+	a.y = scaleIn(p.Y.Unit, reach(p), false, 6)
 	figures, names := 0.0, 0.0
 	for _, t := range a.y.ticks {
 		figures = math.Max(figures, d.tick(&a.y, t).set.Width)
@@ -49,7 +49,7 @@ func Plot(p *eval.Plot) *Drawing {
 		names = math.Max(names, widest(curves[i].name))
 	}
 	a.width = math.Max(column-4-figures-6-names-nameAt(p), 120)
-	a.x = d.ticksAlong(swept(p), a.width)
+	a.x = d.ticksAlong(p.X.Unit, swept(p), a.width)
 	for i := range curves {
 		curves[i].points = a.course(curves[i].Curve)
 	}

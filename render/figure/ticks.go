@@ -3,6 +3,8 @@ package figure
 import (
 	"math"
 	"strconv"
+
+	"gusset/units"
 )
 
 // scale is the range of an axis and its ticks. Values are held in units of
@@ -57,6 +59,38 @@ func newScale(over [2]float64, tight bool, most int) scale {
 		return newScale(over, tight, 2*most)
 	}
 	return s
+}
+
+// scaleIn is a scale for values in a unit. A quarter turn or more in degrees
+// is parted as a circle is.
+func scaleIn(u units.Unit, over [2]float64, tight bool, most int) scale {
+	low, high := over[0], over[1]
+	if u.String() != "deg" || !(high-low >= 90) {
+		return newScale(over, tight, most)
+	}
+	if !tight {
+		low, high = withZero(low, high)
+	}
+	for _, step := range []float64{15, 30, 45, 90, 180, 360} {
+		if (high-low)/step > float64(most)*(1+alike) {
+			continue
+		}
+		s := scale{low: low, high: high}
+		first, last := math.Floor(low/step+alike), math.Ceil(high/step-alike)
+		if tight {
+			first, last = math.Ceil(low/step-alike), math.Floor(high/step+alike)
+		} else {
+			s.low, s.high = first*step, last*step
+		}
+		for n := first; n <= last; n++ {
+			s.ticks = append(s.ticks, n*step)
+		}
+		if len(s.ticks) < 2 {
+			break
+		}
+		return s
+	}
+	return newScale(over, tight, most)
 }
 
 // withZero moves the end of a range to 0 where the range would otherwise begin

@@ -64,6 +64,42 @@ func TestTicks(t *testing.T) {
 	}
 }
 
+// A circle is parted into halves, quarters, eighths, twelfths: common practice.
+func TestTicksInDegrees(t *testing.T) {
+	for _, c := range []struct {
+		unit      string
+		low, high float64
+		tight     bool
+		most      int
+		want      string
+		from, to  float64
+	}{
+		{"deg", 0, 180, true, 8, "0 30 60 90 120 150 180", 0, 180},
+		{"deg", 0, 90, true, 8, "0 15 30 45 60 75 90", 0, 90},
+		{"deg", 0, 360, true, 8, "0 45 90 135 180 225 270 315 360", 0, 360},
+		{"deg", -180, 180, true, 6, "-180 -90 0 90 180", -180, 180},
+		{"deg", 10, 170, true, 6, "30 60 90 120 150", 10, 170},
+		{"deg", 5, 110, false, 6, "0 30 60 90 120", 0, 120},
+		{"deg", 0, 1440, true, 8, "0 180 360 540 720 900 1080 1260 1440", 0, 1440},
+		// Less than a quarter turn, other units and very many turns go by tens.
+		{"deg", 0, 80, true, 8, "0 10 20 30 40 50 60 70 80", 0, 80},
+		{"mm", 0, 180, true, 6, "0 50 100 150", 0, 180},
+		{"deg", 0, 9000, true, 5, "0 2000 4000 6000 8000", 0, 9000},
+	} {
+		s := scaleIn(unitOf(t, c.unit), [2]float64{c.low, c.high}, c.tight, c.most)
+		if got := labelsOf(s); got != c.want || s.low != c.from || s.high != c.to {
+			t.Errorf("%g to %g %s: %s from %g to %g, want %s from %g to %g", c.low, c.high, c.unit, got, s.low, s.high, c.want, c.from, c.to)
+		}
+	}
+	rapid.Check(t, func(rt *rapid.T) {
+		a, b := anyNumber().Draw(rt, "a"), anyNumber().Draw(rt, "b")
+		s := scaleIn(unitOf(t, "deg"), [2]float64{math.Min(a, b), math.Max(a, b)}, rapid.Bool().Draw(rt, "tight"), rapid.IntRange(2, 8).Draw(rt, "most"))
+		if len(s.ticks) == 0 || len(s.ticks) > 12 || !(s.high > s.low) {
+			rt.Fatalf("%d ticks from %g to %g", len(s.ticks), s.low, s.high)
+		}
+	})
+}
+
 func anyNumber() *rapid.Generator[float64] {
 	return rapid.OneOf(
 		rapid.Float64Range(-1e3, 1e3), rapid.Float64(), rapid.Float64Range(-1e-6, 1e-6),
