@@ -91,7 +91,7 @@ func (d *pad) frame(a *axes, xTitle, yTitle label) float64 {
 		d.line(axisLine, Point{0, -a.height * y}, Point{a.width, -a.height * y})
 	}
 	if x := a.x.along(0); x > alike && x < 1-alike {
-		d.faint(axisLine, Point{a.width * x, -a.height}, Point{a.width * x, 0})
+		d.line(axisLine, Point{a.width * x, -a.height}, Point{a.width * x, 0})
 	}
 	d.putAt(xTitle, Point{a.width / 2, 23.5}, middle)
 	d.put(yTitle, Point{edge, -a.height - 8})

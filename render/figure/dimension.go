@@ -18,8 +18,8 @@ func (d *pad) dimension(a, b Point, out float64, value label) {
 	const gap, over, head, tail = 2.5, 2.5, 5.0, 11.0
 	from, to := a.plus(out*nx, out*ny), b.plus(out*nx, out*ny)
 	extension := stroke{soft, 0.4, nil}
-	d.faint(extension, a.plus(gap*nx, gap*ny), from.plus(over*nx, over*ny))
-	d.faint(extension, b.plus(gap*nx, gap*ny), to.plus(over*nx, over*ny))
+	d.line(extension, a.plus(gap*nx, gap*ny), from.plus(over*nx, over*ny))
+	d.line(extension, b.plus(gap*nx, gap*ny), to.plus(over*nx, over*ny))
 	if length > 2.6*head {
 		d.line(fine, from, to)
 		d.head(soft, from, -ux, -uy, head)
@@ -30,5 +30,5 @@ func (d *pad) dimension(a, b Point, out float64, value label) {
 		d.head(soft, to, -ux, -uy, head)
 	}
 	outward := math.Atan2(-ny, nx)
-	d.near(value, Point{(from.X + to.X) / 2, (from.Y + to.Y) / 2}, 3, everywhere, outward, outward+math.Pi)
+	d.near(value, Point{(from.X + to.X) / 2, (from.Y + to.Y) / 2}, 4.5, everywhere, outward, outward+math.Pi)
 }

@@ -95,11 +95,12 @@ const (
 // pad is a drawing in the making. Places are points anywhere in the plane, y
 // down; finish moves all of it into the drawing's rectangle.
 type pad struct {
-	items  []Item
-	maths  *maths.Builder
-	lines  []span // the strokes that labels keep clear of
-	labels []rect // the labels and other things that they must not cover
-	notes  []string
+	items   []Item
+	maths   *maths.Builder
+	lines   []span    // the strokes that labels keep clear of
+	labels  []rect    // the labels and other things that they must not cover
+	waiting []waiting // the labels that are put when all strokes are known
+	notes   []string
 }
 
 func newPad() *pad { return &pad{maths: maths.NewBuilder()} }
@@ -312,6 +313,7 @@ func (it *Item) extent() rect {
 // below, no wider than the column.
 func (d *pad) finish(title, desc string) *Drawing {
 	const edge = 1.5
+	d.settle()
 	room := d.extent()
 	if room.empty() {
 		room = rect{0, 0, column, 0}

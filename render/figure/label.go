@@ -2,6 +2,7 @@ package figure
 
 import (
 	"math"
+	"slices"
 	"strings"
 	"unicode/utf8"
 
@@ -38,6 +39,21 @@ func (l label) in(c Colour) label { l.colour = c; return l }
 // The extent of a label about its baseline.
 func (l label) above() float64 { return math.Max(l.set.Ascent, ascent*l.size) }
 func (l label) below() float64 { return math.Max(l.set.Descent, descent*l.size) }
+
+// stack is a label of two lines.
+func stack(upper, lower label) label {
+	drop := 1.2*upper.size + math.Max(0, upper.below()-descent*upper.size)
+	out := upper
+	out.set.Items = slices.Clone(upper.set.Items)
+	for _, it := range lower.set.Items {
+		it.Y += drop
+		out.set.Items = append(out.set.Items, it)
+	}
+	out.set.Width = math.Max(upper.set.Width, lower.set.Width)
+	out.set.Descent = drop + lower.below()
+	out.plain += " " + lower.plain
+	return out
+}
 
 // rect is what a label covers when its baseline starts at a point.
 func (l label) rect(at Point) rect {

@@ -156,5 +156,11 @@ func (s *sketch) mohrLabels(st stress, c, r float64, x, y Point, radius float64)
 	s.near(pair("y", bare(st.y), bare(-st.tau)).in(teal), y, 5, everywhere, math.Atan2(-y.Y, y.X))
 	_, _, angle := st.circle()
 	s.near(s.label(equals(s.name("σ_m"), value("sigma_x", c))), Point{0, radius}, 4, everywhere, -math.Pi/2, -math.Pi/3, -2*math.Pi/3)
-	s.near(s.result(s.name("θ_p"), degrees(s.pad, angle)), Point{radius, radius}, 2, everywhere, 0, -math.Pi/4)
+	// The angle of the part stands in the corner that the diameter leaves free.
+	end := x
+	if y.X > x.X {
+		end = y
+	}
+	corner := math.Copysign(1, end.Y)
+	s.about(s.result(s.name("θ_p"), degrees(s.pad, angle)), Point{radius, -corner * radius}, 2, 0, corner*math.Pi/4)
 }

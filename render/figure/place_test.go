@@ -2,6 +2,7 @@ package figure
 
 import (
 	"math"
+	"slices"
 	"testing"
 
 	"pgregory.net/rapid"
@@ -159,5 +160,69 @@ func TestInside(t *testing.T) {
 		if got := r.inside(c.s); math.Abs(got-c.want) > 1e-9 {
 			t.Errorf("%v: %g, want %g", c.s, got, c.want)
 		}
+	}
+}
+
+// A label keeps clear of strokes that are drawn after it was asked for, and
+// what belongs to no point gets no line to one.
+func TestLabelsWaitForStrokes(t *testing.T) {
+	for _, later := range []func(d *pad){
+		func(d *pad) { d.line(fine, Point{5, -40}, Point{5, 40}) },
+		func(d *pad) { d.line(hidden, Point{-40, 0}, Point{40, 0}) },
+		func(d *pad) { d.line(axisLine, Point{-40, -40}, Point{40, 40}) },
+		func(d *pad) { d.dimension(Point{0, -8}, Point{60, -8}, 8, d.words("60")) },
+		func(d *pad) { d.circle(outline, Point{}, 20) },
+	} {
+		d := newPad()
+		d.near(d.words("label"), Point{}, 3, everywhere, 0)
+		later(d)
+		strokes := slices.Clone(d.lines)
+		d.settle()
+		for _, s := range strokes {
+			if n := d.labels[0].inside(s); n > 0 {
+				t.Errorf("the stroke %v runs %g through the label %v", s, n, d.labels[0])
+			}
+		}
+	}
+	d := newPad()
+	for x := -30.0; x <= 30; x += 4 {
+		d.line(fine, Point{x, -20}, Point{x, 20})
+	}
+	strokes := len(d.lines)
+	d.about(d.words("label"), Point{}, 3, 0)
+	d.settle()
+	if len(d.lines) != strokes {
+		t.Error("a line leads to where nothing is")
+	}
+	d.near(d.words("label"), Point{}, 3, everywhere, 0)
+	d.settle()
+	if len(d.lines) != strokes+1 {
+		t.Errorf("%d lines lead to the point, want 1", len(d.lines)-strokes)
+	}
+}
+
+func TestCrosses(t *testing.T) {
+	s := span{Point{0, 0}, Point{10, 0}}
+	for _, c := range []struct {
+		o     span
+		cross bool
+		far   float64 // its start from s
+	}{
+		{span{Point{5, 5}, Point{5, -5}}, true, 5},
+		{span{Point{5, 5}, Point{5, 1}}, false, 5},
+		{span{Point{13, 4}, Point{13, -4}}, false, 5},
+		{span{Point{-3, -4}, Point{9, 2}}, true, 5},
+		{span{Point{4, 2}, Point{9, 2}}, false, 2},
+	} {
+		if got := s.crosses(c.o); got != c.cross {
+			t.Errorf("%v: crosses is %t", c.o, got)
+		}
+		if got := c.o.a.toSpan(s); math.Abs(got-c.far) > 1e-9 {
+			t.Errorf("%v: %g away, want %g", c.o.a, got, c.far)
+		}
+	}
+	point := span{Point{3, 4}, Point{3, 4}}
+	if got := (Point{}).toSpan(point); got != 5 {
+		t.Errorf("%g from a point, want 5", got)
 	}
 }

@@ -132,9 +132,9 @@ func (s *sketch) stressStrain() *Drawing {
 	here := at(gamma, response(gamma))
 	s.line(stroke{soft, 0.6, []float64{1.2, 1.8}}, here, at(gamma, 0))
 	s.dot(here)
-	state := maths.Row{equals(s.symbolOf("gamma"), heavily(s.valueOf("gamma"))), maths.Comma, equals(s.name("τ"), heavily(s.like("tau_y", response(gamma))))}
-	s.near(s.label(state),
-		here, 5, a.field(), -math.Pi/4, -3*math.Pi/4, math.Pi/4, 3*math.Pi/4)
+	strained := maths.Row{equals(s.symbolOf("gamma"), heavily(s.valueOf("gamma"))), maths.Comma}
+	state := stack(s.label(strained), s.result(s.name("τ"), s.like("tau_y", response(gamma))))
+	s.near(state, here, 5, a.field(), -math.Pi/4, -3*math.Pi/4, math.Pi/4, 3*math.Pi/4)
 	s.near(s.given("tau_y"), at(far, yield), 4, a.field(), 3*math.Pi/4, -3*math.Pi/4)
 	s.near(s.label(equals(s.name("γ_y"), s.like("gamma", atYield))), at(atYield, 0).plus(0, -9), 3, a.field(), 0, math.Pi)
 	s.near(s.given("G"), at(0.5*atYield, 0.5*yield), 4, a.field(), -math.Pi/4, 3*math.Pi/4)
