@@ -1,6 +1,9 @@
 package maths
 
-import "unicode/utf8"
+import (
+	"strconv"
+	"unicode/utf8"
+)
 
 // CSS is the style sheet that the MathML of this package is written for. It
 // expects the families "Plex Serif" and "Plex Math".
@@ -151,13 +154,13 @@ func (w *markup) math(list []Node, prev Class) {
 
 // row writes a node as children of an element that groups by itself.
 func (w *markup) row(n Node, prev Class) {
-	switch n := n.(type) {
+	switch one := n.(type) {
 	case nil:
 	case Row:
 		var room [12]Node
 		w.list(atoms(room[:0], n), prev, false)
 	case Op:
-		w.operator(n, prev, false)
+		w.operator(one, prev, false)
 	default:
 		w.node(n)
 	}
@@ -259,21 +262,19 @@ func (w *markup) space(s Space) {
 // blank writes a space in hundredths of an em.
 func (w *markup) blank(hundredths int) {
 	w.raw(`<mspace width="`)
-	w.raw(digits(hundredths / 100))
-	w.raw(".")
-	w.raw(digits(hundredths / 10 % 10))
-	w.raw(digits(hundredths % 10))
+	w.b = strconv.AppendInt(w.b, int64(hundredths/100), 10)
+	w.b = append(w.b, '.', '0'+byte(hundredths/10%10), '0'+byte(hundredths%10))
 	w.raw(`em"/>`)
 }
 
 // single writes a node as exactly one element, as scripts and fractions need.
 func (w *markup) single(n Node) {
-	switch n := n.(type) {
+	switch row := n.(type) {
 	case nil:
 		w.raw("<mrow></mrow>")
 	case Row:
-		if len(n) == 1 {
-			w.single(n[0])
+		if len(row) == 1 {
+			w.single(row[0])
 			return
 		}
 		w.raw("<mrow>")

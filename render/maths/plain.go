@@ -95,8 +95,7 @@ func (w *line) node(n Node) {
 	switch n := n.(type) {
 	case nil:
 	case Row:
-		var room [12]Node
-		w.list(atoms(room[:0], n))
+		w.row(n)
 	case Symbol:
 		w.symbol(n)
 	case Number:
@@ -131,6 +130,15 @@ func (w *line) node(n Node) {
 	case Choice:
 		w.choice(n)
 	}
+}
+
+func (w *line) row(row Row) {
+	var room [12]Node
+	list := room[:0]
+	for _, n := range row {
+		list = atoms(list, n)
+	}
+	w.list(list)
 }
 
 // part writes a node, in brackets where they are needed.
