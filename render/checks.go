@@ -80,7 +80,7 @@ func (c *composer) relation(s *eval.Step, sides []eval.Side, ops []syntax.Op, t 
 	if len(ops) == 1 && ops[0] == syntax.Eq {
 		return c.equality(s, sides, t, entry, holds)
 	}
-	var chain maths.Chain
+	chain := maths.Chain{Steps: make([]maths.Step, 0, 3*len(sides))}
 	for i := range sides {
 		written := c.maths.Write(sides[i].Expr, s)
 		if i == 0 {
@@ -179,7 +179,7 @@ func (c *composer) side(s *eval.Step, side *eval.Side, t check.Type, entry int) 
 
 // asWritten sets a check without values.
 func (c *composer) asWritten(s *eval.Step, r *eval.CheckResult) maths.Chain {
-	var chain maths.Chain
+	chain := maths.Chain{Steps: make([]maths.Step, 0, len(r.Sides))}
 	for i := range r.Sides {
 		written := c.maths.Write(r.Sides[i].Expr, s)
 		if i == 0 {
