@@ -30,5 +30,5 @@ func (d *pad) dimension(a, b Point, out float64, value label) {
 		d.head(soft, to, -ux, -uy, head)
 	}
 	outward := math.Atan2(-ny, nx)
-	d.near(value, Point{(from.X + to.X) / 2, (from.Y + to.Y) / 2}, 4.5, everywhere, outward, outward+math.Pi)
+	d.near(value, Point{(from.X + to.X) / 2, (from.Y + to.Y) / 2}, 4.8, everywhere, outward, outward+math.Pi)
 }
