@@ -9,7 +9,7 @@ import "strings"
 func Nearest(word string, candidates []string) string {
 	bound := 2
 	switch n := len(word); {
-	case n == 1:
+	case n <= 1:
 		bound = 0 // any other letter would be as near
 	case n <= 3:
 		bound = 1
