@@ -47,6 +47,17 @@
 // as one italic word, so that it is told from units and functions; figures
 // at its end are upright.
 //
+// # Deviations from TeX
+//
+// Formulas were compared by eye with those of TeX (TestBesideTeX in render/pdf,
+// run by hand). Spaces, bars on the axis, roots and growing brackets agree. Kept
+// different are: no blank of its own beside a fraction, so that a sign stands
+// closer to its bar than TeX's 1.2 pt; exponents behind a bracket, which follow
+// the bracket's height where TeX gives small brackets a letter's; a fraction
+// inside a fraction, which is written with a slash where TeX sets it in script
+// size, too small to check; a dot before a bracket that holds a fraction,
+// so that a product is not taken for a function.
+//
 // # Deviations in a browser
 //
 // Chromium reserves the room of the widest root sign for each root, so a gap
