@@ -2,7 +2,6 @@ package maths
 
 import (
 	"strconv"
-	"unicode/utf8"
 )
 
 // CSS is the style sheet that the MathML of this package is written for. It
@@ -89,51 +88,8 @@ type markup struct {
 
 func (w *markup) raw(s string) { w.b = append(w.b, s...) }
 
-// ordinaryText are the characters that stand in a page as they are.
-var ordinaryText = func() (set [256]bool) {
-	for c := ' '; c < utf8.RuneSelf; c++ {
-		set[c] = c != '&' && c != '<' && c != '>' && c != '"'
-	}
-	set['\n'], set['\t'] = true, true
-	return set
-}()
-
 // text appends character data or a part of an attribute.
-func (w *markup) text(s string) {
-	from := 0
-	for i := 0; i < len(s); {
-		c := s[i]
-		if ordinaryText[c] {
-			i++
-			continue
-		}
-		size, with := 1, "\uFFFD"
-		switch c {
-		case '&':
-			with = "&amp;"
-		case '<':
-			with = "&lt;"
-		case '>':
-			with = "&gt;"
-		case '"':
-			with = "&quot;"
-		default:
-			if c < utf8.RuneSelf {
-				break
-			}
-			var r rune
-			if r, size = utf8.DecodeRuneInString(s[i:]); r != utf8.RuneError || size != 1 {
-				i += size
-				continue
-			}
-		}
-		w.raw(s[from:i])
-		w.raw(with)
-		i += size
-		from = i
-	}
-	w.raw(s[from:])
-}
+func (w *markup) text(s string) { w.b = AppendText(w.b, s) }
 
 // math writes atoms as one formula, smaller where they are longer than their
 // room.
