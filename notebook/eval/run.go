@@ -3,6 +3,7 @@ package eval
 import (
 	"errors"
 	"math"
+	"slices"
 	"sort"
 
 	"github.com/Knetic/govaluate"
@@ -224,10 +225,30 @@ func (m *machine) govern(steps []*Step) {
 	}
 	sort.SliceStable(checks, func(a, b int) bool { return worse(steps[checks[a]].Check, steps[checks[b]].Check) })
 	done := make([]bool, len(steps))
+	for i, s := range steps {
+		done[i] = s == nil || s.Kind == Check
+	}
+	var walks []*walk
 	for _, i := range checks {
 		r := steps[i].Check
-		m.spread(steps, byStep, done, i, r.Type, r.Governs)
+		if len(r.Type.Rows) == 0 {
+			continue // says nothing of any row
+		}
+		k := slices.IndexFunc(walks, func(w *walk) bool { return slices.Equal(w.rows, r.Type.Rows) })
+		if k < 0 {
+			k = len(walks)
+			walks = append(walks, &walk{rows: r.Type.Rows, seen: make([]bool, len(steps))})
+		}
+		m.spread(steps, byStep, done, walks[k].seen, i)
 	}
+}
+
+// walk is what the checks over one list of rows have reached upstream. What a
+// worse check has been through already, with all above it, holds nothing for the
+// next one: chains of checks stay linear.
+type walk struct {
+	rows []*check.Rows
+	seen []bool // by step
 }
 
 func worse(a, b *CheckResult) bool {
@@ -239,24 +260,22 @@ func worse(a, b *CheckResult) bool {
 }
 
 // spread gives everything upstream of a check the entry that governs it.
-func (m *machine) spread(steps []*Step, byStep map[*Step]int, done []bool, from int, t check.Type, entry int) {
+func (m *machine) spread(steps []*Step, byStep map[*Step]int, done, seen []bool, from int) {
+	t, entry := steps[from].Check.Type, steps[from].Check.Governs
 	stack := []int{from}
-	seen := map[int]bool{from: true}
+	seen[from] = true
 	for len(stack) > 0 {
 		i := stack[len(stack)-1]
 		stack = stack[:len(stack)-1]
 		for _, u := range steps[i].Uses {
 			k, ok := byStep[u]
-			if u == nil || !ok || seen[k] {
+			if !ok || seen[k] {
 				continue
 			}
 			seen[k] = true
 			stack = append(stack, k)
-			if done[k] || steps[k].Kind == Check {
-				continue
-			}
-			if m.setEntry(steps[k], t, entry) {
-				done[k] = true
+			if !done[k] {
+				done[k] = m.setEntry(steps[k], t, entry)
 			}
 		}
 	}
