@@ -17,7 +17,7 @@ import (
 // order lists the packages so that each may import only those of the lines
 // above its own; those of one line do not know each other.
 var order = [][]string{
-	{"units", "notebook/diag"},
+	{"units", "notebook/diag", "notebook/slab"},
 	{"notebook/syntax"},
 	{"notebook/check"},
 	{"notebook/eval", "notebook/library"},

@@ -18,7 +18,7 @@ func (l *lower) unary(x *syntax.Unary) *Node {
 		if n.Type.Kind != Condition {
 			return l.fail(diag.Syntax, x.X.Span(), "`not` needs a condition, but `"+l.print(x.X)+"` is "+l.e.c.describe(n.Type))
 		}
-		return &Node{Op: Not, Type: n.Type, Expr: x, Args: []*Node{n}}
+		return l.node(Node{Op: Not, Type: n.Type, Expr: x, Args: l.args(n)})
 	}
 	n := l.value(x.X)
 	if !n.ok() {
@@ -33,7 +33,7 @@ func (l *lower) unary(x *syntax.Unary) *Node {
 	}
 	t := n.Type
 	t.Freq = n.Type.Freq // a sign is no arithmetic
-	out := &Node{Op: Neg, Type: t, Expr: x, Args: []*Node{n}, plain: n.plain, zero: n.zero, bare: n.bare}
+	out := l.node(Node{Op: Neg, Type: t, Expr: x, Args: l.args(n), plain: n.plain, zero: n.zero, bare: n.bare})
 	if r := n.rat(); r != nil {
 		out.exact = new(big.Rat).Neg(r)
 	}
@@ -63,13 +63,17 @@ func (n *Node) rat() *big.Rat {
 	return r
 }
 
-// small is a whole number without a detour over its figures.
+// small is a number of few figures without a detour over their text.
 func small(p syntax.Piece) (*big.Rat, bool) {
 	mant, exp, ok := p.Decimal()
-	if !ok || exp != 0 {
+	if !ok || exp > 0 || exp < -15 {
 		return nil, false
 	}
-	return new(big.Rat).SetInt64(mant), true
+	below := int64(1)
+	for ; exp < 0; exp++ {
+		below *= 10
+	}
+	return big.NewRat(mant, below), true
 }
 
 func (l *lower) binary(x *syntax.Binary) *Node {
@@ -87,7 +91,8 @@ func (l *lower) binary(x *syntax.Binary) *Node {
 // product lowers a chain of `*` and `/` without recursing down its left side,
 // which may be as long as a line.
 func (l *lower) product(x *syntax.Binary) *Node {
-	var chain []*syntax.Binary
+	var short [8]*syntax.Binary
+	chain := short[:0]
 	var first syntax.Expr = x
 	for {
 		b, ok := first.(*syntax.Binary)
@@ -142,7 +147,7 @@ func (l *lower) factor(x syntax.Expr) *Node {
 }
 
 func (l *lower) multiply(b *syntax.Binary, left, right *Node) *Node {
-	n := &Node{Op: Mul, Expr: b, Args: []*Node{left, right}, plain: left.plain && right.plain}
+	n := l.node(Node{Op: Mul, Expr: b, Args: l.args(left, right), plain: left.plain && right.plain})
 	n.Type.Kind = Number
 	var err error
 	if b.Op == syntax.Mul {
@@ -192,7 +197,8 @@ func ratOf(op syntax.Op, left, right *Node) *big.Rat {
 // sum lowers a chain of `+` and `-` to one node with all its terms, since the
 // dust of rounding is measured against the largest of them.
 func (l *lower) sum(x *syntax.Binary) *Node {
-	var chain []*syntax.Binary
+	var short [8]*syntax.Binary
+	chain := short[:0]
 	var first syntax.Expr = x
 	for {
 		b, ok := first.(*syntax.Binary)
@@ -203,8 +209,9 @@ func (l *lower) sum(x *syntax.Binary) *Node {
 		first = b.X
 	}
 	total := l.value(first)
-	n := &Node{Op: Sum, Expr: x, Args: []*Node{total}, Minus: []bool{false}, Type: total.Type, plain: total.plain, exact: total.rat()}
-	n.zero = total.zero
+	n := l.node(Node{Op: Sum, Expr: x, Args: l.room(len(chain) + 1)[:1], Type: total.Type, plain: total.plain, zero: total.zero, exact: total.rat()})
+	n.Args[0] = total
+	n.Detail = l.detail(Detail{Minus: make([]bool, 1, len(chain)+1)})
 	bad := !total.ok()
 	for i := len(chain) - 1; i >= 0; i-- {
 		b := chain[i]
@@ -260,11 +267,7 @@ func (l *lower) addTerm(n *Node, b *syntax.Binary, term *Node) bool {
 	if n.zero {
 		n.Type.Dim = term.Type.Dim
 	}
-	if e := ratOf(b.Op, &Node{exact: n.exact, plain: n.plain, Op: Sum}, term); e != nil {
-		n.exact = e
-	} else {
-		n.exact = nil
-	}
+	n.exact = ratOf(b.Op, n, term)
 	n.Type.Rows = rows
 	n.zero = n.zero && term.zero
 	n.plain = n.plain && term.plain
@@ -294,7 +297,7 @@ func (l *lower) power(x *syntax.Binary) *Node {
 	if err != nil {
 		return l.failRows(x.Span(), err)
 	}
-	n := &Node{Op: Pow, Expr: x, Args: []*Node{base, exponent}, Type: Type{Kind: Number, Rows: rows}, plain: base.plain && exponent.plain}
+	n := l.node(Node{Op: Pow, Expr: x, Args: l.args(base, exponent), Type: Type{Kind: Number, Rows: rows}, plain: base.plain && exponent.plain})
 	r := exponent.rat()
 	if base.Type.Dim.IsNumber() {
 		n.exact = ratPower(base, r)

@@ -166,7 +166,7 @@ func (l *lower) callBuiltin(x *syntax.Call, b builtin) *Node {
 	if over && !reduces {
 		return l.fail(diag.Syntax, x.At, "`over` stands only inside a reduction of one value, such as `max(F over bolts)`")
 	}
-	args := make([]*Node, len(x.Args))
+	args := l.room(len(x.Args))
 	bad := false
 	for i, a := range x.Args {
 		args[i] = l.value(a.Value)
@@ -178,7 +178,7 @@ func (l *lower) callBuiltin(x *syntax.Call, b builtin) *Node {
 	if reduces {
 		return l.reduce(x, args[0])
 	}
-	n := &Node{Op: Builtin, Fn: name, Expr: x, Args: args, plain: true}
+	n := l.node(Node{Op: Builtin, Expr: x, Args: args, plain: true, Detail: l.detail(Detail{Fn: name})})
 	n.Type = Type{Kind: Number}
 	for i, a := range args {
 		n.plain = n.plain && a.plain
@@ -277,7 +277,7 @@ func (l *lower) oneDimension(x *syntax.Call, n *Node, b builtin) bool {
 
 // callNative lowers a library helper's call of a function in Go.
 func (l *lower) callNative(x *syntax.Call, f *Native) *Node {
-	n := &Node{Op: CallGo, Native: f, Expr: x, Type: Type{Kind: Number, Dim: f.Result}}
+	n := l.node(Node{Op: CallGo, Expr: x, Type: Type{Kind: Number, Dim: f.Result}, Detail: l.detail(Detail{Native: f})})
 	if len(x.Args) != len(f.Params) {
 		return l.fail(diag.Syntax, x.At, fmt.Sprintf("%s takes %s", f.Name, arguments(len(f.Params), len(f.Params))))
 	}

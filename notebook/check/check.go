@@ -38,6 +38,7 @@ type checker struct {
 	// of load cases may head its own by the same word (`case`), and has it
 	// under its name then (`wind.case`).
 	caseMarks map[string]bool
+	slabs     slabs
 }
 
 // Check checks a file. Its program can be evaluated even where it has errors:
@@ -170,7 +171,7 @@ func (c *checker) laterFunction(id string) (int, bool) {
 func (c *checker) checkBlock(b *syntax.Block) {
 	switch b.Kind {
 	case syntax.CalcBlock:
-		body := &body{c: c, e: c.top, block: c.block}
+		body := &body{c: c, e: c.top, block: c.block, plans: make([]*Plan, 0, len(b.Stmts))}
 		for _, s := range b.Stmts {
 			body.statement(s)
 		}

@@ -21,11 +21,15 @@ type body struct {
 }
 
 func (b *body) lower(slots int) *lower {
-	return &lower{e: b.e, uses: make([]*Def, slots), site: b.site, siteIn: b.siteIn, inside: b.inside}
+	s := &b.c.slabs
+	l := s.lowers.One(chunk)
+	l.e, l.uses, l.site, l.siteIn, l.inside = b.e, s.uses.Take(slots, 2*chunk), b.site, b.siteIn, b.inside
+	return l
 }
 
 func (b *body) plan(s syntax.Stmt) *Plan {
-	p := &Plan{Stmt: s, Line: b.e.src.LineAt(s.Span().Start), Block: b.block}
+	p := b.c.slabs.plans.One(chunk)
+	p.Stmt, p.Line, p.Block = s, b.e.src.LineAt(s.Span().Start), b.block
 	b.plans = append(b.plans, p)
 	return p
 }
@@ -93,7 +97,8 @@ func (b *body) definition(s *syntax.Definition) {
 		b.c.defining = ""
 		return
 	}
-	d := &Def{ID: s.Name.ID, Symbol: s.Name.Text, Line: p.Line, At: s.Name.At, Plan: p, Scope: b.e.scope}
+	d := b.c.slabs.defs.One(chunk)
+	d.ID, d.Symbol, d.Line, d.At, d.Plan, d.Scope = s.Name.ID, s.Name.Text, p.Line, s.Name.At, p, b.e.scope
 	p.Def = d
 	p.Choice = l.choice(s, d)
 	b.c.defining = ""
@@ -127,8 +132,7 @@ func (b *body) failed(p *Plan, l *lower) {
 func (b *body) printed(p *Plan, s *syntax.Definition) {
 	d := p.Def
 	if s.Unit != nil && s.Unit.Quantity == "" {
-		u := s.Unit.Unit
-		d.Unit = &u
+		d.Unit = &s.Unit.Unit
 	}
 	if len(s.Branches) != 1 || s.Branches[0].Cond != nil || len(s.Where) > 0 || p.Choice.FirstOf != nil {
 		return
@@ -156,11 +160,11 @@ func (b *body) printed(p *Plan, s *syntax.Definition) {
 		return
 	}
 	p.IsGiven = true
-	u := lit.Pieces[0].Unit
+	u := &lit.Pieces[0].Unit
 	if d.Unit == nil {
-		d.Unit = &u
+		d.Unit = u
 	}
-	if d.Unit.Equal(u) {
+	if d.Unit.Equal(*u) {
 		d.Literal = lit
 	}
 }
@@ -182,6 +186,7 @@ func (l *lower) choice(s *syntax.Definition, d *Def) Choice {
 	if f, ok := s.Branches[0].Value.(*syntax.FirstOf); ok && len(s.Branches) == 1 {
 		return l.firstOf(f, s, d)
 	}
+	ch.Branches = l.e.c.slabs.branches.Take(len(s.Branches), chunk)[:0]
 	lead := -1 // the branch that sets the dimension: the first that is no literal 0
 	for i := range s.Branches {
 		br := &s.Branches[i]
@@ -225,7 +230,7 @@ func (l *lower) choice(s *syntax.Definition, d *Def) Choice {
 }
 
 func (l *lower) choiceRows(ch *Choice, br *syntax.Branch, out Branch) {
-	for _, n := range []*Node{out.Value, out.Cond} {
+	for _, n := range [...]*Node{out.Value, out.Cond} {
 		if n == nil {
 			continue
 		}
@@ -379,7 +384,7 @@ func (l *lower) declareWhere(s *syntax.Definition, x syntax.Expr, n *Node) *Node
 	if s.Unit.Point {
 		t.Kind = Point
 	}
-	return &Node{Op: FromUnit, Type: t, Expr: x, Args: []*Node{n}, Unit: s.Unit.Unit}
+	return l.node(Node{Op: FromUnit, Type: t, Expr: x, Args: l.args(n), Detail: l.detail(Detail{Unit: s.Unit.Unit})})
 }
 
 // check lowers a check: one comparison or chain.
@@ -395,7 +400,8 @@ func (b *body) check(s *syntax.Check) {
 }
 
 func (l *lower) checkPlan(cond, needed syntax.Expr) *CheckPlan {
-	out := &CheckPlan{Cond: l.condition(cond)}
+	out := l.e.c.slabs.checks.One(chunk)
+	out.Cond = l.condition(cond)
 	if needed != nil {
 		out.If = l.condition(needed)
 		if out.If.ok() {

@@ -4,6 +4,7 @@ import (
 	"fmt"
 
 	"gusset/notebook/diag"
+	"gusset/notebook/slab"
 	"gusset/notebook/syntax"
 	"gusset/units"
 )
@@ -34,7 +35,48 @@ type lower struct {
 	inText bool
 }
 
-var invalid = &Node{}
+var invalid = &Node{Detail: &noDetail}
+
+// slabs are where the parts of a program come from.
+type slabs struct {
+	nodes    slab.Slab[Node]
+	args     slab.Slab[*Node]
+	details  slab.Slab[Detail]
+	lowers   slab.Slab[lower]
+	plans    slab.Slab[Plan]
+	defs     slab.Slab[Def]
+	uses     slab.Slab[*Def]
+	checks   slab.Slab[CheckPlan]
+	branches slab.Slab[Branch]
+}
+
+// chunk is how many values the checker takes room for at once.
+const chunk = 64
+
+// node keeps a node.
+func (l *lower) node(n Node) *Node {
+	out := l.e.c.slabs.nodes.One(chunk)
+	*out = n
+	if n.Detail == nil {
+		out.Detail = &noDetail
+	}
+	return out
+}
+
+func (l *lower) detail(d Detail) *Detail {
+	out := l.e.c.slabs.details.One(chunk)
+	*out = d
+	return out
+}
+
+// room is a list for n nodes.
+func (l *lower) room(n int) []*Node { return l.e.c.slabs.args.Take(n, 2*chunk) }
+
+func (l *lower) args(nodes ...*Node) []*Node {
+	out := l.room(len(nodes))
+	copy(out, nodes)
+	return out
+}
 
 // fail reports an error at a place of the statement.
 func (l *lower) fail(id string, at diag.Span, message string, hints ...string) *Node {
@@ -73,14 +115,13 @@ func (l *lower) expr(x syntax.Expr) *Node {
 	case *syntax.Number:
 		return l.number(x)
 	case *syntax.Text:
-		return &Node{Op: TextLit, Type: Type{Kind: Text}, Expr: x, Str: x.Value}
+		return l.node(Node{Op: TextLit, Type: Type{Kind: Text}, Expr: x, Detail: l.detail(Detail{Str: x.Value})})
 	case *syntax.Name:
 		return l.name(x)
 	case *syntax.Paren:
-		n := *l.expr(x.X)
-		n.bare = false
-		n.Memo = nil
-		return &n
+		n := l.node(*l.expr(x.X))
+		n.bare, n.Memo = false, nil
+		return n
 	case *syntax.Unary:
 		return l.unary(x)
 	case *syntax.Binary:
@@ -111,7 +152,7 @@ func (l *lower) value(x syntax.Expr) *Node {
 
 // number lowers a literal: exact to coherent SI, rounded once.
 func (l *lower) number(x *syntax.Number) *Node {
-	n := &Node{Op: Const, Expr: x, plain: true, bare: true}
+	n := l.node(Node{Op: Const, Expr: x, plain: true, bare: true})
 	n.Type.Kind = Number
 	first := x.Pieces[0]
 	l.literalUnits(x)
@@ -211,7 +252,7 @@ func (l *lower) name(x *syntax.Name) *Node {
 		return l.fail(diag.DimensionMismatch, x.At, fmt.Sprintf("%s stands for a helper with %d results, and is no value itself", x.Text, len(d.Results)),
 			"name one of them: "+list(resultNames(d)))
 	}
-	n := &Node{Op: Load, Type: d.Type, Expr: x, Def: d, exact: d.exact, plain: d.plain, zero: d.zero}
+	n := l.node(Node{Op: Load, Type: d.Type, Expr: x, Def: d, exact: d.exact, plain: d.plain, zero: d.zero})
 	if u, ok := l.where[x.ID]; ok {
 		return l.plainNumber(n, u)
 	}
@@ -226,11 +267,11 @@ func (l *lower) plainNumber(n *Node, u *syntax.UnitRef) *Node {
 	}
 	t := n.Type
 	t.Kind, t.Dim, t.Freq = Number, units.Dimension{}, NoFreq
-	return &Node{Op: ToUnit, Type: t, Expr: n.Expr, Args: []*Node{n}, Unit: u.Unit}
+	return l.node(Node{Op: ToUnit, Type: t, Expr: n.Expr, Args: l.args(n), Detail: l.detail(Detail{Unit: u.Unit})})
 }
 
 func (l *lower) logical(x *syntax.Binary) *Node {
-	n := &Node{Op: And, Expr: x, Type: Type{Kind: Condition}}
+	n := l.node(Node{Op: And, Expr: x, Type: Type{Kind: Condition}})
 	if x.Op == syntax.Or {
 		n.Op = Or
 	}
@@ -255,7 +296,7 @@ func (l *lower) logical(x *syntax.Binary) *Node {
 
 // compare lowers a chain of comparisons of values of one dimension.
 func (l *lower) compare(x *syntax.Compare) *Node {
-	n := &Node{Op: Compare, Expr: x, Type: Type{Kind: Condition}, Cmp: x.Ops, Args: l.operands(x)}
+	n := l.node(Node{Op: Compare, Expr: x, Type: Type{Kind: Condition}, Args: l.operands(x), Detail: l.detail(Detail{Cmp: x.Ops})})
 	if where := l.where; len(where) > 0 && n.Args != nil && !alike(n.Args) {
 		// `if d <= 8 mm` above `where d [mm]` compares the value, not its number
 		l.where = nil
@@ -284,7 +325,7 @@ func (l *lower) compare(x *syntax.Compare) *Node {
 
 // operands lowers what is compared; nil where any of it fails.
 func (l *lower) operands(x *syntax.Compare) []*Node {
-	args, bad := make([]*Node, len(x.Operands)), false
+	args, bad := l.room(len(x.Operands)), false
 	for i, operand := range x.Operands {
 		args[i] = l.value(operand)
 		bad = bad || !args[i].ok()

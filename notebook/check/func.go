@@ -159,7 +159,7 @@ func (l *lower) callFunction(x *syntax.Call, f *function) *Node {
 	}
 	usage := fmt.Sprintf("%s(%s)", s.Name.Text, strings.Join(names, ", "))
 	values, ok := l.bind(x, s.Params, func(int) bool { return false }, usage)
-	args := make([]*Node, len(values))
+	args := l.room(len(values))
 	for i, v := range values {
 		if v != nil {
 			args[i] = l.value(v)
@@ -182,7 +182,7 @@ func (l *lower) callFunction(x *syntax.Call, f *function) *Node {
 		return l.fail(diag.BoundExceeded, x.At, fmt.Sprintf("the statement comes to over %d calls of functions, the bound", maxCost))
 	}
 	t := inst.Body.Type
-	return &Node{Op: CallFunc, Expr: x, Args: args, Func: inst, Type: t}
+	return l.node(Node{Op: CallFunc, Expr: x, Args: args, Type: t, Detail: l.detail(Detail{Func: inst})})
 }
 
 func (l *lower) instance(x *syntax.Call, f *function, args []*Node, usage string) *Function {

@@ -59,7 +59,7 @@ func (c *checker) checkHelper(h *helper) {
 		if t.Kind == Invalid {
 			sound = false
 		}
-		n := &Node{Op: Load, Type: t, Expr: p.Name, Def: &Def{ID: p.Name.ID}}
+		n := l.node(Node{Op: Load, Type: t, Expr: p.Name, Def: &Def{ID: p.Name.ID}})
 		if p.Unit != nil && p.Unit.Column {
 			n.Type.Rows = []*Rows{{Name: p.Name.ID, File: h.tree.Source.Name}}
 		}
@@ -401,7 +401,7 @@ func (l *lower) callHelper(x *syntax.Call, h *helper) *Node {
 		return l.failRows(x.At, err)
 	}
 	t.Rows, t.Freq = rows, NoFreq
-	return &Node{Op: CallHelp, Expr: x, Help: hc, Type: t}
+	return l.node(Node{Op: CallHelp, Expr: x, Type: t, Detail: l.detail(Detail{Help: hc})})
 }
 
 // bundleCall finds the helper with several results that is a definition's whole right side.

@@ -9,7 +9,7 @@ import (
 )
 
 // Op is what a node of the checked tree does.
-type Op int
+type Op uint8
 
 // The operations of the checked tree.
 const (
@@ -40,13 +40,27 @@ const (
 // Node is an expression whose dimensions and rows have been checked. It holds
 // no units but those of a `where`; literals are in coherent SI.
 type Node struct {
-	Op     Op
-	Type   Type
-	Expr   syntax.Expr // what it was made from
-	Args   []*Node
-	Num    float64
+	Op    Op
+	zero  bool // the bare literal 0, which fits any dimension
+	plain bool // stems from literals alone
+	bare  bool // a bare literal number, for the warning on angles
+	Type  Type
+	Expr  syntax.Expr // what it was made from
+	Args  []*Node
+	Num   float64
+	Def   *Def
+	*Detail
+
+	// Memo is the evaluator's: what it compiled the node to.
+	Memo any
+
+	exact *big.Rat // the exact value of arithmetic on bare literals
+}
+
+// Detail is what the rarer operations have. A node of another operation has an
+// empty one, so that it may be asked.
+type Detail struct {
 	Str    string
-	Def    *Def
 	Fn     string
 	Minus  []bool
 	Cmp    []syntax.Op
@@ -56,15 +70,9 @@ type Node struct {
 	Help   *HelperCall
 	Result int
 	Native *Native
-
-	// Memo is the evaluator's: what it compiled the node to.
-	Memo any
-
-	zero  bool     // the bare literal 0, which fits any dimension
-	exact *big.Rat // the exact value of arithmetic on bare literals
-	plain bool     // stems from literals alone
-	bare  bool     // a bare literal number, for the warning on angles
 }
+
+var noDetail Detail
 
 // Def is something that has a name and a value.
 type Def struct {
@@ -76,21 +84,21 @@ type Def struct {
 	Unit    *units.Unit // the unit it is printed in, nil where the file's preference decides
 	Line    int
 	At      diag.Span
-	Failed  bool // by an error at line Because
 	Because int
 	Plan    *Plan // nil for constants, parameters and carried values
 	Carry   *Carry
 	Key     string // its name in the carried file
 	Const   float64
+	Failed  bool // by an error at line Because
 	IsConst bool
+	used    bool
+	zero    bool // a parameter that was given the literal 0
+	plain   bool
 	Literal *syntax.Number // a given's own figures
 	Texts   []string       // a given text, or a column of texts
 	Picked  *Rows          // the schedule whose column a `first of` picked it from
 	Results []*Def         // of a helper with several
-	used    bool
-	zero    bool // a parameter that was given the literal 0
 	exact   *big.Rat
-	plain   bool
 }
 
 // Scope numbers the values of the calc itself, of a function's parameters or
@@ -166,12 +174,12 @@ type Plan struct {
 	Def     *Def // nil for checks and limits
 	Choice  Choice
 	Check   *CheckPlan
-	Func    bool // the definition of a function: nothing to compute
-	Failed  bool
 	Because int
 	Uses    []*Def      // by slot of the statement's names; nil for functions and helpers
 	Helper  *HelperCall // set where the right side is only a call of a helper with several results
 	Column  *ColumnPlan
+	Func    bool // the definition of a function: nothing to compute
+	Failed  bool
 	IsGiven bool
 	Carried bool // the right side is only another file's value
 }

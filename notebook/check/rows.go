@@ -34,7 +34,7 @@ func (l *lower) reduce(x *syntax.Call, arg *Node) *Node {
 	if arg.Type.Kind == Point && (fn == "sum" || fn == "extreme") {
 		return l.fail(diag.DimensionMismatch, a.Value.Span(), fmt.Sprintf("temperature points have no %s", fn), "points go through min, max, mean and interpolate")
 	}
-	n := &Node{Op: Reduce, Fn: fn, Expr: x, Args: []*Node{arg}, Type: arg.Type, Over: over}
+	n := l.node(Node{Op: Reduce, Expr: x, Args: l.args(arg), Type: arg.Type, Detail: l.detail(Detail{Fn: fn, Over: over})})
 	n.Type.Freq, n.Type.Rows = NoFreq, kept
 	if fn == "count" {
 		n.Type.Kind, n.Type.Dim = Number, units.Dimension{}
@@ -95,7 +95,7 @@ func (l *lower) interpolate(x *syntax.Call, args []*Node) *Node {
 	}
 	t := ys.Type
 	t.Rows, t.Freq = at.Type.Rows, NoFreq
-	return &Node{Op: Interp, Expr: x, Args: args, Type: t}
+	return l.node(Node{Op: Interp, Expr: x, Args: args, Type: t})
 }
 
 // atMark lowers `column at mark`.
@@ -112,7 +112,7 @@ func (l *lower) atMark(x *syntax.AtMark) *Node {
 	if len(col.Type.Rows) == 0 {
 		return l.fail(diag.RowMismatch, x.X.Span(), fmt.Sprintf("`%s` is a plain value: `at` picks a row of a value with rows", l.print(x.X)))
 	}
-	n := &Node{Op: At, Expr: x, Args: []*Node{col, mark}, Type: col.Type}
+	n := l.node(Node{Op: At, Expr: x, Args: l.args(col, mark), Type: col.Type, Detail: l.detail(Detail{})})
 	n.Type.Freq = col.Type.Freq
 	if mark.Type.Kind != Text {
 		if mark.Op == Load && mark.Def.Picked != nil {

@@ -349,7 +349,7 @@ func (t *tableCheck) cell(l *lower, cell *syntax.Cell, col *syntax.Column, d *De
 		return l.fail(diag.DimensionMismatch, cell.At, fmt.Sprintf("`%s` is a text in a column of numbers", cell.Text))
 	}
 	if col.Unit != nil && bareNumber(n) {
-		return inUnit(n, col.Unit.Unit, d.Type)
+		return l.inUnit(n, col.Unit.Unit, d.Type)
 	}
 	if d.Type.Kind == Invalid {
 		if n.zero {
@@ -382,8 +382,8 @@ func bareNumber(n *Node) bool {
 }
 
 // inUnit is a bare number under a header's unit, exact to the last bit.
-func inUnit(n *Node, u units.Unit, t Type) *Node {
-	out := &Node{Op: Const, Expr: n.Expr, Type: Type{Kind: t.Kind, Dim: t.Dim, Freq: t.Freq}}
+func (l *lower) inUnit(n *Node, u units.Unit, t Type) *Node {
+	out := l.node(Node{Op: Const, Expr: n.Expr, Type: Type{Kind: t.Kind, Dim: t.Dim, Freq: t.Freq}})
 	if lit, ok := n.Expr.(*syntax.Number); ok && n.Op == Const {
 		p := lit.Pieces[0]
 		p.Unit = u

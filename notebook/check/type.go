@@ -7,7 +7,7 @@ import (
 )
 
 // Kind is what sort of value an expression has.
-type Kind int
+type Kind uint8
 
 // The kinds of values. Invalid marks what failed already, so that one mistake
 // is one message.

@@ -83,6 +83,13 @@ func (m *machine) functionStep(inst *check.Function, g *frame) *Step {
 	return s
 }
 
+// float is a value of one entry.
+func (m *machine) float(x float64) []float64 {
+	out := m.slabs.floats.Take(1, 4*chunk)
+	out[0] = x
+	return out
+}
+
 func (v *Value) set(x any) {
 	switch x := x.(type) {
 	case float64:
@@ -330,22 +337,23 @@ func (m *machine) inHelper(err error, hc *check.HelperCall) error {
 func (m *machine) limit(p *check.Plan, g *frame, step *Step) error {
 	s := p.Stmt.(*syntax.Needs)
 	t := p.Check.Type
-	for e := 0; e < t.Count(); e++ {
-		ok, err := m.truth(p.Check.Cond, g, &t, e)
-		if err != nil {
-			return atEntry(err, t, e)
-		}
+	r, err := m.verdicts(p, g)
+	if err != nil {
+		return err
+	}
+	for e, ok := range r.OK {
 		if ok {
 			continue
 		}
-		err = m.outside(p, s, g, &t, e)
+		err := m.outside(p, s, g, &t, e)
 		if !s.Warn {
 			return err
 		}
 		m.warn(s, err.(*fault), g)
 	}
 	if step != nil {
-		step.Check = m.checkResult(p, g)
+		m.complete(r, p, g)
+		step.Check = r
 	}
 	return nil
 }

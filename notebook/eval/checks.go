@@ -10,61 +10,66 @@ import (
 // computeCheck computes a check: its sides, the verdict and the utilisation of
 // each entry, and which entry governs.
 func (m *machine) computeCheck(p *check.Plan, f *frame, step *Step) error {
-	t := p.Check.Type
-	for e := 0; e < t.Count(); e++ {
-		if p.Check.If != nil {
-			needed, err := m.truth(p.Check.If, f, &t, e)
-			if err != nil {
-				return atEntry(err, t, e)
-			}
-			if !needed {
-				continue
-			}
-		}
-		if _, err := m.truth(p.Check.Cond, f, &t, e); err != nil {
-			return atEntry(err, t, e)
-		}
+	r, err := m.verdicts(p, f)
+	if err != nil || step == nil {
+		return err
 	}
-	if step != nil {
-		step.Check = m.checkResult(p, f)
-		step.Entry = step.Check.Governs
-	}
+	m.complete(r, p, f)
+	step.Check, step.Entry = r, r.Governs
 	return nil
 }
 
-// checkResult is how a check or a limit came out, once it is known that it can be computed.
-func (m *machine) checkResult(p *check.Plan, f *frame) *CheckResult {
+// verdicts says of each entry of a check or a limit whether it is required, and whether it holds.
+func (m *machine) verdicts(p *check.Plan, f *frame) (*CheckResult, error) {
 	c := p.Check
-	r := &CheckResult{Ops: c.Ops, Type: c.Type, AllOK: true}
-	outer := m.recording
-	m.recording = nil
-	defer func() { m.recording = outer }()
-	named := m.sidesUnit(c.Sides, f)
-	for _, n := range c.Sides {
-		r.Sides = append(r.Sides, m.side(n, f, named))
-	}
-	named = m.sidesUnit(c.IfSides, f)
-	for _, n := range c.IfSides {
-		r.NeededIf = append(r.NeededIf, m.side(n, f, named))
-	}
-	r.IfOps = c.IfOps
+	r := m.slabs.results.One(chunk)
+	r.Ops, r.IfOps, r.Type, r.AllOK = c.Ops, c.IfOps, c.Type, true
 	count := c.Type.Count()
-	r.Required, r.OK, r.Ratio = make([]bool, count), make([]bool, count), make([]float64, count)
+	flags := m.slabs.bools.Take(2*count, 4*chunk)
+	r.Required, r.OK = flags[:count:count], flags[count:]
 	for e := range r.OK {
-		r.Required[e], r.OK[e], r.Ratio[e] = true, true, nan
-		if c.If != nil {
-			r.Required[e], _ = m.truth(c.If, f, &c.Type, e)
+		var err error
+		if r.Required[e] = true; c.If != nil {
+			if r.Required[e], err = m.truth(c.If, f, &c.Type, e); err != nil {
+				return nil, atEntry(err, c.Type, e)
+			}
 		}
-		if !r.Required[e] {
-			continue
+		if r.OK[e] = true; r.Required[e] {
+			if r.OK[e], err = m.truth(c.Cond, f, &c.Type, e); err != nil {
+				return nil, atEntry(err, c.Type, e)
+			}
 		}
-		r.OK[e], _ = m.truth(c.Cond, f, &c.Type, e)
 		r.AllOK = r.AllOK && r.OK[e]
-		r.Ratio[e] = m.utilisation(r, e)
+	}
+	return r, nil
+}
+
+// complete adds the sides of a check whose verdicts are known, the utilisations and what governs.
+func (m *machine) complete(r *CheckResult, p *check.Plan, f *frame) {
+	c := p.Check
+	outer := m.recording
+	m.recording = nil // the calls in it are recorded
+	r.Sides, r.NeededIf = m.sides(c.Sides, f), m.sides(c.IfSides, f)
+	m.recording = outer
+	r.Ratio = m.slabs.floats.Take(len(r.OK), 4*chunk)
+	for e := range r.Ratio {
+		if r.Ratio[e] = nan; r.Required[e] {
+			r.Ratio[e] = m.utilisation(r, e)
+		}
 	}
 	r.Governs = r.worst()
 	r.Equal = r.equalSides(r.Governs)
-	return r
+}
+
+func (m *machine) sides(nodes []*check.Node, f *frame) []Side {
+	if len(nodes) == 0 {
+		return nil
+	}
+	out, shared := m.slabs.sides.Take(len(nodes), chunk), m.sidesUnit(nodes, f)
+	for i, n := range nodes {
+		out[i] = m.side(n, f, shared)
+	}
+	return out
 }
 
 // side computes an operand; it is shown in its own name's unit, else in the

@@ -31,8 +31,8 @@ type columnProgram struct {
 	leaves    []*check.Node
 }
 
-func compileColumn(n *check.Node) *columnProgram {
-	c := memo(n)
+func (m *machine) compileColumn(n *check.Node) *columnProgram {
+	c := m.memo(n)
 	if c.column == nil {
 		p := &columnProgram{}
 		p.node(n)
@@ -88,7 +88,7 @@ func (m *machine) column(n *check.Node, f *frame, target *check.Type) []float64 
 			return v.Num
 		}
 	}
-	p := compileColumn(n)
+	p := m.compileColumn(n)
 	sources := make([]source, len(p.leaves))
 	for i, l := range p.leaves {
 		sources[i] = m.source(l, f, target)
@@ -161,6 +161,11 @@ func (m *machine) columnValue(n *check.Node, f *frame) Value {
 			s, _ := x.(string)
 			v.Text = append(v.Text, s)
 		}
+		return v
+	}
+	if len(n.Type.Rows) == 0 {
+		x, _ := m.number(n, f, &n.Type, 0)
+		v.Num = m.float(x)
 		return v
 	}
 	v.Num = m.column(n, f, &n.Type)

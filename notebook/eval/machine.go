@@ -9,6 +9,7 @@ import (
 
 	"gusset/notebook/check"
 	"gusset/notebook/diag"
+	"gusset/notebook/slab"
 	"gusset/notebook/syntax"
 	"gusset/units"
 )
@@ -61,12 +62,29 @@ type machine struct {
 	marks   map[*check.Rows]map[string]int
 	consts  map[*check.Def]*Step
 	forms   map[string]*govaluate.EvaluableExpression // compilations by the form of the expression
-	form    []byte                                    // room for the next one's
+	reading reading                                   // room for the next one's
+	params  []*params                                 // those that no evaluation has at present
+	slabs   slabs
 	// recording collects the helper calls of the statement being printed.
 	recording *[]*Call
 	warned    map[warning]bool
 	running   *check.Plan // the statement being computed, for messages from inside a helper
 }
+
+// slabs are where steps and what the evaluator compiles come from.
+type slabs struct {
+	steps    slab.Slab[Step]
+	uses     slab.Slab[*Step]
+	compiled slab.Slab[compiled]
+	nodes    slab.Slab[*check.Node]
+	floats   slab.Slab[float64]
+	bools    slab.Slab[bool]
+	results  slab.Slab[CheckResult]
+	sides    slab.Slab[Side]
+}
+
+// chunk is how many values the evaluator takes room for at once.
+const chunk = 64
 
 // warning is a limit that only warns, at the statement that called its helper.
 type warning struct {

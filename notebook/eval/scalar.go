@@ -28,11 +28,11 @@ type compiled struct {
 	column *columnProgram
 }
 
-func memo(n *check.Node) *compiled {
+func (m *machine) memo(n *check.Node) *compiled {
 	if c, ok := n.Memo.(*compiled); ok {
 		return c
 	}
-	c := &compiled{}
+	c := m.slabs.compiled.One(chunk)
 	n.Memo = c
 	return c
 }
@@ -52,14 +52,14 @@ var (
 )
 
 func (m *machine) compile(n *check.Node) (*compiled, error) {
-	c := memo(n)
+	c := m.memo(n)
 	if c.expr != nil {
 		return c, nil
 	}
-	r := reading{form: m.form[:0], leaves: make([]*check.Node, 0, 8), ops: make([]*check.Node, 0, 8)}
+	r := &m.reading
+	r.form, r.leaves, r.ops = r.form[:0], r.leaves[:0], r.ops[:0]
 	r.node(n)
-	m.form = r.form
-	c.leaves, c.ops = r.leaves, r.ops
+	c.leaves, c.ops = m.keep(r.leaves), m.keep(r.ops)
 	if expr, ok := m.forms[string(r.form)]; ok {
 		c.expr = expr
 		return c, nil
@@ -74,6 +74,12 @@ func (m *machine) compile(n *check.Node) (*compiled, error) {
 	m.forms[string(r.form)] = expr
 	c.expr = expr
 	return c, nil
+}
+
+func (m *machine) keep(nodes []*check.Node) []*check.Node {
+	out := m.slabs.nodes.Take(len(nodes), 4*chunk)
+	copy(out, nodes)
+	return out
 }
 
 // reading takes an expression apart: its form, by which it may share a
@@ -293,7 +299,7 @@ func (m *machine) entry(n *check.Node, f *frame, target *check.Type, entry int) 
 	if err != nil {
 		return nil, err
 	}
-	v, err := c.expr.Eval(&params{m, c, f, target, entry})
+	v, err := m.eval(params{m, c, f, target, entry})
 	if err != nil {
 		if op, ok := err.(failedOp); ok {
 			err = undefined{c.ops[op]}
@@ -304,6 +310,21 @@ func (m *machine) entry(n *check.Node, f *frame, target *check.Type, entry int) 
 		return nil, m.explain(undefined{n}, f, target, entry)
 	}
 	return v, nil
+}
+
+// eval evaluates with parameters whose memory the next evaluation takes over.
+// Evaluations nest, since a parameter may be a call.
+func (m *machine) eval(with params) (any, error) {
+	var p *params
+	if last := len(m.params) - 1; last >= 0 {
+		p, m.params = m.params[last], m.params[:last]
+	} else {
+		p = new(params)
+	}
+	*p = with
+	v, err := p.c.expr.Eval(p)
+	m.params = append(m.params, p)
+	return v, err
 }
 
 func (m *machine) number(n *check.Node, f *frame, target *check.Type, entry int) (float64, error) {

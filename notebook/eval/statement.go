@@ -12,7 +12,8 @@ import (
 
 // newStep is the step of a statement before anything is computed.
 func (m *machine) newStep(p *check.Plan, f *frame) *Step {
-	s := &Step{Stmt: p.Stmt, Line: p.Line, Figures: m.figures(), Failed: p.Failed, Because: p.Because}
+	s := m.slabs.steps.One(chunk)
+	s.Stmt, s.Line, s.Figures, s.Failed, s.Because = p.Stmt, p.Line, m.figures(), p.Failed, p.Because
 	switch st := p.Stmt.(type) {
 	case *syntax.Definition:
 		s.Kind, s.Note, s.Source = Computed, st.Note.Text, st.Note.Source
@@ -46,8 +47,11 @@ func (m *machine) newStep(p *check.Plan, f *frame) *Step {
 		s.Unit = m.unitOf(p.Def)
 		s.Value.Type = p.Def.Type
 	}
-	for _, d := range p.Uses {
-		s.Uses = append(s.Uses, m.stepFor(d, f))
+	if len(p.Uses) > 0 {
+		s.Uses = m.slabs.uses.Take(len(p.Uses), 4*chunk)
+		for i, d := range p.Uses {
+			s.Uses[i] = m.stepFor(d, f)
+		}
 	}
 	if p.Column != nil {
 		s.Uses = m.columnUses(p.Column, f)
@@ -118,8 +122,14 @@ func (m *machine) computeValue(p *check.Plan, f *frame, step *Step) error {
 		if err != nil {
 			return err
 		}
-		v.set(x)
-		taken, picks = []int{k}, []int{k}
+		if y, ok := x.(float64); ok {
+			v.Num = m.float(y)
+		} else {
+			v.set(x)
+		}
+		if len(p.Choice.Branches) != 1 || p.Choice.Branches[0].Cond != nil {
+			taken, picks = []int{k}, []int{k}
+		}
 	} else {
 		var err error
 		if v, taken, err = m.choiceRows(p.Choice, f); err != nil {

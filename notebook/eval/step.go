@@ -28,7 +28,7 @@ func (v Value) Len() int {
 }
 
 // StepKind is what a step is.
-type StepKind int
+type StepKind uint8
 
 // The kinds of steps.
 const (

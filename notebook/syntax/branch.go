@@ -12,7 +12,7 @@ func (p *parser) rightSide(def *Definition) Stmt {
 	def.Note = p.note
 	from, until := def.Name.At.Start, 0
 	bad, last := false, Note{}
-	branches := p.branches.take(1, p.size)
+	branches := p.branches.Take(1, p.size)
 	at := p.bounds()
 	for n := 0; ; n++ {
 		b := &branches[n]

@@ -54,11 +54,11 @@ func (p *parser) call(fun *Name) Expr {
 	if !p.checkOver(fun, args) {
 		return p.bad()
 	}
-	c := p.calls.one(p.size)
+	c := p.calls.One(p.size)
 	c.At, c.Fun = fun.At, fun
 	c.At.End = end + p.off
 	if len(args) > 0 {
-		c.Args = p.args.take(len(args), p.size)
+		c.Args = p.args.Take(len(args), p.size)
 		copy(c.Args, args)
 	}
 	return c

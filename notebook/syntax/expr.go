@@ -70,7 +70,7 @@ func (p *parser) expression(level uint8) Expr {
 }
 
 func (p *parser) binary(op Op, at diag.Span, x, y Expr) Expr {
-	b := p.binaries.one(p.size)
+	b := p.binaries.One(p.size)
 	*b = Binary{At: x.Span().To(y.Span()), Op: op, OpAt: at, X: x, Y: y}
 	return b
 }
@@ -132,7 +132,7 @@ func (p *parser) prefix(level uint8) Expr {
 }
 
 func (p *parser) unary(op Op, start int, x Expr) Expr {
-	u := p.unaries.one(p.size)
+	u := p.unaries.One(p.size)
 	*u = Unary{At: diag.Span{Start: start + p.off, End: x.Span().End}, Op: op, X: x}
 	return u
 }
@@ -184,8 +184,8 @@ func (p *parser) superscript() Expr {
 	if minus {
 		from += len("⁻")
 	}
-	n := p.numbers.one(p.size)
-	n.At, n.Pieces = p.span(from, end), p.pieces.take(1, p.size)
+	n := p.numbers.One(p.size)
+	n.At, n.Pieces = p.span(from, end), p.pieces.Take(1, p.size)
 	n.Pieces[0] = Piece{Figures: figures, At: n.At}
 	if minus {
 		return p.unary(Neg, start, n)
@@ -274,7 +274,7 @@ func (p *parser) use() *Name {
 
 // name reads the name that is the current token.
 func (p *parser) name() *Name {
-	n := p.names.one(p.size)
+	n := p.names.One(p.size)
 	text := p.here()
 	*n = Name{At: p.span(p.start, p.pos), ID: Canonical(text), Text: text, Slot: -1}
 	p.advance()
@@ -303,7 +303,7 @@ func (p *parser) paren() Expr {
 	if !ok {
 		return p.bad()
 	}
-	b := p.parens.one(p.size)
+	b := p.parens.One(p.size)
 	*b = Paren{At: p.span(start, end), X: x}
 	return b
 }
@@ -330,7 +330,7 @@ func (p *parser) root() Expr {
 		return p.bad()
 	}
 	start, sign := p.start, p.pos
-	fun := p.names.one(p.size)
+	fun := p.names.One(p.size)
 	*fun = Name{At: p.span(start, sign), ID: "sqrt", Text: "sqrt", Slot: p.slots}
 	p.slots++
 	p.advance()
@@ -350,8 +350,8 @@ func (p *parser) root() Expr {
 	if b, ok := x.(*Paren); ok {
 		x = b.X // the brackets are those of the call
 	}
-	c := p.calls.one(p.size)
-	c.At, c.Fun, c.Args = p.span(start, end), fun, p.args.take(1, p.size)
+	c := p.calls.One(p.size)
+	c.At, c.Fun, c.Args = p.span(start, end), fun, p.args.Take(1, p.size)
 	c.Args[0].Value = x
 	return c
 }

@@ -13,12 +13,12 @@ import (
 // number, a fraction or a mixed number before a unit, or a falling compound.
 func (p *parser) number() Expr {
 	start, seg := p.start, p.seg
-	pieces := p.pieces.take(1, p.size)
+	pieces := p.pieces.Take(1, p.size)
 	end, ok := p.piece(&pieces[0], start, true)
 	if !ok {
 		return p.bad()
 	}
-	n := p.numbers.one(p.size)
+	n := p.numbers.One(p.size)
 	n.Pieces = pieces
 	if pieces[0].HasUnit {
 		if end = p.compound(n, start, end); end < 0 {

@@ -121,7 +121,7 @@ func (p *parser) definition() Stmt {
 		p.fail(name.At, diag.Syntax, fmt.Sprintf("a name that is defined has no dots, unlike %s", quoted(name.Text)))
 		return p.badStatement(name)
 	}
-	def := p.defs.one(p.size)
+	def := p.defs.One(p.size)
 	def.Name = name
 	if p.tok == tOpen && !p.parameters(def) {
 		return p.badStatement(name)

@@ -231,8 +231,8 @@ func (p *parser) plainCell(c Line) Expr {
 	if i == c.End {
 		return nil
 	}
-	n := p.numbers.one(p.size)
-	n.At, n.Pieces = p.span(i, c.End), p.pieces.take(1, p.size)
+	n := p.numbers.One(p.size)
+	n.At, n.Pieces = p.span(i, c.End), p.pieces.Take(1, p.size)
 	n.Pieces[0] = Piece{Figures: p.s[i:c.End], At: n.At}
 	if i > c.Start {
 		return p.unary(Neg, c.Start, n)

@@ -56,7 +56,7 @@ func (p *parser) allowed(u *UnitRef, kind bracketKind) bool {
 func (p *parser) unitIn(open, end int) *UnitRef {
 	l := trimmed(p.s, open+1, end-1)
 	text := p.s[l.Start:l.End]
-	u := p.unitRefs.one(p.size)
+	u := p.unitRefs.One(p.size)
 	*u = UnitRef{At: p.span(open, end), Text: text}
 	switch {
 	case text == "":
