@@ -102,9 +102,9 @@ func (r *reading) placeFences(doc ast.Node) []*syntax.Block {
 			ours = append(ours, f)
 		}
 	}
-	blocks := make([]*syntax.Block, len(ours))
+	blocks, reader := make([]*syntax.Block, len(ours)), syntax.NewReader(r.src)
 	for i, f := range ours {
-		block, diags := syntax.ParseBlock(r.src, f.info, f.at, f.lines(r.src))
+		block, diags := reader.Block(f.info, f.at, f.lines(r.src))
 		if !f.closed {
 			diags = f.beforeBlank(r.src, diags)
 		}

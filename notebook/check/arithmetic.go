@@ -175,8 +175,12 @@ func ratOf(op syntax.Op, left, right *Node) *big.Rat {
 	if !left.plain || !right.plain {
 		return nil
 	}
-	a, b := left.rat(), right.rat()
-	if a == nil || b == nil || a.Num().BitLen()+a.Denom().BitLen() > 256 || b.Num().BitLen()+b.Denom().BitLen() > 256 {
+	a := left.rat()
+	if a == nil {
+		return nil
+	}
+	b := right.rat()
+	if b == nil || a.Num().BitLen()+a.Denom().BitLen() > 256 || b.Num().BitLen()+b.Denom().BitLen() > 256 {
 		return nil
 	}
 	switch op {

@@ -131,7 +131,7 @@ func (lib *Library) helper(src *diag.Source, from, to int) *syntax.Helper {
 	}
 	at := diag.Span{Start: src.LineStart(from), End: src.LineStart(to) + len(src.Line(to))}
 	info := diag.Span{Start: at.Start + len("```"), End: at.Start + len(src.Line(from))}
-	block, diags := syntax.ParseBlock(src, info, at, lines)
+	block, diags := syntax.NewReader(src).Block(info, at, lines)
 	lib.Diagnostics = append(lib.Diagnostics, diags...)
 	if block == nil || block.Helper == nil || block.Helper.Name == nil {
 		return nil

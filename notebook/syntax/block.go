@@ -35,15 +35,27 @@ func IsOurs(info string) bool {
 	return ok
 }
 
-// ParseBlock reads one fence. info spans the info string in the opening line,
+// Reader reads the fences of one source.
+type Reader struct {
+	src   *diag.Source
+	slabs *slabs
+}
+
+// NewReader returns a reader of a source's fences.
+func NewReader(src *diag.Source) *Reader {
+	return &Reader{src: src, slabs: newSlabs(len(src.Text))}
+}
+
+// Block reads one fence. info spans the info string in the opening line,
 // at the whole fence. A tree always comes back.
-func ParseBlock(src *diag.Source, info, at diag.Span, lines []Line) (*Block, []diag.Diagnostic) {
+func (r *Reader) Block(info, at diag.Span, lines []Line) (*Block, []diag.Diagnostic) {
+	src := r.src
 	bounds := at
 	bounds.Start, bounds.End = min(at.Start, info.Start), max(at.End, info.End)
 	for _, l := range lines {
 		bounds.Start, bounds.End = min(bounds.Start, l.Start), max(bounds.End, l.End)
 	}
-	p := newParser(src, bounds)
+	p := newParser(src, bounds, r.slabs)
 	p.lines = make([]Line, len(lines))
 	for i, l := range lines {
 		p.lines[i] = Line{l.Start - p.off, l.End - p.off}
@@ -156,7 +168,7 @@ func (p *parser) plainName(what string) *Name {
 
 // ParseExpr reads one whole expression, a value or a condition.
 func ParseExpr(src *diag.Source, at diag.Span) (Expr, []diag.Diagnostic) {
-	p := newParser(src, at)
+	p := newParser(src, at, newSlabs(at.End-at.Start))
 	p.whole(0, len(p.s))
 	x := p.expression(levelOr)
 	if p.finish(); p.failed {

@@ -65,8 +65,7 @@ type parser struct {
 	last     int // the end of the token before
 	lastFrom int // its start
 
-	unitTexts []cachedUnit
-	slabs
+	*slabs
 }
 
 type cachedUnit struct {
@@ -76,14 +75,12 @@ type cachedUnit struct {
 
 // newParser returns a parser over the smallest piece of the source that holds
 // all the given ranges.
-func newParser(src *diag.Source, at diag.Span) *parser {
+func newParser(src *diag.Source, at diag.Span, shared *slabs) *parser {
 	lo, hi := max(at.Start, 0), min(at.End, len(src.Text))
 	if lo > hi {
 		lo = hi
 	}
-	p := &parser{src: src, s: string(src.Text[lo:hi]), off: lo}
-	p.slabs.size = min(max(len(p.s)/32, 1), 256)
-	return p
+	return &parser{src: src, s: string(src.Text[lo:hi]), off: lo, slabs: shared}
 }
 
 // span turns offsets within the parser's piece into a range of the source.

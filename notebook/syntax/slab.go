@@ -2,8 +2,8 @@ package syntax
 
 import "gusset/notebook/slab"
 
-// slabs are a block's nodes. size is the length of a chunk, by the length of
-// the block: a fence of one line does not pay for hundreds of nodes.
+// slabs are what a text's nodes come from. size is the length of a chunk, by the
+// length of the text: one line does not pay for hundreds of nodes.
 type slabs struct {
 	size     int
 	names    slab.Slab[Name]
@@ -17,4 +17,8 @@ type slabs struct {
 	defs     slab.Slab[Definition]
 	branches slab.Slab[Branch]
 	unitRefs slab.Slab[UnitRef]
+
+	unitTexts []cachedUnit
 }
+
+func newSlabs(length int) *slabs { return &slabs{size: min(max(length/64, 1), 128)} }

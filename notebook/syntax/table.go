@@ -243,7 +243,7 @@ func (p *parser) plainCell(c Line) Expr {
 // ParseHeaderCell reads one cell of a header, `x [mm]`. Its Name is nil where
 // it cannot be read.
 func ParseHeaderCell(src *diag.Source, at diag.Span) (Column, *diag.Diagnostic) {
-	p := newParser(src, at)
+	p := newParser(src, at, newSlabs(at.End-at.Start))
 	col := p.column(trimmed(p.s, 0, len(p.s)))
 	if len(p.diags) > 0 {
 		return col, &p.diags[0]
@@ -254,6 +254,6 @@ func ParseHeaderCell(src *diag.Source, at diag.Span) (Column, *diag.Diagnostic) 
 // ParseCell reads one cell of a table. quoted tells that its text is one in
 // quotes, whether at spans them or not.
 func ParseCell(src *diag.Source, at diag.Span, quoted bool) Cell {
-	p := newParser(src, at)
+	p := newParser(src, at, newSlabs(at.End-at.Start))
 	return p.tableCell(trimmed(p.s, 0, len(p.s)), quoted)
 }

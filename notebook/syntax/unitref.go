@@ -111,7 +111,7 @@ type ValueRef struct {
 // ordinary text; where d is set they name a value in a unit that cannot be read.
 func ParseValueRef(src *diag.Source, at diag.Span) (ref ValueRef, ok bool, d *diag.Diagnostic) {
 	ref.At = at
-	p := newParser(src, at)
+	p := newParser(src, at, newSlabs(at.End-at.Start))
 	l := trimmed(p.s, 1, len(p.s)-1)
 	if len(p.s) < 3 || l.Start >= l.End {
 		return ref, false, nil
