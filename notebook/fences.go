@@ -102,7 +102,7 @@ func (r *reading) placeFences(doc ast.Node) []*syntax.Block {
 			ours = append(ours, f)
 		}
 	}
-	blocks, reader := make([]*syntax.Block, len(ours)), syntax.NewReader(r.src)
+	blocks, reader := make([]*syntax.Block, len(ours)), syntax.NewReader(r.src, len(r.src.Text))
 	for i, f := range ours {
 		block, diags := reader.Block(f.info, f.at, f.lines(r.src))
 		if !f.closed {

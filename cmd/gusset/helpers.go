@@ -46,7 +46,7 @@ a call to copy.`,
 
 func helperNames() []string {
 	var names []string
-	for _, topic := range library.Load().Topics {
+	for _, topic := range library.Load().Topics() {
 		for _, e := range topic.Entries {
 			names = append(names, e.Helper.Name.Text)
 		}
@@ -55,7 +55,7 @@ func helperNames() []string {
 }
 
 func findHelper(name string) (library.Entry, error) {
-	for _, topic := range library.Load().Topics {
+	for _, topic := range library.Load().Topics() {
 		for _, e := range topic.Entries {
 			if e.Helper.Name.ID == syntax.Canonical(name) {
 				return e, nil
@@ -84,7 +84,7 @@ func helperList(colour style) string {
 		name.fit(n, leftWidth)
 	}
 	var b strings.Builder
-	for i, topic := range library.Load().Topics {
+	for i, topic := range library.Load().Topics() {
 		if i > 0 {
 			b.WriteByte('\n')
 		}

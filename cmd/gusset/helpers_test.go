@@ -19,7 +19,7 @@ import (
 // is out of range: the values are all 1.
 func TestCallsToCopy(t *testing.T) {
 	values := []string{diag.OutOfRange, diag.NotANumber, diag.NoConvergence}
-	for _, topic := range library.Load().Topics {
+	for _, topic := range library.Load().Topics() {
 		for _, e := range topic.Entries {
 			text := calcThatCalls(e.Helper)
 			fsys := fstest.MapFS{"c.md": {Data: []byte(text)}}
@@ -73,7 +73,7 @@ func calcThatCalls(h *syntax.Helper) string {
 // TestHelperPagesShowEverything wants every parameter, limit, formula and result
 // of every helper on its page.
 func TestHelperPagesShowEverything(t *testing.T) {
-	for _, topic := range library.Load().Topics {
+	for _, topic := range library.Load().Topics() {
 		for _, e := range topic.Entries {
 			page := helperPage(e, false)
 			h := e.Helper

@@ -71,7 +71,7 @@ func (l *lower) call(x *syntax.Call) *Node {
 			return l.callNative(x, n)
 		}
 	}
-	if h, ok := l.e.c.in.Library.Helpers[id]; ok {
+	if h := l.e.c.in.Library.helper(id); h != nil {
 		return l.callHelper(x, &helper{tree: h, library: true})
 	}
 	return l.unknownFunction(x)

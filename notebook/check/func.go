@@ -86,7 +86,7 @@ func (l *lower) callable(id string) bool {
 		s, ok := l.e.c.spaces[key]
 		return ok && s.file != nil
 	}
-	if l.e.function(id) != nil || l.e.helper(id) != nil || l.e.c.in.Library.Helpers[id] != nil {
+	if l.e.function(id) != nil || l.e.helper(id) != nil || l.e.c.in.Library.has(id) {
 		return true
 	}
 	if _, ok := builtins[id]; ok {

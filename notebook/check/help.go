@@ -426,7 +426,7 @@ func (b *body) bundleCall(l *lower, s *syntax.Definition) (*syntax.Call, *helper
 		if _, builtin := builtins[x.Fun.ID]; builtin {
 			return nil, nil
 		}
-		if tree := b.c.in.Library.Helpers[x.Fun.ID]; tree != nil {
+		if tree := b.c.in.Library.helper(x.Fun.ID); tree != nil {
 			h = &helper{tree: tree, library: true}
 		}
 	}

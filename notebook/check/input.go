@@ -1,6 +1,8 @@
 package check
 
 import (
+	"slices"
+
 	"gusset/notebook/diag"
 	"gusset/notebook/syntax"
 	"gusset/units"
@@ -45,12 +47,29 @@ type HelperFile struct {
 
 // Library is what ships with the program.
 type Library struct {
-	Helpers map[string]*syntax.Helper
+	Names []string // of the helpers, sorted
+	// Read returns the helper of one of the names. A calc calls few of them, so
+	// that they are read when they are called.
+	Read func(name string) *syntax.Helper
 	// Natives are functions written in Go that only the library's own helpers
 	// may call, where iteration, a series or an eigenvalue is required.
 	Natives map[string]*Native
 	// Tables are the shipped tables by path, `library/bolts_metric.csv`.
 	Tables map[string]*diag.Source
+}
+
+// has tells that a helper of that name ships.
+func (l *Library) has(name string) bool {
+	_, ok := slices.BinarySearch(l.Names, name)
+	return ok
+}
+
+// helper returns the helper of a name, nil where there is none.
+func (l *Library) helper(name string) *syntax.Helper {
+	if !l.has(name) {
+		return nil
+	}
+	return l.Read(name)
 }
 
 // Native is a function in Go that library helpers call by position. F gets one

@@ -99,7 +99,7 @@ func (l *lower) unknown(x *syntax.Name) {
 		l.fail(diag.UsedBefore, x.At, fmt.Sprintf("%s is used here, but defined below, at line %d", x.Text, line), "move its definition above this line")
 		return
 	}
-	if l.e.function(x.ID) != nil || l.e.helper(x.ID) != nil || c.in.Library.Helpers[x.ID] != nil {
+	if l.e.function(x.ID) != nil || l.e.helper(x.ID) != nil || c.in.Library.has(x.ID) {
 		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is a function; it has a value only with its arguments", x.Text), fmt.Sprintf("write `%s(…)`", x.Text))
 		return
 	}
@@ -225,5 +225,5 @@ func (e *env) functionNames() []string {
 		out = append(out, sortedKeys(e.funcs)...)
 		out = append(out, sortedKeys(e.helpers)...)
 	}
-	return append(out, sortedKeys(c.in.Library.Helpers)...)
+	return append(out, c.in.Library.Names...)
 }

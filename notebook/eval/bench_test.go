@@ -92,7 +92,7 @@ func program(b *testing.B, text string) *check.Program {
 			lines = append(lines, syntax.Line{Start: p, End: n})
 			p = n + 1
 		}
-		block, faults := syntax.NewReader(src).Block(info, diag.Span{Start: open, End: end + 3}, lines)
+		block, faults := syntax.NewReader(src, len(src.Text)).Block(info, diag.Span{Start: open, End: end + 3}, lines)
 		if len(faults) > 0 {
 			b.Fatal(faults[0].Text())
 		}

@@ -126,5 +126,9 @@ func near(got, want, tol float64) bool {
 // helpers are the library's, by name.
 func helpers(t *testing.T) map[string]*syntax.Helper {
 	t.Helper()
-	return library.Load().Helpers
+	all := map[string]*syntax.Helper{}
+	for _, name := range library.Load().Names {
+		all[name] = library.Load().Read(name)
+	}
+	return all
 }

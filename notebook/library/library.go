@@ -3,14 +3,16 @@
 // that go with them. The files are embedded and read once.
 //
 //	lib := library.Load()
-//	h := lib.Helpers["direct_shear"]
+//	h := lib.Read("direct_shear")
 package library
 
 import (
 	"embed"
-	"fmt"
 	"io/fs"
+	"iter"
+	"maps"
 	"path"
+	"slices"
 	"strings"
 	"sync"
 
@@ -29,11 +31,22 @@ var chapters = []string{
 	"bolt-groups.md", "bolts-and-pins.md", "welds.md", "timber.md", "panels.md", "concrete.md", "soil.md",
 }
 
-// Library is what ships with the program. It never changes.
+// Library is what ships with the program. It never changes. Its helpers are
+// read when they are asked for: a calc calls few of them.
 type Library struct {
 	check.Library
-	Topics      []Topic
-	Diagnostics []diag.Diagnostic // of the library's own files; a test holds it empty
+	sources []*diag.Source // the chapters
+	places  map[string]*place
+
+	sync.Mutex // guards what is read of the places
+}
+
+// place is where a helper stands, by lines of its chapter, and what was read there.
+type place struct {
+	src      *diag.Source
+	from, to int
+	helper   *syntax.Helper // nil before it is asked for
+	diags    []diag.Diagnostic
 }
 
 // Topic is a chapter of helpers.
@@ -50,19 +63,23 @@ type Entry struct {
 	About  string // Markdown, "" where nothing is said
 }
 
-// Load returns the library. The first call reads it.
+// Load returns the library. The first call finds what is in it.
 func Load() *Library { return load() }
 
 var load = sync.OnceValue(func() *Library {
-	lib := &Library{Library: check.Library{
-		Helpers: map[string]*syntax.Helper{}, Natives: map[string]*check.Native{}, Tables: map[string]*diag.Source{},
-	}}
+	lib := &Library{places: map[string]*place{}}
+	lib.Read, lib.Natives, lib.Tables = lib.read, map[string]*check.Native{}, map[string]*diag.Source{}
 	for _, n := range natives {
 		lib.Natives[n.Name] = n
 	}
 	for _, name := range chapters {
-		lib.chapter(source(name))
+		src := source(name)
+		lib.sources = append(lib.sources, src)
+		for p := range fences(src) {
+			lib.places[nameIn(src, p)] = p
+		}
 	}
+	lib.Names = slices.Sorted(maps.Keys(lib.places))
 	tables, err := fs.Glob(files, "*.csv")
 	if err != nil {
 		panic(err) // the pattern is a constant
@@ -82,10 +99,68 @@ func source(name string) *diag.Source {
 	return diag.NewSource(path.Join("library", name), text)
 }
 
-// chapter reads one file: a title, an introduction, and helpers under headings
-// of their own with what is said of each. The files are the project's, so a
-// fence is a line that starts with three backticks.
-func (lib *Library) chapter(src *diag.Source) {
+// fences finds a chapter's blocks. The files are the project's, so a fence is
+// a line that starts with three backticks.
+func fences(src *diag.Source) iter.Seq[*place] {
+	return func(yield func(*place) bool) {
+		last := src.LineAt(len(src.Text))
+		for n := 1; n <= last; n++ {
+			if !strings.HasPrefix(src.Line(n), fence) {
+				continue
+			}
+			p := &place{src: src, from: n, to: n + 1}
+			for p.to < last && src.Line(p.to) != fence {
+				p.to++
+			}
+			if n = p.to; !yield(p) {
+				return
+			}
+		}
+	}
+}
+
+const fence = "```"
+
+// nameIn is the name in a helper's opening line.
+func nameIn(src *diag.Source, p *place) string {
+	words := strings.Fields(src.Line(p.from))
+	return words[1]
+}
+
+// read returns the helper of one of the library's names.
+func (lib *Library) read(name string) *syntax.Helper {
+	lib.Lock()
+	defer lib.Unlock()
+	p := lib.places[name]
+	if p.helper == nil {
+		p.read()
+	}
+	return p.helper
+}
+
+func (p *place) read() {
+	var lines []syntax.Line
+	for n := p.from + 1; n < p.to; n++ {
+		start := p.src.LineStart(n)
+		lines = append(lines, syntax.Line{Start: start, End: start + len(p.src.Line(n))})
+	}
+	at := diag.Span{Start: p.src.LineStart(p.from), End: p.src.LineStart(p.to) + len(fence)}
+	info := diag.Span{Start: at.Start + len(fence), End: at.Start + len(p.src.Line(p.from))}
+	block, diags := syntax.NewReader(p.src, at.End-at.Start).Block(info, at, lines)
+	p.helper, p.diags = block.Helper, diags
+}
+
+// Topics returns the chapters: a title, an introduction, and helpers under
+// headings of their own with what is said of each.
+func (lib *Library) Topics() []Topic {
+	var topics []Topic
+	for _, src := range lib.sources {
+		topics = append(topics, lib.topic(src))
+	}
+	return topics
+}
+
+func (lib *Library) topic(src *diag.Source) Topic {
 	var topic Topic
 	var heading string
 	var prose []string
@@ -95,55 +170,29 @@ func (lib *Library) chapter(src *diag.Source) {
 		return text
 	}
 	last := src.LineAt(len(src.Text))
-	for n := 1; n <= last; n++ {
-		line := src.Line(n)
-		switch {
-		case strings.HasPrefix(line, "# "):
-			topic.Title = strings.TrimPrefix(line, "# ")
-		case strings.HasPrefix(line, "## "):
-			if len(topic.Entries) == 0 && heading == "" {
-				topic.Intro = said()
+	n := 1
+	text := func(end int) {
+		for ; n < end; n++ {
+			line := src.Line(n)
+			switch {
+			case strings.HasPrefix(line, "# "):
+				topic.Title = strings.TrimPrefix(line, "# ")
+			case strings.HasPrefix(line, "## "):
+				if len(topic.Entries) == 0 && heading == "" {
+					topic.Intro = said()
+				}
+				heading = strings.TrimPrefix(line, "## ")
+				prose = nil
+			default:
+				prose = append(prose, line)
 			}
-			heading = strings.TrimPrefix(line, "## ")
-			prose = nil
-		case strings.HasPrefix(line, "```"):
-			end := n + 1
-			for end < last && src.Line(end) != "```" {
-				end++
-			}
-			if h := lib.helper(src, n, end); h != nil {
-				topic.Entries = append(topic.Entries, Entry{Helper: h, Title: heading, About: said()})
-			}
-			n = end
-		default:
-			prose = append(prose, line)
 		}
 	}
-	lib.Topics = append(lib.Topics, topic)
-}
-
-// helper reads the fence from one line to another.
-func (lib *Library) helper(src *diag.Source, from, to int) *syntax.Helper {
-	var lines []syntax.Line
-	for n := from + 1; n < to; n++ {
-		start := src.LineStart(n)
-		lines = append(lines, syntax.Line{Start: start, End: start + len(src.Line(n))})
+	for p := range fences(src) {
+		text(p.from)
+		topic.Entries = append(topic.Entries, Entry{Helper: lib.read(nameIn(src, p)), Title: heading, About: said()})
+		n = p.to + 1
 	}
-	at := diag.Span{Start: src.LineStart(from), End: src.LineStart(to) + len(src.Line(to))}
-	info := diag.Span{Start: at.Start + len("```"), End: at.Start + len(src.Line(from))}
-	block, diags := syntax.NewReader(src).Block(info, at, lines)
-	lib.Diagnostics = append(lib.Diagnostics, diags...)
-	if block == nil || block.Helper == nil || block.Helper.Name == nil {
-		return nil
-	}
-	h := block.Helper
-	if first, ok := lib.Helpers[h.Name.ID]; ok {
-		lib.Diagnostics = append(lib.Diagnostics, diag.Diagnostic{
-			ID: diag.Redefined, Source: src, Span: h.Name.At,
-			Message: fmt.Sprintf("%s stands in %s too", h.Name.Text, first.Source.Name),
-		})
-		return nil
-	}
-	lib.Helpers[h.Name.ID] = h
-	return h
+	text(last + 1)
+	return topic
 }

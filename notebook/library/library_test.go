@@ -10,14 +10,11 @@ import (
 // The library's own files have no faults, whoever calls them.
 func TestLibraryIsSound(t *testing.T) {
 	lib := Load()
-	for _, d := range lib.Diagnostics {
-		t.Error(d.Text())
-	}
-	if len(lib.Helpers) < 70 || len(lib.Tables) < 7 {
-		t.Errorf("%d helpers and %d tables, want 70 and 7 at least", len(lib.Helpers), len(lib.Tables))
+	if len(lib.Names) < 70 || len(lib.Tables) < 7 {
+		t.Errorf("%d helpers and %d tables, want 70 and 7 at least", len(lib.Names), len(lib.Tables))
 	}
 	seen := 0
-	for _, topic := range lib.Topics {
+	for _, topic := range lib.Topics() {
 		if topic.Title == "" || topic.Intro == "" && topic.Entries[0].About == "" || len(topic.Entries) == 0 {
 			t.Errorf("the topic %q lacks a title, a word of introduction or helpers", topic.Title)
 		}
@@ -31,13 +28,21 @@ func TestLibraryIsSound(t *testing.T) {
 				t.Errorf("%s gives nothing", h.Name.Text)
 			case e.Title == "" || e.About == "":
 				t.Errorf("%s stands under no heading or nothing is said of it", h.Name.Text)
-			case lib.Helpers[h.Name.ID] != h:
+			case lib.Read(h.Name.ID) != h:
 				t.Errorf("%s is listed and cannot be called", h.Name.Text)
 			}
 		}
 	}
-	if seen != len(lib.Helpers) {
-		t.Errorf("%d helpers are listed of %d", seen, len(lib.Helpers))
+	if seen != len(lib.Names) {
+		t.Errorf("%d helpers are listed of %d: one of them stands twice", seen, len(lib.Names))
+	}
+	for name, p := range lib.places {
+		for _, d := range p.diags {
+			t.Error(d.Text())
+		}
+		if p.helper.Name == nil || p.helper.Name.ID != name {
+			t.Errorf("the block of %s defines another helper", name)
+		}
 	}
 }
 

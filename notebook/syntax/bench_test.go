@@ -30,7 +30,7 @@ func fenced(info, content string) (*diag.Source, func() (*Block, []diag.Diagnost
 	head := "```" + info + "\n"
 	src := diag.NewSource("calc.md", []byte(head+content))
 	return src, func() (*Block, []diag.Diagnostic) {
-		return NewReader(src).Block(diag.Span{Start: 3, End: len(head) - 1}, diag.Span{Start: 0, End: len(src.Text)}, linesOf(src.Text, len(head)))
+		return NewReader(src, len(src.Text)).Block(diag.Span{Start: 3, End: len(head) - 1}, diag.Span{Start: 0, End: len(src.Text)}, linesOf(src.Text, len(head)))
 	}
 }
 
@@ -65,7 +65,7 @@ func benchmarkStatements(b *testing.B, content string, n int) {
 	lines := linesOf(src.Text, 8)
 	b.ReportAllocs()
 	for b.Loop() {
-		if _, diags := NewReader(src).Block(diag.Span{Start: 3, End: 7}, diag.Span{Start: 0, End: len(src.Text)}, lines); len(diags) > 0 {
+		if _, diags := NewReader(src, len(src.Text)).Block(diag.Span{Start: 3, End: 7}, diag.Span{Start: 0, End: len(src.Text)}, lines); len(diags) > 0 {
 			b.Fatal(diags[0].Text())
 		}
 	}

@@ -41,9 +41,9 @@ type Reader struct {
 	slabs *slabs
 }
 
-// NewReader returns a reader of a source's fences.
-func NewReader(src *diag.Source) *Reader {
-	return &Reader{src: src, slabs: newSlabs(len(src.Text))}
+// NewReader returns a reader of a source's fences, of which some length is to be read.
+func NewReader(src *diag.Source, length int) *Reader {
+	return &Reader{src: src, slabs: newSlabs(length)}
 }
 
 // Block reads one fence. info spans the info string in the opening line,

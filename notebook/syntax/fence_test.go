@@ -152,7 +152,7 @@ func TestLinesInQuote(t *testing.T) {
 		lines = append(lines, Line{i, i + len(s)})
 	}
 	info := strings.Index(text, "calc")
-	b, diags := NewReader(src).Block(diag.Span{Start: info, End: info + 4}, diag.Span{Start: 2, End: len(text)}, lines)
+	b, diags := NewReader(src, len(src.Text)).Block(diag.Span{Start: info, End: info + 4}, diag.Span{Start: 2, End: len(text)}, lines)
 	if len(diags) != 1 || src.Slice(diags[0].Span) != "2 q" {
 		t.Fatalf("diagnostics %v", diags)
 	}

@@ -11,8 +11,28 @@ import (
 	"sync"
 )
 
-//go:embed plex/*.ttf plex/*.woff2 plex/*.css
+//go:embed plex/*.woff2 plex/*.css
 var files embed.FS
+
+// The TrueType files lie in the program's own memory: most of a face is never looked at.
+var (
+	//go:embed plex/IBMPlexSerif-Regular.ttf
+	serif []byte
+	//go:embed plex/IBMPlexSerif-Italic.ttf
+	serifItalic []byte
+	//go:embed plex/IBMPlexSerif-SemiBold.ttf
+	serifSemiBold []byte
+	//go:embed plex/IBMPlexSerif-SemiBoldItalic.ttf
+	serifSemiBoldItalic []byte
+	//go:embed plex/IBMPlexSans-Regular.ttf
+	sans []byte
+	//go:embed plex/IBMPlexSans-SemiBold.ttf
+	sansSemiBold []byte
+	//go:embed plex/IBMPlexMono-Regular.ttf
+	mono []byte
+	//go:embed plex/IBMPlexMath-Regular.ttf
+	mathRegular []byte
+)
 
 // A Face is one embedded face. Faces are compared by pointer.
 type Face struct {
@@ -29,14 +49,14 @@ type Face struct {
 
 // The faces.
 var (
-	Serif               = newFace("Serif", "Regular", false, 400)
-	SerifItalic         = newFace("Serif", "Italic", true, 400)
-	SerifSemiBold       = newFace("Serif", "SemiBold", false, 600)
-	SerifSemiBoldItalic = newFace("Serif", "SemiBoldItalic", true, 600)
-	Sans                = newFace("Sans", "Regular", false, 400)
-	SansSemiBold        = newFace("Sans", "SemiBold", false, 600)
-	Mono                = newFace("Mono", "Regular", false, 400)
-	Math                = newFace("Math", "Regular", false, 400)
+	Serif               = newFace(serif, "Serif", "Regular", false, 400)
+	SerifItalic         = newFace(serifItalic, "Serif", "Italic", true, 400)
+	SerifSemiBold       = newFace(serifSemiBold, "Serif", "SemiBold", false, 600)
+	SerifSemiBoldItalic = newFace(serifSemiBoldItalic, "Serif", "SemiBoldItalic", true, 600)
+	Sans                = newFace(sans, "Sans", "Regular", false, 400)
+	SansSemiBold        = newFace(sansSemiBold, "Sans", "SemiBold", false, 600)
+	Mono                = newFace(mono, "Mono", "Regular", false, 400)
+	Math                = newFace(mathRegular, "Math", "Regular", false, 400)
 )
 
 // Faces returns all faces.
@@ -44,13 +64,12 @@ func Faces() []*Face {
 	return []*Face{Serif, SerifItalic, SerifSemiBold, SerifSemiBoldItalic, Sans, SansSemiBold, Mono, Math}
 }
 
-func newFace(family, style string, italic bool, weight int) *Face {
+func newFace(ttf []byte, family, style string, italic bool, weight int) *Face {
 	f := &Face{
 		Name: "IBM Plex " + family, Short: "Plex " + family,
-		Italic: italic, Weight: weight,
+		Italic: italic, Weight: weight, TTF: ttf,
 		file: "plex/IBMPlex" + family + "-" + style,
 	}
-	f.TTF = read(f.file + ".ttf")
 	f.glyphs = sync.OnceValue(func() *glyphs { return readGlyphs(f.TTF) })
 	f.web = sync.OnceValue(f.webParts)
 	f.math = sync.OnceValue(func() *MathTable { return readMath(f.Table("MATH")) })
