@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"strconv"
 	"strings"
+	"sync"
 
 	"github.com/go-pdf/fpdf"
 
@@ -123,6 +124,52 @@ func (c *canvas) familyOf(face *fonts.Face) string {
 		c.family[face] = name
 	}
 	return name
+}
+
+// expected hands faces over to the library while the page is laid out, which
+// takes about as long. Only one of the two touches the canvas at a time.
+type expected struct {
+	faces chan *fonts.Face
+	seen  map[*fonts.Face]bool
+	done  sync.WaitGroup
+}
+
+func (c *canvas) expect() *expected {
+	e := &expected{faces: make(chan *fonts.Face, len(fonts.Faces())), seen: map[*fonts.Face]bool{}}
+	e.done.Go(func() {
+		for face := range e.faces {
+			c.familyOf(face)
+		}
+	})
+	return e
+}
+
+// in tells of the faces in some ink that will be drawn.
+func (e *expected) in(k *ink) {
+	for i := range k.texts {
+		t := &k.texts[i]
+		if t.items == nil {
+			e.tell(t.face)
+		}
+		for j := range t.items {
+			if t.items[j].Kind == maths.Run {
+				e.tell(t.items[j].Face)
+			}
+		}
+	}
+}
+
+func (e *expected) tell(face *fonts.Face) {
+	if !e.seen[face] {
+		e.seen[face] = true
+		e.faces <- face
+	}
+}
+
+// wait ends it, when all that was told of is handed over.
+func (e *expected) wait() {
+	close(e.faces)
+	e.done.Wait()
 }
 
 func faceFamily(face *fonts.Face) string {

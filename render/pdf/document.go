@@ -8,6 +8,7 @@ type document struct {
 	source []byte // that the segments of the prose point into
 	paper  paper
 	album  *album
+	canvas *canvas // what it is drawn on
 }
 
 // layout is a document laid out: the sheets with what stands on them.
@@ -23,6 +24,7 @@ func newDocument(p *render.Page) *document {
 		source: p.Sheet.Source.Text,
 		paper:  paperOf(p.Title.Paper),
 		album:  &album{files: p.Sheet.Images, ready: map[string]*image{}},
+		canvas: newCanvas(paperOf(p.Title.Paper)),
 	}
 }
 
@@ -38,7 +40,9 @@ func (d *document) tallest() float64 { return 0.6 * d.paper.height }
 
 func (d *document) layout() *layout {
 	x, width := d.paper.calculation()
-	b := &prose{flow: &flow{x: x, width: width}, doc: d, voice: proseVoice}
+	faces := d.canvas.expect()
+	defer faces.wait()
+	b := &prose{flow: &flow{x: x, width: width, pushed: faces.in}, doc: d, voice: proseVoice}
 	if d.page.Sheet.Doc != nil {
 		b.children(d.page.Sheet.Doc)
 	}

@@ -10,9 +10,10 @@ type flow struct {
 	x       float64 // left edge of the column
 	width   float64
 	bands   []band
-	gap     float64  // space asked for above the next slab
-	snug    float64  // the most that it gets, where it is not 0
-	anchors []string // ids that the next slab starts
+	pushed  func(*ink) // sees the ink of every slab; nil where nobody asks
+	gap     float64    // space asked for above the next slab
+	snug    float64    // the most that it gets, where it is not 0
+	anchors []string   // ids that the next slab starts
 	// hanging is how far references hang down beside the entries that follow,
 	// where mayHang says that those have none of their own.
 	hanging float64
@@ -38,6 +39,9 @@ func (f *flow) push(s slab) *slab {
 		}
 	}
 	f.slabs = append(f.slabs, s)
+	if f.pushed != nil {
+		f.pushed(&s.ink)
+	}
 	return &f.slabs[len(f.slabs)-1]
 }
 

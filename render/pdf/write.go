@@ -23,7 +23,7 @@ func Write(p *render.Page, date time.Time) ([]byte, error) {
 var fixedDate = time.Date(2000, 1, 1, 0, 0, 0, 0, time.UTC)
 
 func (l *layout) write(date time.Time) ([]byte, error) {
-	c := newCanvas(l.paper)
+	c := l.canvas
 	l.properties(c, date)
 	l.album.register(c.pdf)
 	marks := l.placesOf(c)
