@@ -13,20 +13,17 @@ import (
 	"gusset/notebook/store"
 )
 
-// fiftyPages is a calc file that prints on about fifty pages: 600 computed
-// statements with prose.
-func fiftyPages(pull int) string {
-	var b strings.Builder
-	fmt.Fprintf(&b, "---\ncalc: B-1\ntitle: Fifty pages\n---\n\n```calc\nP = %d kN # Pull [schedule]\nd = 30 mm # Diameter [drawing]\n```\n", pull)
-	for section := range 60 {
-		fmt.Fprintf(&b, "\n# Section %d\n\nThe pull is shared by the planes of this section, and every plane takes its part of it. The figures below are those of the drawing.\n\n```calc\n", section)
-		for i := range 10 {
-			n := 10*section + i
-			fmt.Fprintf(&b, "tau_%d [MPa] = P/(%d*pi*d^2/4) # Average shear stress, plane %d\n", n, n+2, n)
-		}
-		fmt.Fprintf(&b, "check tau_%d <= 200 MPa # Plane in shear [EN 1993-1-8, Table 3.10]\n```\n", 10*section)
+// longCalc is the calc of testdata/long-calc with forty sections: 600 computed
+// statements in about 90 kB. The pull of its joints is as given, in kN.
+func longCalc(b *testing.B, pull int) string {
+	front := read(b, "../../testdata/long-calc/front.md")
+	section := read(b, "../../testdata/long-calc/section.md")
+	var out strings.Builder
+	out.WriteString(front)
+	for i := range 40 {
+		out.WriteString(strings.ReplaceAll(strings.Replace(section, "84 kN", fmt.Sprint(pull, " kN"), 1), "@", fmt.Sprint(i)))
 	}
-	return b.String()
+	return out.String()
 }
 
 // BenchmarkWatch measures from the write of a file to its renamed page, less the
@@ -36,8 +33,8 @@ func BenchmarkWatch(b *testing.B) {
 	for _, only := range []string{"html", "pdf"} {
 		b.Run(only, func(b *testing.B) {
 			dir := b.TempDir()
-			file, page := filepath.Join(dir, "calc.md"), filepath.Join(dir, "out", "B-1."+only)
-			write(b, file, fiftyPages(1))
+			file, page := filepath.Join(dir, "calc.md"), filepath.Join(dir, "out", "C-500_A."+only)
+			write(b, file, longCalc(b, 1))
 			p := &printer{to: filepath.Join(dir, "out"), only: only}
 			ctx, cancel := context.WithCancel(context.Background())
 			ended := make(chan error)
@@ -48,7 +45,7 @@ func BenchmarkWatch(b *testing.B) {
 			pull := 1
 			for b.Loop() {
 				pull++
-				write(b, file, fiftyPages(pull))
+				write(b, file, longCalc(b, pull))
 				start := time.Now()
 				last = renamed(page, last)
 				latency += time.Since(start) - quiet

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"strings"
 	"testing"
+	"time"
 
 	"gusset/notebook/diag"
 )
@@ -48,10 +49,29 @@ func linesOf(text []byte, start int) []Line {
 	return lines
 }
 
+// BenchmarkLine parses a line of a calc, and in turns a bare parser reads the
+// same; ratio is the one over the other.
 func BenchmarkLine(b *testing.B) {
-	const n = 100
-	content := strings.Repeat("tau [MPa] = P/(2*A)  # Average shear stress\n", n)
-	benchmarkStatements(b, content, n)
+	const n, line = 1000, "tau [MPa] = P/(2*A)  # Average shear stress"
+	src, parse := fenced("calc", strings.Repeat(line+"\n", n))
+	if _, diags := parse(); len(diags) > 0 {
+		b.Fatal(diags[0].Text())
+	}
+	lines := linesOf(src.Text, 8)
+	var own, bare time.Duration
+	for b.Loop() {
+		t := time.Now()
+		NewReader(src, len(src.Text)).Block(diag.Span{Start: 3, End: 7}, diag.Span{Start: 0, End: len(src.Text)}, lines)
+		own += time.Since(t)
+		t = time.Now()
+		for range n {
+			bareSink = bareLine(line)
+		}
+		bare += time.Since(t)
+	}
+	b.ReportMetric(float64(own.Nanoseconds())/float64(b.N)/n, "ns/line")
+	b.ReportMetric(float64(bare.Nanoseconds())/float64(b.N)/n, "ns/bare")
+	b.ReportMetric(float64(own)/float64(bare), "ratio")
 }
 
 func BenchmarkCalc(b *testing.B) {
@@ -144,19 +164,14 @@ func (p *bareParser) primary() *bareNode {
 
 var bareSink *bareNode
 
-// BenchmarkBare is to be read beside BenchmarkLine.
-func BenchmarkBare(b *testing.B) {
-	const line = "tau [MPa] = P/(2*A)  # Average shear stress"
-	b.ReportAllocs()
-	for b.Loop() {
-		p := bareParser{s: line}
-		name := p.primary()
-		p.blanks()
-		end := strings.IndexByte(p.s[p.i:], ']')
-		unit := p.s[p.i+1 : p.i+end]
-		p.i += end + 1
-		p.blanks()
-		p.i++
-		bareSink = &bareNode{op: '=', name: name.name + unit, x: p.sum()}
-	}
+func bareLine(line string) *bareNode {
+	p := bareParser{s: line}
+	name := p.primary()
+	p.blanks()
+	end := strings.IndexByte(p.s[p.i:], ']')
+	unit := p.s[p.i+1 : p.i+end]
+	p.i += end + 1
+	p.blanks()
+	p.i++
+	return &bareNode{op: '=', name: name.name + unit, x: p.sum()}
 }

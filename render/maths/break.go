@@ -1,6 +1,11 @@
 package maths
 
-import "gusset/render/fonts"
+import (
+	"slices"
+	"sync"
+
+	"gusset/render/fonts"
+)
 
 // Break sets a chain for paper in lines no wider than width.
 //
@@ -12,12 +17,20 @@ import "gusset/render/fonts"
 // and below that written out with a slash, which breaks again. A line without a
 // place to break, such as an endless name, is cut.
 func Break(c Chain, size, width float64) []Box {
-	s := &setter{size: size, text: fonts.Serif, metrics: fonts.MathMetrics(), items: make([]Item, 0, 32)}
-	b := breaker{setter: s, width: width, st: style{display: true}, right: Open}
+	room := rooms.Get().(*room)
+	s := &setter{size: size, text: fonts.Serif, metrics: fonts.MathMetrics(), items: room.set[:0]}
+	b := breaker{setter: s, width: width, st: style{display: true}, right: Open, line: Box{Items: room.line[:0]}}
 	b.chain(c)
 	b.finish()
+	room.set, room.line = s.items, b.line.Items
+	rooms.Put(room)
 	return b.lines
 }
+
+// room is where formulas are set before they are put into lines; one serves many.
+type room struct{ set, line []Item }
+
+var rooms = sync.Pool{New: func() any { return new(room) }}
 
 // leastScale is how small a fraction may be set so as not to be split, and
 // hang how far lines are set in, in ems, whose left side takes more than
@@ -124,9 +137,6 @@ func (b *breaker) leading(p piece) piece {
 
 // add copies a part into the line.
 func (b *breaker) add(p part, x, y float64) {
-	if b.line.Items == nil {
-		b.line.Items = make([]Item, 0, min(len(b.items), 32))
-	}
 	for _, item := range b.items[p.from:p.to] {
 		item.X += x
 		item.Y += y
@@ -139,9 +149,11 @@ func (b *breaker) add(p part, x, y float64) {
 
 func (b *breaker) finish() {
 	if b.full {
-		b.lines = append(b.lines, b.line)
+		line := b.line
+		line.Items = slices.Clone(line.Items)
+		b.lines = append(b.lines, line)
 	}
-	b.line, b.full, b.right = Box{}, false, Open
+	b.line, b.full, b.right = Box{Items: b.line.Items[:0]}, false, Open
 }
 
 func (b *breaker) newLine(at float64) {

@@ -42,7 +42,7 @@ func (d *document) layout() *layout {
 	x, width := d.paper.calculation()
 	faces := d.canvas.expect()
 	defer faces.wait()
-	b := &prose{flow: &flow{x: x, width: width, pushed: faces.in}, doc: d, voice: proseVoice}
+	b := &prose{flow: &flow{x: x, width: width, pushed: faces.in, slabs: make([]slab, 0, len(d.source)/64)}, doc: d, voice: proseVoice}
 	if d.page.Sheet.Doc != nil {
 		b.children(d.page.Sheet.Doc)
 	}
