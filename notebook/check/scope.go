@@ -85,19 +85,27 @@ func (e *env) define(n *syntax.Name, t Type) *Def {
 	return d
 }
 
+// maxSearched bounds the names that are looked through for what messages offer,
+// over all messages of a file: a file of nothing but mistakes takes no longer
+// than another. Beyond it nothing is offered.
+const maxSearched = 4_000_000
+
 // inScope lists the names in scope, sorted, that pass the test; names of
 // schedules' columns and helpers' results included.
 func (e *env) inScope(pass func(*Def) bool) []string {
 	var out []string
-	for ; e != nil; e = e.parent {
+	for c := e.c; e != nil; e = e.parent {
+		if c.searched += len(e.names); c.searched > maxSearched {
+			return nil
+		}
 		for id, d := range e.names {
-			if pass(d) && !slices.Contains(out, id) {
+			if pass(d) {
 				out = append(out, id)
 			}
 		}
 	}
 	sort.Strings(out)
-	return out
+	return slices.Compact(out)
 }
 
 // constants are the names that are defined without the author.
