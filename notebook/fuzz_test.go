@@ -3,9 +3,12 @@ package notebook
 import (
 	"bytes"
 	"encoding/json"
+	"fmt"
 	"math"
 	"os"
 	"path/filepath"
+	"slices"
+	"strings"
 	"testing"
 	"testing/fstest"
 	"unicode/utf8"
@@ -181,15 +184,38 @@ func TestPathological(t *testing.T) {
 		"a long sum":               "```calc\nx = 1" + repeat(" + 1", 50_000) + "\n```\n",
 		"a long literal":           "```calc\nx = " + repeat("1", 100_000) + "\n```\n",
 		"a long power":             "```calc\nx = 2" + repeat("^2", 50_000) + "\n```\n",
+		"a chain of checks":        chainOfChecks(10_000),
+		"unknown names":            unknownNames(10_000),
 	}
+	many := []string{"nested emphasis", "fences", "one heading many times", "one remark many times", "unknown names"}
 	for name, body := range bodies {
 		t.Run(name, func(t *testing.T) {
 			s := compile(files("a.md", calc(body)), "a.md")
-			if n := len(s.Diagnostics); name != "nested emphasis" && name != "fences" && name != "one heading many times" && name != "one remark many times" && n > 3 {
+			if n := len(s.Diagnostics); n > 3 && !slices.Contains(many, name) {
 				t.Errorf("%d diagnostics for one mistake", n)
 			}
 			s.JSON()
 			s.PlainText(s.Doc)
 		})
 	}
+}
+
+// chainOfChecks is a value over rows that every line goes on from, with a check of each.
+func chainOfChecks(n int) string {
+	var b strings.Builder
+	b.WriteString("```schedule bolts\nx [mm]\n1\n2\n```\n\n```calc\na_0 = 2*bolts.x\n")
+	for i := range n {
+		fmt.Fprintf(&b, "a_%d = a_%d + 1 mm\ncheck a_%d <= 1e9 mm\n", i+1, i, i+1)
+	}
+	return b.String() + "```\n"
+}
+
+// unknownNames is a mistake in each line, with a name that others are like.
+func unknownNames(n int) string {
+	var b strings.Builder
+	b.WriteString("```calc\n")
+	for i := range n {
+		fmt.Fprintf(&b, "a_%d = 2*b_%dx\n", i, i)
+	}
+	return b.String() + "```\n"
 }
