@@ -1,6 +1,6 @@
 // Package library holds the helpers that ship with the program, written in the
 // notation like anybody's, with the tables of bolts, nails, steels and timber
-// that go with them. The files are embedded and read once.
+// that go with them. The files are embedded; a helper is read when it is called.
 //
 //	lib := library.Load()
 //	h := lib.Read("direct_shear")
@@ -38,7 +38,7 @@ type Library struct {
 	sources []*diag.Source // the chapters
 	places  map[string]*place
 
-	sync.Mutex // guards what is read of the places
+	mu sync.Mutex // guards what is read of the places
 }
 
 // place is where a helper stands, by lines of its chapter, and what was read there.
@@ -129,8 +129,8 @@ func nameIn(src *diag.Source, p *place) string {
 
 // read returns the helper of one of the library's names.
 func (lib *Library) read(name string) *syntax.Helper {
-	lib.Lock()
-	defer lib.Unlock()
+	lib.mu.Lock()
+	defer lib.mu.Unlock()
 	p := lib.places[name]
 	if p.helper == nil {
 		p.read()
