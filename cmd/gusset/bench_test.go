@@ -2,29 +2,15 @@ package main
 
 import (
 	"context"
-	"fmt"
 	"io"
 	"os"
 	"path/filepath"
-	"strings"
 	"testing"
 	"time"
 
 	"gusset/notebook/store"
+	"gusset/testdata/longcalc"
 )
-
-// longCalc is the calc of testdata/long-calc with forty sections: 600 computed
-// statements in about 90 kB. The pull of its joints is as given, in kN.
-func longCalc(b *testing.B, pull int) string {
-	front := read(b, "../../testdata/long-calc/front.md")
-	section := read(b, "../../testdata/long-calc/section.md")
-	var out strings.Builder
-	out.WriteString(front)
-	for i := range 40 {
-		out.WriteString(strings.ReplaceAll(strings.Replace(section, "84 kN", fmt.Sprint(pull, " kN"), 1), "@", fmt.Sprint(i)))
-	}
-	return out.String()
-}
 
 // BenchmarkWatch measures from the write of a file to its renamed page, less the
 // quiet period, and in the same run what compiling and writing take alone.
@@ -34,7 +20,7 @@ func BenchmarkWatch(b *testing.B) {
 		b.Run(only, func(b *testing.B) {
 			dir := b.TempDir()
 			file, page := filepath.Join(dir, "calc.md"), filepath.Join(dir, "out", "C-500_A."+only)
-			write(b, file, longCalc(b, 1))
+			write(b, file, string(longcalc.Text(40, 1)))
 			p := &printer{to: filepath.Join(dir, "out"), only: only}
 			ctx, cancel := context.WithCancel(context.Background())
 			ended := make(chan error)
@@ -45,7 +31,7 @@ func BenchmarkWatch(b *testing.B) {
 			pull := 1
 			for b.Loop() {
 				pull++
-				write(b, file, longCalc(b, pull))
+				write(b, file, string(longcalc.Text(40, pull)))
 				start := time.Now()
 				last = renamed(page, last)
 				latency += time.Since(start) - quiet

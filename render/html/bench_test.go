@@ -1,12 +1,9 @@
 package html_test
 
 import (
-	"bytes"
 	"fmt"
 	"io"
-	"os"
 	"runtime/debug"
-	"strconv"
 	"testing"
 	"testing/fstest"
 	"time"
@@ -18,24 +15,8 @@ import (
 	"gusset/notebook"
 	"gusset/render"
 	"gusset/render/html"
+	"gusset/testdata/longcalc"
 )
-
-// longCalc is the calc of testdata/long-calc with a number of sections: forty
-// have 600 computed statements in about 90 kB.
-func longCalc(b *testing.B, sections int) []byte {
-	front, err := os.ReadFile("../../testdata/long-calc/front.md")
-	if err != nil {
-		b.Fatal(err)
-	}
-	section, err := os.ReadFile("../../testdata/long-calc/section.md")
-	if err != nil {
-		b.Fatal(err)
-	}
-	for i := range sections {
-		front = append(front, bytes.ReplaceAll(section, []byte("@"), []byte(strconv.Itoa(i)))...)
-	}
-	return front
-}
 
 func compileBytes(b *testing.B, text []byte) *notebook.Sheet {
 	root := fstest.MapFS{"calc.md": &fstest.MapFile{Data: text}}
@@ -50,7 +31,7 @@ func compileBytes(b *testing.B, text []byte) *notebook.Sheet {
 // goldmark with tables and heading ids render the same bytes, in turns, and
 // prints how many times goldmark each takes.
 func BenchmarkLongCalc(b *testing.B) {
-	text := longCalc(b, 40)
+	text := longcalc.Text(40, 84)
 	md := goldmark.New(goldmark.WithExtensions(extension.Table), goldmark.WithParserOptions(parser.WithAutoHeadingID()))
 	var gold, compile, both time.Duration
 	var dst []byte
@@ -80,7 +61,7 @@ func BenchmarkTenTimes(b *testing.B) {
 	for _, percent := range []int{100, 400} {
 		b.Run(fmt.Sprint("gc-", percent), func(b *testing.B) {
 			defer debug.SetGCPercent(debug.SetGCPercent(percent))
-			small, large := longCalc(b, 40), longCalc(b, 400)
+			small, large := longcalc.Text(40, 84), longcalc.Text(400, 84)
 			var one, ten time.Duration
 			for b.Loop() {
 				t := time.Now()
@@ -97,7 +78,7 @@ func BenchmarkTenTimes(b *testing.B) {
 
 // BenchmarkPage decides what the file prints, and BenchmarkHTML writes it.
 func BenchmarkPage(b *testing.B) {
-	s := compileBytes(b, longCalc(b, 40))
+	s := compileBytes(b, longcalc.Text(40, 84))
 	b.ReportAllocs()
 	for b.Loop() {
 		render.NewPage(s)
@@ -105,7 +86,7 @@ func BenchmarkPage(b *testing.B) {
 }
 
 func BenchmarkHTML(b *testing.B) {
-	p := render.NewPage(compileBytes(b, longCalc(b, 40)))
+	p := render.NewPage(compileBytes(b, longcalc.Text(40, 84)))
 	var dst []byte
 	b.ReportAllocs()
 	for b.Loop() {

@@ -12,6 +12,7 @@ import (
 
 	"gusset/notebook/store"
 	"gusset/render"
+	"gusset/testdata/longcalc"
 )
 
 // BenchmarkColdPrint prints a long calc by a process of its own, in turns with
@@ -25,7 +26,7 @@ func BenchmarkColdPrint(b *testing.B) {
 	}
 	for _, sections := range []int{20, 40} {
 		b.Run(fmt.Sprint(sections, "-sections"), func(b *testing.B) {
-			if err := os.WriteFile(file, []byte(longCalc(b, sections)), 0o666); err != nil {
+			if err := os.WriteFile(file, longcalc.Text(sections, 84), 0o666); err != nil {
 				b.Fatal(err)
 			}
 			l := newDocument(render.NewPage(store.New().Compile([]string{file})[0].Sheet)).layout()

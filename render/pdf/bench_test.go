@@ -3,33 +3,15 @@ package pdf
 import (
 	"bytes"
 	"fmt"
-	"os"
 	"runtime"
-	"strconv"
 	"testing"
 	"time"
 
 	"github.com/go-pdf/fpdf"
 
 	"gusset/render/maths"
+	"gusset/testdata/longcalc"
 )
-
-// longCalc is the calc of testdata/long-calc with a number of sections: forty
-// have 600 computed statements in about 90 kB.
-func longCalc(b *testing.B, sections int) string {
-	front, err := os.ReadFile("../../testdata/long-calc/front.md")
-	if err != nil {
-		b.Fatal(err)
-	}
-	section, err := os.ReadFile("../../testdata/long-calc/section.md")
-	if err != nil {
-		b.Fatal(err)
-	}
-	for i := range sections {
-		front = append(front, bytes.ReplaceAll(section, []byte("@"), []byte(strconv.Itoa(i)))...)
-	}
-	return string(front)
-}
 
 // replay is what bare fpdf takes to draw what a layout draws: the same texts,
 // fills and faces in the same order.
@@ -134,7 +116,7 @@ func (r *replay) run(b testing.TB) int {
 func BenchmarkWrite(b *testing.B) {
 	for _, sections := range []int{20, 40, 200} {
 		b.Run(fmt.Sprint(sections, "-sections"), func(b *testing.B) {
-			p := pageOf(b, longCalc(b, sections), nil)
+			p := pageOf(b, string(longcalc.Text(sections, 84)), nil)
 			l := newDocument(p).layout()
 			r := recorded(l)
 			b.ReportAllocs()
