@@ -54,18 +54,23 @@ func (g *boltGroup) largest(q vec3) float64 {
 
 const (
 	icSteps     = 200
-	icTolerance = 1e-12 // on the part of the forces that is not along the load
+	icTolerance = 1e-12 // on the part of the forces that is not along the load, over the lesser of force and moment
+	icRounding  = 1e-15 // what that part cannot be told from 0 by
+	icFarthest  = 1e6   // times the radius of gyration, beyond which the sum of the forces drowns in its terms
+	icAccepted  = 1e-7  // over the force: a bolt at the centre itself answers a last bit of its movement by some 1e-9
 )
 
 var errNoCentre = errors.New("the search for the instantaneous centre did not converge")
 
 // movement searches the movement whose forces are along the load.
 func (g *boltGroup) movement() (vec3, error) {
+	force, moment := math.Hypot(g.load[0], g.load[1]), math.Abs(g.load[2])
+	tolerance := max(icTolerance*min(force, moment), icRounding)
 	q := g.load
 	miss := g.miss(q)
 	for range icSteps {
-		if miss.norm() <= icTolerance {
-			return q.dusted(), nil
+		if miss.norm() <= tolerance {
+			break
 		}
 		step, ok := g.newton(q, miss)
 		if !ok {
@@ -83,10 +88,23 @@ func (g *boltGroup) movement() (vec3, error) {
 			break
 		}
 	}
-	if miss.norm() > 1e-9 {
+	if miss.norm() > icAccepted*force {
 		return vec3{}, errNoCentre
 	}
-	return q.dusted(), nil
+	return g.settled(q, max(miss.norm(), tolerance)), nil
+}
+
+// settled takes out the movements that the balance does not need, a symmetrical group's dust of the search: they
+// would be read as movements.
+func (g *boltGroup) settled(q vec3, tolerance float64) vec3 {
+	for i := range q {
+		without := q
+		without[i] = 0
+		if without.norm() > 0 && g.miss(without).norm() <= tolerance {
+			q = without
+		}
+	}
+	return q
 }
 
 // miss is the part of the forces that is not along the load, as part of them.
@@ -134,16 +152,6 @@ func (a vec3) unit() vec3 {
 		return a
 	}
 	return vec3{a[0] / n, a[1] / n, a[2] / n}
-}
-
-// dusted returns a unit vector without the dust of rounding, which would be read as a movement.
-func (a vec3) dusted() vec3 {
-	for i, x := range a {
-		if math.Abs(x) < 1e-12 {
-			a[i] = 0
-		}
-	}
-	return a
 }
 
 // normals returns two vectors that are square to a unit vector and to each other.

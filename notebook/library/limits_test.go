@@ -47,9 +47,9 @@ const (
 	ropeBound = "rope=0 | rope=-0.000001; rope=1 | rope=1.000001"
 	toGrain   = "%[1]s=0 deg | %[1]s=-0.0001 deg; %[1]s=90 deg | %[1]s=90.0001 deg"
 
-	twoStrips = "```schedule p\nmark | b [mm] | t [mm]\nA | 100 | 10\nB | 300 | 10\n```\n```schedule thick\nmark | b [mm] | t [mm]\nA | 99.999 | 10\n```\n```schedule none\nmark | b [mm] | t [mm]\nA | 10 | 0\n```\n```schedule fine\nmark | b [mm] | t [mm]\nA | 10 | 1e-6\n```"
-	fourBolts = "```schedule b\nmark | x [mm] | y [mm]\nA | 0 | 0\nB | 100 | 0\n```\n```schedule close\nmark | x [mm] | y [mm]\nA | 0 | 0\nB | 0 | 0.001\n```\n```schedule same\nmark | x [mm] | y [mm]\nA | 5 | 7\nB | 5 | 7\n```"
-	twoRuns   = "```schedule w\nmark | x1 [mm] | y1 [mm] | x2 [mm] | y2 [mm]\nA | 0 | 0 | 0 | 100\nB | 50 | 0 | 50 | 0.001\n```\n```schedule v\nmark | x1 [mm] | y1 [mm] | x2 [mm] | y2 [mm]\nA | 0 | 0 | 0 | 100\nB | 50 | 0 | 50 | 0\n```"
+	twoStrips = "```schedule p\nmark | b [mm] | t [mm]\nA | 100 | 10\nB | 300 | 10\n```\n```schedule twins\nmark | t [mm]\nA | 10\nB | 10\n```\n```schedule thick\nmark | b [mm] | t [mm]\nA | 99.999 | 10\n```\n```schedule none\nmark | b [mm] | t [mm]\nA | 10 | 0\n```\n```schedule fine\nmark | b [mm] | t [mm]\nA | 10 | 1e-6\n```"
+	fourBolts = "```schedule rows\nmark | y [mm]\nA | 0\nB | 0\n```\n```schedule b\nmark | x [mm] | y [mm]\nA | 0 | 0\nB | 100 | 0\n```\n```schedule close\nmark | x [mm] | y [mm]\nA | 0 | 0\nB | 0 | 0.001\n```\n```schedule same\nmark | x [mm] | y [mm]\nA | 5 | 7\nB | 5 | 7\n```"
+	twoRuns   = "```schedule ends\nmark | x [mm]\nA | 0\nB | 50\n```\n```schedule w\nmark | x1 [mm] | y1 [mm] | x2 [mm] | y2 [mm]\nA | 0 | 0 | 0 | 100\nB | 50 | 0 | 50 | 0.001\n```\n```schedule v\nmark | x1 [mm] | y1 [mm] | x2 [mm] | y2 [mm]\nA | 0 | 0 | 0 | 100\nB | 50 | 0 | 50 | 0\n```"
 )
 
 func of(format, name string) string { return fmt.Sprintf(format, name) }
@@ -95,7 +95,8 @@ var elasticLimits = []limits{
 	{"torsion_rectangle", "", "T=1 kN*m, a=50 mm, b=20 mm, L=1 m, G=80 GPa", []string{positive("b"), "a=20 mm | a=19.9999 mm", positive("L", "G")}},
 	{"torsion_thin_closed", "", "T=1 kN*m, A_m=10000 mm^2, t=5 mm, p=400 mm, L=1 m, G=80 GPa",
 		[]string{positive("A_m") + "; " + "t=0.001 mm | t=0*(@t); p=0.4 mm | p=0*(@p); L=1 mm | L=0*(@L)" + "; " + positive("G"), "t=10 mm | t=10.0001 mm"}},
-	{"torsion_thin_open", twoStrips, "T=1 kN*m, b=p.b, t=p.t", []string{"b=fine.b, t=fine.t | b=none.b, t=none.t", "T=1 kN*m | b=thick.b, t=thick.t"}},
+	{"torsion_thin_open", twoStrips, "T=1 kN*m, b=p.b, t=p.t", []string{"T=1 kN*m | b=p.b, t=twins.t",
+		"b=fine.b, t=fine.t | b=none.b, t=none.t", "T=1 kN*m | b=thick.b, t=thick.t"}},
 	{"shaft_torque", "", "P=1 kW, n=1000 rpm", []string{positive("n")}},
 	{"helical_spring", "", "F=1 kN, D=40 mm, d=5 mm, G=80 GPa, n_a=8", []string{positive("d"), "D=5.0001 mm | D=5 mm", positive("G"), positive("n_a"), "D=20 mm | D=19.9999 mm; D=60 mm | D=60.0001 mm"}},
 	{"strain_from_stress", "", "sigma_x=1 MPa, sigma_y=1 MPa, tau_xy=1 MPa, E=210 GPa, nu=0.3", []string{positive("E"), aModulus5}},
@@ -103,9 +104,9 @@ var elasticLimits = []limits{
 }
 
 var steelLimits = []limits{
-	{"bolt_group_elastic", fourBolts, "x=b.x, y=b.y, P_x=1 kN, P_y=1 kN, M=1 kN*m", []string{"x=close.x, y=close.y | x=same.x, y=same.y"}},
-	{"bolt_group_ic", fourBolts, "x=b.x, y=b.y, e=50 mm, theta=0 deg, R_u=1 kN", []string{"x=close.x, y=close.y | x=same.x, y=same.y; x=same.x, y=same.y, e=0 mm | x=same.x, y=same.y", positive("R_u")}},
-	{"weld_group_elastic", twoRuns, "x1=w.x1, y1=w.y1, x2=w.x2, y2=w.y2, P_x=1 kN, P_y=1 kN, M=1 kN*m", []string{"P_x=1 kN | x1=v.x1, y1=v.y1, x2=v.x2, y2=v.y2"}},
+	{"bolt_group_elastic", fourBolts, "x=b.x, y=b.y, P_x=1 kN, P_y=1 kN, M=1 kN*m", []string{"M=1 kN*m | y=rows.y", "x=close.x, y=close.y | x=same.x, y=same.y"}},
+	{"bolt_group_ic", fourBolts, "x=b.x, y=b.y, e=50 mm, theta=0 deg, R_u=1 kN", []string{"e=50 mm | y=rows.y", "x=close.x, y=close.y | x=same.x, y=same.y; x=same.x, y=same.y, e=0 mm | x=same.x, y=same.y", positive("R_u")}},
+	{"weld_group_elastic", twoRuns, "x1=w.x1, y1=w.y1, x2=w.x2, y2=w.y2, P_x=1 kN, P_y=1 kN, M=1 kN*m", []string{"P_x=1 kN | x2=ends.x", "P_x=1 kN | x1=v.x1, y1=v.y1, x2=v.x2, y2=v.y2"}},
 	{"bolt_shear_ec3", "", "A=245 mm^2, f_ub=800 MPa, alpha_v=0.6, n=2, gamma_M2=1.25",
 		[]string{positive("A") + "; " + atLeastOne("n", "gamma_M2"), "f_ub=400 MPa | f_ub=399.999 MPa; f_ub=1000 MPa | f_ub=1000.001 MPa", "alpha_v=0.5 | alpha_v=0.499999; alpha_v=0.6 | alpha_v=0.600001"}},
 	{"bolt_bearing_ec3", "", "d=20 mm, d_0=22 mm, t=10 mm, e_1=40 mm, e_2=40 mm, f_u=410 MPa, f_ub=800 MPa, gamma_M2=1.25, p_1=60 mm, p_2=60 mm",

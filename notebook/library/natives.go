@@ -170,22 +170,20 @@ func solveIC(u, v []float64, e, theta float64) (icMotion, error) {
 	}
 	r := math.Sqrt(sum / float64(len(u)))
 	arm := e * math.Cos(theta)
-	if math.Abs(arm) <= 1e-12*r || e == 0 {
+	if e == 0 || math.Abs(arm) <= 1e-12*r || math.Abs(math.Cos(theta)) <= 1e-12 {
 		return icMotion{shiftX: -math.Sin(theta), shiftY: math.Cos(theta)}, nil
 	}
 	if r == 0 {
 		return icMotion{}, errors.New("bolts in one place resist no moment")
+	}
+	if math.Abs(arm) > icFarthest*r {
+		return icMotion{}, errors.New("the load stands over a million times the group's radius of gyration from its centroid, and rounding takes its force: for a moment alone, a nearer load will do")
 	}
 	g := &boltGroup{u: scaled(u, 1/r), v: scaled(v, 1/r)}
 	g.load = vec3{-math.Sin(theta), math.Cos(theta), arm / r}.unit()
 	q, err := g.movement()
 	if err != nil {
 		return icMotion{}, err
-	}
-	for i := range 2 {
-		if math.Abs(q[i]) <= 10*icTolerance { // finer than the search resolves: a group that is symmetrical does not move so
-			q[i] = 0
-		}
 	}
 	largest := g.largest(q)
 	return icMotion{q[0] / largest, q[1] / largest, q[2] / largest / r}, nil

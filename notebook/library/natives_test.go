@@ -172,7 +172,7 @@ func TestBoltGroupAtUltimateBalances(t *testing.T) {
 
 func TestConcentricBoltGroup(t *testing.T) {
 	u, v := []float64{-1, 1, 0}, []float64{0, 0, 0}
-	for _, c := range []struct{ e, theta float64 }{{0, 0}, {0, 0.5}, {2, math.Pi / 2}} {
+	for _, c := range []struct{ e, theta float64 }{{0, 0}, {0, 0.5}, {2, math.Pi / 2}, {1e6, math.Pi / 2}, {-1e6, 3 * math.Pi / 2}} {
 		m, err := solveIC(u, v, c.e, c.theta)
 		if err != nil || m.turn != 0 || !math.IsNaN(m.x()) || !math.IsNaN(m.y()) {
 			t.Errorf("e = %g, theta = %g: %+v (%v)", c.e, c.theta, m, err)
@@ -183,6 +183,53 @@ func TestConcentricBoltGroup(t *testing.T) {
 	}
 	if _, err := solveIC([]float64{0, 0}, []float64{0}, 1, 0); err == nil {
 		t.Error("a bolt has one coordinate")
+	}
+}
+
+// A load far off is a moment: C·e comes to what the group resists about its centroid, each bolt by its distance, where
+// that is its centre by symmetry. A bolt at the centroid itself takes what is left of the force.
+func TestFarLoadIsAMoment(t *testing.T) {
+	for _, g := range []struct{ u, v []float64 }{
+		{[]float64{0, 0, 0}, []float64{-0.075, 0, 0.075}},
+		{[]float64{-0.07, -0.07, 0.07, 0.07}, []float64{-0.04, 0.04, -0.04, 0.04}},
+	} {
+		resists := 0.0
+		farthest := math.Hypot(g.u[0], g.v[0])
+		for i := range g.u {
+			r := math.Hypot(g.u[i], g.v[i])
+			resists += r * math.Pow(1-math.Exp(-3.4*r/farthest), 0.55)
+		}
+		for _, e := range []float64{100, -1000, 10000} {
+			m, err := solveIC(g.u, g.v, e, 0)
+			if err != nil || m.x() == 0 {
+				t.Errorf("e = %g: %+v, %v", e, m, err)
+				continue
+			}
+			force := 0.0
+			for i := range g.u {
+				dx, dy := m.shiftX-m.turn*g.v[i], m.shiftY+m.turn*g.u[i]
+				d := math.Hypot(dx, dy)
+				force += math.Pow(-math.Expm1(-3.4*d), 0.55) * dy / d
+			}
+			if got := force * math.Abs(e); math.Abs(got-resists) > 1e-3*resists {
+				t.Errorf("e = %g: C·e is %g, want %g", e, got, resists)
+			}
+		}
+		if _, err := solveIC(g.u, g.v, 1e9, 0); err == nil {
+			t.Error("a load on the moon has a figure")
+		}
+	}
+}
+
+// A load whose centre lies at a bolt itself is found too, though the bolt's force there turns within a last bit.
+func TestCentreAtABolt(t *testing.T) {
+	f := func(d float64) float64 { return math.Pow(1-math.Exp(-3.4*d), 0.55) }
+	at := (f(0.5)*75+f(1)*150)/(f(0.5)+f(1)) - 75 // mm, about the first of three bolts
+	for _, off := range []float64{0, 1e-12, -1e-10, 1e-8, -1e-6} {
+		m, err := solveIC([]float64{-75, 0, 75}, []float64{0, 0, 0}, at*(1+off), 0)
+		if err != nil || math.Abs(m.x()+75) > 1e-4 || m.y() != 0 {
+			t.Errorf("%g off: %+v, %v", off, m, err)
+		}
 	}
 }
 

@@ -24,7 +24,7 @@ var tableRows = []struct {
 	{"bolt_grades_astm", `t.F_nv_N at "A325" = 54 ksi; t.F_nv_X at "A325" = 68 ksi; t.F_nt at "A325" = 90 ksi; t.F_nv_N at "A490" = 68 ksi; t.F_nv_X at "A490" = 84 ksi; t.F_nt at "A490" = 113 ksi; t.F_nv_N at "A307" = 27 ksi; t.F_u at "A325" = 120 ksi; t.F_u at "F2280" = 150 ksi; t.F_nt at "F1852" = 90 ksi`, "ANSI/AISC 360-16, Table J3.2, from memory"},
 	{"steels_en10025", `t.f_y_16 at "S235" = 235 MPa; t.f_y_40 at "S275" = 265 MPa; t.f_y_63 at "S355" = 335 MPa; t.f_y_80 at "S355" = 325 MPa; t.f_y_100 at "S235" = 215 MPa; t.f_y_150 at "S355" = 295 MPa; t.f_u_100 at "S275" = 410 MPa; t.f_u_100 at "S355" = 470 MPa; t.f_u_150 at "S235" = 350 MPa`, "EN 10025-2, from memory"},
 	{"steels_astm", `t.F_y at "A36" = 36 ksi; t.F_u at "A36" = 58 ksi; t.F_y at "A572-50" = 50 ksi; t.F_u at "A572-50" = 65 ksi; t.F_u at "A572-65" = 80 ksi; t.F_y at "A992" = 50 ksi; t.F_u at "A992" = 65 ksi`, "AISC Manual, Table 2-4, from memory"},
-	{"timber_en338", `t.rho_k at "C16" = 310 kg/m^3; t.f_m_k at "C24" = 24 MPa; t.rho_k at "C24" = 350 kg/m^3; t.rho_mean at "C24" = 420 kg/m^3; t.E_0_mean at "C24" = 11 GPa; t.G_mean at "C24" = 0.69 GPa; t.rho_k at "C30" = 380 kg/m^3; t.rho_k at "D30" = 530 kg/m^3; t.rho_k at "D40" = 550 kg/m^3`, "EN 338, from memory"},
+	{"timber_en338", `t.rho_k at "C16" = 310 kg/m^3; t.f_m_k at "C24" = 24 MPa; t.rho_k at "C24" = 350 kg/m^3; t.rho_mean at "C24" = 420 kg/m^3; t.E_0_mean at "C24" = 11 GPa; t.G_mean at "C24" = 0.69 GPa; t.rho_k at "C30" = 380 kg/m^3; t.rho_k at "D30" = 530 kg/m^3; t.rho_k at "D40" = 550 kg/m^3; t.rho_mean at "D50" = 740 kg/m^3`, "EN 338:2016, from memory"},
 }
 
 func TestTables(t *testing.T) {
@@ -143,8 +143,8 @@ func TestGradeTables(t *testing.T) {
 		if m[1:] != fmt.Sprintf("%.0f", c[0][i]/1e6) {
 			t.Errorf("%s: f_m_k is %g", m, c[0][i])
 		}
-		// EN 384: rho_mean = 1.2·rho_k, G_mean = E_0_mean/16, both rounded
-		if !near(c[2][i], 1.2*c[1][i], 0.03) || !near(c[4][i], c[3][i]/16, 0.02) {
+		// EN 384: rho_mean = 1.2·rho_k to the nearest 10 kg/m³, G_mean = E_0_mean/16, rounded
+		if math.Abs(c[2][i]-1.2*c[1][i]) > 5 || !near(c[4][i], c[3][i]/16, 0.02) {
 			t.Errorf("%s: rho %g and %g, E %g and G %g", m, c[1][i], c[2][i], c[3][i], c[4][i])
 		}
 	}
