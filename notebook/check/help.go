@@ -296,7 +296,23 @@ func (l *lower) argument(x *syntax.Call, h *helper, p *syntax.Param, value synta
 		}
 		return l.fail(diag.DimensionMismatch, value.Span(), message, append(l.wayOut(want, got), "it is called as `"+usage(h.tree)+"`")...)
 	}
+	if n.bare && takesAngle(p) {
+		l.report(diag.Warning, diag.BareAngle, value.Span(), fmt.Sprintf("%s takes an angle, and the bare number %s is read as radians", who, l.print(value)),
+			fmt.Sprintf("write `%s deg` for degrees, `%s rad` to say radians", l.print(value), l.print(value)))
+	}
 	return l.askFreq(value, n, want.Freq, fmt.Sprintf("%s is asked in %s", who, want.Freq.words()))
+}
+
+// takesAngle tells whether a parameter is asked as an angle; one in rad says itself how a bare number is read.
+func takesAngle(p *syntax.Param) bool {
+	if p.Unit == nil {
+		return false
+	}
+	switch p.Unit.Unit.String() {
+	case "deg", "mrad", "arcmin", "arcsec", "grad":
+		return p.Unit.Quantity == ""
+	}
+	return p.Unit.Quantity == "angle"
 }
 
 // loop finds the rows that a call runs over, once for each entry: those of
