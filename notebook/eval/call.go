@@ -2,6 +2,7 @@ package eval
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"gusset/notebook/check"
@@ -27,6 +28,10 @@ func (m *machine) callFunc(n *check.Node, f *frame, target *check.Type, entry in
 		switch {
 		case !alone && len(arg.Type.Rows) > 0:
 			v = m.columnValue(arg, f)
+		case !within(arg.Type.Rows, target.Rows): // the body does not use it, so that its rows are not the call's
+			if v, err = m.wholeColumn(arg, f); err != nil {
+				return nil, err
+			}
 		default:
 			v.Type.Rows = nil
 			x, err := m.entry(arg, f, target, entry)
@@ -40,10 +45,7 @@ func (m *machine) callFunc(n *check.Node, f *frame, target *check.Type, entry in
 			m.ownFiguresOf(g.steps[p.Slot], arg, f)
 		}
 	}
-	t := check.Type{}
-	if !alone {
-		t = inst.Body.Type
-	}
+	t := inst.Body.Type
 	outer := m.recording
 	var step *Step
 	if outer != nil {
@@ -64,6 +66,30 @@ func (m *machine) callFunc(n *check.Node, f *frame, target *check.Type, entry in
 		*outer = append(*outer, call)
 	}
 	return v, m.inFunction(err, n, f)
+}
+
+// within tells that all of some rows are among others.
+func within(rows, among []*check.Rows) bool {
+	for _, r := range rows {
+		if !slices.Contains(among, r) {
+			return false
+		}
+	}
+	return true
+}
+
+// wholeColumn computes all entries of a value over rows, each of which has to exist.
+func (m *machine) wholeColumn(n *check.Node, f *frame) (Value, error) {
+	v := m.columnValue(n, f)
+	for e, x := range v.Num {
+		if finite(x) {
+			continue
+		}
+		if _, err := m.number(n, f, &n.Type, e); err != nil {
+			return v, atEntry(err, n.Type, e)
+		}
+	}
+	return v, nil
 }
 
 // functionStep is the line that prints a function's formula with the values
@@ -131,27 +157,28 @@ func entrywise(inst *check.Function) bool {
 		return false
 	}
 	for _, b := range inst.Body.Branches {
-		if !elementary(b.Value) || b.Cond != nil && !elementary(b.Cond) {
+		if !elementary(b.Value, inst.Scope) || b.Cond != nil && !elementary(b.Cond, inst.Scope) {
 			return false
 		}
 	}
 	return true
 }
 
-func elementary(n *check.Node) bool {
+// elementary tells the same of an expression in the scope of the function's parameters.
+func elementary(n *check.Node, params *check.Scope) bool {
 	switch n.Op {
 	case check.Reduce, check.At, check.AtRow, check.Interp, check.CallHelp, check.CallGo:
 		return false
 	case check.Load:
-		// A name of the calc's own with rows is projected from the caller's rows.
-		return len(n.Def.Type.Rows) == 0 || n.Def.Plan == nil && n.Def.Carry == nil
+		// What has rows above the function is projected from the caller's rows.
+		return len(n.Def.Type.Rows) == 0 || n.Def.Scope == params
 	case check.CallFunc:
 		if !entrywise(n.Func) {
 			return false
 		}
 	}
 	for _, a := range n.Args {
-		if !elementary(a) {
+		if !elementary(a, params) {
 			return false
 		}
 	}

@@ -108,23 +108,31 @@ func named(n *check.Node) bool {
 }
 
 // utilisation is demand over capacity, the larger of a chain's; NaN where a
-// ratio says nothing.
+// ratio says nothing, be it only of the comparison that fails.
 func (m *machine) utilisation(r *CheckResult, entry int) float64 {
-	out := nan
+	out, fails, told := nan, false, false
 	for i, op := range r.Ops {
 		a, b := r.at(i, entry), r.at(i+1, entry)
 		if r.Sides[i].Value.Type.Kind != check.Number || r.Sides[i+1].Value.Type.Kind != check.Number {
 			continue
 		}
+		failed := !compare(op, a, b)
+		fails = fails || failed
 		if op == syntax.Gt || op == syntax.Ge {
 			a, b = b, a
 		}
 		if op == syntax.Eq || a <= 0 || b <= 0 || !finite(a) || !finite(b) {
 			continue
 		}
-		if u := a / b; finite(u) && (!finite(out) || u > out) {
-			out = u
+		if u := a / b; finite(u) {
+			told = told || failed
+			if !finite(out) || u > out {
+				out = u
+			}
 		}
+	}
+	if fails && !told {
+		return nan
 	}
 	return out
 }

@@ -242,7 +242,11 @@ func (m *machine) functionColumn(n *check.Node, f *frame) []float64 {
 		return fail()
 	}
 	for i, p := range n.Func.Params {
-		m.bindParam(g, p, m.columnValue(n.Args[i], f))
+		v := m.columnValue(n.Args[i], f)
+		if !within(v.Type.Rows, n.Type.Rows) && !allFinite(v.Num) && entrywise(n.Func) {
+			return fail() // the body does not use it: the entry says what is wrong with it
+		}
+		m.bindParam(g, p, v)
 	}
 	if n.Func.Body.FirstOf != nil {
 		return fail()
@@ -250,6 +254,15 @@ func (m *machine) functionColumn(n *check.Node, f *frame) []float64 {
 	t := n.Func.Body.Type
 	col, _ := m.branches(n.Func.Body, g, &t)
 	return col
+}
+
+func allFinite(col []float64) bool {
+	for _, x := range col {
+		if !finite(x) {
+			return false
+		}
+	}
+	return true
 }
 
 // branches computes a choice over rows: the value of the first branch whose condition
