@@ -139,6 +139,7 @@ func TestMistakes(t *testing.T) {
 		{"s = direct_shear(P, d^2, planes=2)", diag.Syntax, "no parameter `planes`", "direct_shear(V, A, n=1)", "s = direct_shear(P, d^2, n=2)"},
 		{"s = direct_shear(P, V=P)", diag.Syntax, "V is given twice", "", "s = direct_shear(V=P, A=d^2)"},
 		{"s = direct_shear(P, d^2, n=0)", diag.OutOfRange, "the limit `n >= 1` does not hold: n is 0", "", "s = direct_shear(P, d^2, n=1)"},
+		{"s = poisson_ratio(210 GPa, 69.9999 GPa)", diag.OutOfRange, "does not hold: nu is 0.500002", "Stable isotropic", "s = poisson_ratio(210 GPa, 80 GPa)"},
 		{"s = shear_strain(1 mm, 1 m)*2", diag.Syntax, "has the results gamma and gamma_small", "res.gamma", "res = shear_strain(1 mm, 1 m)\ns = res.gamma*2"},
 		{"res = shear_strain(1 mm, 1 m)\ns = res*2", diag.DimensionMismatch, "res stands for a helper with 2 results", "res.gamma", "res = shear_strain(1 mm, 1 m)\ns = res.gamma*2"},
 		{"res = shear_strain(1 mm, 1 m)\ns = res.delta", diag.UnknownName, "res has no result `delta`", "res.gamma", "res = shear_strain(1 mm, 1 m)\ns = res.gamma"},

@@ -8,6 +8,7 @@ import (
 	"gusset/notebook/check"
 	"gusset/notebook/diag"
 	"gusset/notebook/syntax"
+	"gusset/units"
 )
 
 // maxDepth bounds calls inside calls while they are computed.
@@ -389,7 +390,7 @@ func (m *machine) limit(p *check.Plan, g *frame, step *Step) error {
 func (m *machine) outside(p *check.Plan, s *syntax.Needs, g *frame, t *check.Type, entry int) error {
 	message := fmt.Sprintf("the limit `%s` does not hold", syntax.Print(g.src, s.Cond))
 	if c := p.Check; c.Sides != nil {
-		sign := ": "
+		sign, figures := ": ", m.telling(c.Sides, g, t, entry)
 		for _, side := range c.Sides {
 			bare := side
 			if bare.Op == check.Neg {
@@ -398,7 +399,7 @@ func (m *machine) outside(p *check.Plan, s *syntax.Needs, g *frame, t *check.Typ
 			if bare.Op == check.Const || bare.Op == check.TextLit {
 				continue
 			}
-			message += fmt.Sprintf("%s%s is %s", sign, syntax.Print(g.src, side.Expr), m.show(side, g, t, entry))
+			message += fmt.Sprintf("%s%s is %s", sign, syntax.Print(g.src, side.Expr), m.shown(side, g, t, entry, figures))
 			sign = ", "
 		}
 	} else if values := m.valuesIn(p.Check.Cond, g, t, entry); values != "" {
@@ -414,9 +415,37 @@ func (m *machine) outside(p *check.Plan, s *syntax.Needs, g *frame, t *check.Typ
 	return out
 }
 
+// telling is how many figures tell the sides of a limit apart: those of the page, and as many more as it takes where
+// a value is outside by less. Sides that are equal need no more.
+func (m *machine) telling(sides []*check.Node, g *frame, t *check.Type, entry int) int {
+	const most = 12
+	out := m.figures()
+	for i := 1; i < len(sides); i++ {
+		x, _ := m.entry(sides[i-1], g, t, entry)
+		y, _ := m.entry(sides[i], g, t, entry)
+		a, isNumber := x.(float64)
+		b, areNumbers := y.(float64)
+		if !isNumber || !areNumbers || compare(syntax.Eq, a, b) {
+			continue
+		}
+		for _, n := range sides[i-1 : i+1] {
+			u := m.nodeUnit(n, g)
+			for out < most && units.Format(u.FromSI(a), out) == units.Format(u.FromSI(b), out) {
+				out++
+			}
+		}
+	}
+	return out
+}
+
 // show is one entry of a node as text: the author's own figures of a literal
 // or a given, else the value in its printed unit.
 func (m *machine) show(n *check.Node, f *frame, target *check.Type, entry int) string {
+	return m.shown(n, f, target, entry, m.figures())
+}
+
+// shown is the same to so many figures where they are not the author's own.
+func (m *machine) shown(n *check.Node, f *frame, target *check.Type, entry, figures int) string {
 	if lit, ok := n.Expr.(*syntax.Number); ok && n.Op == check.Const && lit.Pieces[0].HasUnit {
 		return PlainText(printLiteral(&Step{Literal: lit}))
 	}
@@ -431,7 +460,7 @@ func (m *machine) show(n *check.Node, f *frame, target *check.Type, entry int) s
 	}
 	v := Value{Type: check.Type{Kind: n.Type.Kind, Dim: n.Type.Dim}}
 	v.set(x)
-	return PlainText(v.Printed(0, m.nodeUnit(n, f), m.figures()))
+	return PlainText(v.Printed(0, m.nodeUnit(n, f), figures))
 }
 
 // warn gives a limit's warning once for each statement that calls the helper.
