@@ -221,10 +221,16 @@ func (w *builder) marked(c *syntax.Call) []Node {
 	return args
 }
 
-// number is the value of an argument that is a single name.
+// number is the value of an argument that is a single name or a literal, a
+// name of `where` in its unit.
 func (w *builder) number(e syntax.Expr) (float64, bool) {
-	n, ok := unbracketed(e).(*syntax.Name)
-	if !ok {
+	var n *syntax.Name
+	switch e := unbracketed(e).(type) {
+	case *syntax.Number:
+		return literalValue(e)
+	case *syntax.Name:
+		n = e
+	default:
 		return 0, false
 	}
 	s := w.used(n)
@@ -235,7 +241,28 @@ func (w *builder) number(e syntax.Expr) (float64, bool) {
 	if !exists(s.Value, i) {
 		return 0, false
 	}
+	for _, item := range w.where {
+		if item.Name.ID == n.ID && item.Unit != nil {
+			return item.Unit.Unit.FromSI(s.Value.Num[i]), true
+		}
+	}
 	return s.Value.Num[i], true
+}
+
+// literalValue is a literal in coherent SI.
+func literalValue(n *syntax.Number) (float64, bool) {
+	sum := 0.0
+	for _, p := range n.Pieces {
+		r, err := p.Rat()
+		if err != nil {
+			return 0, false
+		}
+		sum += p.Unit.LiteralToSI(r)
+	}
+	if n.Neg {
+		sum = -sum
+	}
+	return sum, true
 }
 
 // governing marks a value as the one that decides.
