@@ -140,6 +140,8 @@ func TestMistakes(t *testing.T) {
 		{"s = direct_shear(P, V=P)", diag.Syntax, "V is given twice", "", "s = direct_shear(V=P, A=d^2)"},
 		{"s = direct_shear(P, d^2, n=0)", diag.OutOfRange, "the limit `n >= 1` does not hold: n is 0", "", "s = direct_shear(P, d^2, n=1)"},
 		{"s = poisson_ratio(210 GPa, 69.9999 GPa)", diag.OutOfRange, "does not hold: nu is 0.500002", "Stable isotropic", "s = poisson_ratio(210 GPa, 80 GPa)"},
+		{"s = section_rectangle(d, 0 mm)", diag.OutOfRange, "the limit `min(b, h) > 0` does not hold: min(b, h) is 0 mm", "Sizes are positive", "s = section_rectangle(d, 1 mm)"},
+		{"s = axial_elongation(P, 1 m, d^2, -1 GPa)", diag.OutOfRange, "the limit `L > 0 and A > 0 and E > 0` does not hold: E = -1 GPa", "Sizes and the modulus", "s = axial_elongation(P, 1 m, d^2, 1 GPa)"},
 		{"s = shear_strain(1 mm, 1 m)*2", diag.Syntax, "has the results gamma and gamma_small", "res.gamma", "res = shear_strain(1 mm, 1 m)\ns = res.gamma*2"},
 		{"res = shear_strain(1 mm, 1 m)\ns = res*2", diag.DimensionMismatch, "res stands for a helper with 2 results", "res.gamma", "res = shear_strain(1 mm, 1 m)\ns = res.gamma*2"},
 		{"res = shear_strain(1 mm, 1 m)\ns = res.delta", diag.UnknownName, "res has no result `delta`", "res.gamma", "res = shear_strain(1 mm, 1 m)\ns = res.gamma"},

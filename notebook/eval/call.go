@@ -402,7 +402,7 @@ func (m *machine) outside(p *check.Plan, s *syntax.Needs, g *frame, t *check.Typ
 			message += fmt.Sprintf("%s%s is %s", sign, syntax.Print(g.src, side.Expr), m.shown(side, g, t, entry, figures))
 			sign = ", "
 		}
-	} else if values := m.valuesIn(p.Check.Cond, g, t, entry); values != "" {
+	} else if values := m.valuesIn(m.failing(p.Check.Cond, g, t, entry), g, t, entry); values != "" {
 		message += ": " + values
 	}
 	out := &fault{id: diag.OutOfRange, at: s.At, message: message}
@@ -413,6 +413,19 @@ func (m *machine) outside(p *check.Plan, s *syntax.Needs, g *frame, t *check.Typ
 		out.hints = append(out.hints, "see "+s.Note.Source)
 	}
 	return out
+}
+
+// failing is the first part of a limit of several, joined by `and`, that does not hold.
+func (m *machine) failing(n *check.Node, g *frame, t *check.Type, entry int) *check.Node {
+	if n.Op != check.And {
+		return n
+	}
+	for _, part := range n.Args {
+		if holds, err := m.truth(part, g, t, entry); err == nil && !holds {
+			return m.failing(part, g, t, entry)
+		}
+	}
+	return n
 }
 
 // telling is how many figures tell the sides of a limit apart: those of the page, and as many more as it takes where
