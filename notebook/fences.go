@@ -100,6 +100,13 @@ func (r *reading) placeFences(doc ast.Node) []*syntax.Block {
 		}
 		if f.ours {
 			ours = append(ours, f)
+		} else if kind, at := syntax.Meant(string(r.src.Text[f.info.Start:f.info.End])); kind != "" {
+			r.diags = append(r.diags, diag.Diagnostic{
+				ID: diag.Syntax, Severity: diag.Warning, Source: r.src,
+				Span:    diag.Span{Start: f.info.Start + at.Start, End: f.info.Start + at.End},
+				Message: "a block's kind is written in small letters; as it stands this is code, and nothing in it is computed",
+				Hints:   []string{"did you mean `" + kind + "`?"},
+			})
 		}
 	}
 	blocks, reader := make([]*syntax.Block, len(ours)), syntax.NewReader(r.src, len(r.src.Text))

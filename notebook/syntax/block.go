@@ -35,6 +35,17 @@ func IsOurs(info string) bool {
 	return ok
 }
 
+// Meant is the kind of block that an info string names in other capitals, such
+// as Calc, with the part of the string that does so; "" where it names none.
+func Meant(info string) (kind string, at diag.Span) {
+	start, end := firstWord(info)
+	word := strings.ToLower(info[start:end])
+	if _, ok := blockKind(word); !ok || word == info[start:end] {
+		return "", diag.Span{}
+	}
+	return word, diag.Span{Start: start, End: end}
+}
+
 // Reader reads the fences of one source.
 type Reader struct {
 	src   *diag.Source

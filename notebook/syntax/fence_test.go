@@ -193,6 +193,17 @@ func TestWarningKeepsStatement(t *testing.T) {
 	}
 }
 
+func TestMeant(t *testing.T) {
+	for info, want := range map[string]string{
+		"Calc": "calc", " CALC brief": "calc", "Schedule bolts # Bolts": "schedule", "PLOT#x": "plot", "calc": "", "calcs": "", "go": "", "": "", "Calc\u212a": "",
+	} {
+		kind, at := Meant(info)
+		if kind != want || !strings.EqualFold(info[at.Start:at.End], want) {
+			t.Errorf("Meant(%q) = %q at %v", info, kind, at)
+		}
+	}
+}
+
 func TestIsOurs(t *testing.T) {
 	for info, want := range map[string]bool{
 		"calc": true, "calc brief": true, " calc": true, "helper direct_shear # x": true, "schedule bolts": true,
