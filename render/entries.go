@@ -286,7 +286,7 @@ func (c *composer) whereUnits(d *syntax.Definition, unit *syntax.UnitRef) []Phra
 	}
 	var row maths.Row
 	add := func(n *syntax.Name, u *syntax.UnitRef) {
-		if u == nil {
+		if u == nil || u.Quantity == "number" {
 			return
 		}
 		if len(row) > 0 {

@@ -2,6 +2,7 @@ package maths
 
 import (
 	"math"
+	"slices"
 	"strings"
 
 	"gusset/notebook/check"
@@ -451,8 +452,10 @@ func (w *builder) entry(t check.Type) int {
 	return out
 }
 
+// index is the row of a set that is being written out: of a set that is gone
+// through twice, within and about a reduction, that of the inner round.
 func (w *builder) index(r *check.Rows) int {
-	for _, p := range w.at {
+	for _, p := range slices.Backward(w.at) {
 		if p.rows == r {
 			return p.index
 		}

@@ -26,7 +26,11 @@ func (w *builder) reduction(c *syntax.Call) (Node, rank) {
 		name = Script{Base: name, Sub: Text{Text: rows[0].Name}}
 	}
 	if !w.values || len(rows) != 1 || rows[0].N() == 0 || c.Fun.ID == "count" {
-		return Call(name, w.side(arg.Value)), rankedAtom
+		at := w.at
+		w.at = slices.DeleteFunc(slices.Clone(at), func(p place) bool { return slices.Contains(rows, p.rows) })
+		inside := w.side(arg.Value)
+		w.at = at
+		return Call(name, inside), rankedAtom
 	}
 	n := rows[0].N()
 	governs := w.decides(c, rows[0])
@@ -100,14 +104,14 @@ func beyond(function string, v, best float64) bool {
 }
 
 // reduced is the sets of rows that a reduction takes in: the one named behind
-// over, else all those of the argument that are not being written out.
+// over, else all those of the argument. One may stand outside of the reduction
+// too, at the row being written out: x/sum(x).
 func (w *builder) reduced(a syntax.Arg) []*check.Rows {
 	var rows []*check.Rows
 	for _, r := range w.rowsOf(nil, a.Value) {
-		if w.index(r) >= 0 || a.Over != nil && !w.named(r, a.Over) {
-			continue
+		if a.Over == nil || w.named(r, a.Over) {
+			rows = append(rows, r)
 		}
-		rows = append(rows, r)
 	}
 	return rows
 }
@@ -229,7 +233,7 @@ func (w *builder) found(e *syntax.AtMark) Node {
 	}
 	for _, r := range s.Value.Type.Rows {
 		i := slices.Index(r.Marks, mark)
-		if i < 0 || w.index(r) >= 0 {
+		if i < 0 {
 			continue
 		}
 		w.at = append(w.at, place{r, i})

@@ -135,6 +135,11 @@ func TestExpressions(t *testing.T) {
 		{"a = steels.f_y at grade", "f_y_steels at grade", "f_y_steels at S355"},
 		{"a = x*(steels.f_y at grade)", "x·(f_y_steels at grade)", "2·355 MPa"},
 		{`a = steels.f_y at "S235"`, "f_y_steels at S235", ""},
+		// one set within and about a reduction: the round within is its own
+		{"a = steels.f_y/sum(steels.f_y)", "f_y_steels/Σ_steels(f_y_steels)", "355 MPa/(235 MPa + 355 MPa)"},
+		{"a = steels.f_y/max(steels.f_y)", "f_y_steels/max(f_y_steels)", "355 MPa/max(235 MPa, 355 MPa)"},
+		{"a = count(steels.f_y)*steels.f_y", "count(f_y_steels)·f_y_steels", "count(f_y_steels)·355 MPa"},
+		{`a = steels.f_y - (steels.f_y at "S235")`, "f_y_steels − (f_y_steels at S235)", "355 MPa − 235 MPa"},
 		// choices and empirical rules
 		{"a = 0.85 if t <= 25 mm\n  = x if t <= 40 mm and not x > 3 or n == 1\n  = 0.65 otherwise",
 			"{0.85 if t ≤ 25 mm ←; x if t ≤ 40 mm and not x > 3 or n = 1; 0.65 otherwise}", ""},
