@@ -16,6 +16,27 @@ func (w *writer) entries(list []render.Entry) {
 	}
 }
 
+// The sizes of formulas in points, as the style sheet has them.
+const (
+	entrySize   = 11.5
+	limitSize   = 10.0
+	summarySize = 10.5
+	phraseSize  = 9.5
+)
+
+// column is the width of a formula's column in ems: that of the calculation
+// column, as wide as paper and screen leave it at most, less what entries are
+// set in.
+func (w *writer) column(indent int, size float64) float64 {
+	const mm = 72 / 25.4
+	width := 118.0
+	if w.page.Title.Paper == "Letter" {
+		width = 123.9
+	}
+	width -= w.inset + [...]float64{0, 5, 9}[min(indent, 2)]
+	return max(width, 30) * mm / size
+}
+
 var kinds = [...]string{
 	render.Line: "line", render.Formula: "formula", render.Check: "check", render.NoteLine: "said", render.Gap: "gap",
 	render.Definition: "formula", render.HelperHead: "helper", render.Limit: "limit", render.Tabular: "tabular", render.DrawingOf: "drawing",
@@ -27,13 +48,17 @@ func (w *writer) entry(e *render.Entry) {
 	w.note(e.Note)
 	if e.Formula.Left != nil || len(e.Formula.Steps) > 0 {
 		w.raw(`<div class="eq">`)
-		w.b = maths.AppendChain(w.b, e.Formula)
+		size := entrySize
+		if e.Kind == render.Limit || e.Kind == render.HelperHead {
+			size = limitSize
+		}
+		w.b = maths.AppendChain(w.b, e.Formula, w.column(e.Indent, size))
 		w.raw("</div>")
 	}
 	if len(e.Below)+len(e.Trials)+len(e.Tables) > 0 || e.Drawing != nil {
 		w.raw(`<div class="more">`)
 		for i := range e.Below {
-			w.phrase(&e.Below[i])
+			w.phrase(&e.Below[i], e.Indent)
 		}
 		w.trials(e.Trials)
 		if len(e.Tables) > 1 {
@@ -165,20 +190,20 @@ func (w *writer) verdict(v *render.Verdict) {
 }
 
 // phrase writes a small line below a formula.
-func (w *writer) phrase(p *render.Phrase) {
+func (w *writer) phrase(p *render.Phrase, indent int) {
 	w.raw(`<div class="below">`)
-	w.phraseText(p)
+	w.phraseText(p, indent)
 	w.raw("</div>")
 }
 
-func (w *writer) phraseText(p *render.Phrase) {
+func (w *writer) phraseText(p *render.Phrase, indent int) {
 	if p.Before != "" {
 		w.raw("<span>")
 		w.text(p.Before)
 		w.raw("</span>")
 	}
 	if p.Formula.Left != nil || len(p.Formula.Steps) > 0 {
-		w.b = maths.AppendChain(w.b, p.Formula)
+		w.b = maths.AppendChain(w.b, p.Formula, w.column(indent, phraseSize))
 	}
 	if p.After != "" {
 		w.raw("<span>")

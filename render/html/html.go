@@ -65,8 +65,9 @@ type writer struct {
 	page   *render.Page
 	sheet  *notebook.Sheet
 	source []byte
-	mono   bool // the page has code
-	strong bool // the page has text that is both bold and italic
+	inset  float64 // millimetres that quotes and lists set the present block in
+	mono   bool    // the page has code
+	strong bool    // the page has text that is both bold and italic
 }
 
 // head writes the head as far as its styles.

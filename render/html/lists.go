@@ -60,12 +60,12 @@ func (w *writer) summary(list []render.Summary) {
 		w.listRef("check", s.Anchor, "("+s.Number+")")
 		w.note(s.Note)
 		w.raw(`<div class="eq">`)
-		w.b = maths.AppendChain(w.b, s.Formula)
+		w.b = maths.AppendChain(w.b, s.Formula, w.column(0, summarySize))
 		w.raw("</div>")
 		if len(s.Reason) > 0 {
 			w.raw(`<div class="more">`)
 			for j := range s.Reason {
-				w.phrase(&s.Reason[j])
+				w.phrase(&s.Reason[j], 0)
 			}
 			w.raw("</div>")
 		}

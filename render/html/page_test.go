@@ -90,5 +90,6 @@ func TestChromium(t *testing.T) {
 
 var overPaper = []struct{ what, script string }{
 	{"the page runs over its side", faults[5].script},
+	{"a result does not stand beside the last line of its formula", `for(const r of document.querySelectorAll('.formula:has(>.out>b)')){const m=[...r.querySelectorAll('.two>span>:last-child>math')].pop();if(!m)continue;const o=r.querySelector('.out>b').getBoundingClientRect(),l=m.getBoundingClientRect();if(o.bottom<l.top||o.top>l.bottom)out.push(r.textContent.slice(0,200))}`},
 	{"a formula runs over the side of its column", `for(const e of document.querySelectorAll('.row math,.row td')){const c=e.closest('.row>*').getBoundingClientRect(),r=e.getBoundingClientRect();if(r.right>c.right+1)out.push(r.right+' > '+c.right+': '+e.textContent.slice(0,200)+e.outerHTML.slice(0,300))}`},
 }

@@ -9,6 +9,7 @@ import (
 
 	"gusset/notebook"
 	"gusset/render"
+	"gusset/render/maths"
 )
 
 // document writes the prose and the blocks within it, one row of the three
@@ -43,6 +44,9 @@ func (w *writer) children(n ast.Node) {
 func (w *writer) block(n ast.Node) {
 	switch n := n.(type) {
 	case *ast.Paragraph:
+		if w.figure(n) {
+			return
+		}
 		w.raw("<p>")
 		w.children(n)
 		w.raw("</p>")
@@ -69,7 +73,9 @@ func (w *writer) block(n ast.Node) {
 		w.markdownTable(n)
 	case *notebook.FenceNode:
 		w.raw(`<div class="nested">`)
+		w.inset = w.insetOf(n)
 		w.entries(w.page.Blocks[n.Index])
+		w.inset = 0
 		w.raw("</div>")
 	case *ast.HTMLBlock:
 		w.raw("<p>")
@@ -81,6 +87,25 @@ func (w *writer) block(n ast.Node) {
 	default:
 		w.children(n)
 	}
+}
+
+// insetOf is how far a block is set in by the quotes and lists about it, in
+// millimetres.
+func (w *writer) insetOf(n ast.Node) float64 {
+	inset := 0.0
+	for p := n.Parent(); p != nil; p = p.Parent() {
+		switch p := p.(type) {
+		case *ast.List:
+			inset += 6
+		case *ast.Blockquote:
+			if w.sheet.RemarkOf(p) != nil {
+				inset += 31
+			} else {
+				inset += 4.5
+			}
+		}
+	}
+	return inset
 }
 
 func (w *writer) heading(n *ast.Heading) {
@@ -361,7 +386,32 @@ func (w *writer) autoLink(n *ast.AutoLink) {
 	w.raw("</a>")
 }
 
-// picture writes an image; alone in its paragraph its title is its caption.
+// figure writes a paragraph that is nothing but an image: its words are the
+// caption.
+func (w *writer) figure(n *ast.Paragraph) bool {
+	img, ok := n.FirstChild().(*ast.Image)
+	if !ok || n.FirstChild() != n.LastChild() || w.sheet.Images[string(img.Destination)] == nil {
+		return false
+	}
+	words, title := w.sheet.PlainText(img), notebook.Unescape(img.Title)
+	w.raw("<figure>")
+	w.image(string(img.Destination), words, "", "")
+	switch {
+	case words == "":
+		words = title
+	case title != "" && title != words:
+		words += " – " + title
+	}
+	if strings.TrimSpace(words) != "" {
+		w.raw("<figcaption>")
+		w.text(measured(words))
+		w.raw("</figcaption>")
+	}
+	w.raw("</figure>")
+	return true
+}
+
+// picture writes an image in a line of text.
 func (w *writer) picture(n *ast.Image) {
 	path := string(n.Destination)
 	alternative := w.sheet.PlainText(n)
@@ -369,19 +419,18 @@ func (w *writer) picture(n *ast.Image) {
 		w.text(alternative)
 		return
 	}
-	w.image(path, alternative, "")
-	if len(n.Title) > 0 {
-		w.raw(`<span class="caption">`)
-		w.text(notebook.Unescape(n.Title))
-		w.raw("</span>")
-	}
+	w.image(path, alternative, notebook.Unescape(n.Title), "")
 }
 
 // named writes a value named in the text.
 func (w *writer) named(n *notebook.ValueNode) {
 	for _, p := range w.page.Values[n.Index] {
 		w.text(p.Words)
-		if p.Value != nil {
+		switch p.Value.(type) {
+		case nil:
+		case maths.Text:
+			w.value(p.Value)
+		default:
 			w.raw(`<span class="nb">`)
 			w.value(p.Value)
 			w.raw("</span>")

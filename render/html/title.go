@@ -13,7 +13,7 @@ func (w *writer) titleBlock() {
 	if t.Firm != "" || w.sheet.Images[t.Logo] != nil {
 		w.raw(`<div class="firm">`)
 		if img := w.sheet.Images[t.Logo]; img != nil {
-			w.image(t.Logo, t.Firm, "logo")
+			w.image(t.Logo, t.Firm, "", "logo")
 		}
 		if t.Firm != "" {
 			w.raw("<span>")
@@ -50,7 +50,7 @@ func (w *writer) titleBlock() {
 }
 
 // image writes an image of the root with its data inside.
-func (w *writer) image(path, alternative, class string) {
+func (w *writer) image(path, alternative, title, class string) {
 	img := w.sheet.Images[path]
 	w.raw(`<img`)
 	if class != "" {
@@ -64,6 +64,10 @@ func (w *writer) image(path, alternative, class string) {
 	w.int(img.Height)
 	w.raw(`" alt="`)
 	w.text(alternative)
+	if title != "" {
+		w.raw(`" title="`)
+		w.text(title)
+	}
 	w.raw(`" src="data:image/`)
 	w.raw(img.Format)
 	w.raw(";base64,")

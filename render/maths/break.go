@@ -2,6 +2,7 @@ package maths
 
 import (
 	"slices"
+	"strings"
 	"sync"
 
 	"gusset/render/fonts"
@@ -414,7 +415,8 @@ func grouped(n Node) Node {
 	return Paren(n)
 }
 
-// cut sets the text of a piece character by character.
+// cut sets the text of a piece line by line. A line ends before a blank where a
+// text has one, else behind whatever character is the last to fit.
 func (b *breaker) cut(p piece, at float64) {
 	face := b.text
 	if _, ok := p.node.(Symbol); ok {
@@ -424,12 +426,18 @@ func (b *breaker) cut(p piece, at float64) {
 	from := 0
 	for from < len(text) {
 		room := b.room(Ord)
-		to, width := from, 0.0
+		to, width, blank := from, 0.0, -1
 		for i, r := range text[from:] {
 			char := string(r)
 			w := b.run(char, face, b.st, "").width
 			if width+w > room && from+i > from {
+				if blank > from {
+					to = blank
+				}
 				break
+			}
+			if r == ' ' {
+				blank = from + i
 			}
 			width += w
 			to = from + i + len(char)
@@ -439,6 +447,7 @@ func (b *breaker) cut(p piece, at float64) {
 		}
 		b.place(piece{part: b.run(text[from:to], face, b.st, ""), left: Ord, right: Ord})
 		if from = to; from < len(text) {
+			from += len(text[from:]) - len(strings.TrimLeft(text[from:], " "))
 			b.newLine(at)
 		}
 	}

@@ -25,7 +25,7 @@
 //			}},
 //		},
 //	}
-//	html = maths.AppendChain(html, c)
+//	html = maths.AppendChain(html, c, 29) // in a column of 29 ems
 //	text = maths.AppendPlainChain(text, c)
 //	lines := maths.Break(c, 11, 340) // at 11 pt, in a column of 340 pt
 //

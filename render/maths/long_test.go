@@ -136,6 +136,22 @@ func TestLongFormulasKeepToTheColumn(t *testing.T) {
 	}
 }
 
+// A text of many words goes on to the next line at a blank.
+func TestLongTextsBreakAtBlanks(t *testing.T) {
+	words := strings.Repeat("plates from the northern stock ", 6) + "end"
+	var lines []string
+	for _, b := range Break(Chain{Left: sym("grade"), Steps: []Step{eq(Text{Text: words})}}, pt, column) {
+		line := ""
+		for _, it := range b.Items {
+			line += it.Text
+		}
+		lines = append(lines, strings.TrimPrefix(line, "grade="))
+	}
+	if got := strings.Join(lines, " "); len(lines) < 2 || got != words {
+		t.Errorf("got %q", lines)
+	}
+}
+
 // Each rule of a fraction has something above it and something below it on its
 // own line; that of a root has its sign at its left end.
 func TestLongFormulasSplitNoFraction(t *testing.T) {

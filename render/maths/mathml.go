@@ -1,6 +1,7 @@
 package maths
 
 import (
+	"slices"
 	"strconv"
 )
 
@@ -10,7 +11,8 @@ import (
 // Letters and figures come from the text face, everything that grows from the
 // math face. A chain is a row of boxes that wraps before relations, and a box
 // too long for the column wraps before its operators, hung under its first
-// right side. The tip of a link stands at the foot of the window, where no
+// right side. Two right sides that surely do not stand on one line have a line
+// each, so that the chain's last baseline is that of its last line. The tip of a link stands at the foot of the window, where no
 // scrolling formula can cut it off.
 const CSS = `math{font-family:"Plex Math","Plex Serif",serif}
 math :is(mi,mn,mtext){font-family:"Plex Serif",serif}
@@ -27,7 +29,14 @@ math mtd:first-child{padding-left:.25em}
 .chain>span{flex:1}
 .chain>span>span{padding-left:1.5em}
 .chain>span>span>:first-child{margin-left:-1.5em}
+.chain .w{min-width:0;overflow-wrap:anywhere}
+.chain .w:first-child{margin-left:0;text-indent:-1.5em}
+.chain .w a{color:inherit}
 .chain .b{flex-basis:100%}
+.chain.two{display:grid;grid-template-columns:auto minmax(0,1fr);row-gap:.35em}
+.two>span{display:contents}
+.two>span>span{grid-column:2}
+.two>span>span:last-child{align-self:last baseline}
 @media print,screen and (min-width:761px){.s9{font-size:.9em}.s8{font-size:.8em}.s7{font-size:.7em}}
 @media screen{.chain{overflow-x:auto;overflow-y:hidden}
 [data-tip]:is(:hover,:focus)::after{content:attr(data-tip);position:fixed;left:1em;bottom:1em;max-width:calc(100vw - 2em);padding:.4em .8em;background:#16202c;color:#fff;font:normal 14px/1.4 "Plex Serif",serif;white-space:pre-line;border-radius:3px;z-index:9}}
@@ -43,12 +52,17 @@ func AppendMathML(dst []byte, n Node) []byte {
 }
 
 // AppendChain appends a formula on a line of its own, made of parts between
-// which a browser can break it.
-func AppendChain(dst []byte, c Chain) []byte {
-	w := markup{b: dst, room: columnWidth}
+// which a browser can break it. Its column is that many ems wide.
+func AppendChain(dst []byte, c Chain, column float64) []byte {
+	w := markup{b: dst, room: column - partHang}
 	var room [16]Node
-	w.raw(`<span class="chain">`)
-	if leads(c.Left) {
+	led := leads(c.Left)
+	if led && stacked(c, column) {
+		w.raw(`<span class="chain two">`)
+	} else {
+		w.raw(`<span class="chain">`)
+	}
+	if led {
 		w.math(atoms(room[:0], c.Left), Open)
 		w.room -= leftWidth * float64(width(c.Left))
 		w.raw("<span>")
@@ -64,6 +78,24 @@ func AppendChain(dst []byte, c Chain) []byte {
 	}
 	w.raw("</span></span>")
 	return w.b
+}
+
+// stacked reports whether the second of two right sides stands below the first
+// for sure, so that the page may place what belongs to the last line: a browser
+// that has wrapped a line itself does not tell where its last one stands.
+func stacked(c Chain, column float64) bool {
+	if len(c.Steps) != 2 {
+		return false
+	}
+	if endsInChoice(c.Steps[0].Right) {
+		return true
+	}
+	var room [16]Node
+	list := atoms(room[:0], c.Left)
+	for _, s := range c.Steps {
+		list = atoms(append(list, relation(s.Sign)), s.Right)
+	}
+	return ems(list) > column && measure(list) > column
 }
 
 // leads reports whether a left side is short enough to set the rest beside it.
@@ -94,6 +126,10 @@ func (w *markup) text(s string) { w.b = AppendText(w.b, s) }
 // math writes atoms as one formula, smaller where they are longer than their
 // room.
 func (w *markup) math(list []Node, prev Class) {
+	if slices.ContainsFunc(list, isLongText) {
+		w.wrapped(list, prev)
+		return
+	}
 	w.raw(`<math displaystyle="true"`)
 	switch k := w.shrink(list); {
 	case k < 0.8:
@@ -106,6 +142,41 @@ func (w *markup) math(list []Node, prev Class) {
 	w.raw(">")
 	w.list(list, prev, true)
 	w.raw("</math>")
+}
+
+// isLongText reports whether a node is a text of many words, which has to wrap
+// as prose does; within a formula it could not.
+func isLongText(n Node) bool {
+	t, ok := n.(Text)
+	return ok && len(t.Text) > shortStep
+}
+
+// wrapped writes atoms as a line of prose with formulas about its long texts.
+func (w *markup) wrapped(list []Node, prev Class) {
+	w.raw(`<span class="w">`)
+	for len(list) > 0 {
+		if t, ok := list[0].(Text); ok && isLongText(t) {
+			w.anchor(t.Ref)
+			w.text(t.Text)
+			if t.Ref.leads() {
+				w.raw("</a>")
+			}
+			list = list[1:]
+			prev = Ord
+			continue
+		}
+		n := slices.IndexFunc(list, isLongText)
+		if n < 0 {
+			n = len(list)
+		}
+		w.math(list[:n], prev)
+		_, prev = list[n-1].edges()
+		list = list[n:]
+		if prev == Rel {
+			w.raw(" ")
+		}
+	}
+	w.raw("</span>")
 }
 
 // row writes a node as children of an element that groups by itself.
@@ -299,10 +370,20 @@ func (w *markup) tag(open string, governs bool, text, end string) {
 // token may hold HTML, and that a formula again. The token is no mtext, which
 // counts as space: an operator between two of them would lose its own.
 func (w *markup) link(r Ref) {
-	if r.Target == "" && r.Tip == "" {
+	if !r.leads() {
 		return
 	}
-	w.raw(`<mn class="l"><a`)
+	w.raw(`<mn class="l">`)
+	w.anchor(r)
+	w.raw("<math>")
+}
+
+// anchor writes the first tag of a link, if there is one.
+func (w *markup) anchor(r Ref) {
+	if !r.leads() {
+		return
+	}
+	w.raw("<a")
 	if r.Target != "" {
 		w.raw(` href="#`)
 		w.text(r.Target)
@@ -315,11 +396,11 @@ func (w *markup) link(r Ref) {
 		w.text(r.Tip)
 		w.raw(`"`)
 	}
-	w.raw("><math>")
+	w.raw(">")
 }
 
 func (w *markup) unlink(r Ref) {
-	if r.Target == "" && r.Tip == "" {
+	if !r.leads() {
 		return
 	}
 	w.raw("</math></a></mn>")

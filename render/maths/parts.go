@@ -16,11 +16,10 @@ import (
 const (
 	shortStep = 24
 	longPart  = 44
-	// columnWidth is the room of a part in the calculation column on paper, in
-	// ems: 109 mm at 11.5 points, less the hang of a continuation. leftWidth is
-	// what a character of the left side takes of it.
-	columnWidth = 25.5
-	leftWidth   = 0.55
+	// partHang is what a continuation is set in, in ems, and leftWidth what a
+	// character of the left side takes of the column.
+	partHang  = 1.5
+	leftWidth = 0.55
 )
 
 // shrink is how small atoms have to be set for their room, at most 1.
@@ -28,8 +27,13 @@ func (w *markup) shrink(list []Node) float64 {
 	if ems(list) <= w.room {
 		return 1
 	}
+	return min(1, w.room/measure(list))
+}
+
+// measure is the width of atoms in ems.
+func measure(list []Node) float64 {
 	s := setter{size: 1, text: fonts.Serif, metrics: fonts.MathMetrics()}
-	return min(1, w.room/s.row(Row(slices.Clone(list)), style{display: true}).width)
+	return s.row(Row(slices.Clone(list)), style{display: true}).width
 }
 
 // step writes one box of a chain. One after a choice has a line of its own.

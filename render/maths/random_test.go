@@ -94,11 +94,11 @@ func TestAnyTree(t *testing.T) {
 				}
 			}
 		}
-		html := string(AppendChain(nil, c))
+		html := string(AppendChain(nil, c, columnEms))
 		if err := wellFormed(html); err != nil {
 			t.Fatalf("%v: %s", err, html)
 		}
-		if again := string(AppendChain(nil, c)); again != html {
+		if again := string(AppendChain(nil, c, columnEms)); again != html {
 			t.Fatalf("got %s, then %s", html, again)
 		}
 		AppendPlainChain(nil, c)
@@ -139,7 +139,7 @@ func TestDeepTrees(t *testing.T) {
 		for range depth {
 			n = wrap(n)
 		}
-		lines := Break(Chain{sym("y"), []Step{eq(n)}}, pt, column)
+		lines := Break(Chain{sym("y"), []Step{eq(n)}}, pt, columnEms)
 		if len(lines) == 0 || len(AppendMathML(nil, n)) < depth || len(AppendPlain(nil, n)) < depth {
 			t.Errorf("%s: %d lines", name, len(lines))
 		}

@@ -32,6 +32,9 @@ type Ref struct {
 	Governs bool
 }
 
+// leads reports whether a reference is a link on the page.
+func (r Ref) leads() bool { return r.Target != "" || r.Tip != "" }
+
 // Row is a sequence of nodes side by side. Rows in rows are allowed and are
 // spaced as if they were one.
 type Row []Node

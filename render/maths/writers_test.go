@@ -9,6 +9,9 @@ import (
 
 var update = flag.Bool("update", false, "write the golden files anew")
 
+// columnEms is the width of the tests' page, in ems.
+const columnEms = 27
+
 func TestPlain(t *testing.T) {
 	for _, c := range writerCases {
 		if got := string(AppendPlainChain(nil, c.chain)); got != c.plain {
@@ -45,7 +48,7 @@ func TestMathMLGolden(t *testing.T) {
 	for _, c := range writerCases {
 		b = append(b, c.name...)
 		b = append(b, '\n')
-		b = AppendChain(b, c.chain)
+		b = AppendChain(b, c.chain, columnEms)
 		b = append(b, '\n')
 	}
 	b = append(b, "inline\n"...)
@@ -53,11 +56,34 @@ func TestMathMLGolden(t *testing.T) {
 	golden(t, "testdata/mathml.golden", string(b)+"\n")
 }
 
+// A text of many words is prose to a browser, which breaks no line in a formula.
+func TestLongTextWrapsInMathML(t *testing.T) {
+	words := "plates from the northern stock"
+	value := Text{Text: words, Ref: Ref{Target: "grade"}}
+	html := string(AppendChain(nil, Chain{Left: sym("grade"), Steps: []Step{eq(value)}}, columnEms))
+	want := `<span class="w"><math displaystyle="true"><mo form="infix">=</mo></math> <a href="#grade">` + words + "</a></span>"
+	if !strings.Contains(html, want) {
+		t.Errorf("got %s\nwant %s", html, want)
+	}
+}
+
+// Two right sides have a line each where they surely do not fit side by side.
+func TestRightSidesStack(t *testing.T) {
+	for _, c := range []struct {
+		columns float64
+		stacked bool
+	}{{columnEms, false}, {8, true}} {
+		if html := string(AppendChain(nil, shear, c.columns)); strings.Contains(html, `class="chain two"`) != c.stacked {
+			t.Errorf("%g ems: %s", c.columns, html)
+		}
+	}
+}
+
 func BenchmarkMathML(b *testing.B) {
 	b.ReportAllocs()
 	var dst []byte
 	for b.Loop() {
-		dst = AppendChain(dst[:0], shear)
+		dst = AppendChain(dst[:0], shear, columnEms)
 	}
 }
 
