@@ -106,4 +106,11 @@ func TestUnreadable(t *testing.T) {
 	if status != statusMisuse || !strings.Contains(out, "gusset: secret.md: it may not be read") {
 		t.Errorf("status %d: %s", status, out)
 	}
+	locked := filepath.Join(dir, "locked")
+	if err := os.Mkdir(locked, 0); err != nil {
+		t.Fatal(err)
+	}
+	if out, status = gussetIn(t, dir, "print", "locked"); status != statusMisuse || out != "gusset: locked: it may not be read\n" {
+		t.Errorf("status %d: %s", status, out)
+	}
 }

@@ -45,6 +45,9 @@ type finder struct {
 }
 
 func (f *finder) problem(path string, err error) {
+	if errors.Is(err, fs.ErrPermission) {
+		err = errors.New("it may not be read")
+	}
 	f.problems = append(f.problems, fmt.Errorf("%s: %w", path, cause(err)))
 }
 
@@ -64,7 +67,7 @@ func (f *finder) add(file string) {
 }
 
 func (f *finder) walk(folder string) {
-	any := false
+	any, told := false, len(f.problems)
 	folder = filepath.Clean(folder)
 	through := folder + string(filepath.Separator) // through the link that it may be
 	_ = filepath.WalkDir(through, func(path string, entry fs.DirEntry, err error) error {
@@ -89,7 +92,7 @@ func (f *finder) walk(folder string) {
 		}
 		return nil
 	})
-	if !any {
+	if !any && len(f.problems) == told {
 		f.problems = append(f.problems, fmt.Errorf("%s: no calc files in this folder\na calc file is Markdown whose front matter has the key `calc`", folder))
 	}
 }

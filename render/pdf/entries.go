@@ -117,6 +117,7 @@ func (r *row) formula(c maths.Chain, size float64, tallest float64) {
 		return
 	}
 	lines := maths.Break(c, size, r.width)
+	above := 0.0
 	for i := range lines {
 		b := mathsBox(&lines[i], inkColour)
 		if b.ascent+b.descent > tallest {
@@ -126,21 +127,14 @@ func (r *row) formula(c maths.Chain, size float64, tallest float64) {
 		s := slab{height: ascent + descent, baseline: ascent}
 		s.ink.add(&b.ink, r.x, ascent)
 		if i > 0 {
-			r.space(lineGap)
+			// Fractions need more to stay clear of each other than text does.
+			tall := math.Max(0, above+ascent-1.2*size)
+			r.space(lineGap + math.Min(0.3*tall, lineGap))
 		}
+		above = descent
 		r.push(s)
 		r.output = len(r.slabs) - 1
 	}
-}
-
-// scaled is a formula's box set smaller.
-func (b *box) scaled(k float64) *box {
-	out := &box{width: b.width * k, ascent: b.ascent * k, descent: b.descent * k}
-	for _, m := range b.ink.texts {
-		m.scale *= k
-		out.ink.texts = append(out.ink.texts, m)
-	}
-	return out
 }
 
 // formulaEntry lays out a formula, a check or a definition: the note above,

@@ -176,17 +176,18 @@ func stack(parts []slab) slab {
 // widths shares the width of a column of text among the columns of a table:
 // each gets what its widest cell needs where there is room for all; else each
 // gets its widest word, and the rest is shared by what they still want. Where
-// the words do not fit either, the columns get narrower alike and words are cut.
+// the words do not fit either, the widest of them are cut, but formulas only
+// where there is no other way.
 func (g *grid) widths(total float64) (widths []float64, gap float64, fits bool) {
 	n := len(g.head.cells)
 	for _, r := range g.rows {
 		n = max(n, len(r.cells))
 	}
-	natural, least := make([]float64, n), make([]float64, n)
+	natural, least, solid := make([]float64, n), make([]float64, n), make([]float64, n)
 	measure := func(r *gridRow) {
 		for i, c := range r.cells {
 			a, b := c.p.natural()
-			natural[i], least[i] = math.Max(natural[i], a), math.Max(least[i], b)
+			natural[i], least[i], solid[i] = math.Max(natural[i], a), math.Max(least[i], b), math.Max(solid[i], c.p.solid())
 		}
 	}
 	measure(&g.head)
@@ -195,15 +196,26 @@ func (g *grid) widths(total float64) (widths []float64, gap float64, fits bool) 
 	}
 	gap = math.Min(columnGap, 0.3*total/float64(n))
 	total -= gap * float64(n-1)
+	if n > 1 { // one endless word does not starve the other columns
+		for i := range least {
+			least[i], solid[i] = math.Min(least[i], total/2), math.Min(solid[i], total/2)
+		}
+	}
 	wants, needs := sum(natural), sum(least)
 	out := make([]float64, n)
-	for i := range out {
-		switch {
-		case wants <= total:
+	switch {
+	case wants <= total:
+		for i := range out {
 			out[i] = natural[i] + 0.01
-		case needs < total:
+		}
+	case needs < total:
+		for i := range out {
 			out[i] = least[i] + (total-needs)*(natural[i]-least[i])/(wants-needs)
-		default:
+		}
+	case sum(solid) < total:
+		level(out, solid, least, total)
+	default:
+		for i := range out {
 			out[i] = math.Max(total*least[i]/needs, 6)
 		}
 	}
@@ -211,6 +223,26 @@ func (g *grid) widths(total float64) (widths []float64, gap float64, fits bool) 
 		out[g.wide-1] += spare
 	}
 	return out, gap, needs <= total
+}
+
+// level gives each column what it needs up to one width for all, and what is
+// solid in any case, so that they fill the total.
+func level(out, solid, least []float64, total float64) {
+	fill := func(most float64) float64 {
+		for i := range out {
+			out[i] = math.Max(solid[i], math.Min(least[i], most))
+		}
+		return sum(out)
+	}
+	low, high := 0.0, total
+	for range 40 {
+		if most := (low + high) / 2; fill(most) > total {
+			high = most
+		} else {
+			low = most
+		}
+	}
+	fill(low)
 }
 
 func sum(v []float64) float64 {

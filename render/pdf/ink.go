@@ -103,3 +103,19 @@ type box struct {
 	width, ascent, descent float64
 	ink                    ink // from the left end of the baseline
 }
+
+// scaled is a box set smaller.
+func (b *box) scaled(k float64) *box {
+	out := &box{width: b.width * k, ascent: b.ascent * k, descent: b.descent * k}
+	for _, f := range b.ink.fills {
+		out.ink.fill(f.x*k, f.y*k, f.w*k, f.h*k, f.colour)
+	}
+	for _, p := range b.ink.pictures {
+		out.ink.pictures = append(out.ink.pictures, picture{p.x * k, p.y * k, p.w * k, p.h * k, p.image})
+	}
+	for _, t := range b.ink.texts {
+		t.x, t.y, t.size, t.tracked, t.scale = t.x*k, t.y*k, t.size*k, t.tracked*k, t.scale*k
+		out.ink.texts = append(out.ink.texts, t)
+	}
+	return out
+}

@@ -219,6 +219,23 @@ func (p *paragraph) natural() (natural, least float64) {
 	return natural, least
 }
 
+// solid is the width of the widest word that shall not be cut: one with a
+// formula in it, or a number, which would read as two.
+func (p *paragraph) solid() float64 {
+	widest := 0.0
+	for _, w := range p.words {
+		if w.width <= widest {
+			continue
+		}
+		for _, c := range p.pieces[w.from:w.to] {
+			if c.box != nil || strings.Trim(c.text, "0123456789.,+-−") == "" {
+				widest = w.width
+			}
+		}
+	}
+	return widest
+}
+
 // fitted returns the paragraph with the words that are wider than a line cut
 // between characters, and itself where there are none.
 func (p *paragraph) fitted(width float64) *paragraph {
@@ -251,6 +268,10 @@ func (p *paragraph) cut(pieces []piece, width float64) {
 	used := 0.0
 	for _, c := range pieces {
 		if c.box != nil {
+			if c.width > width { // a formula has no place to be cut
+				c.box = c.box.scaled(width / c.width)
+				c.width = width
+			}
 			if used > 0 && used+c.width > width {
 				p.open, used = false, 0
 			}
