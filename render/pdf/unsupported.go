@@ -54,22 +54,56 @@ func Unsupported(p *render.Page) []diag.Diagnostic {
 	return c.found
 }
 
-// codes gathers the characters that are shown as codes, each once.
+// codes gathers the characters that are shown as codes, each once. Those of one
+// word or phrase are one warning.
 type codes struct {
 	seen  map[rune]bool
+	last  []rune // those that the last warning names
 	found []diag.Diagnostic
 }
 
 func (c *codes) report(r rune, src *diag.Source, at diag.Span) {
-	if r < utf8.RuneSelf || c.seen[r] || printable(r) {
+	if r < utf8.RuneSelf || printable(r) {
 		return
 	}
+	known := c.seen[r]
 	c.seen[r] = true
+	if n := len(c.found); n > 0 && c.found[n-1].Source == src {
+		if d := &c.found[n-1]; at.Start > d.Span.Start && at.Start <= d.Span.End+1 && src.LineAt(at.Start) == src.LineAt(d.Span.Start) {
+			d.Span.End = at.End
+			if !known {
+				c.last = append(c.last, r)
+				d.Message = noFace(c.last)
+			}
+			return
+		}
+	}
+	if known {
+		return
+	}
+	c.last = []rune{r}
 	c.found = append(c.found, diag.Diagnostic{
 		Severity: diag.Warning, ID: diag.UnsupportedCharacter, Source: src, Span: at,
-		Message: fmt.Sprintf("no face has the character %s; a PDF shows its code", codeText(r)),
+		Message: noFace(c.last),
 		Hints:   []string{"write it in words"},
 	})
+}
+
+// noFace says which characters have no face, by the codes of the first ones.
+func noFace(list []rune) string {
+	const most = 4
+	if len(list) == 1 {
+		return fmt.Sprintf("no face has the character %s; a PDF shows its code", codeText(list[0]))
+	}
+	var names []string
+	for _, r := range list[:min(most, len(list))] {
+		names = append(names, codeText(r))
+	}
+	end := ""
+	if len(list) > most {
+		end = fmt.Sprintf(" and %d more", len(list)-most)
+	}
+	return fmt.Sprintf("no face has the characters %s%s; a PDF shows their codes", strings.Join(names, ", "), end)
 }
 
 // text reports a text that comes from another file, at the place that asks for it.

@@ -96,7 +96,7 @@ func TestLetter(t *testing.T) {
 }
 
 func TestUnsupported(t *testing.T) {
-	p := pageOf(t, front+"\nalpha 😀 beta 😀 𝑥\n\n```calc\n// never printed: 🚧\nP = 3 kN # pull 梁 [s]\n```\n", nil)
+	p := pageOf(t, front+"\nalpha 😀 beta 😀 𝑥\n\nمرحبا بالعالم, مرحبا\n\n```calc\n// never printed: 🚧\nP = 3 kN # pull 梁 [s]\n```\n", nil)
 	var got []string
 	for _, d := range Unsupported(p) {
 		line, column := d.Source.Position(d.Span.Start)
@@ -105,7 +105,8 @@ func TestUnsupported(t *testing.T) {
 			t.Errorf("%v has no place", d)
 		}
 	}
-	want := "unsupported-character warning no face has the character U+1F600|unsupported-character warning no face has the character U+6881"
+	want := "unsupported-character warning no face has the character U+1F600|" +
+		"unsupported-character warning no face has the characters U+0645, U+0631, U+062D, U+0628 and 3 more|unsupported-character warning no face has the character U+6881"
 	if strings.Join(got, "|") != want {
 		t.Errorf("got %q", got)
 	}
