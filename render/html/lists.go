@@ -92,11 +92,16 @@ func (w *writer) unsourced(list []render.Unsourced) {
 		w.raw(`<div class="eq"><a href="#`)
 		w.text(u.Anchor)
 		w.raw(`">`)
-		row := maths.Row{u.Symbol}
-		if u.Value != nil {
-			row = append(row, maths.Relation("="), u.Value)
+		switch value := u.Value.(type) {
+		case nil:
+			w.symbol(u.Symbol)
+		case maths.Text: // in the line, where it may wrap
+			w.symbol(u.Symbol)
+			w.raw(" = ")
+			w.text(value.Text)
+		default:
+			w.symbol(maths.Row{u.Symbol, maths.Relation("="), value})
 		}
-		w.symbol(row)
 		w.raw("</a></div></div>\n")
 	}
 }
