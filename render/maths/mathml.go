@@ -95,7 +95,10 @@ func stacked(c Chain, column float64) bool {
 	for _, s := range c.Steps {
 		list = atoms(append(list, relation(s.Sign)), s.Right)
 	}
-	return ems(list) > column && measure(list) > column
+	// Formulas are 0.36 to 0.62 ems a character wide, most of them about 0.42:
+	// what that decides needs no measuring.
+	n := float64(length(list))
+	return 0.62*n > column && (0.36*n > column || ems(list) > column && measure(list) > column)
 }
 
 // leads reports whether a left side is short enough to set the rest beside it.

@@ -32,8 +32,12 @@ func (w *markup) shrink(list []Node) float64 {
 
 // measure is the width of atoms in ems.
 func measure(list []Node) float64 {
-	s := setter{size: 1, text: fonts.Serif, metrics: fonts.MathMetrics()}
-	return s.row(Row(slices.Clone(list)), style{display: true}).width
+	room := rooms.Get().(*room)
+	s := setter{size: 1, text: fonts.Serif, metrics: fonts.MathMetrics(), items: room.set[:0]}
+	width := s.row(Row(slices.Clone(list)), style{display: true}).width
+	room.set = s.items
+	rooms.Put(room)
+	return width
 }
 
 // step writes one box of a chain. One after a choice has a line of its own.
