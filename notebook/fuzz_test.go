@@ -186,8 +186,14 @@ func TestPathological(t *testing.T) {
 		"a long power":             "```calc\nx = 2" + repeat("^2", 50_000) + "\n```\n",
 		"a chain of checks":        chainOfChecks(10_000),
 		"unknown names":            unknownNames(10_000),
+		"unknown marks":            "```schedule s\nm | x\n" + numberedLines(10_000, "M%[1]d | %[1]d\n") + "```\n\n```calc\n" + numberedLines(10_000, "a_%[1]d = s.x at \"N%[1]d\"\n") + "```\n",
+		"unknown functions":        "```calc\n" + numberedLines(10_000, "f_%[1]d(x) = x\na_%[1]d = g_%[1]d(3)\n") + "```\n",
+		"unknown schedules":        numberedLines(10_000, "```schedule s%[1]d\nm | x\nA | 1\n```\n\n```calc\na_%[1]d = t%[1]d.x\n```\n\n"),
+		"many helpers":             numberedLines(10_000, "```helper h%[1]d\nx = 1\ny = x\ngives y\n```\n\n"),
+		"a table read by its rows": "```schedule s\nm | x\n" + numberedLines(50_000, "M%[1]d | %[1]d\n") + "```\n\n```calc\ny = interpolate(s.x, s.x, s.x)\n```\n",
+		"functions that double":    doubling(60),
 	}
-	many := []string{"nested emphasis", "fences", "one heading many times", "one remark many times", "unknown names"}
+	many := []string{"nested emphasis", "fences", "one heading many times", "one remark many times", "unknown names", "unknown marks", "unknown functions", "unknown schedules"}
 	for name, body := range bodies {
 		t.Run(name, func(t *testing.T) {
 			s := compile(files("a.md", calc(body)), "a.md")
@@ -217,5 +223,29 @@ func unknownNames(n int) string {
 	for i := range n {
 		fmt.Fprintf(&b, "a_%d = 2*b_%dx\n", i, i)
 	}
+	return b.String() + "```\n"
+}
+
+// numberedLines is a text n times over with its number in it.
+func numberedLines(n int, format string) string {
+	var b strings.Builder
+	for i := range n {
+		fmt.Fprintf(&b, format, i)
+	}
+	return b.String()
+}
+
+// doubling is functions and helpers that each call the one above twice.
+func doubling(n int) string {
+	var b strings.Builder
+	b.WriteString("```helper h_0\nx = 1\ny = x\ngives y\n```\n\n")
+	for i := range n {
+		fmt.Fprintf(&b, "```helper h_%d\nx = 1\ny = h_%d(x) + h_%d(x)\ngives y\n```\n\n", i+1, i, i)
+	}
+	b.WriteString("```calc\nf_0(x) = x\n")
+	for i := range n {
+		fmt.Fprintf(&b, "f_%d(x) = f_%d(x) + f_%d(x)\n", i+1, i, i)
+	}
+	fmt.Fprintf(&b, "y = f_%d(1)\nz = h_%d(1)\n", n, n)
 	return b.String() + "```\n"
 }

@@ -97,9 +97,7 @@ func (l *lower) unknownFunction(x *syntax.Call) *Node {
 	if own, ok := otherNames[id]; ok {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("there is no function `%s`", x.Fun.Text), own)
 	}
-	var known []string
-	known = append(known, Builtins()...)
-	known = append(known, l.e.functionNames()...)
+	known := append(Builtins(), l.e.functionNames()...)
 	hint := "`gusset notation expressions` lists the functions, `gusset helpers` the helpers"
 	if near := diag.Nearest(id, known); near != "" {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("there is no function or helper `%s`", x.Fun.Text), "did you mean `"+near+"`?", hint)
@@ -137,10 +135,13 @@ func (l *lower) callDotted(x *syntax.Call, key, name string) *Node {
 		return l.depend(s.line)
 	}
 	var names []string
-	for _, h := range s.helpers {
-		if h.tree.Name.ID == name {
-			return l.callHelper(x, h)
-		}
+	if h := s.helpers.named(name); h != nil {
+		return l.callHelper(x, h)
+	}
+	if !l.e.c.mayLook(len(s.helpers.order)) {
+		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s has no helper `%s`", s.file.Path, name))
+	}
+	for _, h := range s.helpers.order {
 		names = append(names, key+"."+h.tree.Name.ID)
 	}
 	hint := "it has " + list(names)

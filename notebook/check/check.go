@@ -33,7 +33,6 @@ type checker struct {
 	plots      []func() // plots and figures, which may use values below them
 	depth      int      // nesting of helpers and functions being lowered
 	expanding  map[*syntax.Helper]bool
-	own        []*helper // the calc's own helper blocks so far
 	// caseMarks are the names of columns of marks of load cases. A second set
 	// of load cases may head its own by the same word (`case`), and has it
 	// under its name then (`wind.case`).
@@ -57,7 +56,7 @@ func Check(in *Input) *Program {
 		expanding:  map[*syntax.Helper]bool{},
 		caseMarks:  map[string]bool{},
 	}
-	c.top = &env{c: c, src: in.Source, scope: c.prog.Scope, names: map[string]*Def{}, funcs: map[string]*function{}, helpers: map[string]*helper{}}
+	c.top = &env{c: c, src: in.Source, scope: c.prog.Scope, names: map[string]*Def{}, funcs: map[string]*function{}, helpers: newHelperSet()}
 	c.keys()
 	c.foresee()
 	for i, b := range in.Blocks {

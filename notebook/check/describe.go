@@ -75,8 +75,11 @@ func (l *lower) unitWords(u *syntax.UnitRef) string {
 }
 
 func (c *checker) rowsName(r *Rows) string {
-	for key, s := range c.spaces {
-		if s.rows == r {
+	if s := c.spaces[r.Name]; s != nil && s.rows == r {
+		return r.Name
+	}
+	for _, key := range sortedKeys(c.spaces) {
+		if c.spaces[key].rows == r {
 			return key
 		}
 	}

@@ -22,7 +22,7 @@ func (b *body) function(s *syntax.Definition) {
 	p.Func = true
 	l := b.lower(s.Slots)
 	free := b.fresh(l, s.Name, true)
-	f := &function{def: s, env: b.e, line: p.Line, uses: map[string]*Function{}}
+	f := &function{def: s, env: b.e, line: p.Line, uses: map[string]*Function{}, wrong: map[string]*diag.Span{}}
 	params := map[string]bool{}
 	for _, n := range s.Params {
 		if params[n.ID] {
@@ -191,6 +191,14 @@ func (l *lower) instance(x *syntax.Call, f *function, args []*Node, usage string
 	if inst, ok := f.uses[key]; ok {
 		return inst
 	}
+	site, in := &x.At, l.e
+	if l.site != nil {
+		site, in = l.site, l.siteIn
+	}
+	if f.wrong[key] == site {
+		l.failed = true
+		return nil
+	}
 	if c.depth++; c.depth > maxNesting {
 		c.depth--
 		l.fail(diag.BoundExceeded, x.At, fmt.Sprintf("functions call each other over %d deep, the bound", maxNesting))
@@ -206,10 +214,6 @@ func (l *lower) instance(x *syntax.Call, f *function, args []*Node, usage string
 		d.Unit = argUnit(args[i])
 		inst.Params = append(inst.Params, d)
 	}
-	site, in := &x.At, l.e
-	if l.site != nil {
-		site, in = l.site, l.siteIn
-	}
 	inner := &lower{e: e, site: site, siteIn: in, inside: "`" + usage + "`", declared: f.def.Unit != nil, uses: make([]*Def, f.def.Slots)}
 	inst.Body = inner.choice(f.def, &Def{ID: f.def.Name.ID})
 	inst.Uses = inner.uses
@@ -219,6 +223,7 @@ func (l *lower) instance(x *syntax.Call, f *function, args []*Node, usage string
 		if inner.because != 0 {
 			l.because = inner.because
 		}
+		f.wrong[key] = site
 		return nil
 	}
 	f.uses[key] = inst

@@ -20,29 +20,27 @@ func (c *checker) defineHelper(tree *syntax.Helper) {
 	if !b.fresh(l, tree.Name, true) {
 		return
 	}
-	h := &helper{tree: tree, earlier: c.own, line: c.in.Source.LineAt(tree.Name.At.Start)}
+	h := &helper{tree: tree, file: c.top.helpers, place: c.top.above, line: c.in.Source.LineAt(tree.Name.At.Start)}
 	c.checkHelper(h)
-	c.own = append(c.own[:len(c.own):len(c.own)], h)
-	c.top.helpers[tree.Name.ID] = h
+	c.top.helpers.add(h)
+	c.top.above++
 }
 
 // helperFile enters the helpers of a file of the author's own.
-func (c *checker) helperFile(f *HelperFile) []*helper {
-	var out []*helper
-	seen := map[string]bool{}
+func (c *checker) helperFile(f *HelperFile) *helperSet {
+	out := newHelperSet()
 	for _, tree := range f.Helpers {
 		if tree.Name == nil {
 			continue
 		}
-		h := &helper{tree: tree, earlier: out[:len(out):len(out)], line: 1}
-		if seen[tree.Name.ID] {
+		h := &helper{tree: tree, file: out, place: len(out.order), line: 1}
+		if out.named(tree.Name.ID) != nil {
 			c.report(diag.Diagnostic{ID: diag.Redefined, Source: tree.Source, Span: tree.Name.At,
 				Message: fmt.Sprintf("the helper %s is defined twice in this file", tree.Name.Text)})
 			continue
 		}
-		seen[tree.Name.ID] = true
 		c.checkHelper(h)
-		out = append(out, h)
+		out.add(h)
 	}
 	return out
 }
@@ -73,7 +71,7 @@ func (c *checker) checkHelper(h *helper) {
 	}
 	c.expanding[h.tree] = true
 	b := &body{c: c, e: e}
-	b.run(h, hc)
+	sound = b.run(h, hc) && sound
 	delete(c.expanding, h.tree)
 	h.failed = !sound || diag.HasErrors(c.prog.Diagnostics[before:])
 	for _, s := range h.tree.Stmts {
@@ -81,15 +79,18 @@ func (c *checker) checkHelper(h *helper) {
 			h.failed = true
 		}
 	}
+	h.because = h.line
+	for _, p := range b.plans {
+		if p.Failed && h.file == c.top.helpers {
+			h.because = p.Because
+			break
+		}
+	}
 }
 
 // helperEnv is the closed world of a helper's body.
 func (c *checker) helperEnv(h *helper, hc *HelperCall) *env {
-	e := &env{c: c, src: h.tree.Source, scope: hc.Scope, names: map[string]*Def{}, funcs: map[string]*function{}, helpers: map[string]*helper{}, library: h.library}
-	for _, o := range h.earlier {
-		e.helpers[o.tree.Name.ID] = o
-	}
-	return e
+	return &env{c: c, src: h.tree.Source, scope: hc.Scope, names: map[string]*Def{}, funcs: map[string]*function{}, helpers: h.file, above: h.place, library: h.library}
 }
 
 // paramType is the type a parameter asks for, and its lowered default, nil
@@ -173,10 +174,14 @@ func (l *lower) helperCall(x *syntax.Call, h *helper) *HelperCall {
 				l.value(v)
 			}
 		}
-		l.depend(h.line)
+		l.depend(h.because)
 		return nil
 	}
-	if c.expanding[tree] || c.depth >= maxNesting {
+	if c.depth >= maxNesting {
+		l.fail(diag.BoundExceeded, x.At, fmt.Sprintf("helpers call each other over %d deep, the bound", maxNesting))
+		return nil
+	}
+	if c.expanding[tree] {
 		l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is not yet defined inside its own definition", tree.Name.Text), "a helper cannot call itself")
 		return nil
 	}
@@ -432,11 +437,7 @@ func (b *body) bundleCall(l *lower, s *syntax.Definition) (*syntax.Call, *helper
 	var h *helper
 	if key, name, dotted := head(x.Fun.ID); dotted {
 		if sp := b.c.spaces[key]; sp != nil && b.site == nil {
-			for _, o := range sp.helpers {
-				if o.tree.Name.ID == name {
-					h = o
-				}
-			}
+			h = sp.helpers.named(name)
 		}
 	} else if h = b.e.helper(x.Fun.ID); h == nil {
 		if _, builtin := builtins[x.Fun.ID]; builtin {

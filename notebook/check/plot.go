@@ -241,6 +241,9 @@ func (s *sweeper) overlay(t *syntax.Plot) {
 	p := *d
 	p.Scope, p.Slot, p.Type.Rows = s.plan.Scope, s.plan.Scope.newSlot(), []*Rows{s.plan.Rows}
 	p.Literal, p.Plan, p.exact, p.plain = nil, nil, nil, false
+	if p.Picked != nil { // no point of the range was picked from a row
+		p.Picked = s.plan.Rows
+	}
 	s.plan.Point = &p
 	s.e.names[d.ID] = &p
 	s.body = &body{c: c, e: s.e, site: &t.At, siteIn: c.top, inside: "the plot"}
@@ -261,7 +264,7 @@ func (s *sweeper) relower() bool {
 		}
 		if p.Func {
 			s.funcs[def.Name.ID] = true
-			s.e.funcs[def.Name.ID] = &function{def: def, env: s.e, line: p.Line, uses: map[string]*Function{}}
+			s.e.funcs[def.Name.ID] = &function{def: def, env: s.e, line: p.Line, uses: map[string]*Function{}, wrong: map[string]*diag.Span{}}
 			continue
 		}
 		s.dirty[p.Def] = true

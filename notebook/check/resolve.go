@@ -110,7 +110,9 @@ func (l *lower) unknown(x *syntax.Name) {
 	if s, ok := c.spaces[x.ID]; ok {
 		hint := "a value of it is named behind a dot: `" + x.Text + ".…`"
 		if s.rows != nil {
-			hint = "its columns are " + list(l.e.inScope(func(d *Def) bool { h, _, _ := head(d.ID); return h == x.ID }))
+			if columns := l.e.inScope(func(d *Def) bool { h, _, _ := head(d.ID); return h == x.ID }); len(columns) > 0 {
+				hint = "its columns are " + list(columns)
+			}
 		}
 		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is %s, no value", x.Text, s.what), hint)
 		return
@@ -156,7 +158,11 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 	}
 	if !ok || l.site != nil {
 		hint := "`a.b` is a schedule's column, a value carried from another calc, or one of a helper's results"
-		if near := diag.Nearest(space, sortedKeys(c.spaces)); near != "" {
+		var spaces []string
+		if c.mayLook(len(c.spaces)) {
+			spaces = sortedKeys(c.spaces)
+		}
+		if near := diag.Nearest(space, spaces); near != "" {
 			hint = "did you mean `" + near + "." + name + "`?"
 		}
 		l.fail(diag.UnknownName, x.At, fmt.Sprintf("there is no schedule, carried file or helper's result `%s`", space), hint)
@@ -166,13 +172,16 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 	what := ""
 	switch {
 	case s.from != nil:
-		known, what = sortedKeys(s.from.Values), s.from.Path+" defines no value"
+		if c.mayLook(len(s.from.Values)) {
+			known = sortedKeys(s.from.Values)
+		}
+		what = s.from.Path + " defines no value"
 	case s.rows != nil:
 		for _, id := range l.e.inScope(func(d *Def) bool { h, _, _ := head(d.ID); return h == space }) {
 			_, col, _ := head(id)
 			known = append(known, col)
 		}
-		if len(known) == 0 {
+		if len(known) == 0 && c.searched <= maxSearched {
 			l.fail(diag.UnknownName, x.At, fmt.Sprintf("the columns of load cases are plain names: %s has no `%s`", space, name), "write `"+name+"`")
 			return
 		}
@@ -181,16 +190,18 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 		l.depend(s.line)
 		return
 	default:
-		for _, h := range s.file.Helpers {
-			known = append(known, h.Name.ID)
+		for _, h := range s.helpers.order {
+			known = append(known, h.tree.Name.ID)
 		}
 		what = s.file.Path + " has no helper"
 	}
-	hint := "it has " + list(known)
+	var hints []string
 	if near := diag.Nearest(name, known); near != "" {
-		hint = "did you mean `" + space + "." + near + "`?"
+		hints = []string{"did you mean `" + space + "." + near + "`?"}
+	} else if len(known) > 0 {
+		hints = []string{"it has " + list(known)}
 	}
-	l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s `%s`", what, name), hint)
+	l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s `%s`", what, name), hints...)
 }
 
 // rowsByName finds the rows that a name stands for behind `over`: a schedule,
@@ -206,24 +217,20 @@ func (c *checker) rowsByName(id string) *Rows {
 	return nil
 }
 
-// ownRows are the sets of rows the file itself defines, in order.
-func (c *checker) ownRows() []*Rows {
-	var out []*Rows
-	for _, r := range c.prog.BlockRows {
-		if r != nil {
-			out = append(out, r)
-		}
-	}
-	return out
-}
-
 // functionNames lists what may be called, for a suggestion.
 func (e *env) functionNames() []string {
 	var out []string
 	c := e.c
 	for ; e != nil; e = e.parent {
+		if !c.mayLook(len(e.funcs) + e.above) {
+			return nil
+		}
 		out = append(out, sortedKeys(e.funcs)...)
-		out = append(out, sortedKeys(e.helpers)...)
+		if e.helpers != nil {
+			for _, h := range e.helpers.order[:e.above] {
+				out = append(out, h.tree.Name.ID)
+			}
+		}
 	}
 	return append(out, c.in.Library.Names...)
 }

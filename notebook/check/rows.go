@@ -134,7 +134,13 @@ func (l *lower) mark(y syntax.Expr) *Node {
 	if !ok || l.e.lookup(name.ID) != nil || strings.Contains(name.ID, ".") {
 		return l.value(y)
 	}
-	for _, r := range l.e.c.ownRows() {
+	for _, r := range l.e.c.prog.BlockRows {
+		if r == nil {
+			continue
+		}
+		if !l.e.c.mayLook(1 + len(r.Marks)) {
+			break
+		}
 		for _, m := range r.Marks {
 			if m == name.Text {
 				return l.fail(diag.UnknownName, name.At, fmt.Sprintf("`%s` is no value; it is a mark of %s", name.Text, r.Name), fmt.Sprintf("write the mark in quotes: `at \"%s\"`", name.Text))
@@ -165,6 +171,10 @@ func (l *lower) without(x *syntax.AtMark, n *Node, rows *Rows, mark *Node) *Node
 // atPicked lowers `plates.w at t`, where t was itself picked from plates.
 func (l *lower) atPicked(x *syntax.AtMark, n, picked *Node) *Node {
 	rows := picked.Def.Picked
+	if rows.Swept {
+		return l.fail(diag.RowMismatch, x.Span(), fmt.Sprintf("`%s` looks up the row that %s was picked from, and over the range of a plot %s stands between the rows", l.print(x), picked.Def.Symbol, picked.Def.Symbol),
+			"the plot may run along another value, or its curve use figures that are not looked up by "+picked.Def.Symbol)
+	}
 	for _, r := range n.Type.Rows {
 		if r == rows {
 			n.Op = AtRow

@@ -18,7 +18,8 @@ type env struct {
 	scope   *Scope
 	names   map[string]*Def
 	funcs   map[string]*function
-	helpers map[string]*helper
+	helpers *helperSet
+	above   int // how many of the helpers may be called: those that stand above
 	parent  *env
 	library bool // a library helper's body, which may call functions in Go
 }
@@ -39,15 +40,41 @@ type function struct {
 	line   int
 	failed bool
 	uses   map[string]*Function // instances by the types of the arguments
+	// wrong holds where an instance was last found wrong: it is told once for each call
+	// of the calc's own, and not looked into again by all that calls it there.
+	wrong map[string]*diag.Span
 }
 
 // helper is a helper block with where it may be called from.
 type helper struct {
 	tree    *syntax.Helper
 	library bool
-	earlier []*helper // those of its own file that stand above it
+	file    *helperSet // nil for one of the library
+	place   int        // in its file
 	failed  bool
+	because int // the line that it failed for
 	line    int
+}
+
+// helperSet holds the helpers of one file in order.
+type helperSet struct {
+	order  []*helper
+	byName map[string]*helper
+}
+
+func newHelperSet() *helperSet { return &helperSet{byName: map[string]*helper{}} }
+
+func (s *helperSet) add(h *helper) {
+	s.order = append(s.order, h)
+	s.byName[h.tree.Name.ID] = h
+}
+
+// named returns a helper by its name, nil where there is none.
+func (s *helperSet) named(id string) *helper {
+	if s == nil {
+		return nil
+	}
+	return s.byName[id]
 }
 
 func (e *env) lookup(id string) *Def {
@@ -71,7 +98,7 @@ func (e *env) function(id string) *function {
 
 func (e *env) helper(id string) *helper {
 	for ; e != nil; e = e.parent {
-		if h, ok := e.helpers[id]; ok {
+		if h := e.helpers.named(id); h != nil && h.place < e.above {
 			return h
 		}
 	}
@@ -88,14 +115,20 @@ func (e *env) define(n *syntax.Name, t Type) *Def {
 // maxSearched bounds the names that are looked through for what messages offer,
 // over all messages of a file: a file of nothing but mistakes takes no longer
 // than another. Beyond it nothing is offered.
-const maxSearched = 4_000_000
+const maxSearched = 1_000_000
+
+// mayLook tells whether a message may look through that many names.
+func (c *checker) mayLook(names int) bool {
+	c.searched += names
+	return c.searched <= maxSearched
+}
 
 // inScope lists the names in scope, sorted, that pass the test; names of
 // schedules' columns and helpers' results included.
 func (e *env) inScope(pass func(*Def) bool) []string {
 	var out []string
 	for c := e.c; e != nil; e = e.parent {
-		if c.searched += len(e.names); c.searched > maxSearched {
+		if !c.mayLook(len(e.names)) {
 			return nil
 		}
 		for id, d := range e.names {
@@ -135,7 +168,7 @@ func (c *checker) occupied(id string) (what string, line int) {
 	if c.consts[id] != nil {
 		return "a constant", 0
 	}
-	if h, ok := c.top.helpers[id]; ok {
+	if h := c.top.helpers.named(id); h != nil {
 		return "a helper", h.line
 	}
 	if f, ok := c.top.funcs[id]; ok {
@@ -155,7 +188,7 @@ type space struct {
 	failed  bool // a schedule that could not be read
 	from    *Carry
 	file    *HelperFile
-	helpers []*helper
+	helpers *helperSet
 }
 
 // head returns what stands before the first dot, and what follows it.

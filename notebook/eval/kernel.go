@@ -2,6 +2,7 @@ package eval
 
 import (
 	"math"
+	"sort"
 
 	"gusset/notebook/syntax"
 )
@@ -213,29 +214,33 @@ func reduce(fn string, n int, at func(int) float64) float64 {
 	return out
 }
 
-// interpolate reads y off the points at x; NaN where the table does not rise
-// or fall steadily, or does not reach x.
+// steady tells that the points rise or fall steadily.
+func steady(xs []float64) bool {
+	falling := len(xs) > 1 && xs[len(xs)-1] < xs[0]
+	for i := 1; i < len(xs); i++ {
+		if (xs[i] > xs[i-1]) == falling || xs[i] == xs[i-1] {
+			return false
+		}
+	}
+	return true
+}
+
+// interpolate reads y off steady points at x; NaN where the table does not reach x.
 func interpolate(xs, ys []float64, x float64) float64 {
 	n := len(xs)
 	if n == 0 || !finite(x) {
 		return nan
 	}
-	falling := n > 1 && xs[n-1] < xs[0]
-	for i := 1; i < n; i++ {
-		if (xs[i] > xs[i-1]) == falling || xs[i] == xs[i-1] {
-			return nan
-		}
-	}
-	for i := 0; i < n; i++ {
+	falling := xs[n-1] < xs[0]
+	at := sort.Search(n, func(i int) bool { return xs[i] >= x != falling || xs[i] == x })
+	for i := max(at-1, 0); i <= min(at, n-1); i++ {
 		if same(x, xs[i]) {
 			return ys[i]
 		}
 	}
-	for i := 1; i < n; i++ {
-		if lo, hi := math.Min(xs[i-1], xs[i]), math.Max(xs[i-1], xs[i]); lo < x && x < hi {
-			f := (x - xs[i-1]) / (xs[i] - xs[i-1])
-			return ys[i-1] + f*(ys[i]-ys[i-1])
-		}
+	if at == 0 || at == n {
+		return nan
 	}
-	return nan
+	f := (x - xs[at-1]) / (xs[at] - xs[at-1])
+	return ys[at-1] + f*(ys[at]-ys[at-1])
 }

@@ -66,9 +66,12 @@ type machine struct {
 	params  []*params                                 // those that no evaluation has at present
 	slabs   slabs
 	// recording collects the helper calls of the statement being printed.
-	recording *[]*Call
-	warned    map[warning]bool
-	running   *check.Plan // the statement being computed, for messages from inside a helper
+	recording   *[]*Call
+	warned      map[warning]bool
+	table       []float64 // read by interpolate last, and whether it is steady
+	tableSteady bool
+	looked      int         // marks that were looked through for messages
+	running     *check.Plan // the statement being computed, for messages from inside a helper
 }
 
 // slabs are where steps and what the evaluator compiles come from.
@@ -85,6 +88,9 @@ type slabs struct {
 
 // chunk is how many values the evaluator takes room for at once.
 const chunk = 64
+
+// maxLooked bounds the marks that are looked through for what messages offer, over a whole file.
+const maxLooked = 1_000_000
 
 // warning is a limit that only warns, at the statement that called its helper.
 type warning struct {
@@ -318,8 +324,10 @@ func (m *machine) row(n *check.Node, f *frame, target *check.Type, entry int) (i
 		return row, nil
 	}
 	hint := "its rows are " + list(rows.Marks)
-	if near := diag.Nearest(mark, rows.Marks); near != "" {
-		hint = "did you mean `" + near + "`?"
+	if m.looked += rows.N(); m.looked <= maxLooked {
+		if near := diag.Nearest(mark, rows.Marks); near != "" {
+			hint = "did you mean `" + near + "`?"
+		}
 	}
 	at := n.Expr.Span()
 	if x, ok := n.Expr.(*syntax.AtMark); ok {
@@ -341,10 +349,20 @@ func (m *machine) interpolated(n *check.Node, f *frame, target *check.Type, entr
 		return nil, err
 	}
 	xs, ys := m.column(n.Args[0], f, &n.Args[0].Type), m.column(n.Args[1], f, &n.Args[1].Type)
-	if y := interpolate(xs, ys, x); finite(y) {
-		return y, nil
+	if m.steady(xs) {
+		if y := interpolate(xs, ys, x); finite(y) {
+			return y, nil
+		}
 	}
 	return nil, m.beyond(n, f, xs, x)
+}
+
+// steady remembers the column it was asked of last: most are read at many entries.
+func (m *machine) steady(xs []float64) bool {
+	if len(xs) == 0 || len(m.table) != len(xs) || &m.table[0] != &xs[0] {
+		m.table, m.tableSteady = xs, steady(xs)
+	}
+	return m.tableSteady
 }
 
 // beyond says why a table gives no value.
