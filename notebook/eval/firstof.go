@@ -77,7 +77,11 @@ func (m *machine) firstOf(fo *check.FirstOf, f *frame, t *check.Type, entry int,
 	if fo.Column == nil {
 		last = m.candidateText(fo.Values[count-1], last)
 	}
-	return nil, 0, &fault{id: diag.OutOfRange, at: fo.Expr.At, message: fmt.Sprintf("none of the %d candidates will do: the last, %s, misses with %s", count, last, why),
+	told := fmt.Sprintf("none of the %d candidates will do: the last, %s,", count, last)
+	if count == 1 {
+		told = "the one candidate will not do: " + last
+	}
+	return nil, 0, &fault{id: diag.OutOfRange, at: fo.Expr.At, message: fmt.Sprintf("%s misses with %s", told, why),
 		hints: []string{"add a further candidate, or change what the condition asks"}}
 }
 
