@@ -77,8 +77,19 @@ func refParts(s *Step, unit units.Unit, inUnit bool) []RefPart {
 	if eval.PlainText(from) == eval.PlainText(to) {
 		return []RefPart{{Pieces: from}}
 	}
-	mark := s.Value.Type.Mark(s.Entry)
-	return []RefPart{{Pieces: from}, {Words: " to "}, {Pieces: to}, {Words: " (" + mark + " governs)"}}
+	parts := []RefPart{{Pieces: from}, {Words: " to "}, {Pieces: to}, {Words: " (" + s.Value.Type.Mark(s.Entry) + " governs)"}}
+	// The entry that decides a check downstream need not be the largest; then the
+	// range alone would seem to say that it is.
+	far := least
+	if math.Abs(s.Value.Num[most]) > math.Abs(s.Value.Num[least]) {
+		far = most
+	}
+	own := printed(s.Entry)
+	if math.Abs(s.Value.Num[s.Entry]) < math.Abs(s.Value.Num[far]) && eval.PlainText(own) != eval.PlainText(printed(far)) {
+		parts[3].Words = strings.TrimSuffix(parts[3].Words, ")") + " with "
+		parts = append(parts, RefPart{Pieces: own}, RefPart{Words: ")"})
+	}
+	return parts
 }
 
 // distinct lists the different texts of a column in order.

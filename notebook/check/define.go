@@ -145,6 +145,8 @@ func (b *body) printed(p *Plan, s *syntax.Definition) {
 		p.IsGiven = true
 		d.Texts = []string{v.Value}
 		return
+	case *syntax.AtMark:
+		d.Texts = n.texts()
 	case *syntax.Name:
 		d.Texts, d.Picked = n.texts(), picked(n)
 		p.Carried = n.Op == Load && n.Def.Carry != nil

@@ -198,9 +198,10 @@ func (l *lower) rowsWithMark(x *syntax.AtMark, col, mark *Node) *Rows {
 		return nil
 	}
 	var found []*Rows
-	for _, r := range col.Type.Rows {
-		if hasMark(r, texts[0]) {
-			found = append(found, r)
+	word := texts[0]
+	for _, t := range texts {
+		if in := withMark(col.Type.Rows, t); len(in) > len(found) {
+			found, word = in, t
 		}
 	}
 	if len(found) == 1 {
@@ -211,22 +212,35 @@ func (l *lower) rowsWithMark(x *syntax.AtMark, col, mark *Node) *Rows {
 		names = append(names, l.e.c.rowsName(r))
 	}
 	if len(found) == 0 {
-		l.fail(diag.UnknownMark, x.Y.Span(), fmt.Sprintf("neither of %s has a row `%s`", list(names), texts[0]))
+		l.fail(diag.UnknownMark, x.Y.Span(), fmt.Sprintf("neither of %s has a row `%s`", list(names), word))
 		return nil
 	}
-	l.fail(diag.UnknownMark, x.Y.Span(), fmt.Sprintf("%s both have a row `%s`", list(names), texts[0]), "give the rows of one of them other marks")
+	l.fail(diag.UnknownMark, x.Y.Span(), fmt.Sprintf("%s both have a row `%s`", list(names), word), "give the rows of one of them other marks")
 	return nil
 }
 
-// texts are the texts of a node that are known before anything is computed.
+// texts are the texts that a node may have, where they are known before
+// anything is computed: a mark that is looked up is one of its column's.
 func (n *Node) texts() []string {
 	switch n.Op {
+	case At, AtRow:
+		return n.Args[0].texts()
 	case TextLit:
 		return []string{n.Str}
 	case Load:
 		return n.Def.Texts
 	}
 	return nil
+}
+
+// withMark are the sets that have a row of that mark.
+func withMark(sets []*Rows, mark string) (in []*Rows) {
+	for _, r := range sets {
+		if hasMark(r, mark) {
+			in = append(in, r)
+		}
+	}
+	return in
 }
 
 func hasMark(r *Rows, mark string) bool {
