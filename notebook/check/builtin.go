@@ -92,7 +92,7 @@ func (l *lower) unknownFunction(x *syntax.Call) *Node {
 	}
 	if d := l.e.lookup(id); d != nil {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is a value (line %d), no function", x.Fun.Text, d.Line),
-			fmt.Sprintf("write `%s*(…)` for a product", x.Fun.Text))
+			fmt.Sprintf("for a product write `%s*%s`", x.Fun.Text, l.e.src.Slice(diag.Span{Start: x.Fun.At.End, End: x.At.End})))
 	}
 	if own, ok := otherNames[id]; ok {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("there is no function `%s`", x.Fun.Text), own)

@@ -133,7 +133,7 @@ func TestMistakes(t *testing.T) {
 		{"s = sqrt(x=2)", diag.Syntax, "by position", "sqrt(x)", "s = sqrt(2)"},
 		{"s = sqrtt(2)", diag.UnknownName, "sqrtt", "did you mean `sqrt`?", "s = sqrt(2)"},
 		{"s = sqrt", diag.UnknownName, "sqrt is a function", "sqrt(x)", "s = sqrt(2)"},
-		{"s = P(2)", diag.UnknownName, "P is a value", "P*(…)", "s = P*(2)"},
+		{"s = P(2)", diag.UnknownName, "P is a value", "P*(2)", "s = P*(2)"},
 		{"s = direct_shear(P)", diag.Syntax, "direct_shear lacks A", "direct_shear(V, A, n=1)", "s = direct_shear(P, d^2)"},
 		{"s = direct_shear(P, d)", diag.DimensionMismatch, "A of direct_shear takes an area (mm²), but `d` is a length (mm)", "", "s = direct_shear(P, d^2)"},
 		{"s = direct_shear(P, d^2, planes=2)", diag.Syntax, "no parameter `planes`", "direct_shear(V, A, n=1)", "s = direct_shear(P, d^2, n=2)"},

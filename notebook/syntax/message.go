@@ -2,6 +2,7 @@ package syntax
 
 import (
 	"fmt"
+	"strconv"
 	"strings"
 	"unicode"
 	"unicode/utf8"
@@ -130,6 +131,14 @@ func (p *parser) sideBySide() {
 		p.syntax(from, end, "a unit stands behind its number without brackets", "write "+quoted(left+" "+right[1:len(right)-1]))
 		return
 	}
+	if right == "mod" {
+		if next := p.skipBlanks(end); next < p.end {
+			end := p.operandEnd(next)
+			by := p.s[next:end]
+			p.syntax(from, end, "there is no operator for a remainder", "write "+quoted(fmt.Sprintf("%s - %s*floor(%s/%s)", left, by, left, by)))
+			return
+		}
+	}
 	times := "*"
 	if p.prev == tNumber && !isDigit(left[len(left)-1]) {
 		times = " * " // tight, it might be read as part of the unit
@@ -226,6 +235,9 @@ func (p *parser) noUnit(lit, u, i, j int) {
 			product = "a mixed number stands directly before a unit only"
 		}
 	}
+	if p.timesOrPower(lit, u, j, name) {
+		return
+	}
 	switch {
 	case fault == nil: // the name is a unit of a dotted name or a call, which unit never sends here
 		p.syntax(lit, j, fmt.Sprintf("%s is no literal", quoted(p.s[lit:j])))
@@ -243,6 +255,41 @@ func (p *parser) noUnit(lit, u, i, j int) {
 		}
 		p.fail(p.span(lit, p.operandEnd(u)), id, fmt.Sprintf("a name directly behind a number is a unit, and %s is none", quoted(name)), hints...)
 	}
+}
+
+// timesOrPower reports `2 x 3`, `0x1F` and `3 sq.ft`: a name between u and j
+// that is no unit, but a word for multiplication or for a power of the unit
+// behind it. lit is the start of the literal.
+func (p *parser) timesOrPower(lit, u, j int, name string) bool {
+	figures := strings.TrimRight(p.s[lit:u], " \t")
+	next := p.skipBlanks(j)
+	power := map[string]string{"sq": "^2", "square": "^2", "cu": "^3", "cubic": "^3"}[strings.ToLower(name)]
+	switch {
+	case (name == "x" || name == "X") && j < next && next < p.end && (isDigit(p.s[next]) || byteClass[p.s[next]]&nameByte != 0):
+		p.syntax(lit, p.operandEnd(next), fmt.Sprintf("%s is no sign of multiplication", quoted(name)), "write "+quoted(figures+" * "+p.s[next:p.operandEnd(next)]))
+	case figures == "0" && u == lit+1 && (name[0] == 'x' || name[0] == 'X'):
+		value, err := strconv.ParseUint(name[1:], 16, 32)
+		if err != nil {
+			return false
+		}
+		p.syntax(lit, j, "numbers are decimal", "write "+quoted(strconv.FormatUint(value, 10)))
+	case power != "":
+		if next < p.end && p.s[next] == '.' {
+			next = p.skipBlanks(next + 1)
+		}
+		end := next
+		for end < p.end && byteClass[p.s[end]]&nameByte != 0 {
+			end++
+		}
+		if !units.IsUnitName(p.s[next:end]) {
+			return false
+		}
+		p.fail(p.span(lit, end), diag.WrongUnitSpelling, fmt.Sprintf("%s is written %s", quoted(p.s[u:end]), quoted(p.s[next:end]+power)),
+			"write "+quoted(figures+" "+p.s[next:end]+power))
+	default:
+		return false
+	}
+	return true
 }
 
 // looksLikeUnit tells whether a name may be a unit with a slip rather than the
