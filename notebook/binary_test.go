@@ -232,6 +232,20 @@ func TestOpen(t *testing.T) {
 	if s, err := Open("named.md"); err != nil || s.Front.Firm != "Works" {
 		t.Error("a link that the user names is followed to where the file lies", err)
 	}
+	// A register that is there and cannot be read is not passed over.
+	write("elsewhere.yaml", "figures: 6\n")
+	write("out/a.md", calc(""))
+	link("../elsewhere.yaml", "out/register.yaml")
+	if s, err := Open("out/a.md"); err != nil || !strings.HasSuffix(errorsOf(s), "register it is a link that leads out of the root folder\n") {
+		t.Error(errorsOf(s), err)
+	}
+	if err := os.MkdirAll(filepath.Join(dir, "job/calcs/deep/register.yaml"), 0o755); err != nil {
+		t.Fatal(err)
+	}
+	write("job/calcs/deep/b.md", calc(""))
+	if s, err := Open("job/calcs/deep/b.md"); err != nil || s.Front.Firm != "Works" || s.Failed() {
+		t.Error("a folder stands for a register", errorsOf(s), err)
+	}
 	t.Chdir(filepath.Join(dir, "job", "calcs"))
 	if s, err := Open("lug.md"); err != nil || s.Source.Name != "lug.md" || s.Front.Firm != "Works" {
 		t.Error(s.Source.Name, err)

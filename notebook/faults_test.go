@@ -81,3 +81,20 @@ func TestFaults(t *testing.T) {
 		})
 	}
 }
+
+// What cannot be computed since a helper's own file has a mistake names the
+// line of the calc that names the file: a line of another file would mislead.
+func TestLineOfHelperFile(t *testing.T) {
+	s := compile(files(
+		"calc.md", "---\ncalc: C-1\nhelpers: {shop: shop.md}\n---\n```calc\na = shop.bad(3 kN)\nb = 2*a\n```\n",
+		"shop.md", "\n\n```helper bad\nx [force]\ny = x + 1 mm\ngives y\n```\n",
+	), "calc.md")
+	if len(s.Steps) != 2 || !s.Failed() {
+		t.Fatal(s.Steps, s.Diagnostics)
+	}
+	for _, step := range s.Steps {
+		if !step.Failed || step.Because != 3 {
+			t.Errorf("%s: failed %v because of line %d, want line 3", step.ID, step.Failed, step.Because)
+		}
+	}
+}

@@ -2,7 +2,9 @@ package notebook
 
 import (
 	"bytes"
+	"errors"
 	"fmt"
+	"io/fs"
 	"path"
 	"regexp"
 	"slices"
@@ -92,14 +94,14 @@ func (d *Draft) readRegister() {
 	for {
 		name := path.Join(dir, RegisterName)
 		d.watched(name)
-		text, f := readBounded(d.ctx.FS, name)
-		if f == nil || f.id != diag.MissingFile {
+		if d.isRegister(name) {
 			d.limit = dir
-			if f != nil {
+			if text, f := readBounded(d.ctx.FS, name); f == nil {
+				d.readRegisterText(name, text)
+			} else {
+				f.id = diag.Register
 				d.diags = append(d.diags, f.at(diag.NewSource(d.ctx.shown(name), nil), diag.Span{}))
-				return
 			}
-			d.readRegisterText(name, text)
 			return
 		}
 		if dir == "." {
@@ -107,6 +109,17 @@ func (d *Draft) readRegister() {
 		}
 		dir = path.Dir(dir)
 	}
+}
+
+// isRegister tells whether a register stands under a name, one that cannot be
+// read included: what it says of the package must not be passed over unseen. A
+// folder of that name is none.
+func (d *Draft) isRegister(name string) bool {
+	info, err := fs.Stat(d.ctx.FS, name)
+	if err != nil {
+		return !errors.Is(err, fs.ErrNotExist)
+	}
+	return info.Mode().IsRegular()
 }
 
 func (d *Draft) readRegisterText(name string, text []byte) {
@@ -341,7 +354,7 @@ func (f *frontReader) logo(e entry) string {
 	}
 	file, bad := f.draft.within(f.dir, ref)
 	if bad == nil {
-		bad = f.draft.image(file)
+		bad = f.draft.image(file, ref)
 	}
 	if bad != nil {
 		f.diags = append(f.diags, bad.at(f.src, f.span(e.value)))

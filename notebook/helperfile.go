@@ -19,7 +19,7 @@ func (d *Draft) readHelpers() {
 		}
 		src, f := d.file(l.Path)
 		if f != nil {
-			d.diags = append(d.diags, f.of(l.Path).at(d.source, l.At))
+			d.diags = append(d.diags, f.of(d.source.Slice(l.At)).at(d.source, l.At))
 			h.Failed = true
 			continue
 		}

@@ -25,26 +25,26 @@ type Image struct {
 	Data          []byte
 }
 
-// image loads an image, once.
-func (d *Draft) image(file string) *fault {
+// image loads an image, once. name is what the author calls it.
+func (d *Draft) image(file, name string) *fault {
 	if d.images[file] != nil {
 		return nil
 	}
 	d.watched(file)
 	data, f := readBounded(d.ctx.FS, file)
 	if f != nil {
-		return f.of(file)
+		return f.of(name)
 	}
 	config, format, err := image.DecodeConfig(bytes.NewReader(data))
 	if err != nil {
-		return &fault{diag.MissingFile, fmt.Sprintf("`%s` is no image that can be shown", file), []string{"an image is PNG, JPEG or GIF, whatever its name says"}}
+		return &fault{diag.MissingFile, fmt.Sprintf("`%s` is no image that can be shown", name), []string{"an image is PNG, JPEG or GIF, whatever its name says"}}
 	}
 	if config.Width <= 0 || config.Height <= 0 || config.Width > maxPixels/config.Height {
 		return &fault{diag.BoundExceeded, fmt.Sprintf("`%s` has %d × %d pixels, and an image may have %d million at most",
-			file, config.Width, config.Height, maxPixels/1_000_000), nil}
+			name, config.Width, config.Height, maxPixels/1_000_000), nil}
 	}
 	if !whole(format, data) {
-		return &fault{diag.MissingFile, fmt.Sprintf("`%s` is an image that was cut off or damaged", file), nil}
+		return &fault{diag.MissingFile, fmt.Sprintf("`%s` is an image that was cut off or damaged", name), nil}
 	}
 	d.images[file] = &Image{Path: file, Format: format, Width: config.Width, Height: config.Height, Data: data}
 	return nil

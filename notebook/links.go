@@ -134,7 +134,7 @@ func (d *Draft) placeImage(n *ast.Image) {
 	ref, _, _ = strings.Cut(ref, "#")
 	file, f := d.within(path.Dir(d.Path), unescapePath(ref))
 	if f == nil {
-		f = d.image(file)
+		f = d.image(file, unescapePath(ref))
 	}
 	if f != nil {
 		d.diags = append(d.diags, f.at(d.source, at))

@@ -90,6 +90,10 @@ func (l *lower) unknownFunction(x *syntax.Call) *Node {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is not yet defined: its definition stands at line %d", x.Fun.Text, line),
 			"a function is defined above its first use, and cannot call itself")
 	}
+	if line := l.e.laterHelper(id); line > 0 && l.site == nil {
+		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is not yet defined: its definition stands at line %d", x.Fun.Text, line),
+			"a helper is defined above its first use, and cannot call itself")
+	}
 	if d := l.e.lookup(id); d != nil {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is a value (line %d), no function", x.Fun.Text, d.Line),
 			fmt.Sprintf("for a product write `%s*%s`", x.Fun.Text, l.e.src.Slice(diag.Span{Start: x.Fun.At.End, End: x.At.End})))
@@ -119,6 +123,10 @@ func (l *lower) callDotted(x *syntax.Call, key, name string) *Node {
 	if ok && s.file != nil && l.e.closed() {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("a helper does not reach the calc's helper file `%s`", key),
 			"it calls the library that ships, and the helpers above it")
+	}
+	if ok && s.from != nil {
+		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("`%s` is a carried file, and functions and helpers are not carried", key),
+			"helpers that several calcs share stand in a file that `helpers` names")
 	}
 	if !ok || s.file == nil {
 		var keys []string

@@ -29,11 +29,12 @@ func (c *checker) defineHelper(tree *syntax.Helper) {
 // helperFile enters the helpers of a file of the author's own.
 func (c *checker) helperFile(f *HelperFile) *helperSet {
 	out := newHelperSet()
+	out.trees = f.Helpers
 	for _, tree := range f.Helpers {
 		if tree.Name == nil {
 			continue
 		}
-		h := &helper{tree: tree, file: out, place: len(out.order), line: 1}
+		h := &helper{tree: tree, file: out, place: len(out.order), line: f.Line}
 		if out.named(tree.Name.ID) != nil {
 			c.report(diag.Diagnostic{ID: diag.Redefined, Source: tree.Source, Span: tree.Name.At,
 				Message: fmt.Sprintf("the helper %s is defined twice in this file", tree.Name.Text)})
@@ -143,10 +144,11 @@ func (l *lower) enterParam(e *env, hc *HelperCall, p *syntax.Param, n *Node) {
 	hc.Params = append(hc.Params, d)
 }
 
-// usage is the call of a helper as its reader would write it.
-func usage(tree *syntax.Helper) string {
+// usage is the call of a helper as its reader would write it, by the name that
+// it is reached by: `shop.bracket` for one of a file.
+func usage(name string, tree *syntax.Helper) string {
 	var b strings.Builder
-	b.WriteString(tree.Name.Text + "(")
+	b.WriteString(name + "(")
 	for i, p := range tree.Params {
 		if i > 0 {
 			b.WriteString(", ")
@@ -167,7 +169,7 @@ func (l *lower) helperCall(x *syntax.Call, h *helper) *HelperCall {
 	for i, p := range tree.Params {
 		names[i] = p.Name
 	}
-	values, ok := l.bind(x, names, func(i int) bool { return tree.Params[i].Default != nil }, usage(tree))
+	values, ok := l.bind(x, names, func(i int) bool { return tree.Params[i].Default != nil }, usage(x.Fun.Text, tree))
 	if h.failed {
 		for _, v := range values {
 			if v != nil {
@@ -299,7 +301,7 @@ func (l *lower) argument(x *syntax.Call, h *helper, p *syntax.Param, value synta
 		if want.Kind == Number && got.Kind == Point {
 			return l.fail(diag.DimensionMismatch, value.Span(), message, l.asDifference(value))
 		}
-		return l.fail(diag.DimensionMismatch, value.Span(), message, append(l.wayOut(want, got), "it is called as `"+usage(h.tree)+"`")...)
+		return l.fail(diag.DimensionMismatch, value.Span(), message, append(l.wayOut(want, got), "it is called as `"+usage(x.Fun.Text, h.tree)+"`")...)
 	}
 	if n.bare && takesAngle(p) {
 		l.report(diag.Warning, diag.BareAngle, value.Span(), fmt.Sprintf("%s takes an angle, and the bare number %s is read as radians", who, l.print(value)),
@@ -414,7 +416,7 @@ func (l *lower) callHelper(x *syntax.Call, h *helper) *Node {
 			names = append(names, r.ID)
 		}
 		return l.fail(diag.Syntax, x.At, fmt.Sprintf("%s has the results %s, and is no value itself", h.tree.Name.Text, list(names)),
-			fmt.Sprintf("give the call a line and a name of its own, `res = %s(…)`, and use `res.%s`", h.tree.Name.Text, names[0]))
+			fmt.Sprintf("give the call a line and a name of its own, `res = %s(…)`, and use `res.%s`", x.Fun.Text, names[0]))
 	}
 	t := hc.Results[0].Type
 	rows, err := l.e.c.union(hc.Loop, t.Rows)

@@ -189,6 +189,10 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 	case s.file.Failed:
 		l.depend(s.line)
 		return
+	case s.helpers.named(name) != nil:
+		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is a helper; it has a value only with its arguments", x.Text),
+			"write `"+usage(x.Text, s.helpers.named(name).tree)+"`")
+		return
 	default:
 		for _, h := range s.helpers.order {
 			known = append(known, h.tree.Name.ID)

@@ -59,6 +59,7 @@ type helper struct {
 // helperSet holds the helpers of one file in order.
 type helperSet struct {
 	order  []*helper
+	trees  []*syntax.Helper // of a file of the author's own: all it holds, those not entered yet included
 	byName map[string]*helper
 }
 
@@ -103,6 +104,20 @@ func (e *env) helper(id string) *helper {
 		}
 	}
 	return nil
+}
+
+// laterHelper is the line at which the helper file that a body stands in
+// defines a helper, 0 where it does not.
+func (e *env) laterHelper(id string) int {
+	if e.helpers == nil {
+		return 0
+	}
+	for _, tree := range e.helpers.trees {
+		if tree.Name != nil && tree.Name.ID == id {
+			return e.src.LineAt(tree.Name.At.Start)
+		}
+	}
+	return 0
 }
 
 // define gives a name a place in the environment's scope.
