@@ -46,15 +46,26 @@ func (s *Sheet) checkTargets(d *Draft, ids anchors) {
 			Severity: diag.Warning, ID: diag.DroppedLink, Source: s.Source, Span: d.linkSpan(l, l.Destination),
 			Message: fmt.Sprintf("the link leads nowhere: nothing on the page is called `#%s`", clip(target)),
 		}
-		var known []string
-		for _, h := range s.Headings {
-			known = append(known, h.Anchor)
-		}
-		if near := diag.Nearest(target, known); near != "" {
+		if near := s.nearTarget(target, ids); near != "" {
 			bad.Hints = []string{"did you mean `#" + near + "`?"}
 		}
 		s.Diagnostics = append(s.Diagnostics, bad)
 	}
+}
+
+// nearTarget is the anchor that a link to nothing may have meant: a value's, whose
+// name was written in another spelling, or a heading's.
+func (s *Sheet) nearTarget(target string, ids anchors) string {
+	if kind, name, ok := strings.Cut(target, "-"); ok {
+		if spelled := kind + "-" + anchorName(syntax.Canonical(name)); ids[spelled] > 0 {
+			return spelled
+		}
+	}
+	var known []string
+	for _, h := range s.Headings {
+		known = append(known, h.Anchor)
+	}
+	return diag.Nearest(target, known)
 }
 
 func newBlock(tree *syntax.Block, r *eval.BlockResult) *Block {

@@ -101,8 +101,8 @@ func clip(s string) string {
 	return s
 }
 
-// linkSpan is where a link's destination stands, or where the link starts if
-// the destination stands elsewhere.
+// linkSpan is where a link's destination stands, with its percent signs or
+// without, or where the link starts if the destination stands elsewhere.
 func (d *Draft) linkSpan(n ast.Node, raw []byte) diag.Span {
 	start := min(max(n.Pos(), 0), len(d.source.Text))
 	if l, ok := n.(*ast.Link); ok && l.Reference != nil {
@@ -110,10 +110,14 @@ func (d *Draft) linkSpan(n ast.Node, raw []byte) diag.Span {
 	}
 	const near = 4 << 10
 	text := d.source.Text[start:min(start+near, len(d.source.Text))]
-	if i := bytes.Index(text, raw); i >= 0 && len(raw) > 0 {
-		return diag.Span{Start: start + i, End: start + i + len(raw)}
+	at := diag.Span{Start: start, End: min(start+1, len(d.source.Text))}
+	first := len(text)
+	for _, spelled := range [][]byte{raw, []byte(unescapePath(string(raw)))} {
+		if i := bytes.Index(text, spelled); i >= 0 && i < first && len(spelled) > 0 {
+			first, at = i, diag.Span{Start: start + i, End: start + i + len(spelled)}
+		}
 	}
-	return diag.Span{Start: start, End: min(start+1, len(d.source.Text))}
+	return at
 }
 
 // placeImage loads an image of the root. One that cannot be shown leaves its
@@ -132,6 +136,14 @@ func (d *Draft) placeImage(n *ast.Image) {
 	}
 	ref, _, _ := strings.Cut(string(target), "?")
 	ref, _, _ = strings.Cut(ref, "#")
+	if ref == "" {
+		d.diags = append(d.diags, diag.Diagnostic{
+			ID: diag.MissingFile, Source: d.source, Span: at,
+			Message: "the image names no file", Hints: []string{"write `![what it shows](photo.png)`"},
+		})
+		unwrap(n)
+		return
+	}
 	file, f := d.within(path.Dir(d.Path), unescapePath(ref))
 	if f == nil {
 		f = d.image(file, unescapePath(ref))
