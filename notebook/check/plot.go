@@ -109,7 +109,7 @@ func (l *lower) sweptName(t *syntax.Plot) *Def {
 		return nil
 	}
 	switch {
-	case n.Type.Kind != Number || n.Def.IsConst:
+	case !drawn(n.Type) || n.Def.IsConst:
 		l.fail(diag.DimensionMismatch, t.Against.At, fmt.Sprintf("a plot runs along a number, but %s is %s", t.Against.Text, l.e.c.describe(n.Type)))
 	case len(n.Type.Rows) > 0:
 		l.fail(diag.RowMismatch, t.Against.At, fmt.Sprintf("a plot runs along a plain value, but %s is %s", t.Against.Text, l.e.c.rowWords(n.Type)))
@@ -118,6 +118,9 @@ func (l *lower) sweptName(t *syntax.Plot) *Def {
 	}
 	return nil
 }
+
+// drawn tells that an axis may carry a value: a number or a temperature.
+func drawn(t Type) bool { return t.Kind == Number || t.Kind == Point }
 
 func (l *lower) bound(x syntax.Expr, d *Def) *Node {
 	n := l.value(x)
@@ -140,11 +143,11 @@ func (l *lower) curve(x *syntax.Name, s *sweeper, mustMove bool, out *[]PlotCurv
 	if !n.ok() {
 		return
 	}
-	if n.Type.Kind != Number {
+	if !drawn(n.Type) {
 		l.fail(diag.DimensionMismatch, x.At, fmt.Sprintf("a plot draws numbers, but %s is %s", x.Text, l.e.c.describe(n.Type)))
 		return
 	}
-	if first := s.plan.Curves; len(first) > 0 && first[0].Def.Type.Dim != n.Type.Dim {
+	if first := s.plan.Curves; len(first) > 0 && (first[0].Def.Type.Dim != n.Type.Dim || first[0].Def.Type.Kind != n.Type.Kind) {
 		l.mismatch(x.At, fmt.Sprintf("one axis carries one dimension: %s is %s, but %s is %s", first[0].Def.Symbol, l.e.c.describe(first[0].Def.Type), x.Text, l.e.c.describe(n.Type)),
 			first[0].Def.Type, n.Type)
 		return
