@@ -76,7 +76,7 @@ func (m *machine) sides(nodes []*check.Node, f *frame) []Side {
 // unit of the side it is compared with.
 func (m *machine) side(n *check.Node, f *frame, shared *check.Node) Side {
 	s := Side{Expr: n.Expr, Figures: m.figures(), Unit: m.nodeUnit(n, f)}
-	if shared != nil && !named(n) && shared.Type.Dim == n.Type.Dim && shared.Type.Kind == n.Type.Kind {
+	if shared != nil && (!named(n) || m.bare(n, f)) && shared.Type.Dim == n.Type.Dim && shared.Type.Kind == n.Type.Kind {
 		s.Unit = m.nodeUnit(shared, f)
 	}
 	s.Value = m.columnValue(n, f)
@@ -87,7 +87,7 @@ func (m *machine) side(n *check.Node, f *frame, shared *check.Node) Side {
 // only a name or a literal, else the first that holds one of its dimension.
 func (m *machine) sidesUnit(sides []*check.Node, f *frame) *check.Node {
 	for _, n := range sides {
-		if _, own := m.namedUnit(n, n.Type, f); own && named(n) {
+		if _, own := m.namedUnit(n, n.Type, f); own && named(n) && !m.bare(n, f) {
 			return n
 		}
 	}
@@ -97,6 +97,16 @@ func (m *machine) sidesUnit(sides []*check.Node, f *frame) *check.Node {
 		}
 	}
 	return nil
+}
+
+// bare tells that a side is only a name that is printed without a unit, as a
+// number or an angle: beside degrees or percent it is shown in those.
+func (m *machine) bare(n *check.Node, f *frame) bool {
+	if n.Op != check.Load {
+		return false
+	}
+	s := m.stepFor(n.Def, f)
+	return s != nil && !s.Declared && s.Unit.String() == ""
 }
 
 // named tells that a side is only a name or a literal, perhaps with a sign.
@@ -164,7 +174,7 @@ func (r *CheckResult) worst() int {
 	}
 	bk, bu := rank(0)
 	for e := 1; e < len(r.OK); e++ {
-		if k, u := rank(e); k > bk || k == bk && u > bu {
+		if k, u := rank(e); k > bk || k == bk && u > bu && !same(u, bu) {
 			best, bk, bu = e, k, u
 		}
 	}

@@ -259,7 +259,8 @@ func worse(a, b *CheckResult) bool {
 	return finite(x) && (!finite(y) || x > y)
 }
 
-// spread gives everything upstream of a check the entry that governs it.
+// spread gives everything upstream of a check, as far as values run over rows,
+// the entry that governs it.
 func (m *machine) spread(steps []*Step, byStep map[*Step]int, done, seen []bool, from int) {
 	t, entry := steps[from].Check.Type, steps[from].Check.Governs
 	stack := []int{from}
@@ -273,12 +274,29 @@ func (m *machine) spread(steps []*Step, byStep map[*Step]int, done, seen []bool,
 				continue
 			}
 			seen[k] = true
+			if plainValue(steps[k]) {
+				continue // which row it is taken from it says itself
+			}
 			stack = append(stack, k)
 			if !done[k] {
 				done[k] = m.setEntry(steps[k], t, entry)
 			}
 		}
 	}
+}
+
+// plainValue tells that a step has one value for all rows: a check's entry says
+// nothing of the rows that it was reduced from.
+func plainValue(s *Step) bool {
+	if s.Kind == Function || len(s.Value.Type.Rows) > 0 {
+		return false
+	}
+	for _, r := range s.Results {
+		if len(r.Value.Type.Rows) > 0 {
+			return false
+		}
+	}
+	return true
 }
 
 // setEntry sets the entry printed in full, where the check's rows say which.

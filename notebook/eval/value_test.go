@@ -240,6 +240,50 @@ last = 1
 	}
 }
 
+// Of equal entries the first governs, whatever the last bits say, and what a
+// plain value was reduced from is printed for its own entry, not for that of a
+// check further down.
+func TestGoverningTiesAndPlain(t *testing.T) {
+	for _, c := range []struct{ lines, id, want string }{
+		{"a = 0.3*V/V if V < 40 kN\n  = 3*0.1*V/V otherwise\ncheck a <= 1", "a", "LC1"},
+		{"worst = max(V)\nneed = 50 kN + M/(1 m)\ncheck need <= worst", "need", "LC1"},
+		{"worst = max(V)\nneed = 50 kN + M/(1 m)\ncheck need <= worst", "M", "LC1"},
+		{"worst = max(V)\nneed = 50 kN + M/(1 m)\ncheck need <= worst", "V", "LC2"},
+		{"worst = max(V)\ncheck worst <= 70 kN", "V", "LC2"},
+	} {
+		st := find(sound(t, rows+block(c.lines)), c.id)
+		if got := st.Value.Type.Mark(st.Entry); got != c.want {
+			t.Errorf("%q: %s is printed for %q, want %q", c.lines, c.id, got, c.want)
+		}
+	}
+	if x := find(sound(t, rows+block("a = 0.3*V/V if V < 40 kN\n  = 3*0.1*V/V otherwise")), "a").Value.Num; x[1] <= x[0] {
+		t.Errorf("the entries %v do not differ in the last bits", x)
+	}
+}
+
+// A side of a check that is only a name without a unit is shown in degrees or
+// percent where the other side is.
+func TestSidesInDegreesAndPercent(t *testing.T) {
+	for _, c := range []struct{ lines, want string }{
+		{"x = 0.01\nlim = 1 deg\ncheck x <= lim", "0.5730° 1.000°"},
+		{"x = 0.01\ncheck x <= 1 deg", "0.5730° 1.000°"},
+		{"x [mrad] = 0.01\ncheck x <= 1 deg", "10.00 mrad 1.000°"},
+		{"x = 0.01\nlim = 5 %\ncheck lim >= x", "5.000 % 1.000 %"},
+		{"x = 0.01\ncheck x <= 1", "0.01000 1.000"},
+		{"lim = 1 deg\ncheck lim >= 0.01", "1.000° 0.01000"},
+		{"x = 0.01\ny = 0.02\ncheck x <= y", "0.01000 0.02000"},
+	} {
+		s := sound(t, block(c.lines))
+		var got []string
+		for _, side := range s.Steps[len(s.Steps)-1].Check.Sides {
+			got = append(got, eval.PlainText(side.Value.Printed(0, side.Unit, side.Figures)))
+		}
+		if strings.Join(got, " ") != c.want {
+			t.Errorf("%q: got %q, want %q", c.lines, got, c.want)
+		}
+	}
+}
+
 // A set of rows is what its defining block made it, whichever way it is
 // carried; sets of different files with a mark in common are never paired.
 func TestCarriedRows(t *testing.T) {
