@@ -151,7 +151,9 @@ func symbol(name string) Symbol {
 		}
 	}
 	if dotted {
-		s.Sub = append(s.Sub, qualifier)
+		for _, p := range syntax.DisplayParts(qualifier) {
+			s.Sub = append(s.Sub, p.Text+strings.Repeat("′", p.Primes))
+		}
 	}
 	return s
 }

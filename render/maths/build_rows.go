@@ -1,6 +1,7 @@
 package maths
 
 import (
+	"math"
 	"slices"
 
 	"gusset/notebook/check"
@@ -93,7 +94,12 @@ func (w *builder) decides(c *syntax.Call, rows *check.Rows) int {
 	return at
 }
 
+// beyond tells that a value decides rather than one before it; of equal ones,
+// but for the last bits, the first does.
 func beyond(function string, v, best float64) bool {
+	if math.Abs(v-best) <= 1e-9*max(math.Abs(v), math.Abs(best)) {
+		return false
+	}
 	switch function {
 	case "min":
 		return v < best

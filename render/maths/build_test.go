@@ -196,6 +196,26 @@ func TestGoverns(t *testing.T) {
 	}
 }
 
+// What stands before a dot comes last in the subscript, parted as a name is.
+func TestNameBeforeTheDot(t *testing.T) {
+	for name, want := range map[string]string{"bolts.x": "bolts", "jnt_a.F_v_Rk": "v Rk jnt a", "p_c.u": "p c", "s_1'.A": "s 1′", "σ_1.x": "σ 1"} {
+		if got := strings.Join(maths.NewBuilder().Name(name).(maths.Symbol).Sub, " "); got != want {
+			t.Errorf("%s: the subscript is %q, want %q", name, got, want)
+		}
+	}
+}
+
+// Of equal entries the first is marked, whatever the last bits say.
+func TestGovernsFirstOfEqual(t *testing.T) {
+	s := last(t, "b = 0.3*steels.f_y/steels.f_y if steels.f_y < 300 MPa\n  = 3*0.1*steels.f_y/steels.f_y otherwise\na = max(b)")
+	d := s.Stmt.(*syntax.Definition)
+	row := maths.NewBuilder().Put(d.Branches[0].Value, s, s.Value.Type, 0)
+	text := string(maths.AppendMathML(nil, row))
+	if mark, other := strings.Index(text, `<mn class="g">0.3000`), strings.Index(text, `<mn>0.3000`); mark < 0 || other < mark {
+		t.Errorf("the first entry is not the one marked: %s", text)
+	}
+}
+
 func marked(n maths.Node) string {
 	switch n := n.(type) {
 	case maths.Row:
