@@ -12,6 +12,8 @@ import (
 	"strings"
 	"testing"
 
+	"github.com/yuin/goldmark/ast"
+
 	"gusset/notebook"
 )
 
@@ -89,6 +91,25 @@ func TestImages(t *testing.T) {
 	inFrame(t, l)
 	if _, err := l.write(fixedDate); err != nil {
 		t.Fatal(err)
+	}
+}
+
+// The words under an image have the values that are named in them.
+func TestImageWords(t *testing.T) {
+	text := front + "\n```calc\nw = 320 mm # Width [drawing S-11]\n```\n\n![Plate, {w} *wide*](rgba.png)\n"
+	d := newDocument(pageOf(t, text, imageFiles(t)))
+	found := false
+	_ = ast.Walk(d.page.Sheet.Doc, func(n ast.Node, entering bool) (ast.WalkStatus, error) {
+		if im, ok := n.(*ast.Image); ok && entering {
+			found = true
+			if got, want := d.imageWords(im), "Plate, 320 mm wide"; got != want {
+				t.Errorf("got %q, want %q", got, want)
+			}
+		}
+		return ast.WalkContinue, nil
+	})
+	if !found {
+		t.Error("there is no image")
 	}
 }
 

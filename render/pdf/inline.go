@@ -186,29 +186,6 @@ func (t *runningText) value(index int) {
 	}
 }
 
-// plainWords are the words of inline content, without any styling.
-func (d *document) plainWords(n ast.Node) string {
-	var b strings.Builder
-	_ = ast.Walk(n, func(n ast.Node, entering bool) (ast.WalkStatus, error) {
-		if !entering {
-			return ast.WalkContinue, nil
-		}
-		switch n := n.(type) {
-		case *ast.Text:
-			b.WriteString(notebook.Unescape(n.Segment.Value(d.source)))
-			if n.SoftLineBreak() || n.HardLineBreak() {
-				b.WriteByte(' ')
-			}
-		case *ast.String:
-			b.Write(n.Value)
-		case *ast.AutoLink:
-			b.Write(n.Label(d.source))
-		}
-		return ast.WalkContinue, nil
-	})
-	return b.String()
-}
-
 // target says where a link of the prose leads on paper: to a place in the
 // document, or to an address that a reader may open. A file beside the calc is
 // neither.

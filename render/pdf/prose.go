@@ -81,7 +81,7 @@ func (b *prose) heading(n *ast.Heading) {
 	if h != nil {
 		level, number, title, anchor = h.Level, h.Number, h.Text, h.Anchor
 	} else {
-		title = b.doc.plainWords(n)
+		title = b.doc.page.Sheet.PlainText(n)
 	}
 	p := b.doc.inlines(n, b.sized(level))
 	b.titled(level, number, title, anchor, p)
@@ -361,7 +361,7 @@ func (d *document) imageOf(n *ast.Image) *image { return d.album.image(string(n.
 
 // imageWords are the words of an image: what it shows, and its title behind.
 func (d *document) imageWords(n *ast.Image) string {
-	words, title := d.plainWords(n), notebook.Unescape(n.Title)
+	words, title := d.page.Sheet.PlainText(n), notebook.Unescape(n.Title)
 	if title == "" || title == words {
 		return words
 	}
