@@ -30,6 +30,7 @@ type Line struct {
 	Governs     string // the mark of the entry that decides a check over rows
 	Note        string
 	Source      string
+	Step        *Step // the value or the check, nil for a heading
 }
 
 // Listing returns the calc's headings, values and checks in order.
@@ -53,7 +54,7 @@ func (s *Sheet) Listing() []Line {
 }
 
 func (s *Sheet) list(lines []Line, step *Step) []Line {
-	line := Line{Kind: ValueLine, Number: step.Number, Name: step.Symbol, Note: step.Note, Source: step.Source}
+	line := Line{Kind: ValueLine, Number: step.Number, Name: step.Symbol, Note: step.Note, Source: step.Source, Step: step}
 	switch step.Kind {
 	case eval.Check:
 		line.Kind, line.Name = CheckLine, s.checkText(step)
@@ -78,7 +79,7 @@ func (s *Sheet) list(lines []Line, step *Step) []Line {
 		}
 	case len(step.Results) > 0:
 		for i, r := range step.Results {
-			part := Line{Kind: ValueLine, Name: r.Symbol, Value: valueText(r), Note: r.Note, Source: r.Source}
+			part := Line{Kind: ValueLine, Name: r.Symbol, Value: valueText(r), Note: r.Note, Source: r.Source, Step: r}
 			if i == 0 {
 				part.Number, part.Note, part.Source = step.Number, step.Note, line.Source
 			}

@@ -1,6 +1,7 @@
 package main
 
 import (
+	"fmt"
 	"slices"
 	"testing"
 	"testing/fstest"
@@ -9,6 +10,15 @@ import (
 )
 
 const movable = "---\ncalc: C-1\n---\n```calc\n"
+
+// cases is a block of load cases with one force each; lines may follow it.
+func cases(forces ...int) string {
+	b := "```\n```cases\ncase | N [kN]\n"
+	for i, n := range forces {
+		b += fmt.Sprintf("LC%d | %d\n", i+1, n)
+	}
+	return b + "```\n```calc\n"
+}
 
 func sheetOf(t *testing.T, lines string) *notebook.Sheet {
 	t.Helper()
@@ -37,6 +47,13 @@ func TestMoved(t *testing.T) {
 			[]string{"check (2) new, OK", "check (3) now NG", "a 2 → 3 mm", "b new"}},
 		{"checks of one text keep their order", "a = 2 mm\ncheck a <= 2 mm\ncheck a <= 2 mm", "a = 2 mm\ncheck a <= 2 mm",
 			[]string{"check (2) gone"}},
+		{"a check with another text", "a = 2 mm\ncheck a <= 3 mm\ncheck a <= 4 mm", "a = 2 mm\ncheck a <= 1 mm\ncheck a <= 5 mm",
+			[]string{"check (1) rewritten, now NG", "check (2) rewritten, still OK"}},
+		{"within the range", cases(10, 42, 55), cases(10, 43, 55), []string{"N at LC2 42 → 43 kN"}},
+		{"several within the range, and what follows", cases(10, 42, 43, 55) + "M = N*2 m", cases(10, 44, 45, 55) + "M = N*2 m",
+			[]string{"N at LC2 42 → 44 kN and 1 more", "M at LC2 84.00 → 88.00 kN·m and 1 more"}},
+		{"more within the range", cases(55, 10), cases(55, 10, 42), []string{"case LC1, LC2 → LC1, LC2, LC3", "N 2 → 3 entries"}},
+		{"the range", cases(10, 42), cases(10, 43), []string{"N 10 kN to 42 kN (LC2 governs) → 10 kN to 43 kN (LC2 governs)"}},
 		{"not required any more", "a = 2 mm\ncheck a <= 2 mm if a > 1 mm", "a = 1 mm\ncheck a <= 2 mm if a > 1 mm",
 			[]string{"check (1) now not required", "a 2 → 1 mm"}},
 	} {

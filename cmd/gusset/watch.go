@@ -246,12 +246,16 @@ func (w *watcher) walk() {
 		if slices.Contains(now.files, file) {
 			continue
 		}
+		stay := ""
+		if c := w.calcs[file]; c != nil && len(c.files) > 0 {
+			stay = "; its pages stay as they are"
+		}
 		delete(w.calcs, file)
 		switch {
 		case stampOf(file).info != nil:
-			w.t.problem(fmt.Errorf("%s: no longer a calc file; its pages stay as they are", file))
+			w.t.problem(fmt.Errorf("%s: no longer a calc file%s", file, stay))
 		case stampOf(filepath.Dir(file)).info != nil:
-			w.t.problem(fmt.Errorf("%s: it is gone; its pages stay as they are", file))
+			w.t.problem(fmt.Errorf("%s: it is gone%s", file, stay))
 		}
 	}
 	w.found = now
@@ -323,6 +327,7 @@ func (w *watcher) finish(r store.Result, stem string, pages written) string {
 		return name + ": not written" + kept(c)
 	}
 	w.tell(r.File)
+	renamed := len(c.files) > 0 && !slices.Equal(c.files, pages.files)
 	c.files = pages.files
 	line := name + ": "
 	switch {
@@ -332,6 +337,9 @@ func (w *watcher) finish(r store.Result, stem string, pages written) string {
 		line += "its pages were gone and are written again"
 	default:
 		line += movedLine(moved(c.good, r.Sheet))
+	}
+	if renamed {
+		line += " → " + names(pages.files) + "; the pages of the old name stay"
 	}
 	c.good, c.lost = r.Sheet, false
 	return line

@@ -299,7 +299,22 @@ func TestWatchNames(t *testing.T) {
 	p.wait(t, "b.md: not written")
 	write(t, filepath.Join(dir, "b.md"), strings.Replace(lug("49"), "C-1", "C-2", 1))
 	p.wait(t, "b.md: 1 check, OK → out/C-2.html")
+	write(t, filepath.Join(dir, "b.md"), strings.Replace(lug("49"), "C-1", "C-3", 1))
+	p.wait(t, "b.md: no value moved → out/C-3.html; the pages of the old name stay")
+	if page := read(t, filepath.Join(dir, "out", "C-2.html")); !strings.Contains(page, prose("49")) {
+		t.Error("the pages of the old name did not stay")
+	}
+	// One that never had pages leaves none.
+	write(t, filepath.Join(dir, "c.md"), lug("50"))
+	p.wait(t, "c.md: not written")
+	if err := os.Remove(filepath.Join(dir, "c.md")); err != nil {
+		t.Fatal(err)
+	}
+	p.wait(t, "gusset: c.md: it is gone")
 	p.interrupt(t)
+	if strings.Contains(p.said(), "c.md: it is gone;") {
+		t.Errorf("pages that never were are said to stay:\n%s", p.said())
+	}
 }
 
 // TestWatchEnds wants either signal to end it cleanly, with nothing left beside
