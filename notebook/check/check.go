@@ -67,6 +67,7 @@ func Check(in *Input) *Program {
 		p()
 	}
 	c.refs()
+	c.alike()
 	c.notes()
 	diag.Sort(c.prog.Diagnostics)
 	return c.prog
