@@ -242,24 +242,76 @@ func (w *watcher) walk() {
 	}
 	now := find(there)
 	now.files = append(now.files, missing...)
+	var gone []string
 	for _, file := range w.found.files {
-		if slices.Contains(now.files, file) {
-			continue
-		}
-		stay := ""
-		if c := w.calcs[file]; c != nil && len(c.files) > 0 {
-			stay = "; its pages stay as they are"
-		}
-		delete(w.calcs, file)
-		switch {
-		case stampOf(file).info != nil:
-			w.t.problem(fmt.Errorf("%s: no longer a calc file%s", file, stay))
-		case stampOf(filepath.Dir(file)).info != nil:
-			w.t.problem(fmt.Errorf("%s: it is gone%s", file, stay))
+		if !slices.Contains(now.files, file) {
+			gone = append(gone, file)
 		}
 	}
+	w.leave(gone, there)
 	w.found = now
 	w.tell("paths", append(problems, now.problems...)...)
+}
+
+// leave takes leave of calc files that the folders have no more. Those of a
+// folder that is gone are told of together, and not at all where the folder was
+// named and is told of itself.
+func (w *watcher) leave(gone, there []string) {
+	type left struct {
+		calcs int
+		pages bool
+	}
+	var folders []string
+	of := map[string]left{} // by the highest folder that is gone
+	for _, file := range gone {
+		pages := w.calcs[file] != nil && len(w.calcs[file].files) > 0
+		delete(w.calcs, file)
+		folder := goneFolder(file)
+		switch {
+		case stampOf(file).info != nil:
+			w.t.problem(fmt.Errorf("%s: no longer a calc file%s", file, stay(pages, 1)))
+		case folder == "":
+			w.t.problem(fmt.Errorf("%s: it is gone%s", file, stay(pages, 1)))
+		case slices.ContainsFunc(there, func(path string) bool { return inside(folder, path) }):
+			l, known := of[folder]
+			if !known {
+				folders = append(folders, folder)
+			}
+			of[folder] = left{l.calcs + 1, l.pages || pages}
+		}
+	}
+	for _, folder := range folders {
+		l := of[folder]
+		w.t.problem(fmt.Errorf("%s: it is gone with %s%s", folder, plural(l.calcs, "calc file"), stay(l.pages, l.calcs)))
+	}
+}
+
+// stay says that the pages of calc files that are gone stay.
+func stay(pages bool, calcs int) string {
+	switch {
+	case !pages:
+		return ""
+	case calcs == 1:
+		return "; its pages stay as they are"
+	}
+	return "; their pages stay as they are"
+}
+
+// goneFolder is the highest folder above a file that is not there, "" where its
+// own is.
+func goneFolder(file string) (gone string) {
+	for dir := filepath.Dir(file); stampOf(dir).info == nil; dir = filepath.Dir(dir) {
+		if gone = dir; dir == filepath.Dir(dir) {
+			break
+		}
+	}
+	return gone
+}
+
+// inside tells whether a path lies in a folder.
+func inside(path, folder string) bool {
+	rel, err := filepath.Rel(folder, path)
+	return err == nil && filepath.IsLocal(rel)
 }
 
 // tell tells the problems of a subject, unless they are the ones it had.

@@ -245,6 +245,18 @@ func TestWatchFolderMoved(t *testing.T) {
 		}
 		p.wait(t, "lug.md: 1 check, OK → out/C-1.html")
 	}
+	// A folder within what is watched: one line tells of all that was in it.
+	sub := filepath.Join(calcs, "sub")
+	write(t, filepath.Join(sub, "b.md"), strings.Replace(lug("48"), "C-1", "C-2", 1))
+	p.wait(t, "b.md: 1 check, OK → out/C-2.html")
+	if err := os.Rename(sub, away); err != nil {
+		t.Fatal(err)
+	}
+	p.wait(t, "gusset: job/calcs/sub: it is gone with 2 calc files; their pages stay as they are")
+	if err := os.Rename(away, sub); err != nil {
+		t.Fatal(err)
+	}
+	p.wait(t, "lug.md: 1 check, OK → out/C-1.html")
 	// Removed, and another one put in its place.
 	if err := os.RemoveAll(calcs); err != nil {
 		t.Fatal(err)
