@@ -2,6 +2,7 @@ package check
 
 import (
 	"fmt"
+	"strings"
 
 	"gusset/notebook/diag"
 	"gusset/notebook/slab"
@@ -327,13 +328,35 @@ func (l *lower) compare(x *syntax.Compare) *Node {
 func (l *lower) operands(x *syntax.Compare) []*Node {
 	args, bad := l.room(len(x.Operands)), false
 	for i, operand := range x.Operands {
-		args[i] = l.value(operand)
+		args[i] = l.operand(x, operand)
 		bad = bad || !args[i].ok()
 	}
 	if bad {
 		return nil
 	}
 	return args
+}
+
+// operand lowers one side; a bare word beside a text gets its quotes offered.
+func (l *lower) operand(x *syntax.Compare, side syntax.Expr) *Node {
+	name, ok := side.(*syntax.Name)
+	if !ok || strings.Contains(name.ID, ".") || l.e.lookup(name.ID) != nil {
+		return l.value(side)
+	}
+	if _, later := l.e.c.later[name.ID]; later {
+		return l.value(side)
+	}
+	for _, other := range x.Operands {
+		_, text := other.(*syntax.Text)
+		if n, ok := other.(*syntax.Name); ok {
+			d := l.e.lookup(n.ID)
+			text = d != nil && d.Type.Kind == Text
+		}
+		if text {
+			return l.fail(diag.UnknownName, name.At, fmt.Sprintf("%s is not defined; a text stands in quotes", name.Text), fmt.Sprintf("write `\"%s\"`", name.Text))
+		}
+	}
+	return l.value(side)
 }
 
 // alike tells that each operand has the dimension of the one before it.
@@ -377,6 +400,12 @@ func (l *lower) comparable(x *syntax.Compare, i int, a, b *Node) bool {
 	if (a.Type.Kind == Point) != (b.Type.Kind == Point) {
 		l.fail(diag.DimensionMismatch, at, words(), "a temperature point is compared with a point (degC, degF), a difference with a difference (K, degR)")
 		return false
+	}
+	for _, o := range [2][2]*Node{{a, b}, {b, a}} {
+		if o[0].bare && o[1].Op == Load && angular(o[1].Def.Unit) && o[1].Def.Unit.String() != "mrad" {
+			l.report(diag.Warning, diag.BareAngle, o[0].Expr.Span(), fmt.Sprintf("`%s` is an angle in %s, and the bare number %s is read as radians", l.print(o[1].Expr), o[1].Def.Unit.String(), l.print(o[0].Expr)),
+				fmt.Sprintf("write `%s deg` for degrees, `%s rad` to say radians", l.print(o[0].Expr), l.print(o[0].Expr)))
+		}
 	}
 	if f, g := a.Type.Freq, b.Type.Freq; f != NoFreq && g != NoFreq && f != g {
 		l.fail(diag.DimensionMismatch, at, fmt.Sprintf("`%s` is in %s, but `%s` in %s: they differ by the factor 2π", l.print(x.Operands[i]), f.words(), l.print(x.Operands[i+1]), g.words()),

@@ -315,11 +315,19 @@ func takesAngle(p *syntax.Param) bool {
 	if p.Unit == nil {
 		return false
 	}
-	switch p.Unit.Unit.String() {
-	case "deg", "mrad", "arcmin", "arcsec", "grad":
-		return p.Unit.Quantity == ""
+	return p.Unit.Quantity == "" && angular(&p.Unit.Unit) || p.Unit.Quantity == "angle"
+}
+
+// angular tells that a unit is one of angles, other than rad.
+func angular(u *units.Unit) bool {
+	if u == nil {
+		return false
 	}
-	return p.Unit.Quantity == "angle"
+	switch u.String() {
+	case "deg", "mrad", "arcmin", "arcsec", "grad":
+		return true
+	}
+	return false
 }
 
 // loop finds the rows that a call runs over, once for each entry: those of

@@ -1,6 +1,7 @@
 package check
 
 import (
+	"bytes"
 	"fmt"
 	"strings"
 
@@ -125,7 +126,30 @@ func (l *lower) atMark(x *syntax.AtMark) *Node {
 	if rows == nil {
 		return invalid
 	}
+	if mark.Op == TextLit && !hasMark(rows, mark.Str) {
+		return l.noRow(x, rows, mark.Str)
+	}
 	return l.without(x, n, rows, mark)
+}
+
+// mostNear bounds among how many marks a message looks for the one that was meant.
+const mostNear = 1000
+
+// noRow reports a mark that no row has, of a branch that is not taken too.
+func (l *lower) noRow(x *syntax.AtMark, rows *Rows, mark string) *Node {
+	near := ""
+	if rows.N() <= mostNear {
+		near = diag.Nearest(mark, rows.Marks)
+	}
+	hint := fmt.Sprintf("did you mean `%s`?", near)
+	switch {
+	case near != "":
+	case rows.N() > 8:
+		hint = fmt.Sprintf("its rows are %s and %d more", strings.Join(rows.Marks[:8], ", "), rows.N()-8)
+	default:
+		hint = "its rows are " + strings.Join(rows.Marks, ", ")
+	}
+	return l.fail(diag.UnknownMark, x.Y.Span(), fmt.Sprintf("%s has no row `%s`", rows.Name, mark), hint)
 }
 
 // mark lowers what stands behind `at`; a bare mark gets its quotes offered.
@@ -142,8 +166,8 @@ func (l *lower) mark(y syntax.Expr) *Node {
 			break
 		}
 		for _, m := range r.Marks {
-			if m == name.Text {
-				return l.fail(diag.UnknownName, name.At, fmt.Sprintf("`%s` is no value; it is a mark of %s", name.Text, r.Name), fmt.Sprintf("write the mark in quotes: `at \"%s\"`", name.Text))
+			if m == name.Text || strings.HasPrefix(m, name.Text) && bytes.HasPrefix(l.e.src.Text[name.At.Start:], []byte(m)) {
+				return l.fail(diag.UnknownName, name.At, fmt.Sprintf("`%s` is no value; it is a mark of %s", m, r.Name), fmt.Sprintf("write the mark in quotes: `at \"%s\"`", m))
 			}
 		}
 	}

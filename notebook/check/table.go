@@ -364,6 +364,9 @@ func (t *tableCheck) cell(l *lower, cell *syntax.Cell, col *syntax.Column, d *De
 	}
 	if n.Type.Dim != d.Type.Dim || n.Type.Kind != d.Type.Kind {
 		message := fmt.Sprintf("%s holds %s, but `%s` is %s", col.Name.Text, l.e.c.describe(Type{Kind: d.Type.Kind, Dim: d.Type.Dim}), l.print(cell.Expr), l.e.c.describe(n.Type))
+		if _, ok := cell.Expr.(*syntax.Number); ok && d.Unit != nil && d.Unit.String() != "" {
+			return l.fail(diag.DimensionMismatch, cell.At, message, "a figure without a unit is in "+d.Unit.String()+", as the header says")
+		}
 		l.mismatch(cell.At, message, Type{Kind: d.Type.Kind, Dim: d.Type.Dim}, n.Type)
 		return invalid
 	}

@@ -120,7 +120,11 @@ func (m *machine) verdict(n *check.Node, f *frame, t *check.Type, entry int, ok 
 	}
 	for i, op := range n.Cmp {
 		a, b := n.Args[i], n.Args[i+1]
-		text := fmt.Sprintf("%s %s %s", m.show(a, f, t, entry), sign(op), m.showIn(b, a, f, t, entry))
+		left := m.show(a, f, t, entry)
+		if m.bare(a, f) {
+			left = m.showIn(a, b, f, t, entry)
+		}
+		text := fmt.Sprintf("%s %s %s", left, sign(op), m.showIn(b, a, f, t, entry))
 		if ok {
 			if i == len(n.Cmp)-1 {
 				return text
@@ -141,7 +145,7 @@ func (m *machine) verdict(n *check.Node, f *frame, t *check.Type, entry int, ok 
 		xn, _ := x.(float64)
 		yn, _ := y.(float64)
 		if !compare(op, xn, yn) {
-			return fmt.Sprintf("%s %s %s%s", m.show(a, f, t, entry), sign(turned(op)), m.showIn(b, a, f, t, entry), misses(op, xn, yn, a.Type.Kind))
+			return fmt.Sprintf("%s %s %s%s", left, sign(turned(op)), m.showIn(b, a, f, t, entry), misses(op, xn, yn, a.Type.Kind))
 		}
 	}
 	return ""
@@ -157,7 +161,7 @@ func asText(x any) *string {
 // showIn shows a side in the unit of the other, so that both can be compared by eye.
 func (m *machine) showIn(n, other *check.Node, f *frame, t *check.Type, entry int) string {
 	u := m.nodeUnit(other, f)
-	if _, own := m.namedUnit(n, n.Type, f); own || u.Dim() != n.Type.Dim {
+	if _, own := m.namedUnit(n, n.Type, f); own && !m.bare(n, f) || u.Dim() != n.Type.Dim {
 		return m.show(n, f, t, entry)
 	}
 	x, err := m.entry(n, f, t, entry)

@@ -28,7 +28,11 @@ func (m *machine) plot(p *check.PlotPlan) *Plot {
 	if out.Checks {
 		return out
 	}
-	x, err := m.points(p)
+	err := m.ready(p)
+	var x []float64
+	if err == nil {
+		x, err = m.points(p)
+	}
 	if err == nil {
 		err = m.curves(p, out, x)
 	}
@@ -45,6 +49,19 @@ func (m *machine) plot(p *check.PlotPlan) *Plot {
 		return nil
 	}
 	return out
+}
+
+// ready tells whether all that is drawn was computed: what failed in its own
+// line fails again over the range, and is not reported twice.
+func (m *machine) ready(p *check.PlotPlan) error {
+	for _, curves := range [][]check.PlotCurve{p.Curves, p.Limits} {
+		for _, c := range curves {
+			if m.stepFor(c.Def, m.top) == nil {
+				return depends(c.Def.Line)
+			}
+		}
+	}
+	return nil
 }
 
 // points are the values of the swept name, from one end of the range to the
@@ -101,9 +118,6 @@ func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
 	xs := inUnit(x, s.Unit)
 	for i, c := range p.Curves {
 		own := m.stepFor(c.Def, m.top)
-		if own == nil {
-			return depends(c.Def.Line)
-		}
 		if i == 0 {
 			out.Y = Axis{Symbol: own.Symbol, Unit: own.Unit}
 		}
@@ -115,9 +129,6 @@ func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
 	}
 	for _, c := range p.Limits {
 		own := m.stepFor(c.Def, m.top)
-		if own == nil {
-			return depends(c.Def.Line)
-		}
 		lines, err := m.curve(c, own, f, p.Rows, xs, out.Y.Unit)
 		if err != nil {
 			return err
