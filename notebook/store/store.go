@@ -114,35 +114,35 @@ func (s *Store) Changed(files []string) {
 			s.roots = map[string]*root{}
 			return
 		}
-		full := resolved(file)
 		for _, r := range s.roots {
-			if within, ok := r.within(full); ok {
+			for _, within := range r.within(file) {
 				r.forget(within)
 			}
 		}
 	}
 }
 
-// resolved is the absolute path of a file that may be gone, the links of its
-// folder resolved.
-func resolved(file string) string {
+// within lists a file's paths within the root, which may be gone: the one that it
+// is named by, and the one with the links of its folder resolved. A calc that
+// names a file through a link within the root knows it by the first. The root
+// itself is ".".
+func (r *root) within(file string) []string {
 	full, err := filepath.Abs(file)
 	if err != nil {
-		return file
+		full = file
 	}
+	spelled := []string{full}
 	if dir, err := filepath.EvalSymlinks(filepath.Dir(full)); err == nil {
-		return filepath.Join(dir, filepath.Base(full))
+		spelled = append(spelled, filepath.Join(dir, filepath.Base(full)))
 	}
-	return full
-}
-
-// within is a file's path within the root; the root itself is ".".
-func (r *root) within(full string) (string, bool) {
-	rel, err := filepath.Rel(r.dir, full)
-	if err != nil || rel == ".." || strings.HasPrefix(rel, ".."+string(filepath.Separator)) {
-		return "", false
+	var paths []string
+	for _, full := range slices.Compact(spelled) {
+		rel, err := filepath.Rel(r.dir, full)
+		if err == nil && filepath.IsLocal(rel) {
+			paths = append(paths, filepath.ToSlash(rel))
+		}
 	}
-	return filepath.ToSlash(rel), true
+	return paths
 }
 
 // forget drops the drafts that were read from a file or from a folder. Their
@@ -179,21 +179,18 @@ func (s *Store) Files() []string {
 func (s *Store) Depends(file string) []string {
 	s.mu.Lock()
 	defer s.mu.Unlock()
-	full := resolved(file)
 	var out []string
 	for _, r := range s.roots {
-		within, ok := r.within(full)
-		if !ok {
-			continue
-		}
-		for path, m := range r.sheets {
-			if slices.Contains(m.sheet.Files, within) {
-				out = append(out, filepath.Join(r.dir, filepath.FromSlash(path)))
+		for _, within := range r.within(file) {
+			for path, m := range r.sheets {
+				if slices.Contains(m.sheet.Files, within) {
+					out = append(out, filepath.Join(r.dir, filepath.FromSlash(path)))
+				}
 			}
 		}
 	}
 	slices.Sort(out)
-	return out
+	return slices.Compact(out)
 }
 
 // batch is one call of Compile.

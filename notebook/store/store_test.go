@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"sync"
 	"testing"
@@ -148,6 +149,30 @@ func TestCycle(t *testing.T) {
 		if ids := errorIDs(sheet); ids != "" {
 			t.Error(sheet.Path, ids)
 		}
+	}
+}
+
+// A file that is named through a link within the root changes by either name.
+func TestChangesThroughLinks(t *testing.T) {
+	dir := folder(t, "register.yaml", "", "lib/loads.md", calc("C-0", "", "P = 48 kN  # Pull [load schedule]"),
+		"lug.md", calc("C-1", "from: {loads: link/loads.md}\n", "Q = 2*loads.P"))
+	if err := os.Symlink("lib", filepath.Join(dir, "link")); err != nil {
+		t.Skip(err)
+	}
+	s := New()
+	before := sheets(t, s, dir, "lug.md")[0]
+	write(t, filepath.Join(dir, "lib", "loads.md"), calc("C-0", "", "P = 50 kN  # Pull [load schedule]"))
+	named := slices.IndexFunc(s.Files(), func(f string) bool { return strings.HasSuffix(f, filepath.Join("link", "loads.md")) })
+	if named < 0 {
+		t.Fatal(s.Files())
+	}
+	s.Changed(s.Files()[named : named+1])
+	after := sheets(t, s, dir, "lug.md")[0]
+	if before.Failed() || after.Failed() || after.Steps[0].Value.Num[0] != 100e3 {
+		t.Error(after.Steps[0].Value.Num, after.Diagnostics)
+	}
+	if got := s.Depends(filepath.Join(dir, "link", "loads.md")); len(got) != 2 {
+		t.Error(got)
 	}
 }
 
