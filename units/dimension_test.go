@@ -44,6 +44,8 @@ func TestDimensionWords(t *testing.T) {
 		{"N*m*s", "kg*m^2/s", "", "moment times time", "a moment times time"},
 		{"kN*m^3", "kg*m^4/s^2", "", "force times volume", "a force times volume"},
 		{"mm^5", "m^5", "", "length^5", "a length^5"},
+		{"mm^(13/5)", "m^(13/5)", "", "length^(13/5)", "a length^(13/5)"},
+		{"N*mm^(8/5)", "kg*m^(13/5)/s^2", "", "moment times length^(3/5)", "a moment times length^(3/5)"},
 		{"m^2/s", "m^2/s", "", "area per time", "an area per time"},
 		{"m^2/s^2", "m^2/s^2", "", "speed^2", "a speed^2"},
 		{"mol/L", "mol/m^3", "", "amount of substance per volume", "an amount of substance per volume"},

@@ -23,7 +23,7 @@ func (d Dimension) Words() string {
 		cost := 2 * len(factors)
 		for _, f := range factors {
 			if f.pow != (exponent{num: 1}) && f.pow != (exponent{num: -1}) {
-				cost += int(magnitude(int64(f.pow.num))) // "stress times length^(1/2)" before "force per length^(3/2)"
+				cost += int(magnitude(int64(f.pow.num)) / uint64(f.pow.den())) // "stress times length^(1/2)" before "force per length^(3/2)"
 			}
 		}
 		if best == "" || cost < bestCost {
