@@ -139,6 +139,9 @@ func (s *Sheet) fill(c *check.Carry, e *eval.Carry) {
 		switch step.Kind {
 		case eval.Given, eval.Computed, eval.Carried:
 			enter(step)
+			if len(step.Results) > 0 { // a helper with several results is no value itself
+				c.Values[step.ID] = check.Type{Kind: check.Bundle}
+			}
 			for _, r := range step.Results {
 				enter(r)
 			}
