@@ -195,11 +195,11 @@ func (s *Sheet) nameHeadings(d *Draft, ids anchors) {
 }
 
 // PlainText is the text of a node and all below it on one line, values
-// included: what stands for an image that cannot be seen, or for a heading in a list.
+// included as pages print them: what stands for an image that cannot be seen, or for a heading in a list.
 func (s *Sheet) PlainText(n ast.Node) string {
 	return plain(n, s.Source.Text, func(i int) string {
 		if i < len(s.Refs) {
-			return s.Refs[i].Text
+			return s.Refs[i].typeset()
 		}
 		return ""
 	})

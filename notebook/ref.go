@@ -25,16 +25,28 @@ func newRef(r eval.RefResult, inUnit bool) *Ref {
 	}
 	ref.Step = r.Step
 	ref.Parts = refParts(r.Step, r.Unit, inUnit)
-	var b strings.Builder
-	for _, p := range ref.Parts {
-		b.WriteString(p.Words)
-		if p.Words == "" {
-			b.WriteString(eval.PlainText(p.Pieces))
-		}
-	}
-	ref.Text = b.String()
+	ref.Text = ref.text(func(figures string) string { return figures })
 	return ref
 }
+
+// text joins the parts of a value, each number as set writes its figures.
+func (r *Ref) text(set func(figures string) string) string {
+	var b strings.Builder
+	for _, p := range r.Parts {
+		b.WriteString(p.Words)
+		if p.Words == "" {
+			pieces := slices.Clone(p.Pieces)
+			for i := range pieces {
+				pieces[i].Figures = set(pieces[i].Figures)
+			}
+			b.WriteString(eval.PlainText(pieces))
+		}
+	}
+	return b.String()
+}
+
+// typeset is the value within a line of a page: the true minus, ×10ⁿ.
+func (r *Ref) typeset() string { return r.text(units.Typeset) }
 
 func refParts(s *Step, unit units.Unit, inUnit bool) []RefPart {
 	printed := func(entry int) []eval.Piece {

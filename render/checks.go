@@ -8,6 +8,7 @@ import (
 	"gusset/notebook/eval"
 	"gusset/notebook/syntax"
 	"gusset/render/maths"
+	"gusset/units"
 )
 
 // check sets a check: the entry that governs in full, and what came out.
@@ -70,7 +71,7 @@ func (c *composer) verdict(r *eval.CheckResult) *Verdict {
 	}
 	if r.Governs < len(r.Ratio) {
 		v.Ratio = r.Ratio[r.Governs]
-		v.Utilisation = eval.UtilisationText(v.Ratio, v.OK, r.Equal)
+		v.Utilisation = units.Typeset(eval.UtilisationText(v.Ratio, v.OK, r.Equal))
 	}
 	return v
 }

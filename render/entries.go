@@ -182,7 +182,11 @@ func (c *composer) computed(s *eval.Step, e *Entry) {
 	}
 	e.Formula.Steps = append(make([]maths.Step, 0, 2), maths.Step{Sign: "=", Right: c.maths.Written(s)})
 	for _, t := range s.Trials {
-		e.Trials = append(e.Trials, Trial{Value: t.Value, Mark: t.Mark, Why: t.Why, OK: t.OK})
+		tried := t.Value
+		if s.Value.Type.Kind != check.Text {
+			tried = typeset(tried)
+		}
+		e.Trials = append(e.Trials, Trial{Value: tried, Mark: t.Mark, Why: typeset(t.Why), OK: t.OK})
 	}
 	if bundle || len(d.Branches) == 0 {
 		return

@@ -238,6 +238,33 @@ func TestEntries(t *testing.T) {
 	}
 }
 
+// Figures within texts are set as everywhere on a page: the true minus, ×10ⁿ.
+func TestFiguresWithinTexts(t *testing.T) {
+	p := render.NewPage(compile(t, "---\ncalc: T-1\n---\n\n# From {a}\n\n> Hold: At least {a}, at most {b}.\n\n"+
+		"```calc\na = -2.5 mm\nb = 2.1E5 MPa\nx = first of -5 mm, 1e3 mm with x >= a/1e6\ncheck 1e12 mm <= 2 mm\n```\n\n"+
+		"```schedule s\nmark | u [mm] | v\nA-1 | -1.5E3 | HEB-1e3\nA-2 | 1/2 | B\n```\n"))
+	x := p.Blocks[0][2]
+	if got := x.Trials[0].Value + " " + x.Trials[0].Why; got != "−5.000 mm −5.000 mm < −2.500×10⁻⁶ mm" {
+		t.Errorf("first trial is %s", got)
+	}
+	if got := x.Trials[1].Value + " " + x.Trials[1].Why; got != "1×10³ mm 1000 mm ≥ −2.500×10⁻⁶ mm" {
+		t.Errorf("second trial is %s", got)
+	}
+	if got := p.Blocks[0][3].Verdict.Utilisation; got != "5.00×10¹¹" {
+		t.Errorf("utilisation is %s", got)
+	}
+	cell := func(row, col int) string { return string(p.Blocks[1][0].Tables[0].AppendCell(nil, row, col)) }
+	if got := cell(0, 1) + " " + cell(1, 1) + " " + cell(0, 2); got != "−1.5×10³ 1/2 HEB-1e3" {
+		t.Errorf("cells are %s", got)
+	}
+	if got := p.Lists.Holds[0].Text; got != "At least −2.5 mm, at most 2.1×10⁵ MPa." {
+		t.Errorf("the hold is listed as %s", got)
+	}
+	if got := p.Sheet.Headings[0].Text; got != "From −2.5 mm" {
+		t.Errorf("the heading is listed as %s", got)
+	}
+}
+
 // The summary has NG first, then falling ratios, those without one, and last
 // those that are not required.
 func TestSummary(t *testing.T) {

@@ -5,11 +5,13 @@ import (
 	"math"
 	"slices"
 	"strconv"
+	"strings"
 
 	"gusset/notebook"
 	"gusset/notebook/check"
 	"gusset/notebook/eval"
 	"gusset/render/maths"
+	"gusset/units"
 )
 
 const (
@@ -141,7 +143,7 @@ func (c *composer) schedule(b *notebook.Block) Entry {
 		}
 		t.columns = append(t.columns, column{governs: -1, cell: func(dst []byte, row int) []byte {
 			if row < len(s.Cells) && s.Cells[row] != "" {
-				return appendWritten(dst, s.Cells[row])
+				return append(dst, units.Typeset(s.Cells[row])...)
 			}
 			return appendFigures(dst, s.Printed(row))
 		}})
@@ -165,13 +167,17 @@ func lastPart(name string) string {
 	return name
 }
 
-// appendWritten appends a cell in its author's figures, with a true minus.
-func appendWritten(dst []byte, cell string) []byte {
-	if len(cell) > 1 && cell[0] == '-' && (cell[1] >= '0' && cell[1] <= '9' || cell[1] == '.') {
-		dst = append(dst, "−"...)
-		cell = cell[1:]
+// typeset is a text with its numbers as pages set them: the true minus, ×10ⁿ.
+func typeset(text string) string {
+	words := strings.Split(text, " ")
+	for i, w := range words {
+		figures := strings.TrimRight(w, ",;")
+		if unsigned := strings.TrimPrefix(figures, "-"); unsigned == "" || !strings.Contains(".0123456789", unsigned[:1]) {
+			continue
+		}
+		words[i] = units.Typeset(figures) + w[len(figures):]
 	}
-	return append(dst, cell...)
+	return strings.Join(words, " ")
 }
 
 // checkTables are the utilisations of a check over rows: of every entry, or
@@ -279,7 +285,7 @@ func (t *Table) addOutcome(r *eval.CheckResult, entry func(row int) int, governs
 			if text == "" {
 				text = strconv.FormatFloat(r.Ratio[i], 'f', 2, 64)
 			}
-			return append(dst, text...)
+			return append(dst, units.Typeset(text)...)
 		}},
 		column{governs: governs, cell: func(dst []byte, row int) []byte {
 			switch i := entry(row); {

@@ -110,8 +110,33 @@ func appendPadded(out, digits []byte, width int) []byte {
 	return out
 }
 
-// SplitExponent parts a printed number at its power of ten: "6.036e-4" is "6.036" and "-4".
+// SplitExponent parts a number at its power of ten: "6.036e-4" is "6.036" and "-4",
+// "2.1E+5" is "2.1" and "5".
 func SplitExponent(s string) (mantissa, exponent string) {
-	mantissa, exponent, _ = strings.Cut(s, "e")
-	return mantissa, exponent
+	i := strings.IndexAny(s, "eE")
+	if i < 1 || (s[i-1] < '0' || s[i-1] > '9') && s[i-1] != '.' {
+		return s, ""
+	}
+	return s[:i], strings.TrimPrefix(s[i+1:], "+")
+}
+
+// Typeset is a number as a page sets it within a text: "-6.036e-4" is −6.036×10⁻⁴.
+func Typeset(s string) string {
+	mantissa, exponent := SplitExponent(s)
+	if rest, negative := strings.CutPrefix(mantissa, "-"); negative {
+		mantissa = "−" + rest
+	}
+	if exponent == "" {
+		return mantissa
+	}
+	b := []rune(mantissa + "×10")
+	for _, c := range exponent {
+		switch {
+		case c == '-':
+			b = append(b, superMinus)
+		case c >= '0' && c <= '9':
+			b = append(b, superDigits[c-'0'])
+		}
+	}
+	return string(b)
 }

@@ -66,9 +66,21 @@ func TestFormat(t *testing.T) {
 func TestSplitExponent(t *testing.T) {
 	for _, row := range []struct{ text, mantissa, exponent string }{
 		{"6.036e-4", "6.036", "-4"}, {"1.000e6", "1.000", "6"}, {"48.89", "48.89", ""}, {"0", "0", ""}, {"-2.5e-7", "-2.5", "-7"},
+		{"2.1E5", "2.1", "5"}, {"1.5e+3", "1.5", "3"}, {"1.00, equal", "1.00, equal", ""}, {"equal", "equal", ""}, {"", "", ""},
 	} {
 		if m, e := SplitExponent(row.text); m != row.mantissa || e != row.exponent {
 			t.Errorf("%s is %s and %s", row.text, m, e)
+		}
+	}
+}
+
+func TestTypeset(t *testing.T) {
+	for _, row := range []struct{ text, want string }{
+		{"48.89", "48.89"}, {"-3", "−3"}, {"6.036e-4", "6.036×10⁻⁴"}, {"-2.1E5", "−2.1×10⁵"}, {"1.5e+12", "1.5×10¹²"},
+		{"-1 1/2", "−1 1/2"}, {"1.00, equal", "1.00, equal"}, {"", ""},
+	} {
+		if got := Typeset(row.text); got != row.want {
+			t.Errorf("%s is set %s, want %s", row.text, got, row.want)
 		}
 	}
 }

@@ -4,6 +4,8 @@ import (
 	"math"
 	"strconv"
 	"strings"
+
+	"gusset/units"
 )
 
 // UtilisationText is a check's utilisation as it is printed, which never
@@ -22,7 +24,25 @@ func UtilisationText(ratio float64, ok, equal bool) string {
 	case !ok && ratio <= 1:
 		return ""
 	}
+	if ratio >= million {
+		return roundedUpPower(ratio)
+	}
 	return roundedUp(ratio)
+}
+
+// million is from where on a ratio is printed with a power of ten, as any value is.
+const million = 1e6
+
+// roundedUpPower rounds a ratio up to two decimals before its power of ten.
+func roundedUpPower(ratio float64) string {
+	mantissa, exponent := units.SplitExponent(strconv.FormatFloat(ratio*(1-dust), 'e', -1, 64))
+	figures, _ := strconv.ParseFloat(mantissa, 64)
+	power, _ := strconv.Atoi(exponent)
+	text := roundedUp(figures)
+	if text == "10.00" {
+		text, power = "1.00", power+1
+	}
+	return text + "e" + strconv.Itoa(power)
 }
 
 const decimals = 2

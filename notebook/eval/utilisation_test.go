@@ -32,6 +32,11 @@ func TestUtilisationText(t *testing.T) {
 		{1e-300, true, false, "0.01"},
 		{99.999, false, false, "100.00"},
 		{12345.678, false, false, "12345.68"},
+		{999_999.991, false, false, "1000000.00"},
+		{1e6, false, false, "1.00e6"},
+		{5e11, false, false, "5.00e11"},
+		{5.001e11, false, false, "5.01e11"},
+		{9.991e11, false, false, "1.00e12"},
 		{math.NaN(), true, false, ""},
 		{math.NaN(), false, false, ""},
 		{0.5, false, false, ""}, // another comparison of the chain failed

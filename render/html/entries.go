@@ -172,7 +172,7 @@ func (w *writer) verdict(v *render.Verdict) {
 	w.raw(`">`)
 	if v.Utilisation != "" {
 		w.raw("<span>")
-		w.text(v.Utilisation)
+		w.figures(v.Utilisation)
 		w.raw("</span>")
 	}
 	w.raw("<b>")

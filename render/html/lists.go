@@ -114,7 +114,7 @@ func (w *writer) remarkList(title string, list []*notebook.Remark) {
 	for _, r := range list {
 		w.listRef("", r.Anchor, r.Number)
 		w.raw(`<div class="more"><p>`)
-		w.text(r.Text)
+		w.figures(r.Text)
 		w.raw("</p></div></div>\n")
 	}
 }

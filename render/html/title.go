@@ -92,7 +92,7 @@ func (w *writer) stateBox() {
 	}
 	if s.Worst != nil {
 		w.raw(`<li>worst <b>`)
-		w.text(s.Worst.Verdict.Utilisation)
+		w.figures(s.Worst.Verdict.Utilisation)
 		w.raw("</b> ")
 		w.jump(s.Worst.Anchor, "("+s.Worst.Number+")")
 		w.raw("</li>")

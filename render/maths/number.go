@@ -13,11 +13,7 @@ func figures(value string) (negative bool, mantissa, power string) {
 	if strings.HasPrefix(mantissa, "-") {
 		negative, mantissa = true, mantissa[1:]
 	}
-	for i := 1; i < len(mantissa); i++ {
-		if mantissa[i]|0x20 == 'e' {
-			return negative, mantissa[:i], strings.TrimPrefix(mantissa[i+1:], "+")
-		}
-	}
+	mantissa, power = units.SplitExponent(mantissa)
 	return negative, mantissa, power
 }
 

@@ -1,5 +1,7 @@
 package maths
 
+import "gusset/units"
+
 // AppendPlain appends a node as one line of plain text: fractions as a/b with
 // the brackets that then are needed, subscripts as the names are written.
 func AppendPlain(dst []byte, n Node) []byte {
@@ -197,15 +199,7 @@ func (w *line) symbol(s Symbol) {
 }
 
 func (w *line) number(n Number) {
-	negative, mantissa, power := figures(n.Value)
-	if negative {
-		w.raw("−")
-	}
-	w.raw(mantissa)
-	if power != "" {
-		w.raw("×10")
-		w.power(power)
-	}
+	w.raw(units.Typeset(n.Value))
 	if len(n.Unit) > 0 {
 		if !n.Unit.close() {
 			w.raw(" ")
