@@ -141,11 +141,7 @@ func (w *builder) drawn(c *syntax.Call) Node {
 			if i > 0 {
 				sum = append(sum, Plus)
 			}
-			base, r := w.expr(a.Value)
-			if signed(base) {
-				r = rankedSum
-			}
-			sum = append(sum, Script{Base: bracketed(base, r, rankedAtom, true), Sup: Number{Value: "2"}})
+			sum = append(sum, Script{Base: w.base(a.Value), Sup: Number{Value: "2"}})
 		}
 		return Root{Body: sum}
 	case len(c.Args) != 1:

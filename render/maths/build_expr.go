@@ -337,13 +337,18 @@ func (w *builder) power(e *syntax.Binary) (Node, rank) {
 	if n := w.functionPower(e); n != nil {
 		return n, rankedPower
 	}
-	base, r := w.expr(e.X)
-	if _, root := base.(Root); root || signed(base) {
-		r = rankedSum
-	}
-	base = bracketed(base, r, rankedAtom, true)
+	base := w.base(e.X)
 	w.inline++
 	exponent := w.side(e.Y)
 	w.inline--
 	return Script{Base: base, Sup: exponent}, rankedPower
+}
+
+// base sets what is raised to a power.
+func (w *builder) base(e syntax.Expr) Node {
+	n, r := w.expr(e)
+	if _, root := n.(Root); root || signed(n) {
+		r = rankedSum
+	}
+	return bracketed(n, r, rankedAtom, true)
 }

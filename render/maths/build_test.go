@@ -121,6 +121,7 @@ func TestExpressions(t *testing.T) {
 		{"a = log10(n)", "log_10(n)", "log_10(4)"},
 		{"a = exp(-x)", "exp(−x)", "exp(−2)"},
 		{"a = hypot(P, N)", "√(P² + N²)", "√((48 kN)² + (−3 kN)²)"},
+		{"a = hypot(P, hypot(P, N))", "√(P² + (√(P² + N²))²)", "√((48 kN)² + (√((48 kN)² + (−3 kN)²))²)"},
 		{"a = max(x, n)", "max(x, n)", "max(2, 4)"},
 		{"a = ceil(d, 2 mm)", "ceil(d, 2 mm)", "ceil(25 mm, 2 mm)"},
 		{"a = x*bearing(P, d, t)", "x·bearing(P, d, t)", "2·384.0 MPa"},
