@@ -60,7 +60,7 @@ func (m *machine) callFunc(n *check.Node, f *frame, target *check.Type, entry in
 		if len(inst.Body.Branches) > 1 {
 			step.Taken = []int{taken}
 		}
-		call := &Call{Expr: n.Expr.(*syntax.Call), Steps: []*Step{step}}
+		call := &Call{Expr: n.Expr.(*syntax.Call), Steps: []*Step{step}, Rows: target.Rows, Entry: entry}
 		for _, p := range inst.Params {
 			call.Args = append(call.Args, g.steps[p.Slot])
 		}
@@ -221,10 +221,12 @@ func (m *machine) runHelper(hc *check.HelperCall, f *frame, entry int) (*frame, 
 	outer := m.recording
 	var call *Call
 	if outer != nil {
-		call = &Call{Expr: hc.Expr, Helper: hc.Helper, Library: hc.Library, Mark: loop.Mark(entry)}
+		call = &Call{Expr: hc.Expr, Helper: hc.Helper, Library: hc.Library, Mark: loop.Mark(entry), Rows: hc.Loop, Entry: entry}
 	}
-	m.recording = nil
 	for i, p := range hc.Params {
+		if m.recording = outer; hc.Columns[i] {
+			m.recording = nil // a call in a column would be kept for each entry
+		}
 		v, err := m.argument(hc, i, f, &loop, entry)
 		if err != nil {
 			m.recording = outer

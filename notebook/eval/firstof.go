@@ -54,7 +54,10 @@ func (m *machine) firstOf(fo *check.FirstOf, f *frame, t *check.Type, entry int,
 			return nil, 0, err
 		}
 		if trials != nil || k == count-1 {
+			outer := m.recording
+			m.recording = nil // the calls in it are recorded
 			why = m.verdict(fo.Cond, f, &ct, at, ok)
+			m.recording = outer
 		}
 		if trials != nil {
 			trial := Trial{Value: PlainText(v.Printed(0, step.Unit, step.Figures)), OK: ok, Why: why}

@@ -128,7 +128,9 @@ type Call struct {
 	Steps    []*Step        // Computed, NoteLine, Gap and Limit
 	Results  []*Step        // those that `gives` names
 	Cautions []string
-	Mark     string // the entry it was run for, "" for a plain call
+	Mark     string        // the entry it was run for, "" for a plain call
+	Rows     []*check.Rows // the sets that Entry counts in
+	Entry    int
 }
 
 // CheckResult is how a check came out.

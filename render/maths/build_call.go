@@ -156,17 +156,25 @@ func (w *builder) drawn(c *syntax.Call) Node {
 	return nil
 }
 
-// run is the call of a helper as it was run, nil for other calls.
+// run is the call of a helper as it was run for the entry that is written out,
+// nil for other calls.
 func (w *builder) run(c *syntax.Call) *eval.Call {
 	if w.step == nil {
 		return nil
 	}
+	var first *eval.Call
 	for _, run := range w.step.Calls {
-		if run.Expr == c {
+		if run.Expr != c {
+			continue
+		}
+		if w.entry(check.Type{Rows: run.Rows}) == run.Entry {
 			return run
 		}
+		if first == nil {
+			first = run
+		}
 	}
-	return nil
+	return first
 }
 
 // helper sets the call of a helper or of a function of the author's own: as
@@ -261,7 +269,7 @@ func literalValue(n *syntax.Number) (float64, bool) {
 	return sum, true
 }
 
-// governing marks a value as the one that decides.
+// governing marks a value, or all those of a term, as what decides.
 func governing(n Node) Node {
 	switch n := n.(type) {
 	case Number:
@@ -270,6 +278,20 @@ func governing(n Node) Node {
 	case Script:
 		n.Base = governing(n.Base)
 		return n
+	case Fence:
+		n.Body = governing(n.Body)
+		return n
+	case Root:
+		n.Body = governing(n.Body)
+		return n
+	case Fraction:
+		return Fraction{governing(n.Num), governing(n.Den)}
+	case Row:
+		row := make(Row, len(n))
+		for i, part := range n {
+			row[i] = governing(part)
+		}
+		return row
 	}
 	return n
 }
