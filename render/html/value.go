@@ -80,6 +80,9 @@ func (w *writer) number(n maths.Number) {
 	case "°", "′", "″":
 	default:
 		w.raw("\u00a0")
+		if power != "" { // the longest values part here in the output column, not within the unit
+			w.raw("<wbr>")
+		}
 	}
 	w.unit(n.Unit)
 }
