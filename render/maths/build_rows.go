@@ -74,7 +74,7 @@ func (w *builder) reduction(c *syntax.Call) (Node, rank) {
 	return sum, rankedSum
 }
 
-// decides is the row that min, max or extreme of a name takes, else -1.
+// decides is the row that min, max or extreme takes, -1 where that is not at hand.
 func (w *builder) decides(c *syntax.Call, rows *check.Rows) int {
 	at, best := -1, 0.0
 	if c.Fun.ID == "sum" || c.Fun.ID == "mean" {
@@ -82,9 +82,9 @@ func (w *builder) decides(c *syntax.Call, rows *check.Rows) int {
 	}
 	for i := range rows.N() {
 		w.at = append(w.at, place{rows, i})
-		v, ok := w.number(c.Args[0].Value)
+		v, ok := w.amount(c.Args[0].Value)
 		w.at = w.at[:len(w.at)-1]
-		if !ok {
+		if !ok || v-v != 0 {
 			return -1
 		}
 		if at < 0 || beyond(c.Fun.ID, v, best) {
@@ -92,6 +92,48 @@ func (w *builder) decides(c *syntax.Call, rows *check.Rows) int {
 		}
 	}
 	return at
+}
+
+// amount is the value of a term that is made of names and literals.
+func (w *builder) amount(e syntax.Expr) (float64, bool) {
+	switch e := unbracketed(e).(type) {
+	case *syntax.Unary:
+		x, ok := w.amount(e.X)
+		return -x, ok && e.Op == syntax.Neg
+	case *syntax.Binary:
+		x, left := w.amount(e.X)
+		y, right := w.amount(e.Y)
+		ok := left && right
+		switch e.Op {
+		case syntax.Add:
+			return x + y, ok
+		case syntax.Sub:
+			return x - y, ok
+		case syntax.Mul:
+			return x * y, ok
+		case syntax.Div:
+			return x / y, ok
+		case syntax.Pow:
+			return math.Pow(x, y), ok
+		}
+		return 0, false
+	case *syntax.Call:
+		if w.functions[e.Fun.ID] != nil || len(e.Args) == 0 {
+			return 0, false
+		}
+		x, ok := w.amount(e.Args[0].Value)
+		switch {
+		case e.Fun.ID == "abs":
+			return math.Abs(x), ok
+		case e.Fun.ID == "sqrt":
+			return math.Sqrt(x), ok
+		case e.Fun.ID == "hypot" && len(e.Args) == 2:
+			y, second := w.amount(e.Args[1].Value)
+			return math.Hypot(x, y), ok && second
+		}
+		return 0, false
+	}
+	return w.number(e)
 }
 
 // beyond tells that a value decides rather than one before it; of equal ones,
