@@ -102,7 +102,7 @@ func TestConstructs(t *testing.T) {
 var (
 	scripts  = regexp.MustCompile(`(?i)<script|<iframe|<object|<[a-z][^>]*\son[a-z]+=`)
 	links    = regexp.MustCompile(`(?:href|src)="([^"]*)"`)
-	harmless = regexp.MustCompile(`^(#|https?://|mailto:|tel:|data:image/(png|jpeg|gif);base64,)|^[^:]*$|^[^:/?#]*[/?#]`)
+	harmless = regexp.MustCompile(`^(#|https?:|mailto:|tel:|data:image/(png|jpeg|gif);base64,)|^[^:]*$|^[^:/?#]*[/?#]`)
 )
 
 // dangers is what a page must not hold whatever the file says.
