@@ -42,7 +42,7 @@ func (c *composer) steps(entries []Entry, steps []*eval.Step, indent int, full b
 		if s.Failed || s.Kind == eval.Constant {
 			continue
 		}
-		if s.Kind != eval.Gap && len(group) > 0 && !(hasRows(s) && sameRows(group[0].Value.Type, s.Value.Type)) {
+		if s.Kind != eval.Gap && len(group) > 0 && !(hasRows(s) && slices.Equal(group[0].Value.Type.Rows, s.Value.Type.Rows)) {
 			flush()
 		}
 		entries = c.step(entries, s, indent, full)
@@ -50,7 +50,7 @@ func (c *composer) steps(entries []Entry, steps []*eval.Step, indent int, full b
 			group = append(group, s)
 		}
 		for _, r := range s.Results {
-			if len(group) > 0 && !(hasRows(r) && sameRows(group[0].Value.Type, r.Value.Type)) {
+			if len(group) > 0 && !(hasRows(r) && slices.Equal(group[0].Value.Type.Rows, r.Value.Type.Rows)) {
 				flush()
 			}
 			if hasRows(r) {
@@ -65,18 +65,6 @@ func (c *composer) steps(entries []Entry, steps []*eval.Step, indent int, full b
 // hasRows tells whether a step is a value with an entry for each of some rows.
 func hasRows(s *eval.Step) bool {
 	return s.Check == nil && len(s.Value.Type.Rows) > 0 && s.Value.Type.Kind != check.Bundle
-}
-
-func sameRows(a, b check.Type) bool {
-	if len(a.Rows) != len(b.Rows) {
-		return false
-	}
-	for i := range a.Rows {
-		if a.Rows[i] != b.Rows[i] {
-			return false
-		}
-	}
-	return true
 }
 
 // step appends the entries of one line: its own, and those of the helpers that

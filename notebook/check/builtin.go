@@ -146,7 +146,7 @@ func (l *lower) callDotted(x *syntax.Call, key, name string) *Node {
 	if h := s.helpers.named(name); h != nil {
 		return l.callHelper(x, h)
 	}
-	if !l.e.c.mayLook(len(s.helpers.order)) {
+	if !l.e.c.looks.May(len(s.helpers.order)) {
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s has no helper `%s`", s.file.Path, name))
 	}
 	for _, h := range s.helpers.order {

@@ -37,7 +37,7 @@ type checker struct {
 	// of load cases may head its own by the same word (`case`), and has it
 	// under its name then (`wind.case`).
 	caseMarks map[string]bool
-	searched  int // names that were looked through for messages
+	looks     diag.Looks // at names, for messages
 	slabs     slabs
 }
 

@@ -21,26 +21,6 @@ func mustDim(unit string) units.Dimension {
 	return u.Dim()
 }
 
-// pieceSI is the value of one number with its unit in coherent SI, rounded once.
-func pieceSI(p syntax.Piece, negative bool) float64 {
-	if mant, exp, ok := p.Decimal(); ok {
-		if si, ok := p.Unit.DecimalToSI(mant, exp); ok {
-			if negative {
-				return -si
-			}
-			return si
-		}
-	}
-	r, err := p.Rat()
-	if err != nil {
-		return 0
-	}
-	if negative {
-		r.Neg(r)
-	}
-	return p.Unit.LiteralToSI(r)
-}
-
 // describe says what a value is, in words and in the unit it would be printed
 // in: "a force (kN)", "a plain number", "a temperature point (°C)".
 func (c *checker) describe(t Type) string {

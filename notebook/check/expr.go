@@ -158,7 +158,7 @@ func (l *lower) number(x *syntax.Number) *Node {
 	first := x.Pieces[0]
 	l.literalUnits(x)
 	if !first.HasUnit {
-		n.Num = pieceSI(first, x.Neg)
+		n.Num = first.SI(x.Neg)
 		n.zero = n.Num == 0
 		return n
 	}
@@ -170,7 +170,7 @@ func (l *lower) number(x *syntax.Number) *Node {
 		if u.IsPoint() {
 			n.Type.Kind = Point
 		}
-		n.Num = pieceSI(first, x.Neg)
+		n.Num = first.SI(x.Neg)
 		return n
 	}
 	for _, p := range x.Pieces {
@@ -179,7 +179,7 @@ func (l *lower) number(x *syntax.Number) *Node {
 				p.Unit, p.Unit.Dim().Article(), u, u.Dim().Article()),
 				"the parts of `12 ft 6 in` have one dimension; a product is written with `*`")
 		}
-		n.Num += pieceSI(p, x.Neg)
+		n.Num += p.SI(x.Neg)
 	}
 	return n
 }

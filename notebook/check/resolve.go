@@ -159,7 +159,7 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 	if !ok || l.site != nil {
 		hint := "`a.b` is a schedule's column, a value carried from another calc, or one of a helper's results"
 		var spaces []string
-		if c.mayLook(len(c.spaces)) {
+		if c.looks.May(len(c.spaces)) {
 			spaces = sortedKeys(c.spaces)
 		}
 		if near := diag.Nearest(space, spaces); near != "" {
@@ -172,7 +172,7 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 	what := ""
 	switch {
 	case s.from != nil:
-		if c.mayLook(len(s.from.Values)) {
+		if c.looks.May(len(s.from.Values)) {
 			known = sortedKeys(s.from.Values)
 		}
 		what = s.from.Path + " defines no value"
@@ -181,7 +181,7 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 			_, col, _ := head(id)
 			known = append(known, col)
 		}
-		if len(known) == 0 && c.searched <= maxSearched {
+		if len(known) == 0 && c.looks.May(0) {
 			l.fail(diag.UnknownName, x.At, fmt.Sprintf("the columns of load cases are plain names: %s has no `%s`", space, name), "write `"+name+"`")
 			return
 		}
@@ -226,7 +226,7 @@ func (e *env) functionNames() []string {
 	var out []string
 	c := e.c
 	for ; e != nil; e = e.parent {
-		if !c.mayLook(len(e.funcs) + e.above) {
+		if !c.looks.May(len(e.funcs) + e.above) {
 			return nil
 		}
 		out = append(out, sortedKeys(e.funcs)...)

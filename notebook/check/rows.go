@@ -137,19 +137,23 @@ const mostNear = 1000
 
 // noRow reports a mark that no row has, of a branch that is not taken too.
 func (l *lower) noRow(x *syntax.AtMark, rows *Rows, mark string) *Node {
-	near := ""
-	if rows.N() <= mostNear {
-		near = diag.Nearest(mark, rows.Marks)
+	message, hint := rows.NoRow(mark, rows.N() <= mostNear)
+	return l.fail(diag.UnknownMark, x.Y.Span(), message, hint)
+}
+
+// NoRow is the message that no row has a mark, and its hint: the mark that was
+// meant, where it may be looked for, else what marks there are.
+func (r *Rows) NoRow(mark string, look bool) (message, hint string) {
+	message = fmt.Sprintf("%s has no row `%s`", r.Name, mark)
+	if look {
+		if near := diag.Nearest(mark, r.Marks); near != "" {
+			return message, "did you mean `" + near + "`?"
+		}
 	}
-	hint := fmt.Sprintf("did you mean `%s`?", near)
-	switch {
-	case near != "":
-	case rows.N() > 8:
-		hint = fmt.Sprintf("its rows are %s and %d more", strings.Join(rows.Marks[:8], ", "), rows.N()-8)
-	default:
-		hint = "its rows are " + strings.Join(rows.Marks, ", ")
+	if r.N() > 8 {
+		return message, fmt.Sprintf("its rows are %s and %d more", strings.Join(r.Marks[:8], ", "), r.N()-8)
 	}
-	return l.fail(diag.UnknownMark, x.Y.Span(), fmt.Sprintf("%s has no row `%s`", rows.Name, mark), hint)
+	return message, "its rows are " + strings.Join(r.Marks, ", ")
 }
 
 // mark lowers what stands behind `at`; a bare mark gets its quotes offered.
@@ -162,7 +166,7 @@ func (l *lower) mark(y syntax.Expr) *Node {
 		if r == nil {
 			continue
 		}
-		if !l.e.c.mayLook(1 + len(r.Marks)) {
+		if !l.e.c.looks.May(1 + len(r.Marks)) {
 			break
 		}
 		for _, m := range r.Marks {

@@ -127,23 +127,12 @@ func (e *env) define(n *syntax.Name, t Type) *Def {
 	return d
 }
 
-// maxSearched bounds the names that are looked through for what messages offer,
-// over all messages of a file: a file of nothing but mistakes takes no longer
-// than another. Beyond it nothing is offered.
-const maxSearched = 1_000_000
-
-// mayLook tells whether a message may look through that many names.
-func (c *checker) mayLook(names int) bool {
-	c.searched += names
-	return c.searched <= maxSearched
-}
-
 // inScope lists the names in scope, sorted, that pass the test; names of
 // schedules' columns and helpers' results included.
 func (e *env) inScope(pass func(*Def) bool) []string {
 	var out []string
 	for c := e.c; e != nil; e = e.parent {
-		if !c.mayLook(len(e.names)) {
+		if !c.looks.May(len(e.names)) {
 			return nil
 		}
 		for id, d := range e.names {

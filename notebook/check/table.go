@@ -390,7 +390,7 @@ func (l *lower) inUnit(n *Node, u units.Unit, t Type) *Node {
 	if lit, ok := n.Expr.(*syntax.Number); ok && n.Op == Const {
 		p := lit.Pieces[0]
 		p.Unit = u
-		out.Num = pieceSI(p, lit.Neg)
+		out.Num = p.SI(lit.Neg)
 		return out
 	}
 	out.Num = u.LiteralToSI(n.rat())

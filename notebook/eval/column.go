@@ -2,6 +2,7 @@ package eval
 
 import (
 	"math"
+	"slices"
 	"sync"
 
 	"gusset/notebook/check"
@@ -84,7 +85,7 @@ type source struct {
 func (m *machine) column(n *check.Node, f *frame, target *check.Type) []float64 {
 	count := target.Count()
 	if n.Op == check.Load && !n.Def.IsConst {
-		if v, err := f.value(n.Def); err == nil && len(v.Num) == count && sameRows(v.Type.Rows, target.Rows) {
+		if v, err := f.value(n.Def); err == nil && len(v.Num) == count && slices.Equal(v.Type.Rows, target.Rows) {
 			return v.Num
 		}
 	}
@@ -139,18 +140,6 @@ func (p *columnProgram) scratch() ([][]float64, *[]float64) {
 		}
 	}
 	return regs, buf
-}
-
-func sameRows(a, b []*check.Rows) bool {
-	if len(a) != len(b) {
-		return false
-	}
-	for i := range a {
-		if a[i] != b[i] {
-			return false
-		}
-	}
-	return true
 }
 
 func (m *machine) columnValue(n *check.Node, f *frame) Value {
@@ -310,7 +299,7 @@ func lay(col []float64, t, target *check.Type) source {
 	}
 	// A run of neighbouring sets of the target needs no index.
 	for at := range target.Rows {
-		if at+len(t.Rows) > len(target.Rows) || !sameRows(target.Rows[at:at+len(t.Rows)], t.Rows) {
+		if at+len(t.Rows) > len(target.Rows) || !slices.Equal(target.Rows[at:at+len(t.Rows)], t.Rows) {
 			continue
 		}
 		repeat := 1

@@ -3,7 +3,6 @@ package eval
 import (
 	"fmt"
 	"math"
-	"strings"
 
 	"github.com/Knetic/govaluate"
 
@@ -70,7 +69,7 @@ type machine struct {
 	warned      map[warning]bool
 	table       []float64 // read by interpolate last, and whether it is steady
 	tableSteady bool
-	looked      int         // marks that were looked through for messages
+	looks       diag.Looks  // at marks, for messages
 	running     *check.Plan // the statement being computed, for messages from inside a helper
 }
 
@@ -88,9 +87,6 @@ type slabs struct {
 
 // chunk is how many values the evaluator takes room for at once.
 const chunk = 64
-
-// maxLooked bounds the marks that are looked through for what messages offer, over a whole file.
-const maxLooked = 1_000_000
 
 // warning is a limit that only warns, at the statement that called its helper.
 type warning struct {
@@ -323,24 +319,12 @@ func (m *machine) row(n *check.Node, f *frame, target *check.Type, entry int) (i
 	if ok {
 		return row, nil
 	}
-	hint := "its rows are " + list(rows.Marks)
-	if m.looked += rows.N(); m.looked <= maxLooked {
-		if near := diag.Nearest(mark, rows.Marks); near != "" {
-			hint = "did you mean `" + near + "`?"
-		}
-	}
+	message, hint := rows.NoRow(mark, m.looks.May(rows.N()))
 	at := n.Expr.Span()
 	if x, ok := n.Expr.(*syntax.AtMark); ok {
 		at = x.Y.Span()
 	}
-	return 0, &fault{id: diag.UnknownMark, at: at, message: fmt.Sprintf("%s has no row `%s`", rows.Name, mark), hints: []string{hint}}
-}
-
-func list(words []string) string {
-	if len(words) > 8 {
-		return strings.Join(words[:8], ", ") + fmt.Sprintf(" and %d more", len(words)-8)
-	}
-	return strings.Join(words, ", ")
+	return 0, &fault{id: diag.UnknownMark, at: at, message: message, hints: []string{hint}}
 }
 
 func (m *machine) interpolated(n *check.Node, f *frame, target *check.Type, entry int) (any, error) {

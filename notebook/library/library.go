@@ -35,6 +35,10 @@ var chapters = []string{
 // read when they are asked for: a calc calls few of them.
 type Library struct {
 	check.Library
+	// Topics returns the chapters: a title, an introduction, and helpers under
+	// headings of their own with what is said of each.
+	Topics func() []Topic
+
 	sources []*diag.Source // the chapters
 	places  map[string]*place
 
@@ -68,6 +72,7 @@ func Load() *Library { return load() }
 
 var load = sync.OnceValue(func() *Library {
 	lib := &Library{places: map[string]*place{}}
+	lib.Topics = sync.OnceValue(lib.topics)
 	lib.Read, lib.Natives, lib.Tables = lib.read, map[string]*check.Native{}, map[string]*diag.Source{}
 	for _, n := range natives {
 		lib.Natives[n.Name] = n
@@ -150,9 +155,7 @@ func (p *place) read() {
 	p.helper, p.diags = block.Helper, diags
 }
 
-// Topics returns the chapters: a title, an introduction, and helpers under
-// headings of their own with what is said of each.
-func (lib *Library) Topics() []Topic {
+func (lib *Library) topics() []Topic {
 	var topics []Topic
 	for _, src := range lib.sources {
 		topics = append(topics, lib.topic(src))

@@ -121,6 +121,27 @@ func plainRat(s string) (*big.Rat, error) {
 	return r, nil
 }
 
+// SI is the value of a piece in coherent SI, rounded once. A sign belongs to the
+// figures: -40 °C is 233.15 K.
+func (p Piece) SI(negative bool) float64 {
+	if mant, exp, ok := p.Decimal(); ok {
+		if si, ok := p.Unit.DecimalToSI(mant, exp); ok {
+			if negative {
+				return -si
+			}
+			return si
+		}
+	}
+	r, err := p.Rat()
+	if err != nil {
+		return 0
+	}
+	if negative {
+		r.Neg(r)
+	}
+	return p.Unit.LiteralToSI(r)
+}
+
 // Decimal returns figures of at most 15 digits as mant·10^exp10. ok is false
 // for all others, which Rat reads.
 func (p Piece) Decimal() (mant int64, exp10 int, ok bool) {

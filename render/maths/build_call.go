@@ -231,7 +231,11 @@ func (w *builder) number(e syntax.Expr) (float64, bool) {
 	var n *syntax.Name
 	switch e := unbracketed(e).(type) {
 	case *syntax.Number:
-		return literalValue(e)
+		sum := 0.0
+		for _, p := range e.Pieces {
+			sum += p.SI(e.Neg)
+		}
+		return sum, true
 	case *syntax.Name:
 		n = e
 	default:
@@ -251,22 +255,6 @@ func (w *builder) number(e syntax.Expr) (float64, bool) {
 		}
 	}
 	return s.Value.Num[i], true
-}
-
-// literalValue is a literal in coherent SI.
-func literalValue(n *syntax.Number) (float64, bool) {
-	sum := 0.0
-	for _, p := range n.Pieces {
-		r, err := p.Rat()
-		if err != nil {
-			return 0, false
-		}
-		sum += p.Unit.LiteralToSI(r)
-	}
-	if n.Neg {
-		sum = -sum
-	}
-	return sum, true
 }
 
 // governing marks a value, or all those of a term, as what decides.

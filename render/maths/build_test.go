@@ -181,7 +181,8 @@ func TestRefs(t *testing.T) {
 	}
 }
 
-// The entry that min and max take is marked.
+// The entry that min and max take is marked. Literals count among what they
+// choose from; names of `where` count in their units.
 func TestGoverns(t *testing.T) {
 	for _, c := range []struct{ line, governs string }{
 		{"a = max(x, n)", "4"},
@@ -190,6 +191,17 @@ func TestGoverns(t *testing.T) {
 		{"a = min(bolts.y)", "-76"},
 		{"a = extreme(bolts.y)", "-76"},
 		{"a = max(x, n + 1)", ""},
+		{"a = min(x, 2.5, n)", "2"},
+		{"a = min(x, 1, n)", "1"},
+		{"a = max(x, 2.5)", "2.5"},
+		{"a = max(0, N)", "0"},
+		{"a = min(t, 1 in)", "5"},
+		{"a = max(t, 1 in)", "1"},
+		{"a = max(T_2, 30 degF)", "30"},
+		{"a [mm] = max(t, 0.003) where t [m]", "0.005000"},
+		{"a [mm] = min(t, 0.003) where t [m]", "0.003"},
+		{"a [mm] = min(t, 40) where t [mm]", "5"},
+		{"a = max(-40 degC, -60 degC)", "-40"},
 	} {
 		s := last(t, c.line)
 		d := s.Stmt.(*syntax.Definition)
