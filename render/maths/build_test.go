@@ -201,7 +201,7 @@ func TestGoverns(t *testing.T) {
 		{"a [mm] = max(t, 0.003) where t [m]", "0.005000"},
 		{"a [mm] = min(t, 0.003) where t [m]", "0.003"},
 		{"a [mm] = min(t, 40) where t [mm]", "5"},
-		{"a = max(-40 degC, -60 degC)", "-40"},
+		{"a = max(-30 degC, T_2)", "-30"},
 	} {
 		s := last(t, c.line)
 		d := s.Stmt.(*syntax.Definition)
