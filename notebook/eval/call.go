@@ -368,9 +368,6 @@ func (m *machine) limit(p *check.Plan, g *frame, step *Step) error {
 	s := p.Stmt.(*syntax.Needs)
 	t := p.Check.Type
 	r, err := m.verdicts(p, g)
-	if err != nil {
-		return err
-	}
 	for e, ok := range r.OK {
 		if ok {
 			continue
@@ -380,6 +377,9 @@ func (m *machine) limit(p *check.Plan, g *frame, step *Step) error {
 			return err
 		}
 		m.warn(s, err.(*fault), g)
+	}
+	if err != nil {
+		return err
 	}
 	if step != nil {
 		m.complete(r, p, g)

@@ -19,7 +19,8 @@ func (m *machine) computeCheck(p *check.Plan, f *frame, step *Step) error {
 	return nil
 }
 
-// verdicts says of each entry of a check or a limit whether it is required, and whether it holds.
+// verdicts says of each entry of a check or a limit whether it is required, and whether it holds,
+// up to the first that cannot be computed.
 func (m *machine) verdicts(p *check.Plan, f *frame) (*CheckResult, error) {
 	c := p.Check
 	r := m.slabs.results.One(chunk)
@@ -27,18 +28,22 @@ func (m *machine) verdicts(p *check.Plan, f *frame) (*CheckResult, error) {
 	count := c.Type.Count()
 	flags := m.slabs.bools.Take(2*count, 4*chunk)
 	r.Required, r.OK = flags[:count:count], flags[count:]
+	for i := range flags {
+		flags[i] = true
+	}
 	for e := range r.OK {
+		required, holds := true, true
 		var err error
-		if r.Required[e] = true; c.If != nil {
-			if r.Required[e], err = m.truth(c.If, f, &c.Type, e); err != nil {
-				return nil, atEntry(err, c.Type, e)
-			}
+		if c.If != nil {
+			required, err = m.truth(c.If, f, &c.Type, e)
 		}
-		if r.OK[e] = true; r.Required[e] {
-			if r.OK[e], err = m.truth(c.Cond, f, &c.Type, e); err != nil {
-				return nil, atEntry(err, c.Type, e)
-			}
+		if err == nil && required {
+			holds, err = m.truth(c.Cond, f, &c.Type, e)
 		}
+		if err != nil {
+			return r, atEntry(err, c.Type, e)
+		}
+		r.Required[e], r.OK[e] = required, holds
 		r.AllOK = r.AllOK && r.OK[e]
 	}
 	return r, nil
