@@ -28,6 +28,7 @@ Exit status: 0 where all was written and every check is OK; 1 where a calc has e
 			if err := p.check(); err != nil {
 				return err
 			}
+			hugePages()
 			return printPages(t, &p, args)
 		},
 	}

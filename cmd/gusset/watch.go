@@ -35,6 +35,7 @@ value. A save with errors shows them and leaves the last good pages. Ctrl-C ends
 			if err := p.check(); err != nil {
 				return err
 			}
+			hugePages()
 			ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM)
 			defer stop()
 			return watch(ctx, t, &p, args)

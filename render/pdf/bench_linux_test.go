@@ -83,7 +83,7 @@ func mostHeld(pid int) <-chan int {
 				return
 			}
 			fmt.Sscan(rest, &peak)
-			time.Sleep(2 * time.Millisecond)
+			time.Sleep(5 * time.Millisecond)
 		}
 	}()
 	return held
