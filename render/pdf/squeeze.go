@@ -5,8 +5,12 @@ import (
 	"compress/zlib"
 	"errors"
 	"fmt"
+	"runtime"
 	"slices"
 	"strconv"
+	"sync/atomic"
+
+	"golang.org/x/sync/errgroup"
 )
 
 // squeezer takes a file from the library, which writes it in one go, and
@@ -20,7 +24,7 @@ func (s *squeezer) Write(file []byte) (n int, err error) {
 
 // squeeze compresses the streams of a file that the library left plain: the
 // contents of the pages. The library itself takes a fresh compressor for each
-// page, which costs more than all else it does; here one serves all. The
+// page, which costs more than all else it does; here one serves many. The
 // objects keep their order and their numbers, and their places are written anew.
 func squeeze(file []byte) ([]byte, error) {
 	table, err := findTable(file)
@@ -32,39 +36,33 @@ func squeeze(file []byte) ([]byte, error) {
 		order[i] = i
 	}
 	slices.SortFunc(order, func(a, b int) int { return table.at[a] - table.at[b] })
-
-	var out bytes.Buffer
-	out.Grow(len(file)/2 + 4096)
-	out.Write(file[:table.at[order[0]]])
-	var packed bytes.Buffer
-	z, err := zlib.NewWriterLevel(&packed, zlib.BestSpeed)
-	if err != nil {
-		return nil, err
-	}
-	at := make([]int, len(table.at))
+	objects := make([]object, len(order))
 	for i, n := range order {
 		end := table.start
 		if i+1 < len(order) {
 			end = table.at[order[i+1]]
 		}
-		object := file[table.at[n]:end]
+		objects[i].whole = file[table.at[n]:end]
+		objects[i].content, objects[i].plain = plainStream(objects[i].whole)
+	}
+	if err := pack(objects); err != nil {
+		return nil, err
+	}
+
+	var out bytes.Buffer
+	out.Grow(len(file)/2 + 4096)
+	out.Write(file[:table.at[order[0]]])
+	at := make([]int, len(table.at))
+	for i, n := range order {
 		at[n] = out.Len()
-		content, ok := plainStream(object)
-		if !ok {
-			out.Write(object)
+		o := &objects[i]
+		if !o.plain {
+			out.Write(o.whole)
 			continue
 		}
-		packed.Reset()
-		z.Reset(&packed)
-		if _, err := z.Write(content); err != nil {
-			return nil, err
-		}
-		if err := z.Close(); err != nil {
-			return nil, err
-		}
-		head := object[:bytes.IndexByte(object, '\n')]
-		fmt.Fprintf(&out, "%s\n<</Filter /FlateDecode /Length %d>>\nstream\n", head, packed.Len())
-		out.Write(packed.Bytes())
+		head := o.whole[:bytes.IndexByte(o.whole, '\n')]
+		fmt.Fprintf(&out, "%s\n<</Filter /FlateDecode /Length %d>>\nstream\n", head, len(o.packed))
+		out.Write(o.packed)
 		out.WriteString("\nendstream\nendobj\n")
 	}
 	start := out.Len()
@@ -75,6 +73,44 @@ func squeeze(file []byte) ([]byte, error) {
 	out.Write(file[table.end:table.trailer])
 	fmt.Fprintf(&out, "startxref\n%d\n%%%%EOF\n", start)
 	return out.Bytes(), nil
+}
+
+// object is an object of a file; the content of a plain stream is packed.
+type object struct {
+	whole, content, packed []byte
+	plain                  bool
+}
+
+// pack compresses the plain streams, on all processors.
+func pack(objects []object) error {
+	var next atomic.Int64
+	var work errgroup.Group
+	for range runtime.GOMAXPROCS(0) {
+		work.Go(func() error {
+			var packed bytes.Buffer
+			z, err := zlib.NewWriterLevel(&packed, zlib.BestSpeed)
+			if err != nil {
+				return err
+			}
+			for i := next.Add(1) - 1; i < int64(len(objects)); i = next.Add(1) - 1 {
+				o := &objects[i]
+				if !o.plain {
+					continue
+				}
+				packed.Reset()
+				z.Reset(&packed)
+				if _, err := z.Write(o.content); err != nil {
+					return err
+				}
+				if err := z.Close(); err != nil {
+					return err
+				}
+				o.packed = bytes.Clone(packed.Bytes())
+			}
+			return nil
+		})
+	}
+	return work.Wait()
 }
 
 // table is the cross-reference table of a file: where each object starts, the
