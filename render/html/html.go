@@ -146,9 +146,7 @@ func (w *writer) body() {
 	w.titleBlock()
 	w.stateBox()
 	w.raw("</header>\n<div class=\"row cols\" aria-hidden=\"true\"><div class=\"ref\">Reference</div><div class=\"mid\">Calculation</div><div class=\"out\">Output</div></div>\n<main>\n")
-	w.document()
-	w.raw("</main>\n")
-	w.lists()
+	w.contents()
 	w.raw("</div>\n")
 }
 

@@ -12,10 +12,10 @@ import (
 	"gusset/render/maths"
 )
 
-// document writes the prose and the blocks within it, one row of the three
-// columns for each block of the document.
-func (w *writer) document() {
-	for n := w.sheet.Doc.FirstChild(); n != nil; n = n.NextSibling() {
+// document writes the prose and the blocks within it, from one block up to
+// another, one row of the three columns for each.
+func (w *writer) document(from, to ast.Node) {
+	for n := from; n != to; n = n.NextSibling() {
 		if f, ok := n.(*notebook.FenceNode); ok {
 			w.entries(w.page.Blocks[f.Index])
 			continue
