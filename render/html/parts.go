@@ -2,6 +2,7 @@ package html
 
 import (
 	"runtime"
+	"slices"
 	"sync"
 
 	"github.com/yuin/goldmark/ast"
@@ -41,6 +42,9 @@ func (w *writer) contents() {
 		})
 	}
 	work.Wait()
+	if slices.ContainsFunc(parts, func(p part) bool { return len(p.b) > size }) {
+		w.b = slices.Clip(w.b) // put together in place, one that outgrew its share would overwrite the next
+	}
 	for i := range parts {
 		p := &parts[i]
 		if p.failed != nil {

@@ -1,0 +1,60 @@
+package html_test
+
+import (
+	"bytes"
+	"fmt"
+	"runtime"
+	"strings"
+	"testing"
+	"testing/fstest"
+
+	"gusset/notebook"
+	"gusset/render"
+	"gusset/render/html"
+)
+
+// uneven is a calc whose first block prints so many long tables, far more for
+// each byte of the source than the prose that follows.
+func uneven(tables int) string {
+	var b strings.Builder
+	b.WriteString("---\ncalc: C-1\n---\n\n")
+	for _, name := range []string{"r", "s"} {
+		fmt.Fprintf(&b, "```schedule %s\nmark | x [mm]\n", name)
+		for i := range 50 {
+			fmt.Fprintf(&b, "%s%d | %d\n", name, i, i+1)
+		}
+		b.WriteString("```\n\n")
+	}
+	b.WriteString("```calc\n")
+	for i := range tables {
+		fmt.Fprintf(&b, "a%d = r.x*s.x\n", i)
+	}
+	b.WriteString("```\n")
+	for i := range 400 {
+		fmt.Fprintf(&b, "\nParagraph %d.\n", i)
+	}
+	return b.String()
+}
+
+// The parts of a page are the same bytes on any number of processors, also
+// where one grows far beyond its share of the room.
+func TestParts(t *testing.T) {
+	defer runtime.GOMAXPROCS(runtime.GOMAXPROCS(0))
+	for tables := range 9 {
+		s := notebook.Compile(&notebook.Context{FS: fstest.MapFS{"t.md": {Data: []byte(uneven(tables))}}, Panics: true}, "t.md")
+		if s.Failed() {
+			t.Fatal(s.Diagnostics)
+		}
+		var want []byte
+		for _, processors := range []int{1, 2, 3, 8} {
+			runtime.GOMAXPROCS(processors)
+			got := html.Append(nil, render.NewPage(s))
+			if want == nil {
+				want = got
+			}
+			if !bytes.Equal(got, want) {
+				t.Errorf("%d tables on %d processors: other bytes than on one", tables, processors)
+			}
+		}
+	}
+}
