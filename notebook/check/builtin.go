@@ -95,6 +95,9 @@ func (l *lower) unknownFunction(x *syntax.Call) *Node {
 			"a helper is defined above its first use, and cannot call itself")
 	}
 	if d := l.e.lookup(id); d != nil {
+		if d.Failed && d.Plan == nil { // its line could not be read, and may be meant for a function
+			return l.depend(d.Because)
+		}
 		return l.fail(diag.UnknownName, x.Fun.At, fmt.Sprintf("%s is a value (line %d), no function", x.Fun.Text, d.Line),
 			fmt.Sprintf("for a product write `%s*%s`", x.Fun.Text, l.e.src.Slice(diag.Span{Start: x.Fun.At.End, End: x.At.End})))
 	}

@@ -77,7 +77,7 @@ func (c *checker) checkHelper(h *helper) {
 	h.failed = !sound || diag.HasErrors(c.prog.Diagnostics[before:])
 	for _, s := range h.tree.Stmts {
 		if _, bad := s.(*syntax.BadStmt); bad {
-			h.failed = true
+			h.failed, h.unread = true, true
 		}
 	}
 	h.because = h.line
@@ -168,6 +168,13 @@ func (l *lower) helperCall(x *syntax.Call, h *helper) *HelperCall {
 	names := make([]*syntax.Name, len(tree.Params))
 	for i, p := range tree.Params {
 		names[i] = p.Name
+	}
+	if h.unread { // its parameters may be others than those that could be read
+		for _, a := range x.Args {
+			l.value(a.Value)
+		}
+		l.depend(h.because)
+		return nil
 	}
 	values, ok := l.bind(x, names, func(i int) bool { return tree.Params[i].Default != nil }, usage(x.Fun.Text, tree))
 	if h.failed {
@@ -446,7 +453,7 @@ func (b *body) bundleCall(l *lower, s *syntax.Definition) (*syntax.Call, *helper
 	}
 	var h *helper
 	if key, name, dotted := head(x.Fun.ID); dotted {
-		if sp := b.c.spaces[key]; sp != nil && b.site == nil {
+		if sp := b.c.spaces[key]; sp != nil && !b.e.closed() {
 			h = sp.helpers.named(name)
 		}
 	} else if h = b.e.helper(x.Fun.ID); h == nil {

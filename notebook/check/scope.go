@@ -52,7 +52,8 @@ type helper struct {
 	file    *helperSet // nil for one of the library
 	place   int        // in its file
 	failed  bool
-	because int // the line that it failed for
+	unread  bool // a line of it could not be read
+	because int  // the line that it failed for
 	line    int
 }
 

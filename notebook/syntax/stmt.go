@@ -225,12 +225,17 @@ func (p *parser) unitForParameter(def *Definition) bool {
 	if len(def.Params) != 1 || !units.IsUnitName(def.Params[0].Text) {
 		return false
 	}
-	used := false
+	at := def.Params[0].At
+	used, called := false, def.Name.At.End+1 == at.Start // `x (mm)` has a blank, `f(d)` has none
 	for _, b := range def.Branches {
 		for _, e := range []Expr{b.Value, b.Cond} {
 			Walk(e, func(x Expr) bool {
-				n, ok := x.(*Name)
-				used = used || ok && n.ID == def.Params[0].ID
+				switch x := x.(type) {
+				case *Name:
+					used = used || x.ID == def.Params[0].ID
+				case *Number:
+					used = used || called && eitherWay(x, def.Params[0].ID)
+				}
 				return !used
 			})
 		}
@@ -238,11 +243,23 @@ func (p *parser) unitForParameter(def *Definition) bool {
 	if used {
 		return false
 	}
-	at := def.Params[0].At
 	p.tok = tEnd
 	p.fail(diag.Span{Start: at.Start - 1, End: at.End + 1}, diag.Syntax,
 		"round brackets behind a name hold parameters; a declared unit stands in square ones", "write "+quoted("["+def.Params[0].Text+"]"))
 	return true
+}
+
+// eitherWay tells whether a name stands in a literal where it may be a value as
+// well as a unit, as d does in `2d` and `48 kN/d`; the checker tells of that.
+func eitherWay(x *Number, id string) bool {
+	for _, p := range x.Pieces {
+		for i, at := range p.Unit.Names() {
+			if Canonical(at.Name) == id && (i == 0 && p.Touch || at.After != "") {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // check reads `check condition if condition`.
