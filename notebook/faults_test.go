@@ -3,6 +3,7 @@ package notebook
 import (
 	"flag"
 	"fmt"
+	"math"
 	"os"
 	"path/filepath"
 	"strings"
@@ -95,6 +96,28 @@ func TestLineOfHelperFile(t *testing.T) {
 	for _, step := range s.Steps {
 		if !step.Failed || step.Because != 3 {
 			t.Errorf("%s: failed %v because of line %d, want line 3", step.ID, step.Failed, step.Because)
+		}
+	}
+}
+
+// A helper of the author's own file that has several results runs along a plot
+// as it runs in the calc.
+func TestPlotThroughHelperFile(t *testing.T) {
+	s := compile(files(
+		"calc.md", "---\ncalc: C-1\nhelpers: {shop: shop.md}\n---\n```calc\nh = 2 mm\nc = shop.cone(h)\nN = 3*c.N_0\n```\n```plot\nN against h from 1 mm to 4 mm\n```\n",
+		"shop.md", "\n\n```helper cone\nh [length]\nN_0 [mm^2] = h^2\nu = 2*h\ngives N_0, u\n```\n",
+	), "calc.md")
+	if s.Failed() {
+		t.Fatal(report(s.Diagnostics))
+	}
+	plot := s.Blocks[len(s.Blocks)-1].Plot
+	if plot == nil || len(plot.Curves) != 1 {
+		t.Fatalf("plot %v", plot)
+	}
+	c := plot.Curves[0]
+	for i, x := range c.X {
+		if want := 3 * x * x; math.Abs(c.Y[i]-want) > 1e-9*want {
+			t.Fatalf("N at h = %g mm: got %g mm², want %g mm²", x, c.Y[i], want)
 		}
 	}
 }
