@@ -174,6 +174,7 @@ func (s *setter) run(text string, face *fonts.Face, st style, link string) part 
 	if !utf8.ValidString(text) {
 		text = strings.ToValidUTF8(text, "\uFFFD")
 	}
+	text = face.Spell(text)
 	p := s.start()
 	from := 0
 	current := face
@@ -225,6 +226,13 @@ func (s *setter) piece(p part, text string, face *fonts.Face, st style, link str
 		high, low = max(high, y1), min(low, y0)
 		lean = max(0, x1-advance)
 	}
+	face.Stretches(text, func(t fonts.Stretch) {
+		if t.Y != 0 {
+			mark, _ := utf8.DecodeRuneInString(t.Text)
+			_, y0, _, y1 := face.Bounds(face.Glyph(mark))
+			high, low = max(high, y1+t.Y), min(low, y0+t.Y)
+		}
+	})
 	s.items = append(s.items, Item{
 		X: p.width, Width: float64(width) * em / 1000,
 		Face: face, Size: em, Text: text, Link: link,

@@ -74,7 +74,7 @@ func (c *canvas) formula(m *text, x, y float64) {
 		default:
 			c.use(m.colour)
 			c.setFont(item.Face, item.Size*m.scale)
-			c.pdf.Text(atX, atY, item.Text)
+			c.show(item.Face, item.Size*m.scale, atX, atY, item.Text)
 		}
 	}
 }
@@ -101,10 +101,17 @@ func (c *canvas) text(t *text, x, y float64) {
 	if t.tracked != 0 {
 		c.pdf.RawWriteStr(strconv.FormatFloat(t.tracked, 'f', 2, 64) + " Tc")
 	}
-	c.pdf.Text(x, y, t.text)
+	c.show(t.face, t.size, x, y, t.text)
 	if t.tracked != 0 {
 		c.pdf.RawWriteStr("0 Tc")
 	}
+}
+
+// show draws a text in the face and the size that are set.
+func (c *canvas) show(face *fonts.Face, size, x, y float64, text string) {
+	face.Stretches(text, func(s fonts.Stretch) {
+		c.pdf.Text(x+float64(s.X)*size/1000, y-float64(s.Y)*size/1000, s.Text)
+	})
 }
 
 func (c *canvas) setFont(face *fonts.Face, size float64) {

@@ -65,8 +65,9 @@ func steers(r rune) bool {
 	return false
 }
 
-// spans cuts a text into what each face can set: its own face first, then
-// serif, sans, maths and mono. A character that none has is spelt by its
+// spans cuts a text into what each face can set: its own face first, a letter
+// with marks of which it lacks the whole by its parts, then serif, sans, maths
+// and mono. A character that none has is spelt by its
 // plain equivalent where Unicode gives one (𝑥 as x, ﬁ as fi, Ⅳ as IV), else
 // it stands as its code.
 func spans(face *fonts.Face, s string) []span {
@@ -85,6 +86,9 @@ func spans(face *fonts.Face, s string) []span {
 }
 
 func appendSpan(out []span, face *fonts.Face, r rune) []span {
+	if own := face.Spelling(r); own != "" {
+		return joinSpan(out, span{face: face, text: own})
+	}
 	if f := faceFor(face, r); f != nil {
 		return joinSpan(out, span{face: f, text: string(r)})
 	}
