@@ -7,6 +7,8 @@ import (
 	"unicode"
 	"unicode/utf8"
 
+	"golang.org/x/text/unicode/norm"
+
 	"gusset/notebook/diag"
 	"gusset/units"
 )
@@ -501,7 +503,11 @@ func (p *parser) strange(i int) {
 	case r == utf8.RuneError && size <= 1:
 		message = "a byte that is no UTF-8 cannot stand in a statement"
 	case unicode.Is(unicode.M, r):
-		message = fmt.Sprintf("the combining character U+%04X cannot stand in a statement; type the letter with its mark as one character", r)
+		letter, before := utf8.DecodeLastRuneInString(p.s[:i])
+		message = fmt.Sprintf("the combining character U+%04X cannot stand in a statement; %s", r, unmarked(letter, r))
+		if unicode.IsLetter(letter) {
+			i, size = i-before, before+size
+		}
 	case unicode.IsControl(r):
 		message = fmt.Sprintf("the control character U+%04X cannot stand in a statement", r)
 	case unicode.In(r, unicode.Hebrew, unicode.Arabic, unicode.Syriac, unicode.Thaana, unicode.Nko):
@@ -540,4 +546,24 @@ var slipRunes = map[rune]string{
 	'%': "a percent sign stands behind a number only", '°': "a degree sign stands behind a number only",
 	'_': "a name starts with a letter", '\'': "a text stands in double quotes, as in `\"S355\"`",
 	'\\': "a statement goes on in the next line behind an operator, a comma or an open bracket",
+}
+
+// markNames are what names spell marks as.
+var markNames = map[rune]string{
+	'\u0302': "hat", '\u0303': "tilde", '\u0304': "bar", '\u0305': "bar", '\u0307': "dot", '\u0308': "ddot", '\u20D7': "vec",
+}
+
+// unmarked tells how to do without a combining mark: by the letter that has it,
+// else by a subscript.
+func unmarked(letter, mark rune) string {
+	if !unicode.IsLetter(letter) {
+		return "leave it out"
+	}
+	if one := norm.NFC.String(string(letter) + string(mark)); utf8.RuneCountInString(one) == 1 {
+		return "type " + quoted(one) + " as one character"
+	}
+	if name := markNames[mark]; name != "" {
+		return "write " + quoted(string(letter)+"_"+name)
+	}
+	return "spell it out"
 }

@@ -160,7 +160,9 @@ var mistakes = []struct{ source, id, under, corrected string }{
 	{"x = max(a otherwise)", "syntax", "otherwise", "x = max(a)"},
 	// characters
 	{"x = a + אב", "unsupported-character", "א", "x = a + b"},
-	{"x = e\u0301", "unsupported-character", "\u0301", "x = é"},
+	{"x = e\u0301", "unsupported-character", "e\u0301", "x = é"},
+	{"x = y\u0304 + 1", "unsupported-character", "y\u0304", "x = ȳ + 1"},
+	{"x = n\u0304", "unsupported-character", "n\u0304", "x = n_bar"},
 	{"x = a\x00b", "unsupported-character", "\x00", "x = ab"},
 	{"x = a\u202eb", "unsupported-character", "\u202e", "x = ab"},
 	{"x = a\u200bb", "unsupported-character", "\u200b", "x = ab"},
