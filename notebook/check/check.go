@@ -37,6 +37,7 @@ type checker struct {
 	// of load cases may head its own by the same word (`case`), and has it
 	// under its name then (`wind.case`).
 	caseMarks map[string]bool
+	lostCases int        // the line of load cases whose columns could not be read, 0 for none
 	looks     diag.Looks // at names, for messages
 	slabs     slabs
 }

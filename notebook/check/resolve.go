@@ -107,6 +107,10 @@ func (l *lower) unknown(x *syntax.Name) {
 		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is a function; it has a value only with its arguments", x.Text), "write `"+b.usage+"`")
 		return
 	}
+	if c.lostCases > 0 && !l.e.closed() { // it may be one of their columns
+		l.depend(c.lostCases)
+		return
+	}
 	if s, ok := c.spaces[x.ID]; ok {
 		hint := "a value of it is named behind a dot: `" + x.Text + ".…`"
 		if s.rows != nil {
@@ -136,6 +140,11 @@ func (l *lower) unknown(x *syntax.Name) {
 // unknownDotted reports `bolts.z`, `loads.Q`, `jnt.F_x` that do not exist.
 func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 	c := l.e.c
+	s, ok := c.spaces[space]
+	if ok && s.because > 0 && l.site == nil {
+		l.depend(s.because)
+		return
+	}
 	if d := l.e.lookup(space); d != nil {
 		switch {
 		case d.Failed:
@@ -145,11 +154,6 @@ func (l *lower) unknownDotted(x *syntax.Name, space, name string) {
 		default:
 			l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s is %s, and has nothing behind a dot", d.Symbol, c.describe(d.Type)))
 		}
-		return
-	}
-	s, ok := c.spaces[space]
-	if ok && s.failed && l.site == nil {
-		l.depend(s.line)
 		return
 	}
 	if line, ok := c.later[x.ID]; ok && l.site == nil {

@@ -190,7 +190,7 @@ type space struct {
 	what    string
 	line    int
 	rows    *Rows
-	failed  bool // a schedule that could not be read
+	because int // the line of a schedule of the name that could not be read, 0 for none
 	from    *Carry
 	file    *HelperFile
 	helpers *helperSet

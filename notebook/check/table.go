@@ -23,18 +23,19 @@ func (c *checker) table(b *syntax.Block) {
 	}
 	body := &body{c: c, e: c.top, block: c.block}
 	l := body.lower(0)
-	name := "cases"
-	if t.Name != nil {
-		name = t.Name.ID
+	if t.Name == nil { // a schedule's; reported where it was read
+		return
 	}
+	name := t.Name.ID
 	if s, ok := c.spaces[name]; ok && name == "cases" && s.rows != nil {
 		l.fail(diag.Redefined, b.Table.At, fmt.Sprintf("the load cases of this file stand already at line %d", s.line), "name the second block: `cases wind`")
+		c.failedTable(b, t)
 		return
 	}
-	if t.Name != nil && !body.fresh(l, t.Name, false) {
+	if !body.fresh(l, t.Name, false) {
+		c.failedTable(b, t)
 		return
 	}
-	line := src.LineAt(t.At.Start)
 	if len(t.Rows) > maxRows {
 		l.fail(diag.BoundExceeded, b.Table.At, fmt.Sprintf("%s has %d rows, and the bound is %d", name, len(t.Rows), maxRows))
 		c.failedTable(b, t)
@@ -44,19 +45,15 @@ func (c *checker) table(b *syntax.Block) {
 		c.failedTable(b, t)
 		return
 	}
-	if t.Name != nil {
-		line = c.in.Source.LineAt(t.Name.At.Start)
-	}
+	line := c.in.Source.LineAt(t.Name.At.Start)
 	tab := &tableCheck{c: c, block: b, t: t, src: src, name: name, body: body}
 	tab.sort()
 	rows := tab.rows(line)
-	if t.Name != nil || b.Kind == syntax.CasesBlock {
-		what := "a schedule"
-		if b.Kind == syntax.CasesBlock {
-			what = "a set of load cases"
-		}
-		c.spaces[name] = &space{what: what, line: line, rows: rows}
+	what := "a schedule"
+	if b.Kind == syntax.CasesBlock {
+		what = "a set of load cases"
 	}
+	c.spaces[name] = &space{what: what, line: line, rows: rows}
 	c.prog.BlockRows[c.block] = rows
 	for i := range t.Columns {
 		tab.column(i, rows)
@@ -69,6 +66,9 @@ func (c *checker) table(b *syntax.Block) {
 func (c *checker) failedTable(b *syntax.Block, t *syntax.Table) {
 	line := c.in.Source.LineAt(b.Table.At.Start)
 	if b.Kind == syntax.CasesBlock {
+		if len(t.Columns) == 0 {
+			c.lostCases = line
+		}
 		for i := range t.Columns {
 			if n := t.Columns[i].Name; n != nil && c.top.names[n.ID] == nil {
 				d := c.top.define(n, Type{})
@@ -76,9 +76,14 @@ func (c *checker) failedTable(b *syntax.Block, t *syntax.Table) {
 			}
 		}
 	}
-	if t.Name != nil {
-		c.spaces[t.Name.ID] = &space{what: "a schedule", line: line, rows: &Rows{Name: t.Name.ID}, failed: true}
+	if t.Name == nil {
+		return
 	}
+	if s := c.spaces[t.Name.ID]; s != nil { // the columns may be meant for either
+		s.because = line
+		return
+	}
+	c.spaces[t.Name.ID] = &space{what: "a schedule", line: line, rows: &Rows{Name: t.Name.ID}, because: line}
 }
 
 // tableCheck is the checking of one table.
@@ -258,7 +263,7 @@ func (t *tableCheck) column(i int, rows *Rows) {
 	} else {
 		t.numbers(l, i, col, p)
 	}
-	if l.failed {
+	if l.failed || col.Failed {
 		t.body.failed(p, l)
 	}
 	if free {
@@ -338,7 +343,7 @@ func (t *tableCheck) cell(l *lower, cell *syntax.Cell, col *syntax.Column, d *De
 		t.c.report(e)
 	}
 	n := l.value(cell.Expr)
-	if !n.ok() {
+	if !n.ok() || col.Failed {
 		return n
 	}
 	if len(n.Type.Rows) > 0 {

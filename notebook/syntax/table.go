@@ -135,9 +135,7 @@ func (p *parser) column(c Line) Column {
 	if name != nil && p.tok != tEnd {
 		p.syntax(p.start, p.pos, fmt.Sprintf("a column is headed by a name and its unit, as in `x [mm]`; %s is out of place", quoted(p.here())))
 	}
-	if !p.failed || name != nil {
-		col.Name = name
-	}
+	col.Name, col.Failed = name, p.failed
 	return col
 }
 

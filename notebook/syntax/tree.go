@@ -319,9 +319,10 @@ type Table struct {
 
 // Column is one column's head.
 type Column struct {
-	At   diag.Span
-	Name *Name
-	Unit *UnitRef // nil where none is declared
+	At     diag.Span
+	Name   *Name
+	Unit   *UnitRef // nil where none is declared
+	Failed bool     // its unit could not be read
 }
 
 // Row is one line of a table; it has as many cells as the table has columns.
