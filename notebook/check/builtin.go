@@ -273,12 +273,9 @@ func (l *lower) oneDimension(x *syntax.Call, n *Node, b builtin) bool {
 			return false
 		}
 	}
-	if n.Type.Kind == Point {
-		for i, a := range n.Args {
-			if a.zero {
-				l.fail(diag.DimensionMismatch, x.Args[i].Value.Span(), "0 is a plain number, and the others are temperature points", "write `0 degC` or `32 degF`")
-				return false
-			}
+	for i, a := range n.Args {
+		if a.zero && l.noZero(n.Type, x.Args[i].Value) {
+			return false
 		}
 	}
 	if b.rule == ratio {

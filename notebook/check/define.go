@@ -217,6 +217,11 @@ func (l *lower) choice(s *syntax.Definition, d *Def) Choice {
 		return Choice{}
 	}
 	t := ch.Branches[max(lead, 0)].Value.Type
+	for i := range ch.Branches {
+		if n := ch.Branches[i].Value; n.zero && l.noZero(t, s.Branches[i].Value) {
+			return Choice{}
+		}
+	}
 	t.Rows = ch.Type.Rows
 	if s.Unit != nil {
 		t.Dim, t.Freq = s.Unit.Dim, NoFreq
@@ -252,6 +257,20 @@ func (l *lower) sameBranch(s *syntax.Definition, br *syntax.Branch, first, n *No
 	l.mismatch(br.Value.Span(), fmt.Sprintf("every branch of %s needs one dimension: the first is %s, but `%s` is %s",
 		s.Name.Text, l.e.c.describe(first.Type), l.print(br.Value), l.e.c.describe(n.Type)), first.Type, n.Type)
 	return false
+}
+
+// noZero reports a literal 0, which fits any dimension, where texts or points of
+// temperature stand: 0 is neither.
+func (l *lower) noZero(among Type, x syntax.Expr) bool {
+	switch among.Kind {
+	case Point:
+		l.fail(diag.DimensionMismatch, x.Span(), "0 is a plain number, and the others are temperature points", "write `0 degC` or `32 degF`")
+	case Text:
+		l.fail(diag.DimensionMismatch, x.Span(), "0 is a plain number, and the others are texts", "a text stands in quotes: `\"0\"`")
+	default:
+		return false
+	}
+	return true
 }
 
 // condition lowers what stands behind `if`, `needs` or `with`.

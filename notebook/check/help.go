@@ -114,7 +114,7 @@ func (l *lower) paramType(h *helper, p *syntax.Param) (Type, *Node) {
 	if p.Unit.Point {
 		t.Kind = Point
 	}
-	if def != nil && def.ok() && !def.zero && (def.Type.Dim != t.Dim || def.Type.Kind != t.Kind) {
+	if def != nil && def.ok() && (!def.zero || t.Kind == Point) && (def.Type.Dim != t.Dim || def.Type.Kind != t.Kind) {
 		l.fail(diag.DimensionMismatch, p.Default.Span(), fmt.Sprintf("the default of %s is %s, but %s is declared as %s",
 			p.Name.Text, l.e.c.describe(def.Type), p.Name.Text, l.unitWords(p.Unit)))
 	}

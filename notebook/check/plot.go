@@ -130,6 +130,9 @@ func (l *lower) bound(x syntax.Expr, d *Def) *Node {
 	if len(n.Type.Rows) > 0 {
 		return l.fail(diag.RowMismatch, x.Span(), fmt.Sprintf("a bound of the range is a plain value, but `%s` is %s", l.print(x), l.e.c.rowWords(n.Type)))
 	}
+	if n.zero && l.noZero(d.Type, x) {
+		return invalid
+	}
 	if !n.zero && (n.Type.Dim != d.Type.Dim || n.Type.Kind != d.Type.Kind) {
 		l.mismatch(x.Span(), fmt.Sprintf("the range of %s is %s, but `%s` is %s", d.Symbol, l.e.c.describe(d.Type), l.print(x), l.e.c.describe(n.Type)), d.Type, n.Type)
 		return invalid

@@ -89,6 +89,9 @@ func (l *lower) interpolate(x *syntax.Call, args []*Node) *Node {
 			return l.fail(diag.DimensionMismatch, x.Args[i].Value.Span(), fmt.Sprintf("interpolate takes numbers, but `%s` is a text", l.print(x.Args[i].Value)))
 		}
 	}
+	if at.zero && l.noZero(xs.Type, x.Args[2].Value) {
+		return invalid
+	}
 	if !at.zero && (at.Type.Dim != xs.Type.Dim || (at.Type.Kind == Point) != (xs.Type.Kind == Point)) {
 		l.mismatch(x.Args[2].Value.Span(), fmt.Sprintf("`%s` is looked up among values of another dimension: it is %s, but `%s` holds %s",
 			l.print(x.Args[2].Value), l.e.c.describe(at.Type), l.print(x.Args[0].Value), l.e.c.describe(xs.Type)), xs.Type, at.Type)

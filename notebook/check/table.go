@@ -306,6 +306,11 @@ func (t *tableCheck) numbers(l *lower, i int, col *syntax.Column, p *Plan) {
 	if d.Type.Kind == Invalid && !l.failed {
 		d.Type.Kind = Number
 	}
+	for r, n := range p.Column.Cells { // a 0 above the first temperature
+		if n.zero && l.noZero(d.Type, t.t.Rows[r].Cells[i].Expr) {
+			return
+		}
+	}
 }
 
 const noCell = "a column of numbers has a value in each row"
@@ -370,7 +375,11 @@ func (t *tableCheck) cell(l *lower, cell *syntax.Cell, col *syntax.Column, d *De
 	if n.Type.Dim != d.Type.Dim || n.Type.Kind != d.Type.Kind {
 		message := fmt.Sprintf("%s holds %s, but `%s` is %s", col.Name.Text, l.e.c.describe(Type{Kind: d.Type.Kind, Dim: d.Type.Dim}), l.print(cell.Expr), l.e.c.describe(n.Type))
 		if _, ok := cell.Expr.(*syntax.Number); ok && d.Unit != nil && d.Unit.String() != "" {
-			return l.fail(diag.DimensionMismatch, cell.At, message, "a figure without a unit is in "+d.Unit.String()+", as the header says")
+			hint := "a figure without a unit is in " + d.Unit.String() + ", as the header says"
+			if col.Unit == nil {
+				hint = "the header names the unit of bare figures: write `" + col.Name.Text + " [" + d.Unit.String() + "]`"
+			}
+			return l.fail(diag.DimensionMismatch, cell.At, message, hint)
 		}
 		l.mismatch(cell.At, message, Type{Kind: d.Type.Kind, Dim: d.Type.Dim}, n.Type)
 		return invalid
