@@ -141,6 +141,11 @@ func (p *parser) sideBySide() {
 			return
 		}
 	}
+	if p.prev == tText || p.tok == tText {
+		p.syntax(from, end, fmt.Sprintf("%s and %s stand side by side without an operator", quoted(left), quoted(right)),
+			"a text has no arithmetic, ends at the next quote and holds none itself")
+		return
+	}
 	times := "*"
 	if p.prev == tNumber && !isDigit(left[len(left)-1]) {
 		times = " * " // tight, it might be read as part of the unit

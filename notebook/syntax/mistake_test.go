@@ -35,6 +35,7 @@ var mistakes = []struct{ source, id, under, corrected string }{
 	{"V = 2 cu. yd", "wrong-unit-spelling", "2 cu. yd", "V = 2 yd^3"},
 	{"x = d mod 3", "syntax", "d mod 3", "x = d - 3*floor(d/3)"},
 	{"x = 3 4", "syntax", "3 4", "x = 3 * 4"},
+	{`x = "a \"b\""`, "syntax", `"a \"b`, `x = "a b"`},
 	{"x = 1 3/8", "syntax", "1 3/8", "x = (1 + 3/8)"},
 	{"x = a/1 3/8 in", "syntax", "1 3/8 in", "x = a/(1 3/8 in)"},
 	{"x = 3/0 in", "not-a-number", "3/0", "x = 3/4 in"},
