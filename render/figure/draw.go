@@ -99,6 +99,7 @@ type pad struct {
 	maths   *maths.Builder
 	lines   []span    // the strokes that labels keep clear of
 	labels  []rect    // the labels and other things that they must not cover
+	dots    []Point   // the values marked on curves
 	waiting []waiting // the labels that are put when all strokes are known
 	notes   []string
 }
@@ -218,6 +219,7 @@ func (d *pad) disc(colour Colour, c Point, r float64) {
 func (d *pad) dot(c Point) {
 	d.disc(white, c, 3.2)
 	d.disc(ink, c, 2.3)
+	d.dots = append(d.dots, c)
 	d.labels = append(d.labels, rect{c.X - 3, c.Y - 3, c.X + 3, c.Y + 3})
 }
 

@@ -1,6 +1,9 @@
 package figure
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 // rect is a place that something covers.
 type rect struct{ x0, y0, x1, y1 float64 }
@@ -85,7 +88,7 @@ func (d *pad) trouble(w *waiting, at rect, bound float64) float64 {
 	const through = 25
 	r := w.room(at)
 	area := (r.x1 - r.x0) * (r.y1 - r.y0)
-	sum := 8 * (area - r.shared(w.within))
+	sum := 8*(area-r.shared(w.within)) + d.mistaken(w, at)
 	for _, o := range d.labels {
 		if o.distance(w.point) == 0 {
 			// The mark of its own point is as far as the gap says.
@@ -104,6 +107,21 @@ func (d *pad) trouble(w *waiting, at rect, bound float64) float64 {
 		}
 	}
 	return sum
+}
+
+// mistaken is how much a label would be taken for that of another dot: it
+// stands no nearer to its own, and no line leads to it.
+func (d *pad) mistaken(w *waiting, at rect) float64 {
+	own := at.distance(w.point)
+	if own > w.gap+leaderFrom || !slices.Contains(d.dots, w.point) {
+		return 0
+	}
+	for _, o := range d.dots {
+		if o != w.point && at.distance(o) <= own {
+			return 40
+		}
+	}
+	return 0
 }
 
 // everywhere is no bound on where a label may stand.

@@ -226,3 +226,31 @@ func TestCrosses(t *testing.T) {
 		t.Errorf("%g from a point, want 5", got)
 	}
 }
+
+// Of two values close to one another a figure never stands nearer to the
+// other's dot than to its own, wherever a line of the grid lies between.
+func TestFiguresStandAtTheirOwnDots(t *testing.T) {
+	for _, apart := range []float64{4, 5, 7, 10} {
+		for grid := -16.0; grid < 0; grid++ {
+			d := newPad()
+			p := [2]Point{{0, 0}, {0, apart}}
+			d.line(fine, Point{-100, grid}, Point{100, grid})
+			for _, q := range p {
+				d.line(outline, q.plus(-100, 40), q.plus(100, -40))
+				d.dot(q)
+			}
+			first := len(d.labels)
+			for _, q := range p {
+				d.near(d.words("411.8 N/mm"), q, 5, everywhere, math.Pi/4, 3*math.Pi/4, -math.Pi/4, -3*math.Pi/4)
+			}
+			d.settle()
+			for i := range p {
+				r := d.labels[first+i]
+				own, other := r.distance(p[i]), r.distance(p[1-i])
+				if own >= other && own <= 5+leaderFrom {
+					t.Errorf("dots %g apart, grid at %g: the figure of dot %d is %g from it and %g from the other", apart, grid, i, own, other)
+				}
+			}
+		}
+	}
+}
