@@ -180,13 +180,13 @@ func (w *builder) product(e *syntax.Binary) (Node, rank) {
 	factors := w.factors(room[:0], e)
 	if first, ok := unbracketed(factors[0]).(*syntax.Unary); ok && first.Op == syntax.Neg {
 		factors[0] = first.X
-		return w.row(minus, w.times(factors)), rankedNeg
+		return w.row(minus, w.times(factors, false)), rankedNeg
 	}
-	return w.times(factors), rankedProduct
+	return w.times(factors, true), rankedProduct
 }
 
-// times sets factors side by side.
-func (w *builder) times(factors []syntax.Expr) Node {
+// times sets factors side by side; first tells that nothing stands before them.
+func (w *builder) times(factors []syntax.Expr, first bool) Node {
 	row := w.room(2 * len(factors))
 	for i, f := range factors {
 		last := i == len(factors)-1
@@ -194,7 +194,7 @@ func (w *builder) times(factors []syntax.Expr) Node {
 		if r == rankedPower && !last && open(n) {
 			r = rankedSum // sin θ in front of another factor
 		}
-		n = bracketed(n, r, rankedProduct, i == 0)
+		n = bracketed(n, r, rankedProduct, first && i == 0)
 		if i > 0 {
 			row = append(row, between(row[len(row)-1], n))
 		}

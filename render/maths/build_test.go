@@ -69,6 +69,8 @@ func TestExpressions(t *testing.T) {
 		{"a = f_y/(sqrt(3)*gamma_M)", "f_y/(√3·γ_M)", "355 MPa/(√3·1.5)"},
 		{"a = P/(d*t)", "P/(d·t)", "48 kN/(25 mm · 5 mm)"},
 		{"a = P/d/t", "P/(d·t)", "48 kN/(25 mm · 5 mm)"},
+		{"a = -sigma_2*x", "−σ_2·x", "−(−40 MPa)·2"},
+		{"a = sigma_1 + (-sigma_2)*x", "σ_1 + (−σ_2·x)", "120 MPa + (−(−40 MPa)·2)"},
 		{"a = 1/2*x", "1/2·x", "1/2·2"},
 		{"a = (x/n)/(n/x)", "x/n/(n/x)", "2/4/(4/2)"},
 		{"a = (x/n*x)/n", "(x/n)·x/n", "(2/4)·2/4"},
