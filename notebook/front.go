@@ -233,6 +233,10 @@ func (f *frontReader) person(e entry) Person {
 		return Person{Name: f.text(e.key, e.value)}
 	}
 	var p Person
+	if target(e.value).Kind == yaml.SequenceNode {
+		f.report(diag.Error, f.span(e.value), fmt.Sprintf("`%s` is one person: initials, or a name with a date", e.key), fmt.Sprintf("write `%s: {name: KT, date: 2026-03-02}`", e.key))
+		return p
+	}
 	for _, part := range f.mapping(e.value, "`"+e.key+"`") {
 		switch part.key {
 		case "name":
@@ -314,8 +318,8 @@ var keyPattern = regexp.MustCompile(`^\pL[\pL\pN_']*$`)
 
 // links reads `from` and `helpers`: files by key.
 func (f *frontReader) links(e entry, example string) []Link {
-	if v := target(e.value); v.Kind == yaml.ScalarNode {
-		if v.Value != "" {
+	if v := target(e.value); v.Kind != yaml.MappingNode {
+		if v.Kind != yaml.ScalarNode || v.Value != "" {
 			f.report(diag.Error, f.span(e.value), fmt.Sprintf("`%s` gives each file a key", e.key), fmt.Sprintf("write `%s: {%s}`", e.key, example))
 		}
 		return nil

@@ -43,6 +43,8 @@ func reason(err error) string {
 		return "there is no such file"
 	case errors.Is(err, fs.ErrPermission):
 		return "it may not be read"
+	case errors.Is(err, fs.ErrInvalid):
+		return "its name is no text in UTF-8"
 	case strings.Contains(err.Error(), "escapes from parent"):
 		return "it is a link that leads out of the root folder"
 	case errors.As(err, &pathErr):
@@ -109,7 +111,7 @@ func checkText(name string, text []byte) (*diag.Source, *diag.Diagnostic) {
 	d := &diag.Diagnostic{ID: diag.UnsupportedCharacter}
 	switch {
 	case bytes.HasPrefix(text, []byte("\xff\xfe")) || bytes.HasPrefix(text, []byte("\xfe\xff")):
-		d.Message = "the file is UTF-16, and a calc file is UTF-8"
+		d.Message = "the file is UTF-16, not UTF-8"
 	case bad == 0:
 		d.Message = "a NUL byte: the file is no text"
 	default:

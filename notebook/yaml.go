@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"errors"
 	"fmt"
+	"regexp"
 	"slices"
 	"strconv"
 	"strings"
@@ -165,7 +166,9 @@ func (y *yamlReader) texts(key string, n *yaml.Node, example string) (list []str
 		return nil, nil
 	}
 	for _, item := range v.Content {
-		if text := y.text(key, item); text != "" {
+		if v := target(item); v.Kind != yaml.ScalarNode {
+			y.errorf(y.span(item), "each of `%s` is a text, not a %s", key, kindName(v))
+		} else if text := y.text(key, item); text != "" {
 			list, at = append(list, text), append(at, y.span(item))
 		}
 	}
@@ -232,6 +235,10 @@ func (y *yamlReader) notYAML(err error) {
 		"a text that holds any of `: # [ ] { } % @` goes in quotes")
 }
 
+// countsFromZero is what the parser finds wrong with the order of its tokens. It
+// numbers these lines from zero, and those of all its other errors from one.
+var countsFromZero = regexp.MustCompile(`^did not find expected (<|node content|key|'-' indicator|',' or)`)
+
 // yamlMessage takes the line out of an error of the parser.
 func yamlMessage(err error) (message string, line int) {
 	var lists *yaml.TypeError
@@ -244,6 +251,9 @@ func yamlMessage(err error) (message string, line int) {
 		if number, words, ok := strings.Cut(rest, ": "); ok {
 			if n, err := strconv.Atoi(number); err == nil {
 				line, message = n, words
+				if countsFromZero.MatchString(words) {
+					line++
+				}
 			}
 		}
 	}
