@@ -31,12 +31,12 @@ var (
 	registerKeys = []string{"project", "client", "firm", "job", "logo", "system", "units", "figures", "paper"}
 )
 
-// The bounds on what a calc may ask for. More than 15 figures a float64 does
-// not have. The number and the revision name the files that are written.
-const (
-	maxFigures = 15
-	maxNumber  = 100
-)
+// maxFigures bounds the figures that a calc may ask for. More a float64 does not have.
+const maxFigures = 15
+
+// MaxNumber bounds the characters of a calc's number and of its revision, which
+// name the files that are written.
+const MaxNumber = 100
 
 // cutFront finds the front matter of a text: the lines between `---` in the
 // first line and the next `---` or `...`. body is the offset of what follows.
@@ -205,10 +205,10 @@ func (f *frontReader) set(e entry) {
 // number reads the calc's number or its revision, which name files.
 func (f *frontReader) number(e entry) string {
 	text := f.text(e.key, e.value)
-	if utf8.RuneCountInString(text) > maxNumber {
+	if utf8.RuneCountInString(text) > MaxNumber {
 		f.diags = append(f.diags, diag.Diagnostic{
 			ID: diag.BoundExceeded, Source: f.src, Span: f.span(e.value),
-			Message: fmt.Sprintf("`%s` may have %d characters at most", e.key, maxNumber),
+			Message: fmt.Sprintf("`%s` may have %d characters at most", e.key, MaxNumber),
 		})
 		return ""
 	}

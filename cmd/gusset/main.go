@@ -43,11 +43,15 @@ func main() {
 
 // gusset runs the program and returns its exit status.
 func gusset(args []string, t *terminal) int {
+	out := &output{to: t.out}
+	t.out = out
 	root := command(t)
 	root.SetArgs(numbersAreValues(args))
 	err := root.Execute()
 	var s status
 	switch {
+	case out.err != nil:
+		err = fmt.Errorf("the results cannot be written (%w)", cause(out.err))
 	case err == nil:
 		return 0
 	case errors.As(err, &s):

@@ -8,8 +8,12 @@ import (
 	"os"
 	"path/filepath"
 	"strings"
+	"unicode"
 
 	"github.com/spf13/cobra"
+
+	"gusset/notebook"
+	"gusset/notebook/diag"
 )
 
 // template is the calc that `gusset new` writes; NUMBER stands for its number.
@@ -33,10 +37,14 @@ Its number is taken from the file's name. A file that exists is never touched.`,
 
 func newCalc(t *terminal, file string) error {
 	if !isMarkdown(file) {
-		return fmt.Errorf("a calc file is Markdown: `gusset new %s.md`", file)
+		name := file
+		if name == "" || os.IsPathSeparator(name[len(name)-1]) {
+			name += "lug"
+		}
+		return fmt.Errorf("a calc file is Markdown: `gusset new %s`", shellWord(name+".md"))
 	}
 	base := filepath.Base(file)
-	number := fileName(strings.TrimSuffix(base, filepath.Ext(base)))
+	number := calcNumber(strings.TrimSuffix(base, filepath.Ext(base)))
 	if number == "" {
 		return fmt.Errorf("`%s` has no letter or figure to number the calc by", base)
 	}
@@ -45,7 +53,7 @@ func newCalc(t *terminal, file string) error {
 	case errors.Is(err, fs.ErrExist):
 		return fmt.Errorf("%s: there is a file of this name, and it stays as it is", file)
 	case errors.Is(err, fs.ErrNotExist):
-		return fmt.Errorf("%s: there is no folder `%s`", file, filepath.Dir(file))
+		return fmt.Errorf("%s: there is no folder `%s`", file, strings.TrimSuffix(file, string(filepath.Separator)+base))
 	case err != nil:
 		return unwritable(file, err)
 	}
@@ -53,6 +61,26 @@ func newCalc(t *terminal, file string) error {
 	if err = errors.Join(err, out.Close()); err != nil {
 		return errors.Join(unwritable(file, err), os.Remove(file))
 	}
-	fmt.Fprintf(t.out, "wrote %s; next: `gusset run %s`\n", file, file)
+	fmt.Fprintf(t.out, "wrote %s; next: `gusset run %s`\n", diag.Visible(file), shellWord(diag.Visible(file)))
 	return nil
+}
+
+// calcNumber makes a calc's number of a file's name, within the bound that numbers have.
+func calcNumber(name string) string {
+	runes := []rune(fileName(name))
+	return fileName(string(runes[:min(len(runes), notebook.MaxNumber)]))
+}
+
+// shellWord writes a file's name so that a shell takes it for one word, and this
+// program for no flag.
+func shellWord(file string) string {
+	if strings.HasPrefix(file, "-") {
+		file = "./" + file
+	}
+	if strings.IndexFunc(file, func(r rune) bool {
+		return !unicode.IsLetter(r) && !unicode.IsDigit(r) && !strings.ContainsRune("/._-+,:@%", r)
+	}) < 0 {
+		return file
+	}
+	return "'" + strings.ReplaceAll(file, "'", `'\''`) + "'"
 }

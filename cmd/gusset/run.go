@@ -95,7 +95,7 @@ func (r *runner) run(t *terminal, files []string) error {
 			fmt.Fprintln(t.out)
 		}
 		if err := write(t, sheet); err != nil {
-			return fmt.Errorf("the results cannot be written (%w)", cause(err))
+			return err
 		}
 		if !r.json {
 			t.diagnostics(sheet, r.notes)

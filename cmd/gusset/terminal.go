@@ -29,6 +29,22 @@ func newTerminal(out, err *os.File) *terminal {
 
 func isTerminal(f *os.File) bool { return term.IsTerminal(int(f.Fd())) }
 
+// output is a stream that remembers the first error, so that no command has to
+// look at every line that it prints.
+type output struct {
+	to  io.Writer
+	err error
+}
+
+func (o *output) Write(text []byte) (int, error) {
+	if o.err != nil {
+		return 0, o.err
+	}
+	n, err := o.to.Write(text)
+	o.err = err
+	return n, err
+}
+
 // style tells whether a stream is coloured.
 type style bool
 
