@@ -156,7 +156,9 @@ func (l *lower) number(x *syntax.Number) *Node {
 	n := l.node(Node{Op: Const, Expr: x, plain: true, bare: true})
 	n.Type.Kind = Number
 	first := x.Pieces[0]
-	l.literalUnits(x)
+	if !l.literalUnits(x) {
+		return invalid
+	}
 	if !first.HasUnit {
 		n.Num = first.SI(x.Neg)
 		n.zero = n.Num == 0
@@ -184,8 +186,10 @@ func (l *lower) number(x *syntax.Number) *Node {
 	return n
 }
 
-// literalUnits looks at names in a literal's units that are also values.
-func (l *lower) literalUnits(x *syntax.Number) {
+// literalUnits looks at names in a literal's units that are also values. It is
+// false where one may be either, so that the literal has no dimension.
+func (l *lower) literalUnits(x *syntax.Number) bool {
+	sure := true
 	for _, p := range x.Pieces {
 		if !p.HasUnit {
 			continue
@@ -197,6 +201,7 @@ func (l *lower) literalUnits(x *syntax.Number) {
 			switch {
 			case d == nil || d.IsConst:
 			case i == 0 && p.Touch:
+				sure = false
 				l.fail(diag.AmbiguousUnit, p.At.To(p.UnitAt),
 					fmt.Sprintf("`%s%s` may be %s times the value %s, or %s %s", spelled, at.Name, spelled, at.Name, spelled, at.Name),
 					fmt.Sprintf("write `%s*%s` for the product, `%s %s` for the unit", spelled, at.Name, spelled, at.Name))
@@ -218,6 +223,7 @@ func (l *lower) literalUnits(x *syntax.Number) {
 				fmt.Sprintf("write `%s` for the value, or declare the line's unit to keep the unit", spaced))
 		}
 	}
+	return sure
 }
 
 // spacedUnit spells `48 kN/L` as `48 kN / L`.
