@@ -7,6 +7,7 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
+	"slices"
 	"strings"
 	"syscall"
 
@@ -21,10 +22,11 @@ type found struct {
 }
 
 // find lists the calc files that paths stand for: files as they are named, and
-// in folders every calc file, at any depth. Other Markdown is passed over, and so
-// are links, and files and folders whose name starts with a dot.
-func find(paths []string) found {
-	f := finder{seen: map[string]bool{}}
+// in folders every calc file, at any depth, and those that were known for one.
+// Other Markdown is passed over, and so are links, and files and folders whose
+// name starts with a dot.
+func find(paths []string, known ...string) found {
+	f := finder{known: known, seen: map[string]bool{}}
 	for _, path := range paths {
 		info, err := os.Stat(path)
 		switch {
@@ -41,7 +43,8 @@ func find(paths []string) found {
 
 type finder struct {
 	found
-	seen map[string]bool // by real path
+	known []string
+	seen  map[string]bool // by real path
 }
 
 func (f *finder) problem(path string, err error) {
@@ -85,7 +88,7 @@ func (f *finder) walk(folder string) {
 			calc, err := isCalc(path)
 			if err != nil {
 				f.problem(path, err)
-			} else if calc {
+			} else if calc || slices.Contains(f.known, path) {
 				f.add(path)
 				any = true
 			}

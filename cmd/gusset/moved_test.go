@@ -80,11 +80,21 @@ func TestMovedLine(t *testing.T) {
 }
 
 func TestBuildLine(t *testing.T) {
-	lines := []string{"a: " + nothingMoved, "b: x 1 → 2", "c: " + nothingMoved, "d", "e", "f", "g", "h"}
-	if got, want := buildLine(lines), "b: x 1 → 2; d; e; f; g; and 3 more calcs"; got != want {
+	of := func(lines ...string) (parts []buildPart) {
+		for _, line := range lines {
+			parts = append(parts, buildPart{line: line})
+		}
+		return parts
+	}
+	parts := of("a: "+nothingMoved, "b: x 1 → 2", "c: "+nothingMoved, "d", "e", "f", "g", "h")
+	if got, want := buildLine(slices.Clone(parts)), "b: x 1 → 2; d; e; f; g; and 3 more calcs"; got != want {
 		t.Errorf("got %q, want %q", got, want)
 	}
-	if got, want := buildLine([]string{"a", "b"}), "a; b"; got != want {
+	parts[7].saved = true // the calc that was saved, before those that rest on it
+	if got, want := buildLine(parts), "h; b: x 1 → 2; d; e; f; and 3 more calcs"; got != want {
+		t.Errorf("got %q, want %q", got, want)
+	}
+	if got, want := buildLine(of("a", "b")), "a; b"; got != want {
 		t.Errorf("got %q, want %q", got, want)
 	}
 }

@@ -3,6 +3,7 @@ package main
 import (
 	"errors"
 	"fmt"
+	"io/fs"
 	"os"
 	"path/filepath"
 	"slices"
@@ -96,7 +97,7 @@ func (p *printer) stems(results []store.Result) (stems []string, problems []erro
 			continue
 		}
 		stems[i] = stem
-		key := strings.ToLower(filepath.Clean(stem))
+		key := strings.ToLower(absolute(stem))
 		j, taken := first[key]
 		if !taken {
 			first[key] = i
@@ -181,6 +182,9 @@ func (p *printer) writeAll(results []store.Result, stems []string, done func()) 
 // unwritable says which path cannot be written and why, and that what stood
 // there still does.
 func unwritable(path string, err error) error {
+	if info, there := os.Lstat(path); there == nil && info.Mode()&fs.ModeSymlink != 0 && stampOf(path).info == nil {
+		return fmt.Errorf("%s: cannot be written: it is a link that leads nowhere", path)
+	}
 	if errors.Is(err, syscall.EISDIR) || errors.Is(err, syscall.EEXIST) {
 		return fmt.Errorf("%s: cannot be written: a folder has this name", path)
 	}

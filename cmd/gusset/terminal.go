@@ -21,6 +21,9 @@ type terminal struct {
 	colour   style // of out
 	alarm    style // of err
 	live     bool  // err is a terminal, on which a line of progress may stand
+	// told are the diagnostics shown of files that several calcs may share: a
+	// register, a file of helpers, a table.
+	told map[string]bool
 }
 
 func newTerminal(out, err *os.File) *terminal {
@@ -88,13 +91,14 @@ func diagSafe(s string) string {
 }
 
 // diagnostics prints a calc's diagnostics, and how many there are. Notes are
-// only counted unless they are asked for.
+// only counted unless they are asked for, and so is what was told with another
+// calc, of a file that they share.
 func (t *terminal) diagnostics(s *notebook.Sheet, notes bool) {
 	var count [3]int
 	for _, d := range s.Diagnostics {
 		count[d.Severity]++
 		if d.Severity < diag.Note || notes {
-			t.diagnostic(d)
+			t.diagnosticOf(s, d)
 		}
 	}
 	if line := counts(count, notes); line != "" {
@@ -123,6 +127,25 @@ func plural(n int, word string) string {
 	}
 	return fmt.Sprintf("%d %ss", n, word)
 }
+
+// diagnosticOf prints a diagnostic of a calc, unless it is of a file that the
+// calc shares with another, with which it was told.
+func (t *terminal) diagnosticOf(s *notebook.Sheet, d diag.Diagnostic) {
+	if d.Source != nil && d.Source.Name != s.Source.Name {
+		text := d.Text()
+		if t.told[text] {
+			return
+		}
+		if t.told == nil {
+			t.told = map[string]bool{}
+		}
+		t.told[text] = true
+	}
+	t.diagnostic(d)
+}
+
+// forget forgets what was told: a new build tells it again.
+func (t *terminal) forget() { t.told = nil }
 
 // diagnostic prints one diagnostic: its place bold, the mark under the source
 // in the colour of its severity.

@@ -161,10 +161,11 @@ func (w *watcher) build(changed []string) {
 	pages := w.p.writeAll(fresh, freshStems, func() {})
 	took := time.Since(start)
 	w.tell("names", clashes...)
-	var lines []string
+	w.t.forget()
+	var lines []buildPart
 	for i, r := range fresh {
 		if line := w.finish(r, freshStems[i], pages[i]); line != "" {
-			lines = append(lines, line)
+			lines = append(lines, buildPart{line, slices.Contains(changed, absolute(r.File))})
 		}
 	}
 	if len(lines) > 0 {
@@ -182,23 +183,37 @@ func isFolder(path string) bool {
 // mostCalcs is how many calcs a build's line names: the rest is counted.
 const mostCalcs = 5
 
-// buildLine joins what came of the calcs of a build, those first in which
-// something moved.
-func buildLine(lines []string) string {
-	slices.SortStableFunc(lines, func(a, b string) int {
-		return cmp.Compare(rank(a), rank(b))
+// buildPart is what came of a calc of a build. saved tells that its own file was
+// saved, and not one that it rests on.
+type buildPart struct {
+	line  string
+	saved bool
+}
+
+// buildLine joins what came of the calcs of a build, those first that were saved,
+// and then those in which something moved.
+func buildLine(parts []buildPart) string {
+	slices.SortStableFunc(parts, func(a, b buildPart) int {
+		return cmp.Compare(a.rank(), b.rank())
 	})
+	var lines []string
+	for _, p := range parts {
+		lines = append(lines, p.line)
+	}
 	if more := len(lines) - mostCalcs; more > 1 {
 		lines = append(lines[:mostCalcs:mostCalcs], fmt.Sprintf("and %d more calcs", more))
 	}
 	return strings.Join(lines, "; ")
 }
 
-func rank(line string) int {
-	if strings.HasSuffix(line, nothingMoved) {
-		return 1
+func (p buildPart) rank() int {
+	switch {
+	case p.saved:
+		return 0
+	case strings.HasSuffix(p.line, nothingMoved):
+		return 2
 	}
-	return 0
+	return 1
 }
 
 // moves tells whether a change may add calc files to the folders or take them
@@ -206,7 +221,8 @@ func rank(line string) int {
 func (w *watcher) moves(changed []string) bool {
 	known := w.store.Files()
 	for _, path := range changed {
-		if _, found := slices.BinarySearch(known, path); !found || stampOf(path).info == nil {
+		info, err := os.Lstat(path)
+		if _, found := slices.BinarySearch(known, path); !found || err != nil || !info.Mode().IsRegular() {
 			return true
 		}
 	}
@@ -227,7 +243,8 @@ func (w *watcher) search(since time.Time) {
 }
 
 // walk walks the folders. A calc file that was named and is gone stays on the
-// list, so that it is seen when it comes back.
+// list, so that it is seen when it comes back, and so does one that has lost its
+// front matter, which is more likely to be a slip.
 func (w *watcher) walk() {
 	var there, missing []string
 	var problems []error
@@ -241,7 +258,7 @@ func (w *watcher) walk() {
 			problems = append(problems, fmt.Errorf("%s: it is gone; its pages stay as they are, and it is printed again once it is back", path))
 		}
 	}
-	now := find(there)
+	now := find(there, w.found.files...)
 	now.files = append(now.files, missing...)
 	var gone []string
 	for _, file := range w.found.files {
@@ -372,7 +389,7 @@ func (w *watcher) finish(r store.Result, stem string, pages written) string {
 		w.t.diagnostics(r.Sheet, false)
 		return name + ": has errors" + kept(c)
 	}
-	w.warn(c, append(slices.Clone(r.Sheet.Diagnostics), pages.warnings...))
+	w.warn(c, r.Sheet, append(slices.Clone(r.Sheet.Diagnostics), pages.warnings...))
 	if c.due = stem == "" || pages.err != nil; c.due {
 		if pages.err != nil && !w.tell(r.File, pages.err) && repeated {
 			return ""
@@ -399,7 +416,7 @@ func (w *watcher) finish(r store.Result, stem string, pages written) string {
 }
 
 // warn shows a calc's warnings where they are not those of the last build.
-func (w *watcher) warn(c *watched, list []diag.Diagnostic) {
+func (w *watcher) warn(c *watched, sheet *notebook.Sheet, list []diag.Diagnostic) {
 	var text strings.Builder
 	var show []diag.Diagnostic
 	for _, d := range list {
@@ -413,7 +430,7 @@ func (w *watcher) warn(c *watched, list []diag.Diagnostic) {
 	}
 	c.warning = text.String()
 	for _, d := range show {
-		w.t.diagnostic(d)
+		w.t.diagnosticOf(sheet, d)
 	}
 }
 
@@ -425,7 +442,7 @@ func (w *watcher) repair() {
 			continue
 		}
 		for _, page := range c.files {
-			if !c.due && stampOf(page).info == nil {
+			if s := stampOf(page); !c.due && (s.info == nil || s.info.IsDir()) {
 				c.due, c.lost = true, true
 			}
 		}

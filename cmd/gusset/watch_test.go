@@ -147,6 +147,18 @@ func TestWatchFollows(t *testing.T) {
 	p.wait(t, "notes.md: no checks → out/C-3.html")
 	write(t, path("pkg/calcs/notes.md"), "# Notes\n")
 	p.wait(t, "notes.md: has errors; the last good pages stay")
+	write(t, path("pkg/calcs/new.md"), "---\ncalc: C-4\n---\n") // has the folder walked
+	p.wait(t, "new.md: no checks → out/C-4.html")
+	write(t, path("pkg/calcs/notes.md"), "---\ncalc: C-3\n---\n# More notes\n")
+	p.wait(t, "notes.md: no value moved")
+	// A link in its place is not followed.
+	if err := os.Remove(path("pkg/calcs/new.md")); err != nil {
+		t.Fatal(err)
+	}
+	if err := os.Symlink("notes.md", path("pkg/calcs/new.md")); err != nil {
+		t.Fatal(err)
+	}
+	p.wait(t, "new.md: no longer a calc file; its pages stay as they are")
 	// The register goes, and with it the root in which the other files lie.
 	if err := os.Remove(path("pkg/register.yaml")); err != nil {
 		t.Fatal(err)
@@ -155,6 +167,9 @@ func TestWatchFollows(t *testing.T) {
 	write(t, path("pkg/register.yaml"), "figures: 4\n")
 	p.wait(t, "X 35.0000 → 35.00 mm")
 	p.interrupt(t)
+	if said := p.said(); strings.Contains(said, "notes.md: no longer a calc file") {
+		t.Errorf("a slip in the front matter is told twice:\n%s", said)
+	}
 }
 
 // TestWatchBuildsOnlyWhatChanged wants one calc of a folder built, not its
@@ -294,6 +309,19 @@ func TestWatchOutput(t *testing.T) {
 	if page := read(t, filepath.Join(out, "C-1.html")); !strings.Contains(page, prose("49")) {
 		t.Error("the page does not have the value")
 	}
+	// A folder in the place of a page is seen before the next save.
+	page := filepath.Join(out, "C-1.html")
+	if err := os.Remove(page); err != nil {
+		t.Fatal(err)
+	}
+	if err := os.Mkdir(page, 0o777); err != nil {
+		t.Fatal(err)
+	}
+	p.wait(t, "lug.md: not written")
+	if err := os.Remove(page); err != nil {
+		t.Fatal(err)
+	}
+	p.wait(t, "lug.md: its pages were gone and are written again")
 	p.interrupt(t)
 	if n := strings.Count(p.said(), "a file stands where a folder should"); n != 1 {
 		t.Errorf("the problem was told %d times:\n%s", n, p.said())
