@@ -13,7 +13,8 @@ import (
 // What fits stays on one line. Else the line breaks before relations, each
 // standing under the first one; a right side that is longer than a line breaks
 // before its loosest operators, then before tighter ones, then inside of
-// brackets, and goes on under the first right side. Fractions and roots are
+// brackets, and goes on under the first right side, set in the further the
+// deeper the place where it breaks. Fractions and roots are
 // never split: one that is wider than a line is set smaller, down to leastScale,
 // and below that written out with a slash, which breaks again. A line without a
 // place to break, such as an endless name, is cut.
@@ -35,11 +36,13 @@ var rooms = sync.Pool{New: func() any { return new(room) }}
 
 // leastScale is how small a fraction may be set so as not to be split, and
 // hang how far lines are set in, in ems, whose left side takes more than
-// longLeft of the width.
+// longLeft of the width. What breaks within a term or a bracket is set in by
+// step more, as long as it leaves longLeft of the width.
 const (
 	leastScale = 0.7
 	hang       = 2
 	longLeft   = 0.45
+	step       = 1
 )
 
 // A breaker fills lines with pieces.
@@ -168,7 +171,7 @@ func (b *breaker) chain(c Chain) {
 	b.limit = 10_000
 	if c.Left != nil {
 		left := b.pieces(atoms(room[:0], c.Left), Open)
-		b.fill(left, hang*em)
+		b.fill(left, hang*em, hang*em)
 	}
 	relation, hanging := b.x+b.gapBefore(b.right, Rel), false
 	if c.Left == nil {
@@ -196,12 +199,13 @@ func (b *breaker) chain(c Chain) {
 			continue
 		}
 		b.place(ps[0])
-		b.fill(ps[1:], under)
+		b.fill(ps[1:], under, under)
 	}
 }
 
-// fill sets pieces from the present place on; lines that follow start at at.
-func (b *breaker) fill(ps []piece, at float64) {
+// fill sets pieces from the present place on. Lines that follow start at at, but
+// at start where none of the pieces has found room before.
+func (b *breaker) fill(ps []piece, start, at float64) {
 	if len(ps) == 0 {
 		return
 	}
@@ -209,12 +213,9 @@ func (b *breaker) fill(ps []piece, at float64) {
 		b.place(ps...)
 		return
 	}
-	rank := rankNone
-	for _, p := range ps[1:] {
-		rank = min(rank, p.rank)
-	}
+	rank := loosestOf(ps)
 	if rank == rankNone {
-		b.unbroken(ps, at)
+		b.unbroken(ps, start, at)
 		return
 	}
 	from := 0
@@ -223,12 +224,37 @@ func (b *breaker) fill(ps []piece, at float64) {
 			continue
 		}
 		chunk := ps[from:i]
-		from = i
-		if !b.fits(chunk) && b.x > at && b.worthALine(chunk, at) {
-			b.newLine(at)
+		if from > 0 {
+			start = at
 		}
-		b.fill(chunk, at)
+		from = i
+		if !b.fits(chunk) && b.x > start && b.worthALine(chunk, start) {
+			b.newLine(start)
+		}
+		if rank == rankComma && len(chunk) > 1 && chunk[1].rank == rankRelation {
+			chunk[1].rank = rankNone // a name stays with its value, however long
+		}
+		within := at
+		if loosestOf(chunk) != rankNone {
+			within = b.deeper(at)
+		}
+		b.fill(chunk, start, within)
 	}
+}
+
+// loosestOf is the loosest rank at which pieces break.
+func loosestOf(ps []piece) int {
+	rank := rankNone
+	for _, p := range ps[1:] {
+		rank = min(rank, p.rank)
+	}
+	return rank
+}
+
+// deeper is where lines go on that break a level deeper than those that go on
+// at at.
+func (b *breaker) deeper(at float64) float64 {
+	return max(at, min(at+step*b.em(b.st), (1-longLeft)*b.width))
 }
 
 // worthALine reports whether pieces that do not fit here go to a line of their
@@ -238,9 +264,9 @@ func (b *breaker) worthALine(ps []piece, at float64) bool {
 }
 
 // unbroken sets pieces that have no operator to break at.
-func (b *breaker) unbroken(ps []piece, at float64) {
-	if b.x > at && at+b.alone(ps) <= b.width+1e-6 {
-		b.newLine(at)
+func (b *breaker) unbroken(ps []piece, start, at float64) {
+	if b.x > start && start+b.alone(ps) <= b.width+1e-6 {
+		b.newLine(start)
 		b.place(ps...)
 		return
 	}
@@ -254,11 +280,14 @@ func (b *breaker) unbroken(ps []piece, at float64) {
 		b.limit--
 		opened := append([]piece(nil), ps[:widest]...)
 		opened = append(opened, b.open(ps[widest])...)
-		b.fill(append(opened, ps[widest+1:]...), at)
+		if !isPair(ps[widest].node) {
+			at = b.deeper(at)
+		}
+		b.fill(append(opened, ps[widest+1:]...), start, at)
 		return
 	}
-	if b.x > at {
-		b.newLine(at)
+	if b.x > start {
+		b.newLine(start)
 	}
 	for i, p := range ps {
 		tail := ps[i+1 : i+1+followers(ps[i+1:])]
@@ -267,7 +296,7 @@ func (b *breaker) unbroken(ps []piece, at float64) {
 			b.place(p)
 		case b.full && b.room(p.left) < (b.width-at)/2:
 			b.newLine(at)
-			b.unbroken(ps[i:], at)
+			b.unbroken(ps[i:], at, at)
 			return
 		default:
 			after := breaker{setter: b.setter, st: b.st, right: p.right, full: true}
@@ -304,6 +333,12 @@ func opens(n Node) bool {
 	return false
 }
 
+// isPair tells a name with its value from brackets.
+func isPair(n Node) bool {
+	f, ok := n.(Fence)
+	return ok && f.Open == ""
+}
+
 // open takes a fence apart: the brackets, as tall as the body asks, and the
 // body's atoms. Scripts of the fence stay at its closing bracket.
 func (b *breaker) open(p piece) []piece {
@@ -324,7 +359,15 @@ func (b *breaker) open(p piece) []piece {
 		shut = b.attach(shut, scripts{subNode: script.Sub, supNode: script.Sup}, b.st)
 	}
 	open := piece{part: b.bracket(f.Open, true, body, b.st), left: p.left, right: Open, rank: p.rank}
-	list := append([]piece{open}, b.pieces(atoms(nil, f.Body), Open)...)
+	inside := b.pieces(atoms(nil, f.Body), Open)
+	if isPair(f) { // and here too
+		for i := range inside {
+			if inside[i].rank == rankRelation {
+				inside[i].rank = rankNone
+			}
+		}
+	}
+	list := append([]piece{open}, inside...)
 	return append(list, piece{part: shut, left: Close, right: p.right, rank: rankNone})
 }
 
@@ -351,7 +394,7 @@ func (b *breaker) reduce(p piece, at, free float64) {
 	}
 	if list := written(p.node); list != nil && b.limit > 0 {
 		b.limit--
-		b.fill(b.pieces(list, Open), at)
+		b.fill(b.pieces(list, Open), at, at)
 		return
 	}
 	b.cut(p, at)
@@ -430,6 +473,10 @@ func (b *breaker) cut(p piece, at float64) {
 		for i, r := range text[from:] {
 			char := string(r)
 			w := b.run(char, face, b.st, "").width
+			if i == 0 && w > room && b.x > at {
+				b.newLine(at)
+				room = b.room(Ord)
+			}
 			if width+w > room && from+i > from {
 				if blank > from {
 					to = blank
@@ -461,7 +508,8 @@ const leastFlow = 4
 func (s *setter) flow(n Node, width float64, st style) []Box {
 	width = max(width, leastFlow*s.em(st))
 	b := breaker{setter: s, width: width, st: st, right: Open, inner: true, limit: 1000}
-	b.fill(b.pieces(atoms(nil, n), Open), min(hang*s.em(st), width/4))
+	at := min(hang*s.em(st), width/4)
+	b.fill(b.pieces(atoms(nil, n), Open), at, at)
 	b.finish()
 	return b.lines
 }

@@ -321,6 +321,5 @@ func (w *builder) firstOf(e *syntax.FirstOf) Node {
 		}
 		row = append(row, w.side(v))
 	}
-	row = append(row, Blank, Text{Text: "with"}, Blank)
-	return append(row, w.side(e.Cond))
+	return append(row, with, w.side(e.Cond))
 }

@@ -177,8 +177,9 @@ func TestLongFormulasSplitNoFraction(t *testing.T) {
 	}
 }
 
-// A continuation starts under the first right side, or with its relation under
-// the first relation.
+// A continuation starts under the first right side, or further in by a step
+// for each level within that it breaks at, or with its relation under the first
+// relation.
 func TestLongFormulasContinueUnderTheirRightSide(t *testing.T) {
 	checked := 0
 	for i, c := range long() {
@@ -199,6 +200,9 @@ func TestLongFormulasContinueUnderTheirRightSide(t *testing.T) {
 				x = min(x, it.X)
 			}
 			want := under
+			if deep := math.Floor((x - under) / (step * pt)); deep > 0 {
+				want += deep * step * pt
+			}
 			if strings.ContainsAny(first.Text, "=<≤≥") {
 				want = left
 			}
@@ -211,6 +215,55 @@ func TestLongFormulasContinueUnderTheirRightSide(t *testing.T) {
 	}
 	if checked < 30 {
 		t.Errorf("only %d continuation lines", checked)
+	}
+}
+
+// What breaks within a bracket is set in further than what stands beside it.
+func TestLongFormulasShowTheirLevels(t *testing.T) {
+	product := func(a, b Node) Node { return Row{a, Dot, b} }
+	squared := func(n Node) Node { return Script{n, nil, num("2")} }
+	inside := func(name string) Node {
+		return Paren(Row{product(num("180.0", mm), squared(Paren(Row{num("200.0", mm), Minus, num("24.51", mm)}))), Plus, product(squared(sym(name)), num("180.0", mm))})
+	}
+	lines := Break(Chain{Left: sym("I"), Steps: []Step{eq(Row{inside("first"), Plus, inside("secondLongName"), Plus, inside("thirdLongName")})}}, pt, column/1.4)
+	var starts []string
+	var at []float64
+	for _, b := range lines {
+		starts, at = append(starts, b.Items[0].Text), append(at, b.Items[0].X)
+	}
+	if len(lines) != 6 {
+		t.Fatalf("lines start with %q, want 6 of them", starts)
+	}
+	for i := 2; i < 6; i += 2 {
+		if math.Abs(at[i]-at[2]) > 0.01 || at[i-1] < at[2]+0.9*step*pt || at[i+1] < at[2]+0.9*step*pt {
+			t.Errorf("lines start with %q at %.2f: the terms want to stand under each other, what is in them further in", starts, at)
+		}
+	}
+}
+
+// An argument's name stays on a line with the start of its value, however long
+// that is.
+func TestLongArgumentsKeepTheirNames(t *testing.T) {
+	var list Row
+	for i := range 8 {
+		if i > 0 {
+			list = append(list, Comma)
+		}
+		list = append(list, num("-2.75", mm))
+	}
+	long := Paren(list)
+	eq := Relation("=")
+	for _, args := range []Row{
+		{Pair(sym("x"), long), Comma, Pair(sym("y"), long), Comma, Pair(sym("z"), num("1"))},
+		{sym("x"), eq, long, Comma, sym("y"), eq, long, Comma, Pair(sym("z"), num("1"))},
+	} {
+		for width := 60.0; width < column; width += 7 {
+			for i, b := range Break(Chain{Left: args}, pt, width) {
+				if b.Items[0].Text == "=" {
+					t.Errorf("%.0f wide: line %d starts with a relation", width, i+1)
+				}
+			}
+		}
 	}
 }
 

@@ -5,7 +5,8 @@ import "unicode/utf8"
 // The ranks of operators, from the loosest. A line that is too long breaks at
 // the loosest operators it has.
 const (
-	rankOr = iota
+	rankWith = iota
+	rankOr
 	rankAnd
 	rankComma
 	rankRelation
@@ -19,6 +20,8 @@ const (
 // for a comma).
 func rankOf(o Op) int {
 	switch o.Sign {
+	case With.Sign:
+		return rankWith
 	case "or":
 		return rankOr
 	case "and":

@@ -91,6 +91,7 @@ var (
 	And    = Op{"and", Rel}
 	Or     = Op{"or", Rel}
 	Not    = Op{"not", Func}
+	With   = Op{"with", Rel}
 )
 
 // The operators as nodes, so that a formula need not make them.
@@ -99,6 +100,7 @@ var (
 	slash, beside    Node = Slash, Beside
 	comma            Node = Comma
 	and, or, not     Node = And, Or, Not
+	with             Node = With
 	equals           Node = Op{"=", Rel}
 	atMost, atLeast  Node = Op{"≤", Rel}, Op{"≥", Rel}
 )
