@@ -1,6 +1,7 @@
 package html
 
 import (
+	"bytes"
 	"slices"
 	"strconv"
 	"unicode"
@@ -125,12 +126,13 @@ func (w *writer) references(e *render.Entry) {
 	w.raw("</div>")
 }
 
-// withNumbers is a source whose numbers stand on the line of the word before
-// them: Table 3.4, Part 7.
+// withNumbers is a source whose numbers and letters of revision stand on the line
+// of the word before them: Table 3.4, Part 7, rev B.
 func withNumbers(s string) string {
 	b := []byte(s)
 	for i := len(b) - 2; i > 0; i-- {
-		if b[i] == ' ' && unicode.IsLetter(rune(b[i-1])) && unicode.IsDigit(rune(b[i+1])) {
+		number := unicode.IsLetter(rune(b[i-1])) && unicode.IsDigit(rune(b[i+1]))
+		if b[i] == ' ' && (number || bytes.HasSuffix(b[:i], []byte(" rev"))) {
 			b = slices.Replace(b, i, i+1, []byte("\u00a0")...)
 		}
 	}

@@ -158,7 +158,7 @@ func (b *prose) formulaEntry(e *render.Entry) {
 		b.keep()
 		b.trials(e.Trials)
 	}
-	b.tables(e.Tables)
+	b.tables(e.Tables, e.Number)
 }
 
 // phrase is a formula in a sentence.
@@ -207,7 +207,7 @@ func (b *prose) finish(r *row, e *render.Entry, pad float64) {
 	if e.Kind == render.Check {
 		b.verdictBeside(parts, e)
 	} else {
-		b.outputBeside(&parts[min(r.output, len(parts)-1)], e)
+		b.outputBeside(parts, min(r.output, len(parts)-1), e)
 	}
 	if e.Anchor != "" {
 		b.anchors = append(b.anchors, e.Anchor)
@@ -266,9 +266,10 @@ func (b *prose) references(parts []slab, e *render.Entry) float64 {
 }
 
 // outputBeside sets a value in the output column on the baseline of a part,
-// and its mark below.
-func (b *prose) outputBeside(s *slab, e *render.Entry) {
+// and its mark below, beside the parts that follow.
+func (b *prose) outputBeside(parts []slab, at int, e *render.Entry) {
 	x, width := b.doc.paper.output()
+	s := &parts[at]
 	y := s.baseline - s.pad
 	if e.Output != nil {
 		p, lines := b.doc.outputWords(e.Output, width).few(width, 20)
@@ -290,7 +291,13 @@ func (b *prose) outputBeside(s *slab, e *render.Entry) {
 		}
 		y = b.doc.smallOutput(s, e.Mark, y)
 	}
-	s.height = math.Max(s.height, s.pad+y+5)
+	low := s.pad + y + 5
+	if height(parts) > b.doc.tallest() {
+		// The parts may stand on several pages.
+		s.height = math.Max(s.height, low)
+	} else if lack := low - height(parts[at:]); lack > 0 {
+		parts[len(parts)-1].height += lack
+	}
 }
 
 const outputLeading = 13.0

@@ -63,6 +63,18 @@ func TestLines(t *testing.T) {
 	}
 }
 
+// A number and the letter of a revision cost a line that begins with them.
+func TestNumbersStayWithTheirWords(t *testing.T) {
+	for _, tt := range []struct {
+		text string
+		want bool
+	}{{"Table 3.10", true}, {"Table J3.2", true}, {"rev B, sheet", true}, {"prev B", false}, {"revision of", false}, {"Table of", false}} {
+		if got := words(tt.text).words[0].cost == numberCost; got != tt.want {
+			t.Errorf("%s: bound %v, want %v", tt.text, got, tt.want)
+		}
+	}
+}
+
 // bruteForce is the least cost over all ways to break a paragraph.
 func bruteForce(p *paragraph, from int, width float64) float64 {
 	if from == len(p.words) {

@@ -24,18 +24,25 @@ func (b *prose) tabular(e *render.Entry) {
 	} else if e.Anchor != "" {
 		b.anchors = append(b.anchors, e.Anchor)
 	}
-	b.tables(e.Tables)
+	b.tables(e.Tables, e.Number)
 }
 
-// tables sets the tables of an entry below it, kept with it at their heads.
-func (b *prose) tables(list []*render.Table) {
-	for _, t := range list {
-		b.keep()
+// tables sets the tables of an entry below it, the first kept with it at its
+// head. A further one may start a page, and says there which entry it is of.
+func (b *prose) tables(list []*render.Table, number string) {
+	for i, t := range list {
+		if i == 0 {
+			b.keep()
+		}
 		b.space(3)
 		if t.Caption != "" {
 			p := &paragraph{}
 			p.write(noteVoice.style(), t.Caption)
+			caption := len(b.slabs)
 			b.paragraph(p, noteVoice.leading)
+			if i > 0 && number != "" {
+				b.slabs[caption].head = b.goesOn(number)
+			}
 			b.keep()
 			b.space(2)
 		}
@@ -49,6 +56,16 @@ func (b *prose) tables(list []*render.Table) {
 		}
 		b.space(6)
 	}
+}
+
+// goesOn is the line at the head of a page that starts with a further table of
+// an entry.
+func (b *prose) goesOn(number string) *slab {
+	p := &paragraph{}
+	p.write(noteVoice.style(), "("+number+") continued")
+	s := slab{height: noteVoice.leading, baseline: 0.72 * noteVoice.leading}
+	p.set(&s.ink, p.lines(b.width)[0], b.x, s.baseline)
+	return &s
 }
 
 func leftOut(left, rows int) string {

@@ -155,7 +155,7 @@ func (p *paragraph) place(st style, b *box) {
 
 func (p *paragraph) grow(c piece) {
 	if !p.open {
-		if n := len(p.words); n > 0 && startsNumber(c.text) {
+		if n := len(p.words); n > 0 && (startsNumber(c.text) || p.revision(n-1)) {
 			p.words[n-1].cost = math.Max(p.words[n-1].cost, numberCost)
 		}
 		p.words = append(p.words, word{from: len(p.pieces)})
@@ -170,6 +170,12 @@ func (p *paragraph) grow(c piece) {
 	}
 	w.to = len(p.pieces)
 	w.width += c.width
+}
+
+// revision tells whether a word stands before the letter of a revision: rev B.
+func (p *paragraph) revision(i int) bool {
+	w := p.words[i]
+	return w.to > w.from && p.pieces[w.to-1].text == "rev"
 }
 
 // startsNumber reports whether a text begins a number: 3, or J3.2 of a code.

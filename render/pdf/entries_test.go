@@ -1,0 +1,82 @@
+package pdf
+
+import (
+	"fmt"
+	"strings"
+	"testing"
+)
+
+// texts are the texts of a page with their places, from the top of the sheet.
+func texts(page []placed) []text {
+	var out []text
+	for _, s := range page {
+		for _, t := range s.ink.texts {
+			t.y += s.y + s.pad
+			out = append(out, t)
+		}
+	}
+	return out
+}
+
+func find(list []text, s string) *text {
+	for i := range list {
+		if strings.Contains(list[i].text, s) {
+			return &list[i]
+		}
+	}
+	return nil
+}
+
+// What a value is stands close below it, however much stands in the columns
+// beside it.
+func TestNoteBelowItsLine(t *testing.T) {
+	loads := "---\ncalc: C-2\nrev: A\ntitle: Loads of the anchors at the holding-down points of a machine\n---\n```cases\ncase | N [kN]\nC1 a case with a long name that needs lines | 4\nC2 another | 2\n```\n"
+	l := newDocument(pageOf(t, strings.Replace(front, "\n---\n", "\nfrom: {loads: loads.md}\n---\n", 1)+
+		"```calc\nN = loads.N   # Pull on an anchor\nm = max(N)    # The largest\ncheck N <= 9 kN\n```\n", map[string]string{"loads.md": loads})).layout()
+	inFrame(t, l)
+	list := texts(l.pages[0])
+	// The case stands beside the value.
+	value, note := find(list, "C1 a"), find(list, "Pull on an anchor")
+	if value == nil || note == nil {
+		t.Fatal("no value or no note")
+	}
+	if down := note.y - value.y; down < 8 || down > 16 {
+		t.Errorf("the note stands %.1f below its value", down)
+	}
+}
+
+// A further table of a check may start a page, which then says whose it is, and
+// leaves no more white on the page before than the table would have filled.
+func TestFurtherTablesStartPages(t *testing.T) {
+	table := func(name string, n int) string {
+		s := "```schedule " + name + "\nmark | x_" + name + " [kN]\n"
+		for i := range n {
+			s += fmt.Sprintf("%s%d | %d\n", name, i+1, i+1)
+		}
+		return s + "```\n"
+	}
+	split := 0
+	for lines := range 40 {
+		text := front + table("A", 6) + table("B", 6) + "\n" + strings.Repeat("A line of its own.\n\n", lines) +
+			"```calc\ncheck A.x_A + B.x_B <= 99 kN # Sum\n```\n"
+		l := newDocument(pageOf(t, text, nil)).layout()
+		inFrame(t, l)
+		for n, page := range l.pages {
+			list := texts(page)
+			second := find(list, "largest for each of B")
+			if second == nil {
+				continue
+			}
+			here, says := find(list, "largest for each of A") != nil, find(list, "(1) continued") != nil
+			if says == here {
+				t.Errorf("%d lines: sheet %d has the first table %v and says so %v", lines, n+1, here, says)
+			}
+			if !here {
+				split++
+			}
+		}
+	}
+	if split == 0 {
+		t.Error("no page starts with the second table")
+	}
+}
