@@ -14,6 +14,7 @@ import (
 	"errors"
 	"fmt"
 	"os"
+	"slices"
 	"strings"
 
 	"github.com/spf13/cobra"
@@ -89,7 +90,32 @@ into calculation packages (HTML and PDF) that an engineer can check line by line
 		runCommand(t), printCommand(t), watchCommand(t), newCommand(t),
 		notationCommand(t), helpersCommand(t), unitsCommand(t),
 	)
+	refuseUnknown(root)
 	return root
+}
+
+// refuseUnknown has the commands that come with the library refuse a word that
+// they do not know, where they would show their help as if nothing were wrong.
+func refuseUnknown(root *cobra.Command) {
+	root.InitDefaultHelpCmd()
+	root.InitDefaultCompletionCmd()
+	for _, c := range root.Commands() {
+		switch c.Name() {
+		case "help":
+			show := c.Run
+			c.Run, c.RunE = nil, func(cmd *cobra.Command, args []string) error {
+				if found, _, err := root.Find(args); len(args) > 0 && (err != nil || found == root) {
+					return unknownVerb(root, args[0])
+				}
+				show(cmd, args)
+				return nil
+			}
+		case "completion":
+			c.Args = between(0, 0, "the name of a shell")
+			c.Example = "  gusset completion bash"
+			c.RunE = func(cmd *cobra.Command, _ []string) error { return cmd.Help() }
+		}
+	}
 }
 
 func unknownVerb(root *cobra.Command, verb string) error {
@@ -106,9 +132,16 @@ func unknownVerb(root *cobra.Command, verb string) error {
 	return fmt.Errorf("there is no command `%s`; `gusset --help` lists them", verb)
 }
 
-// atLeast wants so many arguments, and says how the command goes otherwise.
-func atLeast(n int, what string) cobra.PositionalArgs {
-	return between(n, -1, what)
+// onePathOrMore wants one path or more, and says how the command goes otherwise. An empty
+// one comes from a shell's variable that is not set.
+func onePathOrMore(what string) cobra.PositionalArgs {
+	some := between(1, -1, what)
+	return func(cmd *cobra.Command, args []string) error {
+		if slices.Contains(args, "") {
+			return fmt.Errorf("a path given to `%s` is empty", cmd.CommandPath())
+		}
+		return some(cmd, args)
+	}
 }
 
 // between wants a number of arguments; most is -1 where there may be any.

@@ -23,7 +23,7 @@ with errors is never written, and its old pages stay; the others are written all
 Exit status: 0 where all was written and every check is OK; 1 where a calc has errors;
 2 where the command was misused or a path cannot be read or written; 3 where a check is NG.`,
 		Example: "  gusset print lug.md\n  gusset print calcs --to out\n  gusset print calcs --to out --only pdf",
-		Args:    atLeast(1, "one calc file or folder or more"),
+		Args:    onePathOrMore("one calc file or folder or more"),
 		RunE: func(_ *cobra.Command, args []string) error {
 			if err := p.check(); err != nil {
 				return err

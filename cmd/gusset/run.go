@@ -25,7 +25,7 @@ with utilisation and OK or NG. Diagnostics go to standard error.
 Exit status: 0 where all was computed and every check is OK; 1 where a calc has errors;
 2 where the command was misused or a file cannot be read; 3 where a check is NG.`,
 		Example: "  gusset run lug.md\n  gusset run --json loads.md lug.md > results.jsonl",
-		Args:    atLeast(1, "one calc file or more"),
+		Args:    onePathOrMore("one calc file or more"),
 		RunE: func(_ *cobra.Command, args []string) error {
 			return r.run(t, args)
 		},

@@ -30,7 +30,7 @@ itself and every calc that carries its values. It follows helper files, tables, 
 the package's register too. Each build is one line: the time it took and what moved in
 value. A save with errors shows them and leaves the last good pages. Ctrl-C ends it.`,
 		Example: "  gusset watch lug.md\n  gusset watch calcs --to out --only html",
-		Args:    atLeast(1, "one calc file or folder or more"),
+		Args:    onePathOrMore("one calc file or folder or more"),
 		RunE: func(_ *cobra.Command, args []string) error {
 			if err := p.check(); err != nil {
 				return err
