@@ -93,7 +93,9 @@ func (f *csvFile) read(t *syntax.Table) bool {
 		}
 		switch {
 		case t.Columns == nil:
-			ok = f.header(t, record) && ok
+			if ok = f.header(t, record); t.Columns == nil {
+				return false
+			}
 		case len(t.Rows) > maxRows:
 			return ok // the bound is reported once for the table
 		default:
@@ -115,8 +117,19 @@ func (f *csvFile) broken(err error) {
 			message = "a quote stands in a field that does not begin with one"
 		}
 	}
-	start := f.src.LineStart(line)
-	f.l.fail(diag.Syntax, diag.Span{Start: start, End: start + len(f.src.Line(line))}, message, "a field with a comma or a quote stands in quotes, and a quote inside is doubled")
+	start, text := f.src.LineStart(line), f.src.Line(line)
+	at := diag.Span{Start: start, End: start + len(text)}
+	if i := strings.IndexAny(text, ",;\t"); i >= 0 && text[i] != ',' {
+		f.separators(at)
+		return
+	}
+	f.l.fail(diag.Syntax, at, message, "a field with a comma or a quote stands in quotes, and a quote inside is doubled")
+}
+
+// separators reports a file whose columns are parted by semicolons or tabs, as
+// office programs write them where the comma is the decimal mark.
+func (f *csvFile) separators(at diag.Span) {
+	f.l.fail(diag.Syntax, at, "the columns are separated by commas", "save the file with commas as separators and points as decimal marks")
 }
 
 // field returns where a field's text stands, and whether it is quoted.
@@ -135,7 +148,7 @@ func (f *csvFile) header(t *syntax.Table, record []string) bool {
 	for i, text := range record {
 		at, _ := f.field(i, text)
 		if len(record) == 1 && bytes.ContainsAny([]byte(text), ";\t") {
-			f.l.fail(diag.Syntax, at, "the columns are separated by commas", "save the file with commas as separators and points as decimal marks")
+			f.separators(at)
 			return false
 		}
 		col, d := syntax.ParseHeaderCell(f.src, at)
