@@ -160,22 +160,28 @@ func TestImages(t *testing.T) {
 	wide := bytes.Clone(p)
 	copy(wide[16:], "\x00\x01\x00\x00\x00\x01\x00\x00")
 	binary.BigEndian.PutUint32(wide[29:], crc32.ChecksumIEEE(wide[12:29]))
+	garbled := bytes.Clone(g.Bytes())
+	for i := len(garbled) / 2; i < len(garbled)-1; i++ {
+		garbled[i] = 0x55
+	}
 	root := fstest.MapFS{}
 	for name, data := range map[string][]byte{
-		"a.png": p, "b.jpg": j.Bytes(), "c.gif": g.Bytes(), "really.png": j.Bytes(), "sp ace.png": p,
+		"garbled.gif": garbled,
+		"a.png":       p, "b.jpg": j.Bytes(), "c.gif": g.Bytes(), "really.png": j.Bytes(), "sp ace.png": p,
 		"cut.png": p[:len(p)-15], "cut.jpg": j.Bytes()[:j.Len()/2], "cut.gif": g.Bytes()[:g.Len()-3], "flipped.png": flipped, "wide.png": wide,
 	} {
 		root["img/"+name] = &fstest.MapFile{Data: data}
 	}
 	body := "![](img/a.png) ![](img/b.jpg) ![](img/c.gif) ![](img/really.png) ![](img/sp%20ace.png) ![](<img/sp ace.png>) ![](./img/../img/a.png?x#y)\n" +
-		"![](img/cut.png) ![](img/cut.jpg) ![](img/cut.gif) ![](img/flipped.png) ![](img/wide.png)\n"
+		"![](img/cut.png) ![](img/cut.jpg) ![](img/cut.gif) ![](img/flipped.png) ![](img/wide.png) ![](img/garbled.gif)\n"
 	root["a.md"] = &fstest.MapFile{Data: []byte(calc(body))}
 	s := compile(root, "a.md")
 	want := "5:5 missing-file `img/cut.png` is an image that was cut off or damaged\n" +
 		"5:22 missing-file `img/cut.jpg` is an image that was cut off or damaged\n" +
 		"5:39 missing-file `img/cut.gif` is an image that was cut off or damaged\n" +
 		"5:56 missing-file `img/flipped.png` is an image that was cut off or damaged\n" +
-		"5:77 bound-exceeded `img/wide.png` has 65536 × 65536 pixels, and an image may have 50 million at most\n"
+		"5:77 bound-exceeded `img/wide.png` has 65536 × 65536 pixels, and an image may have 50 million at most\n" +
+		"5:95 missing-file `img/garbled.gif` is an image that was cut off or damaged\n"
 	if got := errorsOf(s); got != want {
 		t.Errorf("got\n%swant\n%s", got, want)
 	}

@@ -6,8 +6,8 @@ import (
 	"fmt"
 	"hash/crc32"
 	"image"
-	_ "image/gif" // the formats that both pages can show
-	_ "image/jpeg"
+	"image/gif"
+	_ "image/jpeg" // with GIF, the formats that both pages can show
 	_ "image/png"
 
 	"gusset/notebook/diag"
@@ -51,7 +51,8 @@ func (d *Draft) image(file, name string) *fault {
 }
 
 // whole tells whether an image has its end, which a copy that was cut off
-// lacks; of a PNG it checks every part.
+// lacks. Of a PNG it checks every part; a GIF, which has no checksums and is
+// small, must unpack.
 func whole(format string, data []byte) bool {
 	switch format {
 	case "png":
@@ -59,7 +60,8 @@ func whole(format string, data []byte) bool {
 	case "jpeg":
 		return bytes.Contains(data[max(len(data)-64<<10, 0):], []byte{0xFF, 0xD9})
 	}
-	return bytes.HasSuffix(bytes.TrimRight(data, "\x00"), []byte{';'})
+	_, err := gif.Decode(bytes.NewReader(data))
+	return err == nil && bytes.HasSuffix(bytes.TrimRight(data, "\x00"), []byte{';'})
 }
 
 func wholePNG(data []byte) bool {

@@ -2,6 +2,8 @@ package main
 
 import (
 	"fmt"
+	"image"
+	"image/gif"
 	"os"
 	"os/exec"
 	"path/filepath"
@@ -101,13 +103,17 @@ func TestWatchFollows(t *testing.T) {
 	t.Parallel()
 	dir := t.TempDir()
 	path := func(name string) string { return filepath.Join(dir, name) }
-	image := func(width byte) string { // a GIF of one row
-		return "GIF89a" + string([]byte{width, 0, 1, 0, 0x80, 0, 0, 0, 0, 0, 255, 255, 255, 0x2c, 0, 0, 0, 0, width, 0, 1, 0, 0, 2, 2, 0x44, 1, 0, 0x3b})
+	photo := func(width int) string {
+		var b strings.Builder
+		if err := gif.Encode(&b, image.NewGray(image.Rect(0, 0, width, 1)), nil); err != nil {
+			t.Fatal(err)
+		}
+		return b.String()
 	}
 	write(t, path("pkg/loads.md"), "---\ncalc: L-1\n---\n```calc\nG = 20 kN # Dead [survey]\n```\n")
 	write(t, path("pkg/shop.md"), "```helper twice # Twice [shop]\nx [force]\ny [force] = 2*x\ngives y\n```\n")
 	write(t, path("pkg/bolts.csv"), "mark,x [mm]\nB1,10\nB2,20\n")
-	write(t, path("pkg/photo.gif"), image(1))
+	write(t, path("pkg/photo.gif"), photo(1))
 	write(t, path("pkg/calcs/lug.md"), "---\ncalc: C-1\nfrom: {loads: ../loads.md}\nhelpers: {shop: ../shop.md}\n---\n\n![photo](../photo.gif)\n\n"+
 		"```schedule bolts from ../bolts.csv\n```\n\n```calc\nG = loads.G\nP = shop.twice(G)\nX = sum(bolts.x)\n```\n")
 	write(t, path("pkg/register.yaml"), "figures: 4\n")
@@ -118,7 +124,7 @@ func TestWatchFollows(t *testing.T) {
 	p.wait(t, "lug.md: P 50.00 → 75.00 kN")
 	write(t, path("pkg/bolts.csv"), "mark,x [mm]\nB1,10\nB2,25\n")
 	p.wait(t, "X 30.00 → 35.00 mm")
-	write(t, path("pkg/photo.gif"), image(2))
+	write(t, path("pkg/photo.gif"), photo(2))
 	p.wait(t, "lug.md: no value moved")
 	write(t, path("pkg/register.yaml"), "figures: 6\n")
 	p.wait(t, "X 35.00 → 35.0000 mm")
@@ -126,7 +132,7 @@ func TestWatchFollows(t *testing.T) {
 		t.Fatal(err)
 	}
 	p.wait(t, "lug.md: has errors; the last good pages stay")
-	write(t, path("pkg/photo.gif"), image(1))
+	write(t, path("pkg/photo.gif"), photo(1))
 	p.wait(t, "lug.md: no value moved")
 
 	// Calc files that come, are renamed and go.
