@@ -269,7 +269,11 @@ func (l *lower) name(x *syntax.Name) *Node {
 // plainNumber is a name of a `where`: the plain number of a unit.
 func (l *lower) plainNumber(n *Node, u *syntax.UnitRef) *Node {
 	if n.Type.Dim != u.Dim || (n.Type.Kind == Point) != u.Point {
-		return l.fail(diag.DimensionMismatch, u.At, fmt.Sprintf("%s is taken in %s, but it is %s", n.Def.ID, l.unitWords(u), l.e.c.describe(n.Type)),
+		message := fmt.Sprintf("%s is taken in %s, but it is %s", n.Def.ID, l.unitWords(u), l.e.c.describe(n.Type))
+		if difference := map[string]string{"degC": "K", "°C": "K", "degF": "degR", "°F": "degR"}[u.Text]; difference != "" && n.Type.Dim == u.Dim {
+			return l.fail(diag.DimensionMismatch, u.At, message, fmt.Sprintf("a difference is taken in %s: `%s [%s]`", difference, n.Def.Symbol, difference))
+		}
+		return l.fail(diag.DimensionMismatch, u.At, message,
 			"the unit behind a name in `where` must have the name's dimension")
 	}
 	t := n.Type
