@@ -201,6 +201,9 @@ func (d *Draft) file(name string) (*diag.Source, *fault) {
 	if bad != nil {
 		return nil, &fault{bad.ID, bad.Message, bad.Hints}
 	}
+	if hidden := checkHidden(src); hidden != nil {
+		d.diags = append(d.diags, *hidden)
+	}
 	return src, nil
 }
 
