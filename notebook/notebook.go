@@ -53,9 +53,9 @@ func Open(file string) (*Sheet, error) {
 	if err != nil {
 		return nil, err
 	}
-	root, err := os.OpenRoot(place.Root)
+	root, err := place.Open()
 	if err != nil {
-		return nil, plainError(file, err)
+		return nil, err
 	}
 	defer root.Close()
 	sheet := Compile(&Context{FS: root.FS(), Shown: place.Shown}, place.Path)
@@ -68,6 +68,15 @@ type Place struct {
 	Root string // absolute, links resolved
 	Path string // within the root, with slashes
 	dir  string // the file's folder as the user spelled it
+}
+
+// Open opens the root, beyond which nothing is read.
+func (p Place) Open() (*os.Root, error) {
+	root, err := os.OpenRoot(p.Root)
+	if err != nil {
+		return nil, plainError(p.Shown("."), err)
+	}
+	return root, nil
 }
 
 // Shown names a file of the root as the user would who named the place's own.

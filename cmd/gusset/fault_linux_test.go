@@ -113,4 +113,12 @@ func TestUnreadable(t *testing.T) {
 	if out, status = gussetIn(t, dir, "print", "locked"); status != statusMisuse || out != "gusset: locked: it may not be read\n" {
 		t.Errorf("status %d: %s", status, out)
 	}
+	if err := os.Chmod(locked, 0o300); err != nil {
+		t.Fatal(err)
+	}
+	t.Cleanup(func() { _ = os.Chmod(locked, 0o700) }) // so that it can be removed
+	write(t, filepath.Join(locked, "lug.md"), lug("48"))
+	if out, status = gussetIn(t, dir, "print", "locked/lug.md"); status != statusMisuse || out != "gusset: locked: it may not be read\n" {
+		t.Errorf("status %d: %s", status, out)
+	}
 }

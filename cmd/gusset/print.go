@@ -56,6 +56,7 @@ func printPages(t *terminal, p *printer, paths []string) error {
 	results := compile(t, store.New(), f.files)
 	stems, clashes := p.stems(results)
 	pages := t.pages(p, results, stems)
+	told := map[string]bool{} // a folder that cannot be written is told of once
 	for i, r := range results {
 		switch {
 		case r.Err != nil:
@@ -73,9 +74,11 @@ func printPages(t *terminal, p *printer, paths []string) error {
 			if len(pages[i].files) > 0 {
 				fmt.Fprintf(t.out, "%s: %s → %s\n", diag.Visible(r.File), verdictLine(r.Sheet), names(pages[i].files))
 			}
-			if pages[i].err != nil {
-				t.problem(pages[i].err)
-				done.unusable = true
+			if err := pages[i].err; err != nil {
+				if done.unusable = true; !told[err.Error()] {
+					t.problem(err)
+				}
+				told[err.Error()] = true
 			}
 		}
 		done.sheets = append(done.sheets, r.Sheet)

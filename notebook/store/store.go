@@ -212,7 +212,7 @@ func (b *batch) add(r *root, path string) {
 func (b *batch) open() {
 	b.opened, b.failed = map[*root]*os.Root{}, map[*root]error{}
 	for _, r := range b.order {
-		if opened, err := os.OpenRoot(r.dir); err != nil {
+		if opened, err := r.place.Open(); err != nil {
 			b.failed[r] = err
 		} else {
 			b.opened[r] = opened
