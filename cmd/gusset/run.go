@@ -1,6 +1,7 @@
 package main
 
 import (
+	"errors"
 	"fmt"
 	"io"
 	"strings"
@@ -33,7 +34,6 @@ Exit status: 0 where all was computed and every check is OK; 1 where a calc has 
 	cmd.Flags().BoolVar(&r.json, "json", false, "print one JSON object for each file, each on a line")
 	cmd.Flags().BoolVar(&r.notes, "notes", false, "list the notes too: givens without a source, values that nothing uses")
 	cmd.Flags().StringVar(&r.stage, "stage", "", "print a stage of the compilation instead: "+stageNames())
-	cmd.MarkFlagsMutuallyExclusive("json", "stage")
 	_ = cmd.RegisterFlagCompletionFunc("stage", func(*cobra.Command, []string, string) ([]string, cobra.ShellCompDirective) {
 		return strings.Split(stageNames(), ", "), cobra.ShellCompDirectiveNoFileComp
 	})
@@ -62,6 +62,9 @@ func stageNames() string {
 }
 
 func (r *runner) run(t *terminal, files []string) error {
+	if r.json && r.stage != "" {
+		return errors.New("`--json` and `--stage` print different things: give one of them")
+	}
 	write := r.list
 	if r.json {
 		write = func(w *terminal, s *notebook.Sheet) error {

@@ -29,9 +29,9 @@ func TestText(t *testing.T) {
 	if j := d.JSON(); j.Line != 2 || j.Column != 11 || j.EndColumn != 14 || j.Severity != "error" || j.ID != "dimension-mismatch" {
 		t.Errorf("%+v", j)
 	}
-	// What a file from outside holds cannot steer the terminal.
-	hostile := NewSource("x.md", []byte("a = \x1b[2J\u202e1\n"))
-	if got := (Diagnostic{Severity: Warning, Message: "m", Source: hostile, Span: Span{0, 1}}).Text(); got != "x.md:1:1: warning: m\n    1 | a = \uFFFD[2J\uFFFD1\n      | ^\n" {
+	// What a file from outside holds, or is called, cannot steer the terminal.
+	hostile := NewSource("x\n.md", []byte("a = \x1b[2J\u202e1\n"))
+	if got := (Diagnostic{Severity: Warning, Message: "m", Source: hostile, Span: Span{0, 1}}).Text(); got != "x\uFFFD.md:1:1: warning: m\n    1 | a = \uFFFD[2J\uFFFD1\n      | ^\n" {
 		t.Errorf("%q", got)
 	}
 }

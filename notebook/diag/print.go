@@ -29,7 +29,7 @@ func (d Diagnostic) Text() string {
 		return b.String()
 	}
 	line, column := d.Source.Position(d.Span.Start)
-	fmt.Fprintf(&b, "%s:%d:%d: %s%s\n", d.Source.Name, line, column, word, d.Message)
+	fmt.Fprintf(&b, "%s:%d:%d: %s%s\n", Visible(d.Source.Name), line, column, word, d.Message)
 	if text := d.Source.Line(line); strings.TrimSpace(text) != "" {
 		writeExcerpt(&b, d, line, text)
 	}
