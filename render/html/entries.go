@@ -127,11 +127,11 @@ func (w *writer) references(e *render.Entry) {
 }
 
 // withNumbers is a source whose numbers and letters of revision stand on the line
-// of the word before them: Table 3.4, Part 7, rev B.
+// of the word before them: Table 3.4, Table J3.2, rev B.
 func withNumbers(s string) string {
 	b := []byte(s)
 	for i := len(b) - 2; i > 0; i-- {
-		number := unicode.IsLetter(rune(b[i-1])) && unicode.IsDigit(rune(b[i+1]))
+		number := unicode.IsLetter(rune(b[i-1])) && (digit(b[i+1]) || i+2 < len(b) && b[i+1] >= 'A' && b[i+1] <= 'Z' && digit(b[i+2]))
 		if b[i] == ' ' && (number || bytes.HasSuffix(b[:i], []byte(" rev"))) {
 			b = slices.Replace(b, i, i+1, []byte("\u00a0")...)
 		}

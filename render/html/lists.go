@@ -45,7 +45,7 @@ func (w *writer) listRef(class, anchor, words string) {
 func (w *writer) note(s string) {
 	if s != "" {
 		w.raw(`<div class="note">`)
-		w.text(measured(s))
+		w.names(measured(s))
 		w.raw("</div>")
 	}
 }
@@ -114,7 +114,7 @@ func (w *writer) remarkList(title string, list []*notebook.Remark) {
 	for _, r := range list {
 		w.listRef("", r.Anchor, r.Number)
 		w.raw(`<div class="more"><p>`)
-		w.figures(r.Text)
+		w.figures(measured(r.Text))
 		w.raw("</p></div></div>\n")
 	}
 }
@@ -148,7 +148,7 @@ func (w *writer) sources(list []render.SourceLine) {
 	for i := range list {
 		s := &list[i]
 		w.raw(`<div class="row e list"><div class="more"><p>`)
-		w.text(s.Source)
+		w.names(measured(s.Source))
 		w.raw(`</p><div class="rest">`)
 		for j := range s.On {
 			on := &s.On[j]
@@ -181,7 +181,7 @@ func (w *writer) cautions(list []render.CautionLine) {
 		w.raw(`"><div class="ref"><span class="n">`)
 		w.text(c.Number)
 		w.raw(`</span></div><div class="more"><p>`)
-		w.text(c.Text)
+		w.names(measured(c.Text))
 		w.raw(`</p><div class="rest">`)
 		for j, h := range c.Helpers {
 			if j > 0 {

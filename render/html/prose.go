@@ -3,6 +3,7 @@ package html
 import (
 	"bytes"
 	"strings"
+	"unicode/utf8"
 
 	"github.com/yuin/goldmark/ast"
 	east "github.com/yuin/goldmark/extension/ast"
@@ -313,13 +314,51 @@ func (w *writer) words(text string) {
 	from := 0
 	for i := 1; i < len(text); i++ {
 		if text[i] == ' ' && text[i-1] >= '0' && text[i-1] <= '9' && render.Measured(text[:i], text[i+1:]) {
-			w.text(text[from:i])
+			w.names(text[from:i])
 			w.raw("\u00a0")
 			from = i + 1
 		}
 	}
+	w.names(text[from:])
+}
+
+// longestName bounds the names that are held together, in bytes.
+const longestName = 16
+
+// names writes a text in which no line breaks behind a hyphen in a name with
+// figures: K-301, EN 1993-1-8.
+func (w *writer) names(text string) {
+	from := 0
+	for i := 0; i < len(text); {
+		n := strings.IndexAny(text[i:], " \n\t\u00a0")
+		if n < 0 {
+			n = len(text) - i
+		}
+		if word := text[i : i+n]; len(word) <= longestName && numbered(word) {
+			w.text(text[from:i])
+			w.raw(`<span class="nb">`)
+			w.text(word)
+			w.raw("</span>")
+			from = i + n
+		}
+		i += n
+		_, blank := utf8.DecodeRuneInString(text[i:])
+		i += blank
+	}
 	w.text(text[from:])
 }
+
+// numbered tells a word with a hyphen inside that stands beside a figure.
+func numbered(word string) bool {
+	for i := 1; i+1 < len(word); i++ {
+		if word[i] == '-' && (digit(word[i-1]) || digit(word[i+1])) {
+			return true
+		}
+	}
+	return false
+}
+
+func digit(c byte) bool { return c >= '0' && c <= '9' }
 
 // measured is a text whose numbers stay on the line of their units.
 func measured(s string) string {
@@ -404,7 +443,7 @@ func (w *writer) figure(n *ast.Paragraph) bool {
 	}
 	if strings.TrimSpace(words) != "" {
 		w.raw("<figcaption>")
-		w.text(measured(words))
+		w.names(measured(words))
 		w.raw("</figcaption>")
 	}
 	w.raw("</figure>")

@@ -21,6 +21,8 @@ var constructs = []struct {
 	want           []string
 }{
 	{"paragraphs", "one one\ntwo\n\nthree", []string{"<p>one one\ntwo</p>", "<p>three</p>"}},
+	{"names with hyphens", "see S-77, EN 1993-1-8; well-known, -5 and 3 - 4", []string{`see <span class="nb">S-77,</span> EN <span class="nb">1993-1-8;</span> well-known, -5 and 3 - 4`}},
+	{"names behind units", "of 12 mm-2 and 5 mm S-7", []string{"of 12 <span class=\"nb\">mm-2</span> and 5\u00a0mm <span class=\"nb\">S-7</span>"}},
 	{"numbers and units", "over 12 mm or 5 kN/m, 20 bolts, in 2 lines", []string{"over 12\u00a0mm or 5\u00a0kN/m, 20 bolts, in 2 lines"}},
 	{"hard break", "one  \ntwo\\\nthree", []string{"one<br>\ntwo<br>\nthree"}},
 	{"atx headings", "# Top\n\n## Under\n\n### Third\n\n#### Fourth\n\n##### Fifth\n\n###### Sixth",

@@ -23,7 +23,7 @@ func (w *writer) titleBlock() {
 		w.raw("</div>")
 	}
 	w.raw("<h1>")
-	w.text(t.Title)
+	w.names(t.Title)
 	w.raw("</h1>")
 	if t.Under != "" {
 		w.raw("<p>")
@@ -123,13 +123,13 @@ func (w *writer) count(n int, one, many, class string) {
 // jump writes a link to a place on the page, or the words alone.
 func (w *writer) jump(anchor, words string) {
 	if anchor == "" {
-		w.text(words)
+		w.names(words)
 		return
 	}
 	w.raw(`<a href="#`)
 	w.text(anchor)
 	w.raw(`">`)
-	w.text(words)
+	w.names(words)
 	w.raw("</a>")
 }
 

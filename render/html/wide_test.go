@@ -32,3 +32,31 @@ func TestWide(t *testing.T) {
 		t.Errorf("columns are hidden: %s", found)
 	}
 }
+
+// carriedCase has a value carried over rows with a long mark, and a root that is
+// parted inside its brackets.
+const carriedCase = "---\ncalc: T\nfrom: {loads: l.md}\n---\n\n```calc\nN = loads.N  # Pull on an anchor\nm = max(N)\n" +
+	"a = 1200 mm  # [d]\nb = 1300.5 mm  # [d]\n" +
+	"r = sqrt((a*(a/b - b/a)/(a + b) + b*(b/a + a/b)/(a + b))^2 + (a*(a/b + b/a)/(2*a + b) + b*(b/a + a/b)/(a + 2*b))^2 + (a*(a/b + b/a)/(3*a + b) + b*(b/a + a/b)/(a + 3*b))^2)\n```\n"
+
+// On a telephone a note keeps room beside a long mark; brackets that are
+// parted grow with what stands between them.
+func TestNarrow(t *testing.T) {
+	s := notebook.Compile(&notebook.Context{FS: fstest.MapFS{
+		"t.md": {Data: []byte(carriedCase)},
+		"l.md": {Data: []byte("---\ncalc: L\n---\n\n```cases\ncase | N [kN]\nC3 short circuit, free end on the left | 12\nC1 | 3\n```\n")},
+	}, Panics: true}, "t.md")
+	if s.Failed() {
+		t.Fatal(s.Diagnostics[0].Text())
+	}
+	page := html.Append(nil, render.NewPage(s))
+	ctx := browser(t)
+	for _, width := range []int64{400, 1280} {
+		open(t, ctx, page, width)
+		for _, found := range evaluate(t, ctx, `for(const n of document.querySelectorAll('.line>.note')){const r=n.getBoundingClientRect();if(n.textContent&&(r.height>60||r.width<60))out.push(n.textContent+': '+r.width+' by '+r.height)}`+
+			`const c=[...document.querySelectorAll('mpadded')].map(p=>p.parentNode);if(c.length<2)out.push(c.length+' parted brackets');for(const b of c){const m=b.querySelector('mo').getBoundingClientRect(),s=b.querySelector('mpadded').getBoundingClientRect();if(m.height<0.9*s.height)out.push(b.textContent+' is '+m.height+' tall beside '+s.height)}`+
+			`const e=document.querySelector('#v-N .eq').getBoundingClientRect(),o=document.querySelector('#v-N .out').getBoundingClientRect();if(Math.abs(e.top-o.top)>12)out.push('the output starts '+(e.top-o.top)+' above its formula')`) {
+			t.Errorf("%d wide: %s", width, found)
+		}
+	}
+}

@@ -292,9 +292,16 @@ func (w *markup) space(s Space) {
 // blank writes a space in hundredths of an em.
 func (w *markup) blank(hundredths int) {
 	w.raw(`<mspace width="`)
-	w.b = strconv.AppendInt(w.b, int64(hundredths/100), 10)
-	w.b = append(w.b, '.', '0'+byte(hundredths/10%10), '0'+byte(hundredths%10))
-	w.raw(`em"/>`)
+	w.hundredths(hundredths)
+	w.raw(`"/>`)
+}
+
+// hundredths writes a length in hundredths of an em, none below 0.
+func (w *markup) hundredths(n int) {
+	n = max(n, 0)
+	w.b = strconv.AppendInt(w.b, int64(n/100), 10)
+	w.b = append(w.b, '.', '0'+byte(n/10%10), '0'+byte(n%10))
+	w.raw("em")
 }
 
 // single writes a node as exactly one element, as scripts and fractions need.
@@ -353,6 +360,8 @@ func (w *markup) node(n Node) {
 		w.root(n)
 	case Fence:
 		w.fence(n)
+	case strut:
+		w.strut(n)
 	case Choice:
 		w.choice(n)
 	}
@@ -612,6 +621,16 @@ func (w *markup) fence(f Fence) {
 	w.raw("</mrow>")
 }
 
+// strut writes what a bracket beside it grows with: no blank, which would leave
+// the bracket to what stands about both.
+func (w *markup) strut(n strut) {
+	w.raw(`<mpadded height="`)
+	w.hundredths(int(100 * n.up))
+	w.raw(`" depth="`)
+	w.hundredths(int(100 * n.down))
+	w.raw(`"><mi></mi></mpadded>`)
+}
+
 // tall reports whether a node is taller than a line of text with its scripts.
 func tall(n Node) bool {
 	switch n := n.(type) {
@@ -621,7 +640,7 @@ func tall(n Node) bool {
 				return true
 			}
 		}
-	case Fraction, Choice:
+	case Fraction, Choice, strut:
 		return true
 	case Script:
 		return tall(n.Base)

@@ -31,13 +31,22 @@ func (w *markup) shrink(list []Node) float64 {
 }
 
 // measure is the width of atoms in ems.
-func measure(list []Node) float64 {
+func measure(list []Node) float64 { return boxOf(Row(slices.Clone(list))).width }
+
+// reachOf is how far a node reaches.
+func reachOf(n Node) strut {
+	b := boxOf(n)
+	return strut{b.ascent, b.descent}
+}
+
+// boxOf sets a node on a line of its own at a size of 1.
+func boxOf(n Node) part {
 	room := rooms.Get().(*room)
 	s := setter{size: 1, text: fonts.Serif, metrics: fonts.MathMetrics(), items: room.set[:0]}
-	width := s.row(Row(slices.Clone(list)), style{display: true}).width
+	p := s.row(n, style{display: true})
 	room.set = s.items
 	rooms.Put(room)
-	return width
+	return p
 }
 
 // step writes one box of a chain. One after a choice has a line of its own.
@@ -83,8 +92,8 @@ func (w *markup) parts(list []Node, prev Class, most int) {
 	}
 }
 
-// flatCall reports whether the last of atoms is a function's brackets with
-// nothing in them that they have to grow for.
+// flatCall reports whether the last of atoms is the brackets of a function or of
+// a named column with nothing in them that they have to grow for.
 func flatCall(list []Node) bool {
 	i := len(list) - 1
 	if i < 1 {
@@ -92,7 +101,7 @@ func flatCall(list []Node) bool {
 	}
 	f, ok := list[i].(Fence)
 	_, right := list[i-1].edges()
-	return ok && right == Func && f.Open == "(" && flat(f.Body)
+	return ok && (right == Func || right == Rel) && f.Open == "(" && flat(f.Body)
 }
 
 func flat(n Node) bool {
@@ -122,13 +131,13 @@ func breakable(list []Node) int {
 }
 
 // rankBefore is the rank of a break before an atom: that of an operator there
-// or of a comma behind which it stands.
+// or of a comma behind which it stands. A name stays with its relation.
 func rankBefore(list []Node, i int) int {
 	left, prev := list[i-1].edges()
 	if o, ok := list[i-1].(Op); ok && left == Punct {
 		return rankOf(o)
 	}
-	if o, ok := list[i].(Op); ok && o.Class != Punct && !signs(o, prev) {
+	if o, ok := list[i].(Op); ok && o.Class != Punct && !signs(o, prev) && (i > 1 || o.Class != Rel || rankOf(o) != rankRelation) {
 		return rankOf(o)
 	}
 	return rankNone
@@ -165,11 +174,15 @@ func inner(n Node) []Node {
 	}
 	switch {
 	case fenced && f.Open != "" && f.Close != "" && f.Body != nil:
-		var shut Node = Op{f.Close, Close}
+		var open, shut Node = Op{f.Open, Open}, Op{f.Close, Close}
+		if tall(f.Body) {
+			reach := reachOf(f.Body)
+			open, shut = Fence{Open: f.Open, Body: reach}, Fence{Body: reach, Close: f.Close}
+		}
 		if scripted {
 			shut = Script{Base: shut, Sub: script.Sub, Sup: script.Sup}
 		}
-		return append(atoms([]Node{Op{f.Open, Open}}, f.Body), shut)
+		return append(atoms([]Node{open}, f.Body), shut)
 	case scripted:
 		return nil
 	}

@@ -35,3 +35,31 @@ func TestEmsIsUpperBound(t *testing.T) {
 		}
 	}
 }
+
+// A bracket that is parted from its fellow is as tall as what stands between
+// them; one round a line of text grows with nothing.
+func TestPartedBracketsGrow(t *testing.T) {
+	f := Fraction{Num: sym("a"), Den: sym("b")}
+	list := inner(Script{Base: Paren(Row{f, Plus, sym("c")}), Sup: num("2")})
+	body := boxOf(f)
+	open, ok := list[0].(Fence)
+	shut, scripted := list[len(list)-1].(Script)
+	if !ok || !scripted {
+		t.Fatalf("got %v", list)
+	}
+	for _, fence := range []Node{open, shut.Base} {
+		reach := fence.(Fence).Body.(strut)
+		if reach.up < body.ascent || reach.down < body.descent {
+			t.Errorf("%v does not reach over %.2f and %.2f", fence, body.ascent, body.descent)
+		}
+	}
+	if left, right := open.edges(); left != Open || right != Open {
+		t.Errorf("the open bracket is of %v, %v", left, right)
+	}
+	if left, right := shut.edges(); left != Close || right != Close {
+		t.Errorf("the closing bracket is of %v, %v", left, right)
+	}
+	if flat := inner(Paren(Row{sym("a"), Plus, sym("c")})); flat[0] != (Op{"(", Open}) {
+		t.Errorf("got %v", flat)
+	}
+}

@@ -164,6 +164,10 @@ type Fence struct {
 	Close string
 }
 
+// strut is what one bracket of a pair that is parted from the other grows to,
+// in ems above and below the baseline.
+type strut struct{ up, down float64 }
+
 // Choice is a value by condition: a brace before the branches.
 type Choice struct{ Branches []Branch }
 
@@ -213,6 +217,7 @@ func (Number) edges() (left, right Class) { return ordinary() }
 func (Unit) edges() (left, right Class)   { return ordinary() }
 func (Text) edges() (left, right Class)   { return ordinary() }
 func (Root) edges() (left, right Class)   { return ordinary() }
+func (strut) edges() (left, right Class)  { return ordinary() }
 
 func (Word) edges() (left, right Class)     { return Func, Func }
 func (Fraction) edges() (left, right Class) { return Inner, Inner }
@@ -237,6 +242,12 @@ func (s Script) edges() (left, right Class) {
 
 func (f Fence) edges() (left, right Class) {
 	left, right = Open, Close
+	if _, ok := f.Body.(strut); ok { // one bracket alone
+		if f.Close == "" {
+			return Open, Open
+		}
+		return Close, Close
+	}
 	if f.Open == "" {
 		left = Ord
 	}
