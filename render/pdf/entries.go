@@ -37,7 +37,7 @@ func (b *prose) entries(index int) {
 			i = n - 1
 		} else {
 			b.mayHang = i+1 < len(list) && mayHang(&list[i]) && takesHanging(&list[i+1])
-			b.entry(&list[i])
+			b.entry(&list[i], i > 0 && list[i-1].Kind == render.Tabular)
 		}
 		if i+1 < len(list) && list[i+1].Indent > list[i].Indent {
 			b.keep() // a call stands with the first of the lines that it leads to
@@ -73,7 +73,8 @@ func (b *prose) indented(e *render.Entry, run func()) {
 	b.inset(by, band{x: b.x + math.Min(by, b.width-leastColumn) - 8, width: 0.6, colour: hairColour}, run)
 }
 
-func (b *prose) entry(e *render.Entry) {
+// entry lays out an entry; further tells that tables stand right above it.
+func (b *prose) entry(e *render.Entry, further bool) {
 	switch e.Kind {
 	case render.Gap:
 		b.space(groupGap)
@@ -82,7 +83,7 @@ func (b *prose) entry(e *render.Entry) {
 	case render.HelperHead:
 		b.indented(e, func() { b.helperHead(e) })
 	case render.Tabular:
-		b.indented(e, func() { b.tabular(e) })
+		b.indented(e, func() { b.tabular(e, further) })
 	case render.DrawingOf:
 		b.indented(e, func() { b.drawing(e) })
 	case render.Limit:
@@ -158,7 +159,7 @@ func (b *prose) formulaEntry(e *render.Entry) {
 		b.keep()
 		b.trials(e.Trials)
 	}
-	b.tables(e.Tables, e.Number)
+	b.tables(e.Tables, e.Number, false)
 }
 
 // phrase is a formula in a sentence.

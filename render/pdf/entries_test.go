@@ -80,3 +80,24 @@ func TestFurtherTablesStartPages(t *testing.T) {
 		t.Error("no page starts with the second table")
 	}
 }
+
+// Two tables of what a helper gives need not stand on one page.
+func TestFurtherTablesOfResults(t *testing.T) {
+	body := "```cases\ncase | V [kN]\nA | 3\nB | 4\nC | 5\n```\n```schedule bolts\nmark | x [mm] | y [mm]\nB1 | -70 | 60\nB2 | 70 | 60\nB3 | 0 | -60\n```\n\n"
+	split := 0
+	for lines := range 30 {
+		l := newDocument(pageOf(t, front+body+strings.Repeat("A line of its own.\n\n", lines)+
+			"```calc\ng = bolt_group_elastic(x=bolts.x, y=bolts.y, P_x=0 kN, P_y=-V, M=V*100 mm)\n```\n", nil)).layout()
+		inFrame(t, l)
+		for _, page := range l.pages {
+			// The head of the first table goes on with the bolts, that of the
+			// schedule with the cases' own.
+			if list := texts(page); len(list) > 1 && list[0].text == "cases" && list[1].text == "" {
+				split++
+			}
+		}
+	}
+	if split == 0 {
+		t.Error("no page starts with the second table")
+	}
+}

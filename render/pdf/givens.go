@@ -89,7 +89,7 @@ func (b *prose) line(e *render.Entry, l *lineParts, c lineColumns) {
 		r.paragraph(b.doc.phrase(&e.Below[i], noteVoice), noteVoice.leading+1)
 	}
 	b.finish(r, e, entryPad)
-	b.tables(e.Tables, e.Number)
+	b.tables(e.Tables, e.Number, false)
 }
 
 // sideBySide sets a line in the columns of its group.

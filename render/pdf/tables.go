@@ -9,9 +9,11 @@ import (
 	"gusset/render/maths"
 )
 
-// tabular sets an entry that is nothing but tables.
-func (b *prose) tabular(e *render.Entry) {
+// tabular sets an entry that is nothing but tables, further ones where tables
+// stand right above.
+func (b *prose) tabular(e *render.Entry, further bool) {
 	if e.Note != "" || e.Number != "" || len(e.Refs) > 0 {
+		further = false
 		r := b.row()
 		r.words(noteVoice, e.Note)
 		// Two lines of sources stand beside the head of the table.
@@ -24,14 +26,14 @@ func (b *prose) tabular(e *render.Entry) {
 	} else if e.Anchor != "" {
 		b.anchors = append(b.anchors, e.Anchor)
 	}
-	b.tables(e.Tables, e.Number)
+	b.tables(e.Tables, e.Number, further)
 }
 
 // tables sets the tables of an entry below it, the first kept with it at its
 // head. A further one may start a page, and says there which entry it is of.
-func (b *prose) tables(list []*render.Table, number string) {
+func (b *prose) tables(list []*render.Table, number string, further bool) {
 	for i, t := range list {
-		if i == 0 {
+		if i == 0 && !further {
 			b.keep()
 		}
 		b.space(3)
