@@ -293,7 +293,7 @@ func (m *machine) argument(hc *check.HelperCall, i int, f *frame, loop *check.Ty
 		v.set(x)
 		return v, nil
 	}
-	col := m.column(n, f, &n.Type)
+	col := m.ownColumn(n, f)
 	joint := check.Type{Rows: append(append([]*check.Rows{}, hc.Loop...), p.Type.Rows...)}
 	count := p.Type.Count()
 	v.Num = make([]float64, count)

@@ -230,19 +230,39 @@ func (m *machine) functionColumn(n *check.Node, f *frame) []float64 {
 	if err != nil {
 		return fail()
 	}
+	t := n.Func.Body.Type
+	var lost []source // arguments without a value at some entries, where the call has none either
 	for i, p := range n.Func.Params {
 		v := m.columnValue(n.Args[i], f)
-		if !within(v.Type.Rows, n.Type.Rows) && !allFinite(v.Num) && entrywise(n.Func) {
+		switch {
+		case allFinite(v.Num):
+		case len(v.Type.Rows) == 0:
+			return fail()
+		case !entrywise(n.Func): // the body may leave out what is wrong
+		case !within(v.Type.Rows, t.Rows):
 			return fail() // the body does not use it: the entry says what is wrong with it
+		default:
+			lost = append(lost, lay(v.Num, &v.Type, &t))
 		}
 		m.bindParam(g, p, v)
 	}
 	if n.Func.Body.FirstOf != nil {
 		return fail()
 	}
-	t := n.Func.Body.Type
 	col, _ := m.branches(n.Func.Body, g, &t)
-	return col
+	if len(lost) == 0 {
+		return col
+	}
+	out, arg := slices.Clone(col), make([]float64, count)
+	for _, s := range lost {
+		s.read(arg, 0, count)
+		for e, x := range arg {
+			if !finite(x) {
+				out[e] = nan
+			}
+		}
+	}
+	return out
 }
 
 func allFinite(col []float64) bool {

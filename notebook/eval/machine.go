@@ -71,6 +71,7 @@ type machine struct {
 	tableSteady bool
 	looks       diag.Looks  // at marks, for messages
 	running     *check.Plan // the statement being computed, for messages from inside a helper
+	kept        kept
 }
 
 // slabs are where steps and what the evaluator compiles come from.
@@ -129,7 +130,24 @@ func (m *machine) unitFor(t check.Type) units.Unit {
 	if t.Kind != check.Number && t.Kind != check.Point {
 		return units.Unit{}
 	}
-	return m.prog.In.Printing.UnitFor(t.Dim, t.Kind == check.Point)
+	u := m.prog.In.Printing.UnitFor(t.Dim, t.Kind == check.Point)
+	switch { // turns and radians per second have one dimension
+	case t.Freq == check.Radians && !u.IsAngular():
+		return radiansPerSecond
+	case t.Freq == check.Hertz && u.IsAngular():
+		return hertz
+	}
+	return u
+}
+
+var radiansPerSecond, hertz = unit("rad/s"), unit("Hz")
+
+func unit(text string) units.Unit {
+	u, err := units.Parse(text)
+	if err != nil {
+		panic(err) // the text is the program's own
+	}
+	return u
 }
 
 // leaf computes one entry of what govaluate takes as a parameter.
@@ -142,7 +160,7 @@ func (m *machine) leaf(n *check.Node, f *frame, target *check.Type, entry int) (
 	case check.Load:
 		return m.load(n, f, target, entry)
 	case check.Reduce:
-		return m.reduced(n, f, target, entry)
+		return m.once(n, f, target, entry, func() (any, error) { return m.reduced(n, f, target, entry) })
 	case check.At, check.AtRow:
 		return m.picked(n, f, target, entry)
 	case check.Interp:
@@ -189,7 +207,7 @@ func (m *machine) reduced(n *check.Node, f *frame, target *check.Type, entry int
 		}
 		return float64(c), nil
 	}
-	col := m.column(arg, f, &arg.Type)
+	col := m.ownColumn(arg, f)
 	wrong := -1
 	at := func(i int) float64 {
 		if finite(col[i]) {
@@ -332,7 +350,7 @@ func (m *machine) interpolated(n *check.Node, f *frame, target *check.Type, entr
 	if err != nil {
 		return nil, err
 	}
-	xs, ys := m.column(n.Args[0], f, &n.Args[0].Type), m.column(n.Args[1], f, &n.Args[1].Type)
+	xs, ys := m.ownColumn(n.Args[0], f), m.ownColumn(n.Args[1], f)
 	if m.steady(xs) {
 		if y := interpolate(xs, ys, x); finite(y) {
 			return y, nil
@@ -404,7 +422,7 @@ func (m *machine) callGo(n *check.Node, f *frame, target *check.Type, entry int)
 	args := make([][]float64, len(n.Args))
 	for i, a := range n.Args {
 		if n.Native.Params[i].Column {
-			args[i] = m.column(a, f, &a.Type)
+			args[i] = m.ownColumn(a, f)
 			continue
 		}
 		x, err := m.number(a, f, target, entry)

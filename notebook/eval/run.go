@@ -47,7 +47,8 @@ type RefResult struct {
 // matter's keys. What fails is reported and, with all that depends on it, left out.
 func Run(p *check.Program, carried map[string]*Carry) *Result {
 	m := &machine{prog: p, carried: carried, out: &Result{Blocks: make([]BlockResult, len(p.In.Blocks))},
-		marks: map[*check.Rows]map[string]int{}, consts: map[*check.Def]*Step{}, warned: map[warning]bool{}, forms: map[string]*govaluate.EvaluableExpression{}}
+		marks: map[*check.Rows]map[string]int{}, consts: map[*check.Def]*Step{}, warned: map[warning]bool{}, forms: map[string]*govaluate.EvaluableExpression{},
+		kept: kept{columns: map[*check.Node]keptColumn{}, results: map[*check.Node]keptResults{}}}
 	m.out.Diagnostics = append(m.out.Diagnostics, p.Diagnostics...)
 	m.top = newFrame(p.Scope, nil, p.In.Source)
 	m.load0()
@@ -110,6 +111,7 @@ func (m *machine) statements() []*Step {
 		}
 		steps[i] = step
 		m.running = p
+		m.kept.forget()
 		if !rowed(p) {
 			m.recording = &step.Calls
 		}
@@ -326,6 +328,7 @@ func (m *machine) finish(steps []*Step) {
 			continue
 		}
 		m.running = p
+		m.kept.forget()
 		m.recording = &s.Calls
 		switch {
 		case p.Check != nil:
