@@ -87,14 +87,14 @@ func (p *parser) deeper() bool {
 	return false
 }
 
-// oneMore counts an operator; it is false over the bound.
+// oneMore counts an operator or a comma; it is false over the bound.
 func (p *parser) oneMore() bool {
 	p.ops++
 	if p.ops <= maxOperators {
 		return true
 	}
 	p.fail(p.span(p.start, p.pos), diag.BoundExceeded,
-		fmt.Sprintf("one statement has more operators than the bound of %d", maxOperators), "define parts of it on lines of their own")
+		fmt.Sprintf("one statement has more operators and commas than the bound of %d", maxOperators), "define parts of it on lines of their own")
 	return false
 }
 
@@ -232,7 +232,7 @@ func direction(op Op) int {
 // bracket, with `at` behind it.
 func (p *parser) operand() Expr {
 	x := p.primary()
-	for p.tok == tAt {
+	for p.tok == tAt && p.oneMore() {
 		at := p.span(p.start, p.pos)
 		p.advance()
 		y := p.primary()

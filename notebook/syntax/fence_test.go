@@ -220,6 +220,11 @@ func TestIsOurs(t *testing.T) {
 // BenchmarkNesting), and no statement lost beside it.
 func TestBounds(t *testing.T) {
 	const n = 50_000
+	var distinct strings.Builder
+	for i := range n {
+		fmt.Fprintf(&distinct, "a%d [mm], ", i)
+	}
+	distinct.WriteString("b [mm]")
 	for name, source := range map[string]string{
 		"brackets":        strings.Repeat("(", n) + "1" + strings.Repeat(")", n),
 		"open brackets":   strings.Repeat("(", n) + "1",
@@ -230,6 +235,10 @@ func TestBounds(t *testing.T) {
 		"roots":           strings.Repeat("√", n) + "2",
 		"not":             "1 if " + strings.Repeat("not ", n) + "a < b",
 		"terms":           "1" + strings.Repeat(" + 1", n),
+		"marks":           "a" + strings.Repeat(" at a", n),
+		"arguments":       "max(1" + strings.Repeat(", 1", n) + ")",
+		"candidates":      "first of 1" + strings.Repeat(", 1", n) + " with x > 0",
+		"where":           "a where " + distinct.String(),
 		"comparisons":     "1 if 1" + strings.Repeat(" < 1", n),
 		"name":            strings.Repeat("a", n),
 		"dots":            strings.Repeat("a.", n) + "a",

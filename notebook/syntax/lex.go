@@ -84,7 +84,9 @@ func (p *parser) advance() {
 		p.foreign(i)
 		return
 	}
-	p.sign(i, c)
+	if p.sign(i, c); p.tok == tComma {
+		p.oneMore()
+	}
 }
 
 // skipBlanks skips blanks within a line, those beyond ASCII too, which come
