@@ -102,11 +102,20 @@ func (l *lower) product(x *syntax.Binary) *Node {
 		chain = append(chain, b)
 		first = b.X
 	}
-	left := l.factor(first)
-	for i := len(chain) - 1; i >= 0; i-- {
+	left, i := invalid, len(chain)-1
+	if run := l.unitsAsFactors(chain); run > 0 {
+		i -= run
+	} else {
+		left = l.factor(first)
+	}
+	for ; i >= 0; i-- {
 		b := chain[i]
 		if l.tightUnit(b) {
 			left = invalid
+			continue
+		}
+		if run := l.unitsAsFactors(chain[:i+1]); run > 0 {
+			left, i = invalid, i-run+1
 			continue
 		}
 		right := l.factor(b.Y)
@@ -130,6 +139,70 @@ func (l *lower) tightUnit(b *syntax.Binary) bool {
 	l.fail(diag.WrongUnitSpelling, b.Span(), fmt.Sprintf("`%s` stands here as a value, but no value of that name is defined; it is a unit", name.Text),
 		fmt.Sprintf("write `%s 1/%s` for the unit, `%s / %s` for a value", figures, name.Text, figures, name.Text))
 	return true
+}
+
+// longestUnit bounds in bytes how far units are read as one: no message helps with more.
+const longestUnit = 60
+
+// unitsAsFactors reports `5*kN/m`, a quantity that is written as a product of
+// names which are no values, but units: it is one mistake. The chain's last
+// operation is the first; how many of them the units take is returned, 0 where
+// they are none.
+func (l *lower) unitsAsFactors(chain []*syntax.Binary) int {
+	first := chain[len(chain)-1]
+	number, literal := first.X.(*syntax.Number)
+	literal = literal && !number.Pieces[0].HasUnit
+	unit, run := l.unitFactor(first.X), 0
+	leads := unit != ""
+	var last syntax.Expr
+	for i := len(chain) - 1; i >= 0; i-- {
+		text := l.unitFactor(chain[i].Y)
+		if text == "" || len(unit) > longestUnit {
+			break
+		}
+		if unit != "" {
+			unit += chain[i].Op.String()
+		}
+		unit, last = unit+text, chain[i].Y
+		run++
+	}
+	if run == 0 || !leads && (first.Op != syntax.Mul || run == 1 && !literal) {
+		return 0
+	}
+	if u, err := units.Parse(unit); err != nil || u.StarAfterSlash() {
+		return 0
+	}
+	at, meant := first.Y.Span().To(last.Span()), "1 "+unit
+	switch {
+	case leads:
+		at = first.Span().To(last.Span())
+	case literal:
+		at, meant = first.Span().To(last.Span()), l.print(number)+" "+unit
+	}
+	l.fail(diag.MissingUnit, at, fmt.Sprintf("`%s` stands here as a value, but it is a unit", unit),
+		fmt.Sprintf("a unit stands directly after a number: write `%s`", meant))
+	return run
+}
+
+// unitFactor is the spelling of a factor that is no value but a unit, with its
+// power; "" where it is something else.
+func (l *lower) unitFactor(x syntax.Expr) string {
+	power := ""
+	if p, ok := x.(*syntax.Binary); ok && p.Op == syntax.Pow {
+		exponent, ok := p.Y.(*syntax.Number)
+		if !ok || exponent.Pieces[0].HasUnit {
+			return ""
+		}
+		x, power = p.X, "^"+exponent.Pieces[0].Figures
+	}
+	name, ok := x.(*syntax.Name)
+	if !ok || !units.IsUnitName(name.Text) || l.e.lookup(name.ID) != nil || l.e.c.spaces[name.ID] != nil {
+		return ""
+	}
+	if _, later := l.e.c.later[name.ID]; later {
+		return ""
+	}
+	return name.Text + power
 }
 
 // factor lowers an operand of arithmetic, which must be a number.

@@ -264,6 +264,9 @@ func (l *lower) oneDimension(x *syntax.Call, n *Node, b builtin) bool {
 		if lead < 0 {
 			lead = i
 			n.Type.Dim, n.Type.Kind = a.Type.Dim, a.Type.Kind
+			if b.rule == minmax || n.Fn == "abs" { // they pick one of their arguments
+				n.Type.Freq = a.Type.Freq
+			}
 			continue
 		}
 		first := n.Args[lead].Type
@@ -271,6 +274,12 @@ func (l *lower) oneDimension(x *syntax.Call, n *Node, b builtin) bool {
 			l.mismatch(x.Args[i].Value.Span(), fmt.Sprintf("%s takes values of one dimension: `%s` is %s, but `%s` is %s", n.Fn,
 				l.print(x.Args[lead].Value), l.e.c.describe(first), l.print(x.Args[i].Value), l.e.c.describe(a.Type)), first, a.Type)
 			return false
+		}
+		if b.rule == minmax && !l.askFreq(x.Args[i].Value, a, first.Freq, fmt.Sprintf("`%s` is in %s", l.print(x.Args[lead].Value), first.Freq.words())).ok() {
+			return false
+		}
+		if a.Type.Freq == NoFreq {
+			n.Type.Freq = NoFreq
 		}
 	}
 	for i, a := range n.Args {

@@ -215,6 +215,7 @@ func (c *checker) refs() {
 		case n.Type.Dim != ref.Unit.Dim || (n.Type.Kind == Point) != ref.Unit.Point:
 			l.fail(diag.DimensionMismatch, ref.Unit.At, fmt.Sprintf("%s is %s, but is printed here in %s", ref.Name.Text, c.describe(n.Type), l.unitWords(ref.Unit)),
 				"a value in text is printed in another unit of its own dimension")
+		case !l.askFreq(ref.Name, n, freqOf(ref.Unit.Unit), fmt.Sprintf("%s is printed here in %s", ref.Name.Text, ref.Unit.Text)).ok():
 		default:
 			plan.Def, plan.Unit = n.Def, &ref.Unit.Unit
 		}

@@ -252,7 +252,7 @@ func (l *lower) choiceRows(ch *Choice, br *syntax.Branch, out Branch) {
 
 func (l *lower) sameBranch(s *syntax.Definition, br *syntax.Branch, first, n *Node) bool {
 	if first.Type.Dim == n.Type.Dim && first.Type.Kind == n.Type.Kind {
-		return true
+		return l.askFreq(br.Value, n, first.Type.Freq, fmt.Sprintf("the first branch of %s is in %s", s.Name.Text, first.Type.Freq.words())).ok()
 	}
 	l.mismatch(br.Value.Span(), fmt.Sprintf("every branch of %s needs one dimension: the first is %s, but `%s` is %s",
 		s.Name.Text, l.e.c.describe(first.Type), l.print(br.Value), l.e.c.describe(n.Type)), first.Type, n.Type)

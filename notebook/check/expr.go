@@ -276,6 +276,9 @@ func (l *lower) plainNumber(n *Node, u *syntax.UnitRef) *Node {
 		return l.fail(diag.DimensionMismatch, u.At, message,
 			"the unit behind a name in `where` must have the name's dimension")
 	}
+	if asked := freqOf(u.Unit); !l.askFreq(n.Expr, n, asked, fmt.Sprintf("%s is taken in %s", n.Def.ID, u.Text)).ok() {
+		return invalid
+	}
 	t := n.Type
 	t.Kind, t.Dim, t.Freq = Number, units.Dimension{}, NoFreq
 	return l.node(Node{Op: ToUnit, Type: t, Expr: n.Expr, Args: l.args(n), Detail: l.detail(Detail{Unit: u.Unit})})

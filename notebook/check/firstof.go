@@ -28,6 +28,7 @@ func (l *lower) firstOf(f *syntax.FirstOf, s *syntax.Definition, d *Def) Choice 
 			l.fail(diag.RowMismatch, v.Span(), fmt.Sprintf("the candidates are plain values, or one column: `%s` is %s", l.print(v), l.e.c.rowWords(n.Type)))
 		case len(out.Values) > 0 && (n.Type.Dim != t.Dim || n.Type.Kind != t.Kind):
 			l.mismatch(v.Span(), fmt.Sprintf("the candidates need one dimension: the first is %s, but `%s` is %s", l.e.c.describe(t), l.print(v), l.e.c.describe(n.Type)), t, n.Type)
+		case len(out.Values) > 0 && !l.askFreq(v, n, t.Freq, fmt.Sprintf("the first candidate is in %s", t.Freq.words())).ok():
 		default:
 			if len(out.Values) == 0 {
 				t = n.Type

@@ -137,7 +137,7 @@ func (l *lower) bound(x syntax.Expr, d *Def) *Node {
 		l.mismatch(x.Span(), fmt.Sprintf("the range of %s is %s, but `%s` is %s", d.Symbol, l.e.c.describe(d.Type), l.print(x), l.e.c.describe(n.Type)), d.Type, n.Type)
 		return invalid
 	}
-	return n
+	return l.askFreq(x, n, d.Type.Freq, fmt.Sprintf("%s is in %s", d.Symbol, d.Type.Freq.words()))
 }
 
 // curve enters one curve or limit, all of one dimension.

@@ -36,9 +36,12 @@ func (l *lower) reduce(x *syntax.Call, arg *Node) *Node {
 		return l.fail(diag.DimensionMismatch, a.Value.Span(), fmt.Sprintf("temperature points have no %s", fn), "points go through min, max, mean and interpolate")
 	}
 	n := l.node(Node{Op: Reduce, Expr: x, Args: l.args(arg), Type: arg.Type, Detail: l.detail(Detail{Fn: fn, Over: over})})
-	n.Type.Freq, n.Type.Rows = NoFreq, kept
-	if fn == "count" {
-		n.Type.Kind, n.Type.Dim = Number, units.Dimension{}
+	n.Type.Rows = kept
+	switch fn {
+	case "sum":
+		n.Type.Freq = NoFreq
+	case "count":
+		n.Type.Kind, n.Type.Dim, n.Type.Freq = Number, units.Dimension{}, NoFreq
 	}
 	if a.Over == nil {
 		return n
@@ -95,6 +98,9 @@ func (l *lower) interpolate(x *syntax.Call, args []*Node) *Node {
 	if !at.zero && (at.Type.Dim != xs.Type.Dim || (at.Type.Kind == Point) != (xs.Type.Kind == Point)) {
 		l.mismatch(x.Args[2].Value.Span(), fmt.Sprintf("`%s` is looked up among values of another dimension: it is %s, but `%s` holds %s",
 			l.print(x.Args[2].Value), l.e.c.describe(at.Type), l.print(x.Args[0].Value), l.e.c.describe(xs.Type)), xs.Type, at.Type)
+		return invalid
+	}
+	if !l.askFreq(x.Args[2].Value, at, xs.Type.Freq, fmt.Sprintf("`%s` is in %s", l.print(x.Args[0].Value), xs.Type.Freq.words())).ok() {
 		return invalid
 	}
 	t := ys.Type
