@@ -111,7 +111,7 @@ func (s *Sheet) carry(d *Draft, l Link, find func(string) *Draft, sheet func(str
 }
 
 // fill lists what a sheet hands on: everything that it defines by a name. Sets
-// of rows that it carries itself bear its key too, unless it has one of that name.
+// of rows that it carries itself bear its key too, see carriedSets.
 func (s *Sheet) fill(c *check.Carry, e *eval.Carry) {
 	c.Failed = false
 	c.Values, c.Rows = map[string]check.Type{}, map[string]*check.Rows{}
@@ -123,6 +123,7 @@ func (s *Sheet) fill(c *check.Carry, e *eval.Carry) {
 			c.Rows[b.Rows.Name] = b.Rows
 		}
 	}
+	sets := map[string][]*check.Rows{}
 	enter := func(step *Step) {
 		c.Values[step.ID] = step.Value.Type
 		e.Steps[step.ID] = step
@@ -130,8 +131,8 @@ func (s *Sheet) fill(c *check.Carry, e *eval.Carry) {
 			c.Texts[step.ID] = step.Value.Text
 		}
 		for _, r := range step.Value.Type.Rows {
-			if c.Rows[r.Name] == nil {
-				c.Rows[r.Name] = r
+			if c.Rows[r.Name] != r && !slices.Contains(sets[r.Name], r) {
+				sets[r.Name] = append(sets[r.Name], r)
 			}
 		}
 	}
@@ -144,6 +145,27 @@ func (s *Sheet) fill(c *check.Carry, e *eval.Carry) {
 			}
 			for _, r := range step.Results {
 				enter(r)
+			}
+		}
+	}
+	s.carriedSets(c, sets)
+}
+
+// carriedSets names the sets of rows that a sheet has from other files: as the
+// file that made them calls them, and where that stands for two, as the sheet
+// calls them itself (`a.plates`).
+func (s *Sheet) carriedSets(c *check.Carry, sets map[string][]*check.Rows) {
+	c.Shared = map[string][]string{}
+	for name, list := range sets {
+		own := c.Rows[name] != nil
+		if !own && len(list) == 1 {
+			c.Rows[name] = list[0]
+			continue
+		}
+		for _, r := range list {
+			c.Rows[s.carriedRows[r]] = r
+			if !own {
+				c.Shared[name] = append(c.Shared[name], s.carriedRows[r])
 			}
 		}
 	}

@@ -71,6 +71,16 @@ func (l *lower) rowsNamed(name *syntax.Name, among []*Rows) *Rows {
 	for _, r := range among {
 		names = append(names, l.e.c.rowsName(r))
 	}
+	if key, base, dotted := head(name.ID); rows == nil && dotted && l.e.c.spaces[key] != nil && l.e.c.spaces[key].from != nil {
+		if sets := l.e.c.spaces[key].from.Shared[base]; len(sets) > 0 {
+			var full []string
+			for _, s := range sets {
+				full = append(full, "`"+key+"."+s+"`")
+			}
+			l.fail(diag.RowMismatch, name.At, fmt.Sprintf("`%s` may be any of %s, which are different sets of rows", name.Text, list(full)), "name the one that is meant")
+			return nil
+		}
+	}
 	if rows == nil {
 		hint := "the value runs over " + list(names)
 		l.fail(diag.UnknownName, name.At, fmt.Sprintf("there are no rows called `%s`", name.Text), hint)
