@@ -204,8 +204,16 @@ func (w *writer) list(n *ast.List) {
 	w.raw(tag)
 }
 
+// manyColumns is from how many columns on a table is set smaller on paper, where
+// nothing scrolls.
+const manyColumns = 8
+
 func (w *writer) markdownTable(n *east.Table) {
-	w.raw(`<div class="rows" tabindex="0"><table>`)
+	w.raw(`<div class="rows" tabindex="0"><table`)
+	if len(n.Alignments) >= manyColumns {
+		w.raw(` class="wide"`)
+	}
+	w.raw(">")
 	body := false
 	for row := n.FirstChild(); row != nil; row = row.NextSibling() {
 		_, header := row.(*east.TableHeader)

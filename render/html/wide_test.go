@@ -60,3 +60,20 @@ func TestNarrow(t *testing.T) {
 		}
 	}
 }
+
+// On paper, where nothing scrolls, the author's own table of many columns stays
+// within its column.
+func TestManyColumns(t *testing.T) {
+	const table = "---\ncalc: T\n---\n\n| bolt | x [mm] | y [mm] | N [kN] | V_y [kN] | V_z [kN] | F_v [kN] | F_t [kN] | util. | where |\n" +
+		"|---|--:|--:|--:|--:|--:|--:|--:|--:|---|\n| B-101 upper left | -170.5 | 75.25 | 112.5 | 64.25 | 12.75 | 65.5 | 112.5 | 0.92 | drawing S-12 |\n"
+	s := notebook.Compile(&notebook.Context{FS: fstest.MapFS{"t.md": {Data: []byte(table)}}, Panics: true}, "t.md")
+	if s.Failed() {
+		t.Fatal(s.Diagnostics[0].Text())
+	}
+	ctx := browser(t)
+	open(t, ctx, html.Append(nil, render.NewPage(s)), 1280)
+	printed(t, ctx)
+	for _, found := range evaluate(t, ctx, `const t=document.querySelector('main table').getBoundingClientRect(),m=document.querySelector('.prose .mid').getBoundingClientRect();if(t.right>m.right+1)out.push('the table ends '+(t.right-m.right)+' beyond its column')`) {
+		t.Error(found)
+	}
+}
