@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 
 	"gusset/notebook/check"
 	"gusset/notebook/diag"
@@ -97,8 +98,8 @@ func (m *machine) points(p *check.PlotPlan) ([]float64, error) {
 	return x, nil
 }
 
-// curves computes again what depends on the swept name and draws it.
-func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
+// sweep computes again what depends on the swept name, over the given points.
+func (m *machine) sweep(p *check.PlotPlan, x []float64) (*frame, error) {
 	s := m.stepFor(p.Swept, m.top)
 	f := newFrame(p.Scope, m.top, m.top.src)
 	f.vals[p.Point.Slot] = Value{Type: p.Point.Type, Num: x}
@@ -107,21 +108,44 @@ func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
 		if plan.Func {
 			continue
 		}
-		step := m.newStep(plan, f)
-		if err := m.compute(plan, f, step); err != nil {
-			return err
+		m.kept.forget()
+		if err := m.compute(plan, f, m.newStep(plan, f)); err != nil {
+			return nil, err
 		}
+	}
+	return f, nil
+}
+
+// curves computes again what depends on the swept name and draws it. Where a
+// value does not exist at one of the points, they are moved between each other
+// once: a place where a curve goes through infinity lies on a point by chance only.
+func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
+	s := m.stepFor(p.Swept, m.top)
+	f, err := m.sweep(p, x)
+	var e *fault
+	if errors.As(err, &e) && e.id == diag.NotANumber {
+		moved := slices.Clone(x)
+		for i := 1; i < len(x)-1; i++ {
+			moved[i] += (x[i+1] - x[i]) / 3
+		}
+		if g, second := m.sweep(p, moved); second == nil {
+			f, x, err = g, moved, nil
+		}
+	}
+	if err != nil {
+		return err
 	}
 	out.X = Axis{Symbol: s.Symbol, Unit: s.Unit}
 	out.At = s.Unit.FromSI(s.Value.Num[0])
 	out.Present = s.Printed(0)
 	xs := inUnit(x, s.Unit)
+	b := &breaks{m: m, p: p, x: x}
 	for i, c := range p.Curves {
 		own := m.stepFor(c.Def, m.top)
 		if i == 0 {
 			out.Y = Axis{Symbol: own.Symbol, Unit: own.Unit}
 		}
-		lines, err := m.curve(c, own, f, p.Rows, xs, out.Y.Unit)
+		lines, err := m.curve(c, own, f, b, xs, out.Y.Unit)
 		if err != nil {
 			return err
 		}
@@ -129,7 +153,7 @@ func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
 	}
 	for _, c := range p.Limits {
 		own := m.stepFor(c.Def, m.top)
-		lines, err := m.curve(c, own, f, p.Rows, xs, out.Y.Unit)
+		lines, err := m.curve(c, own, f, b, xs, out.Y.Unit)
 		if err != nil {
 			return err
 		}
@@ -142,10 +166,11 @@ func (m *machine) curves(p *check.PlotPlan, out *Plot, x []float64) error {
 // only the governing one is.
 const mostCurves = 6
 
-// curve draws one value over the range: a line for each of its rows. A value
-// that does not exist everywhere is not drawn with a gap.
-func (m *machine) curve(c check.PlotCurve, own *Step, f *frame, sweep *check.Rows, xs []float64, u units.Unit) ([]Curve, error) {
+// curve draws one value over the range: a line for each of its rows. It is
+// broken where it goes through infinity.
+func (m *machine) curve(c check.PlotCurve, own *Step, f *frame, b *breaks, xs []float64, u units.Unit) ([]Curve, error) {
 	v, _ := f.value(c.Swept)
+	sweep := b.p.Rows
 	t := own.Value.Type
 	entries := []int{own.Entry}
 	if n := t.Count(); n > 1 && n <= mostCurves {
@@ -162,13 +187,16 @@ func (m *machine) curve(c check.PlotCurve, own *Step, f *frame, sweep *check.Row
 			line.Present = own.Printed(e)
 		}
 		joint := check.Type{Rows: append(append([]*check.Rows{}, t.Rows...), sweep)}
+		at := func(i int) int { return max(joint.Project(e*len(xs)+i, v.Type), 0) }
+		own := make([]float64, len(xs)) // in SI
 		for i := range xs {
-			at := max(joint.Project(e*len(xs)+i, v.Type), 0)
-			line.Y[i] = u.FromSI(v.Num[at])
+			own[i] = v.Num[at(i)]
+			line.Y[i] = u.FromSI(own[i])
 			if !finite(line.Y[i]) {
-				return nil, &fault{id: diag.OutOfRange, message: fmt.Sprintf("%s has no value at %s", own.Symbol, joint.Mark(e*len(xs)+i))}
+				return nil, &fault{id: diag.OutOfRange, message: fmt.Sprintf("%s has no value at %s", line.Symbol, joint.Mark(e*len(xs)+i))}
 			}
 		}
+		line.Breaks = b.of(own, c.Swept, at)
 		out = append(out, line)
 	}
 	return out, nil

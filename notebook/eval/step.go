@@ -180,6 +180,7 @@ type Curve struct {
 	ID, Symbol, Mark string
 	Of               int
 	X, Y             []float64
+	Breaks           []int   // i where no line leads from point i to the next: it goes through infinity between them
 	At               float64 // its present value
 	Present          []Piece // the same as it is printed, in the axis' unit
 }

@@ -3,6 +3,7 @@ package figure
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"gusset/notebook/eval"
@@ -29,8 +30,9 @@ var limitStroke = stroke{red, 0.8, []float64{3.2, 2}}
 type curve struct {
 	*eval.Curve
 	stroke stroke
-	points []Point // in the field
-	name   []label // line by line
+	parts  [][]Point // in the field, parted at its breaks
+	points []Point   // of all parts
+	name   []label   // line by line
 }
 
 // Plot draws curves over the range of a swept value, with their limits and their
@@ -51,12 +53,15 @@ func Plot(p *eval.Plot) *Drawing {
 	a.width = math.Max(column-4-figures-6-names-nameAt(p), 120)
 	a.x = d.ticksAlong(p.X.Unit, swept(p), a.width)
 	for i := range curves {
-		curves[i].points = a.course(curves[i].Curve)
+		curves[i].parts = a.course(curves[i].Curve)
+		curves[i].points = slices.Concat(curves[i].parts...)
 	}
 	along := d.name(p.X.Symbol)
 	edge := d.frame(a, d.axisTitle([]maths.Node{along}, p.X.Unit, a.x.power), d.axisTitle(symbols, p.Y.Unit, a.y.power))
 	for i := range curves {
-		d.line(curves[i].stroke, curves[i].points...)
+		for _, part := range curves[i].parts {
+			d.line(curves[i].stroke, part...)
+		}
 	}
 	d.names(a, curves, nameAt(p))
 	d.present(p, a)
@@ -176,16 +181,21 @@ func isPresent(p *eval.Plot) bool {
 	return p.At >= x[0]-dust && p.At <= x[1]+dust
 }
 
-// course is a curve in the field, without the points that lie on the straight
-// line between their neighbours as far as can be seen.
-func (a *axes) course(c *eval.Curve) []Point {
-	points := make([]Point, 0, len(c.X))
+// course is a curve in the field, in parts, without the points that lie on the
+// straight line between their neighbours as far as can be seen.
+func (a *axes) course(c *eval.Curve) [][]Point {
+	var parts [][]Point
+	var points []Point
 	for i := range c.X {
 		if p := a.point(c.X[i], c.Y[i]); !math.IsNaN(p.X) && !math.IsNaN(p.Y) && !math.IsInf(p.X, 0) && !math.IsInf(p.Y, 0) {
 			points = append(points, p)
 		}
+		if i == len(c.X)-1 || slices.Contains(c.Breaks, i) {
+			parts = append(parts, thinned(points))
+			points = nil
+		}
 	}
-	return thinned(points)
+	return parts
 }
 
 // thinned leaves out points (Douglas and Peucker 1973).

@@ -344,10 +344,28 @@ func anyCurve(n int) *rapid.Generator[eval.Curve] {
 			Mark: rapid.OneOf(rapid.Just(""), rapid.String()).Draw(t, "mark"), Of: rapid.IntRange(1, 30).Draw(t, "of")}
 		value := rapid.SampledFrom([]*rapid.Generator[float64]{anyNumber(), rapid.Float64Range(-9, 9), rapid.Just(3.0)}).Draw(t, "values")
 		c.Y = rapid.SliceOfN(value, n, n).Draw(t, "y")
+		if rapid.Bool().Draw(t, "broken") {
+			c.Breaks = rapid.SliceOfNDistinct(rapid.IntRange(0, n-2), 0, n-1, rapid.ID[int]).Draw(t, "breaks")
+		}
 		c.At = value.Draw(t, "at")
 		c.Present = []eval.Piece{{Figures: units.Format(c.At, 4)}}
 		return c
 	})
+}
+
+// No line leads across a break of a curve.
+func TestPlotBreak(t *testing.T) {
+	c := eval.Curve{ID: "a", Symbol: "a", Of: 1, X: []float64{0, 1, 2, 3}, Y: []float64{1, 2, -2, -1}, Breaks: []int{1}, Present: []eval.Piece{{Figures: "1"}}, At: 1}
+	d := Plot(&eval.Plot{X: eval.Axis{Symbol: "d"}, Y: eval.Axis{Symbol: "a"}, Curves: []eval.Curve{c}, Present: []eval.Piece{{Figures: "0"}}})
+	parts := 0
+	for _, item := range d.Items {
+		if item.Stroke == 1.2 && item.Colour == ink && len(item.Path) == 2 {
+			parts++
+		}
+	}
+	if parts != 2 {
+		t.Errorf("the curve is drawn in %d parts of two points, want 2", parts)
+	}
 }
 
 // Whatever its values, a plot is sound.
