@@ -185,9 +185,12 @@ func (w *builder) helper(c *syntax.Call, run *eval.Call) (Node, rank) {
 		results = run.Steps
 	}
 	if w.values && len(results) == 1 {
-		w.changed = true
-		n := w.Value(results[0], 0)
-		return n, rankOfValue(n)
+		// A result has rows of its own where a column went in.
+		if entry := w.entry(results[0].Value.Type); entry >= 0 && entry < results[0].Value.Len() {
+			w.changed = true
+			n := w.Value(results[0], entry)
+			return n, rankOfValue(n)
+		}
 	}
 	if run.Helper == nil {
 		return w.own(c), rankedAtom
