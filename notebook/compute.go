@@ -45,7 +45,7 @@ func (d *Draft) Compute(find func(path string) *Draft, sheet func(path string) *
 	program := check.Check(in)
 	result := eval.Run(program, carried)
 	s.Diagnostics = append(s.Diagnostics, result.Diagnostics...)
-	s.picked = pickedFrom(program)
+	s.picked, s.order = pickedFrom(program), program.Order
 	s.assemble(d, result)
 	s.Diagnostics = inSourceOrder(s.Diagnostics, s.Source)
 	return s
@@ -115,7 +115,7 @@ func (s *Sheet) carry(d *Draft, l Link, find func(string) *Draft, sheet func(str
 func (s *Sheet) fill(c *check.Carry, e *eval.Carry) {
 	c.Failed = false
 	c.Values, c.Rows = map[string]check.Type{}, map[string]*check.Rows{}
-	c.Texts, c.Picked = map[string][]string{}, s.picked
+	c.Texts, c.Picked, c.Order = map[string][]string{}, s.picked, s.order
 	e.Steps = map[string]*Step{}
 	e.Origin = eval.Origin{Key: c.Key, Path: c.Path, Calc: s.Front.Calc, Rev: s.Front.Rev, Title: s.Front.Title}
 	for _, b := range s.Blocks {

@@ -49,6 +49,7 @@ type Sheet struct {
 	byHeading  map[ast.Node]*Heading
 	byRemark   map[ast.Node]*Remark
 	picked     map[string]*check.Rows
+	order      []*check.Rows
 	unreadable error
 	// carriedRows names the sets of rows that come from other files.
 	carriedRows map[*check.Rows]string

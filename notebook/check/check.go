@@ -10,7 +10,6 @@ package check
 
 import (
 	"fmt"
-	"sort"
 
 	"gusset/notebook/diag"
 	"gusset/notebook/syntax"
@@ -70,6 +69,7 @@ func Check(in *Input) *Program {
 	c.refs()
 	c.alike()
 	c.notes()
+	c.prog.Order = c.ordered()
 	diag.Sort(c.prog.Diagnostics)
 	return c.prog
 }
@@ -93,37 +93,23 @@ func (c *checker) keys() {
 	}
 }
 
-// enterRows puts the rows of a carried file in order, its own and those it
-// carries itself.
+// enterRows puts the rows of a carried file in order, as the file itself has
+// them, so that its values lie here as they lie there.
 func (c *checker) enterRows(f *Carry) {
-	var all []*Rows
-	seen := map[*Rows]bool{}
-	add := func(r *Rows) {
-		if !seen[r] {
-			seen[r] = true
-			all = append(all, r)
-		}
-	}
-	for _, r := range f.Rows {
-		add(r)
-	}
-	for _, t := range f.Values {
-		for _, r := range t.Rows {
-			add(r)
-		}
-	}
-	sort.Slice(all, func(i, j int) bool {
-		a, b := all[i], all[j]
-		if a.File != b.File {
-			return a.File < b.File
-		}
-		return a.Seq < b.Seq
-	})
-	for _, r := range all {
+	for _, r := range f.Order {
 		if _, ok := c.order[r]; !ok {
 			c.order[r] = len(c.order)
 		}
 	}
+}
+
+// ordered lists the sets of rows of the file in order.
+func (c *checker) ordered() []*Rows {
+	list := make([]*Rows, len(c.order))
+	for r, i := range c.order {
+		list[i] = r
+	}
+	return list
 }
 
 // foresee notes where each name is defined first, so that a use above it can

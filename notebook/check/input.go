@@ -32,6 +32,7 @@ type Carry struct {
 	Failed    bool
 	Values    map[string]Type // `P_u`, `bolts.x`, `jnt.F_v_Rk`
 	Rows      map[string]*Rows
+	Order     []*Rows             // all sets that it has met, see Program
 	Shared    map[string][]string // what the sets of a name that several bear are called in Rows
 	Texts     map[string][]string // the entries of texts
 	Picked    map[string]*Rows    // the schedule a `first of` picked a value from

@@ -213,6 +213,7 @@ type Program struct {
 	Scope       *Scope
 	Plans       []*Plan // in order of the statements; schedules give one for each column
 	BlockRows   []*Rows // by block, nil where it has none
+	Order       []*Rows // all sets of rows that it has met, as their axes stand in values
 	Refs        []RefPlan
 	Plots       map[int]*PlotPlan // by block
 	Figures     map[int]*FigurePlan

@@ -85,7 +85,7 @@ func (c *checker) sweep(l *lower, plan *PlotPlan, t *syntax.Plot) {
 		l.fail(diag.BoundExceeded, t.At, fmt.Sprintf("a plot has at most %d steps", maxPlotSteps))
 		return
 	}
-	plan.Rows = &Rows{Name: d.Symbol, File: c.in.Source.Name, Seq: len(c.order), Marks: make([]string, steps+1), Swept: true}
+	plan.Rows = &Rows{Name: d.Symbol, File: c.in.Source.Name, Marks: make([]string, steps+1), Swept: true}
 	c.order[plan.Rows] = len(c.order)
 	s := &sweeper{c: c, plan: plan, dirty: map[*Def]bool{d: true}, funcs: map[string]bool{}}
 	s.overlay(t)

@@ -193,7 +193,7 @@ func (t *tableCheck) readable(x syntax.Expr) bool {
 
 // rows makes the table's set of rows from its column of marks.
 func (t *tableCheck) rows(line int) *Rows {
-	rows := &Rows{Name: t.name, File: t.c.in.Source.Name, Seq: len(t.c.order), Named: t.marks >= 0, Marks: make([]string, len(t.t.Rows))}
+	rows := &Rows{Name: t.name, File: t.c.in.Source.Name, Named: t.marks >= 0, Marks: make([]string, len(t.t.Rows))}
 	t.c.order[rows] = len(t.c.order)
 	first := map[string]int{}
 	l := t.lower(0)

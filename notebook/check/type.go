@@ -27,7 +27,6 @@ type Rows struct {
 	Name  string   // as the defining file calls it: `bolts`, `cases`
 	Marks []string // one for each row; row numbers where the schedule has no column of marks
 	File  string   // the file that defines it, as diagnostics show it
-	Seq   int      // its place among the sets of that file
 	Named bool     // the marks are the author's, no row numbers
 	Swept bool     // the points of a plot: no rows to the author, so nothing reduces them
 }
