@@ -3,8 +3,6 @@ package eval
 import (
 	"errors"
 	"math"
-	"slices"
-	"sort"
 
 	"github.com/Knetic/govaluate"
 
@@ -206,117 +204,6 @@ func largest(v Value) int {
 		}
 	}
 	return best
-}
-
-// govern finds for every value over rows the entry that governs the check
-// downstream of it: that of the worst such check.
-func (m *machine) govern(steps []*Step) {
-	byStep := map[*Step]int{}
-	var checks []int
-	for i, s := range steps {
-		if s == nil {
-			continue
-		}
-		byStep[s] = i
-		for _, r := range s.Results {
-			byStep[r] = i
-		}
-		if s.Kind == Check && !s.Failed && s.Check.Needed() {
-			checks = append(checks, i)
-		}
-	}
-	sort.SliceStable(checks, func(a, b int) bool { return worse(steps[checks[a]].Check, steps[checks[b]].Check) })
-	done := make([]bool, len(steps))
-	for i, s := range steps {
-		done[i] = s == nil || s.Kind == Check
-	}
-	var walks []*walk
-	for _, i := range checks {
-		r := steps[i].Check
-		if len(r.Type.Rows) == 0 {
-			continue // says nothing of any row
-		}
-		k := slices.IndexFunc(walks, func(w *walk) bool { return slices.Equal(w.rows, r.Type.Rows) })
-		if k < 0 {
-			k = len(walks)
-			walks = append(walks, &walk{rows: r.Type.Rows, seen: make([]bool, len(steps))})
-		}
-		m.spread(steps, byStep, done, walks[k].seen, i)
-	}
-}
-
-// walk is what the checks over one list of rows have reached upstream. What a
-// worse check has been through already, with all above it, holds nothing for the
-// next one: chains of checks stay linear.
-type walk struct {
-	rows []*check.Rows
-	seen []bool // by step
-}
-
-func worse(a, b *CheckResult) bool {
-	if a.AllOK != b.AllOK {
-		return !a.AllOK
-	}
-	x, y := a.Ratio[a.Governs], b.Ratio[b.Governs]
-	return finite(x) && (!finite(y) || x > y)
-}
-
-// spread gives everything upstream of a check, as far as values run over rows,
-// the entry that governs it.
-func (m *machine) spread(steps []*Step, byStep map[*Step]int, done, seen []bool, from int) {
-	t, entry := steps[from].Check.Type, steps[from].Check.Governs
-	stack := []int{from}
-	seen[from] = true
-	for len(stack) > 0 {
-		i := stack[len(stack)-1]
-		stack = stack[:len(stack)-1]
-		for _, u := range steps[i].Uses {
-			k, ok := byStep[u]
-			if !ok || seen[k] {
-				continue
-			}
-			seen[k] = true
-			if plainValue(steps[k]) {
-				continue // which row it is taken from it says itself
-			}
-			stack = append(stack, k)
-			if !done[k] {
-				done[k] = m.setEntry(steps[k], t, entry)
-			}
-		}
-	}
-}
-
-// plainValue tells that a step has one value for all rows: a check's entry says
-// nothing of the rows that it was reduced from.
-func plainValue(s *Step) bool {
-	if s.Kind == Function || len(s.Value.Type.Rows) > 0 {
-		return false
-	}
-	for _, r := range s.Results {
-		if len(r.Value.Type.Rows) > 0 {
-			return false
-		}
-	}
-	return true
-}
-
-// setEntry sets the entry printed in full, where the check's rows say which.
-func (m *machine) setEntry(s *Step, t check.Type, entry int) bool {
-	set := false
-	one := func(s *Step) {
-		if len(s.Value.Type.Rows) == 0 || s.Value.Len() == 0 {
-			return
-		}
-		if at := t.Project(entry, s.Value.Type); at >= 0 {
-			s.Entry, set = at, true
-		}
-	}
-	one(s)
-	for _, r := range s.Results {
-		one(r)
-	}
-	return set
 }
 
 // finish records, for every statement over rows, what is printed of the entry
