@@ -152,7 +152,7 @@ func (m *machine) inFunction(err error, n *check.Node, f *frame) error {
 }
 
 // entrywise tells that a function's body needs no more than one entry of its
-// arguments at a time: it reduces no rows and looks nothing up.
+// arguments at a time: it reduces no rows of theirs and looks nothing up in them.
 func entrywise(inst *check.Function) bool {
 	if inst.Body.FirstOf != nil {
 		return false
@@ -168,7 +168,10 @@ func entrywise(inst *check.Function) bool {
 // elementary tells the same of an expression in the scope of the function's parameters.
 func elementary(n *check.Node, params *check.Scope) bool {
 	switch n.Op {
-	case check.Reduce, check.At, check.AtRow, check.Interp, check.CallHelp, check.CallGo:
+	case check.At: // of a column above the function
+		col := n.Args[0]
+		return col.Op == check.Load && col.Def.Scope != params && elementary(n.Args[1], params)
+	case check.Reduce, check.AtRow, check.Interp, check.CallHelp, check.CallGo:
 		return false
 	case check.Load:
 		// What has rows above the function is projected from the caller's rows.
@@ -189,7 +192,7 @@ func elementary(n *check.Node, params *check.Scope) bool {
 // callHelp runs a helper for one entry and returns its one result.
 func (m *machine) callHelp(n *check.Node, f *frame, target *check.Type, entry int) (any, error) {
 	loop := check.Type{Rows: n.Help.Loop}
-	g, err := m.runHelper(n.Help, f, max(target.Project(entry, loop), 0))
+	g, err := m.run(n, f, max(target.Project(entry, loop), 0))
 	if err != nil {
 		return nil, err
 	}
@@ -367,7 +370,12 @@ func (m *machine) inHelper(err error, hc *check.HelperCall) error {
 func (m *machine) limit(p *check.Plan, g *frame, step *Step) error {
 	s := p.Stmt.(*syntax.Needs)
 	t := p.Check.Type
+	outer := m.recording
+	if len(t.Rows) > 0 {
+		m.recording = nil // the entry that is nearest to the limit is recorded below
+	}
 	r, err := m.verdicts(p, g)
+	m.recording = outer
 	for e, ok := range r.OK {
 		if ok {
 			continue
@@ -384,8 +392,11 @@ func (m *machine) limit(p *check.Plan, g *frame, step *Step) error {
 	if step != nil {
 		m.complete(r, p, g)
 		step.Check = r
+		if len(t.Rows) > 0 {
+			_, err = m.truth(p.Check.Cond, g, &t, r.Governs)
+		}
 	}
-	return nil
+	return err
 }
 
 // outside says which limit does not hold, with the value, the limit and the clause.

@@ -31,14 +31,15 @@ func (m *machine) verdicts(p *check.Plan, f *frame) (*CheckResult, error) {
 	for i := range flags {
 		flags[i] = true
 	}
+	needed, holding := m.verdictColumn(c.If, f, &c.Type), m.verdictColumn(c.Cond, f, &c.Type)
 	for e := range r.OK {
 		required, holds := true, true
 		var err error
 		if c.If != nil {
-			required, err = m.truth(c.If, f, &c.Type, e)
+			required, err = m.holdsAt(needed, c.If, f, &c.Type, e)
 		}
 		if err == nil && required {
-			holds, err = m.truth(c.Cond, f, &c.Type, e)
+			holds, err = m.holdsAt(holding, c.Cond, f, &c.Type, e)
 		}
 		if err != nil {
 			return r, atEntry(err, c.Type, e)
@@ -47,6 +48,24 @@ func (m *machine) verdicts(p *check.Plan, f *frame) (*CheckResult, error) {
 		r.AllOK = r.AllOK && r.OK[e]
 	}
 	return r, nil
+}
+
+// verdictColumn computes a condition over rows for all entries at once; nil for
+// one that has none, and where the calls in it are recorded one by one.
+func (m *machine) verdictColumn(n *check.Node, f *frame, t *check.Type) []float64 {
+	if n == nil || len(t.Rows) == 0 || m.recording != nil {
+		return nil
+	}
+	return m.column(n, f, t)
+}
+
+// holdsAt is one entry of a condition; what the column cannot tell is computed
+// once more, to say why.
+func (m *machine) holdsAt(column []float64, n *check.Node, f *frame, t *check.Type, entry int) (bool, error) {
+	if column != nil && finite(column[entry]) {
+		return column[entry] == 1, nil
+	}
+	return m.truth(n, f, t, entry)
 }
 
 // complete adds the sides of a check whose verdicts are known, the utilisations and what governs.

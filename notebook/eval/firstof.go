@@ -41,7 +41,7 @@ func (m *machine) firstOf(fo *check.FirstOf, f *frame, t *check.Type, entry int,
 		}
 		v.set(x)
 		f.vals[fo.Def.Slot], step.Value = v, v
-		m.kept.forget()
+		m.kept.forgetOf(fo.Def)
 		at := 0
 		for _, r := range ct.Rows {
 			i := k

@@ -9,6 +9,7 @@ import "gusset/notebook/check"
 type kept struct {
 	columns map[*check.Node]keptColumn
 	results map[*check.Node]keptResults
+	runs    map[*check.Node]keptRun
 }
 
 // keptColumn is all entries of a node in one frame: a helper that is run again
@@ -25,11 +26,70 @@ type keptResults struct {
 	entries []any
 }
 
-// forget drops what is kept: at the next statement, and where a candidate of
-// `first of` gets its next value.
+// keptRun is the last run of a helper in one frame, whose result has rows of
+// its own where a column went in.
+type keptRun struct {
+	frame *frame
+	entry int // of the rows that the call runs over
+	body  *frame
+}
+
+// forget drops what is kept, at the next statement.
 func (k *kept) forget() {
 	clear(k.columns)
 	clear(k.results)
+	clear(k.runs)
+}
+
+// forgetOf drops what was made of a candidate of `first of`, which gets its next
+// value.
+func (k *kept) forgetOf(d *check.Def) {
+	for n := range k.columns {
+		if mentions(n, d) {
+			delete(k.columns, n)
+		}
+	}
+	for n := range k.results {
+		if mentions(n, d) {
+			delete(k.results, n)
+		}
+	}
+	for n := range k.runs {
+		if mentions(n, d) {
+			delete(k.runs, n)
+		}
+	}
+}
+
+func mentions(n *check.Node, d *check.Def) bool {
+	if n.Def == d {
+		return true
+	}
+	lists := [][]*check.Node{n.Args}
+	if n.Help != nil {
+		lists = append(lists, n.Help.Args)
+	}
+	for _, list := range lists {
+		for _, a := range list {
+			if mentions(a, d) {
+				return true
+			}
+		}
+	}
+	return false
+}
+
+// run runs a helper that is called inside an expression, once for all entries
+// of its result that one run gives.
+func (m *machine) run(n *check.Node, f *frame, entry int) (*frame, error) {
+	if k, ok := m.kept.runs[n]; ok && k.frame == f && k.entry == entry && m.recording == nil {
+		return k.body, nil
+	}
+	g, err := m.runHelper(n.Help, f, entry)
+	if err == nil {
+		m.kept.runs[n] = keptRun{f, entry, g}
+	}
+	return g, err
 }
 
 // ownColumn is a node's column over its own rows.

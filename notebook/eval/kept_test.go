@@ -10,7 +10,8 @@ import (
 // never handed to another call, candidate or run of a helper. The values are
 // worked out by hand.
 func TestKeptReductions(t *testing.T) {
-	s := sound(t, "```schedule s\nmark | x [mm] | k\nA | 1 | 1\nB | 2 | 2\nC | 3 | 1\n```\n"+
+	s := sound(t, "```schedule s\nmark | x [mm] | k | g\nA | 1 | 1 | S1\nB | 2 | 2 | S2\nC | 3 | 1 | S1\n```\n"+
+		"```schedule steels\nmark | f [mm]\nS1 | 10\nS2 | 20\n```\n"+
 		"```cases\ncase | c [mm] | n\nL1 | 5 | 1\nL2 | 11 | 2\nL3 | 17 | 3\n```\n"+
 		"```helper spread  # Widest spacing\nx [column of length]\nf = 1\nlimit [length]\nneeds f*max(x*1) <= limit\nm [length] = f*max(x*1) - min(x*1)\ngives m\n```\n"+
 		block(`
@@ -21,6 +22,14 @@ t = first of 1, 2, 3 with sum(t*s.x) >= 15 mm
 u = first of 1, 2, 3 with sum(u*s.x over s) >= c
 h = spread(s.x*2, n, 100 mm) + spread(s.x, 1, 100 mm)
 v = interpolate(s.x*2, s.k*10, s.x + 1 mm)
+f_t(m) = steels.f at m
+looked = f_t(s.g)*n + f_t("S2")
+f_m(m, a) = steels.f at m if a > 1 mm
+          = max(a*s.k) + 0 mm otherwise
+mixed = f_m(s.g, s.x)
+share(q) = q/max(q*1)
+shares = share(s.x)
+fits = first of 1, 2, 3 with fits*s.x >= max(s.k*1 mm)
 both = c + max(c*n) + min(c*n)
 check s.x <= max(s.x*s.k)/2 + min(s.x*s.k)
 `))
@@ -31,6 +40,10 @@ check s.x <= max(s.x*s.k)/2 + min(s.x*s.k)
 		{"u", "1.000 | 2.000 | 3.000"},
 		{"h", "6.000 mm | 12.00 mm | 18.00 mm"},
 		{"v", "10.00 | 15.00 | 20.00"},
+		{"looked", "30.00 mm | 40.00 mm | 50.00 mm | 40.00 mm | 60.00 mm | 80.00 mm | 30.00 mm | 40.00 mm | 50.00 mm"},
+		{"mixed", "4.000 mm | 20.00 mm | 10.00 mm"},
+		{"fits", "2.000 | 1.000 | 1.000"},
+		{"shares", "0.3333 | 0.6667 | 1.000"},
 		{"both", "61.00 mm | 67.00 mm | 73.00 mm"},
 	} {
 		if got := all(find(s, want.id)); got != want.text {

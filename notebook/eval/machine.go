@@ -166,7 +166,7 @@ func (m *machine) leaf(n *check.Node, f *frame, target *check.Type, entry int) (
 	case check.Interp:
 		return m.interpolated(n, f, target, entry)
 	case check.CallFunc:
-		return m.callFunc(n, f, target, entry)
+		return m.once(n, f, target, entry, func() (any, error) { return m.callFunc(n, f, target, entry) })
 	case check.CallHelp:
 		return m.callHelp(n, f, target, entry)
 	case check.CallGo:

@@ -46,7 +46,7 @@ type RefResult struct {
 func Run(p *check.Program, carried map[string]*Carry) *Result {
 	m := &machine{prog: p, carried: carried, out: &Result{Blocks: make([]BlockResult, len(p.In.Blocks))},
 		marks: map[*check.Rows]map[string]int{}, consts: map[*check.Def]*Step{}, warned: map[warning]bool{}, forms: map[string]*govaluate.EvaluableExpression{},
-		kept: kept{columns: map[*check.Node]keptColumn{}, results: map[*check.Node]keptResults{}}}
+		kept: kept{columns: map[*check.Node]keptColumn{}, results: map[*check.Node]keptResults{}, runs: map[*check.Node]keptRun{}}}
 	m.out.Diagnostics = append(m.out.Diagnostics, p.Diagnostics...)
 	m.top = newFrame(p.Scope, nil, p.In.Source)
 	m.load0()
@@ -219,7 +219,10 @@ func (m *machine) finish(steps []*Step) {
 		m.recording = &s.Calls
 		switch {
 		case p.Check != nil:
-			m.truth(p.Check.Cond, m.top, &p.Check.Type, s.Entry)
+			holds, err := m.truth(p.Check.Cond, m.top, &p.Check.Type, s.Entry)
+			if r := s.Check; err == nil && r.Required[s.Entry] && holds != r.OK[s.Entry] {
+				m.failStatement(p, s, m.disagree(p.Check.Cond.Expr.Span(), r.Type, s.Entry))
+			}
 		case p.Helper != nil:
 			loop := check.Type{Rows: p.Helper.Loop}
 			at := 0
@@ -249,7 +252,7 @@ func (m *machine) crossCheck(p *check.Plan, s *Step) {
 		x, _, err := m.choice(p.Choice, m.top, &t, e)
 		m.recording = nil
 		if y, ok := x.(float64); ok && err == nil && math.Abs(y-s.Value.Num[e]) > agree*math.Max(math.Abs(y), math.Abs(s.Value.Num[e])) {
-			m.failStatement(p, s, m.disagree(p.Choice, t, e))
+			m.failStatement(p, s, m.disagree(p.Choice.Branches[0].Value.Expr.Span(), t, e))
 			break
 		}
 	}

@@ -271,7 +271,7 @@ func (m *machine) choiceRows(ch check.Choice, f *frame) (Value, []int, error) {
 			return v, nil, atEntry(err, v.Type, e)
 		}
 		if n, ok := y.(float64); ok && finite(n) {
-			return v, nil, m.disagree(ch, v.Type, e)
+			return v, nil, m.disagree(ch.Branches[0].Value.Expr.Span(), v.Type, e)
 		}
 	}
 	v.Num = col
@@ -279,11 +279,7 @@ func (m *machine) choiceRows(ch check.Choice, f *frame) (Value, []int, error) {
 }
 
 // disagree reports that the two evaluators differ, which is a fault of the program.
-func (m *machine) disagree(ch check.Choice, t check.Type, entry int) error {
-	at := diag.Span{}
-	if len(ch.Branches) > 0 {
-		at = ch.Branches[0].Value.Expr.Span()
-	}
+func (m *machine) disagree(at diag.Span, t check.Type, entry int) error {
 	return atEntry(&fault{id: diag.Internal, at: at, message: "the two ways of computing this value disagree; this is a fault of the program, please report it"}, t, entry)
 }
 
