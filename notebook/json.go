@@ -175,13 +175,18 @@ func (s *Sheet) checkJSON(step *Step) checkJSON {
 func (s *Sheet) rowNames(t check.Type) []string {
 	var names []string
 	for _, r := range t.Rows {
-		name, ok := s.carriedRows[r]
-		if !ok {
-			name = r.Name
-		}
-		names = append(names, name)
+		names = append(names, s.RowsName(r))
 	}
 	return names
+}
+
+// RowsName is a set of rows as this calc calls it: under its file's key where it
+// is carried.
+func (s *Sheet) RowsName(r *check.Rows) string {
+	if name, ok := s.carriedRows[r]; ok {
+		return name
+	}
+	return r.Name
 }
 
 // appendNested writes one entry, or arrays of entries, the first set of rows

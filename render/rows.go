@@ -26,7 +26,7 @@ const (
 func (c *composer) valueTable(steps []*eval.Step, full bool) *Table {
 	t := steps[0].Value.Type
 	table := &Table{Rows: t.Count()}
-	table.addMarks(t)
+	table.addMarks(t, c.rowsNames(t))
 	for _, s := range steps {
 		c.addValue(table, s, c.maths.Symbol(s))
 	}
@@ -41,13 +41,28 @@ func (c *composer) valueTable(steps []*eval.Step, full bool) *Table {
 	return table
 }
 
+// rowsNames are the sets of rows of a value by their own names, or where two of
+// them have one, as the calc calls them.
+func (c *composer) rowsNames(t check.Type) []string {
+	names := make([]string, len(t.Rows))
+	for i, r := range t.Rows {
+		names[i] = r.Name
+		for k, o := range t.Rows {
+			if k != i && o.Name == r.Name {
+				names[i] = c.sheet.RowsName(r)
+			}
+		}
+	}
+	return names
+}
+
 // addMarks adds a column of marks for each set of rows.
-func (t *Table) addMarks(typ check.Type) {
+func (t *Table) addMarks(typ check.Type, names []string) {
 	stride := typ.Count()
-	for _, r := range typ.Rows {
+	for i, r := range typ.Rows {
 		stride /= max(r.N(), 1)
 		step := stride
-		t.Heads = append(t.Heads, Head{Words: r.Name})
+		t.Heads = append(t.Heads, Head{Words: names[i]})
 		t.columns = append(t.columns, column{governs: -1, cell: func(dst []byte, row int) []byte {
 			return append(dst, r.Marks[row/step%r.N()]...)
 		}})
@@ -119,8 +134,7 @@ func (c *composer) schedule(b *notebook.Block) Entry {
 	}
 	t := &Table{Rows: b.Rows.N()}
 	if b.Marks < 0 {
-		t.addMarks(check.Type{Rows: []*check.Rows{b.Rows}})
-		t.Heads[0].Words = "row"
+		t.addMarks(check.Type{Rows: []*check.Rows{b.Rows}}, []string{"row"})
 	}
 	keep := map[int]bool{}
 	for i, s := range b.Steps {
@@ -189,7 +203,7 @@ func (c *composer) checkTables(s *eval.Step, full bool) []*Table {
 	}
 	tables := make([]*Table, len(r.Type.Rows))
 	for i := range r.Type.Rows {
-		tables[i] = envelope(r, i, full)
+		tables[i] = envelope(r, c.rowsNames(r.Type), i, full)
 	}
 	return tables
 }
@@ -199,7 +213,7 @@ func (c *composer) checkTables(s *eval.Step, full bool) []*Table {
 func (c *composer) entriesTable(s *eval.Step, full bool) *Table {
 	r := s.Check
 	t := &Table{Rows: r.Type.Count()}
-	t.addMarks(r.Type)
+	t.addMarks(r.Type, c.rowsNames(r.Type))
 	for i := range r.Sides {
 		side := &r.Sides[i]
 		if len(side.Value.Type.Rows) == 0 {
@@ -219,7 +233,7 @@ func (c *composer) entriesTable(s *eval.Step, full bool) *Table {
 }
 
 // envelope is the worst entry of a check for each mark of one set of its rows.
-func envelope(r *eval.CheckResult, axis int, full bool) *Table {
+func envelope(r *eval.CheckResult, names []string, axis int, full bool) *Table {
 	rows := r.Type.Rows[axis]
 	worst := make([]int, rows.N())
 	for i := range worst {
@@ -235,8 +249,8 @@ func envelope(r *eval.CheckResult, axis int, full bool) *Table {
 			worst[mark] = entry
 		}
 	}
-	t := &Table{Caption: "largest for each of " + rows.Name, Rows: rows.N()}
-	t.addMarks(check.Type{Rows: []*check.Rows{rows}})
+	t := &Table{Caption: "largest for each of " + names[axis], Rows: rows.N()}
+	t.addMarks(check.Type{Rows: []*check.Rows{rows}}, names[axis:axis+1])
 	at := func(row int) int { return worst[row] }
 	governs := r.Governs / stride % rows.N()
 	stride = r.Type.Count()
@@ -246,7 +260,7 @@ func envelope(r *eval.CheckResult, axis int, full bool) *Table {
 			continue
 		}
 		step := stride
-		t.Heads = append(t.Heads, Head{Words: "at " + o.Name})
+		t.Heads = append(t.Heads, Head{Words: "at " + names[i]})
 		t.columns = append(t.columns, column{governs: governs, cell: func(dst []byte, row int) []byte {
 			return append(dst, o.Marks[at(row)/step%o.N()]...)
 		}})
