@@ -310,10 +310,12 @@ func (l *lower) logical(x *syntax.Binary) *Node {
 
 // compare lowers a chain of comparisons of values of one dimension.
 func (l *lower) compare(x *syntax.Compare) *Node {
+	told := len(l.e.c.prog.Diagnostics)
 	n := l.node(Node{Op: Compare, Expr: x, Type: Type{Kind: Condition}, Args: l.operands(x), Detail: l.detail(Detail{Cmp: x.Ops})})
 	if where := l.where; len(where) > 0 && n.Args != nil && !alike(n.Args) {
 		// `if d <= 8 mm` above `where d [mm]` compares the value, not its number
 		l.where = nil
+		l.e.c.prog.Diagnostics = l.e.c.prog.Diagnostics[:told] // warnings, which come again
 		if whole := l.operands(x); whole != nil {
 			n.Args = whole
 		}

@@ -19,13 +19,15 @@ type breaks struct {
 	p     *check.PlotPlan
 	x     []float64 // the points
 	looks int
+	swept int
 }
 
 const (
-	mostLooks = 50   // places of a plot that are looked into
-	closest   = 1e-6 // of the distance of two points, how closely
-	steeper   = 1.5  // towards a pole the rise is at least 3 times the one before, with roots twice
-	outgrown  = 100  // times the magnitude at the points is no peak
+	mostLooks = 50        // places of a plot that are looked into
+	mostSwept = 5_000_000 // entries that are computed again for it
+	closest   = 1e-6      // of the distance of two points, how closely
+	steeper   = 1.5       // towards a pole the rise is at least 3 times the one before, with roots twice
+	outgrown  = 100       // times the magnitude at the points is no peak
 )
 
 // of lists the breaks of a curve with the values y. at is where its points stand
@@ -68,7 +70,12 @@ func (b *breaks) endless(y []float64, i int, swept *check.Def, at func(i int) in
 	lo, hi := b.x[i], b.x[i+1]
 	width, bound := (hi-lo)*closest, outgrown*math.Max(math.Abs(y[i]), math.Abs(y[i+1]))
 	n := len(b.x) - 1
-	for hi-lo > width {
+	for hi-lo > width && b.swept < mostSwept {
+		for _, plan := range b.p.Plans {
+			if plan.Def != nil {
+				b.swept += plan.Def.Type.Count()
+			}
+		}
 		x := make([]float64, n+1)
 		for k := range x {
 			x[k] = lo + (hi-lo)*float64(k)/float64(n)

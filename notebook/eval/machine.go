@@ -436,7 +436,7 @@ func (m *machine) callGo(n *check.Node, f *frame, target *check.Type, entry int)
 		return nil, &fault{id: diag.NoConvergence, at: n.Expr.Span(), message: err.Error()}
 	}
 	if math.IsInf(r, 0) {
-		return nil, undefined{n}
+		return nil, &fault{id: diag.NotANumber, at: n.Expr.Span(), message: fmt.Sprintf("`%s` has no finite value", f.print(n.Expr))}
 	}
 	return r, nil
 }
