@@ -298,8 +298,9 @@ func (s *sweeper) column(p *Plan) {
 	for _, uses := range p.Column.Uses {
 		for _, d := range uses {
 			if d != nil && s.dirty[d] {
-				l := s.body.lower(0)
-				l.fail(diag.RowMismatch, s.plan.Tree.At, fmt.Sprintf("the column %s depends on %s in its cells, and a schedule's cells are not swept", p.Def.Symbol, s.plan.Swept.Symbol))
+				s.c.report(diag.Diagnostic{ID: diag.RowMismatch, Source: s.c.in.Source, Span: s.plan.Tree.Against.At,
+					Message: fmt.Sprintf("the column %s depends on %s in its cells, and a schedule's cells are not swept", p.Def.Symbol, s.plan.Swept.Symbol),
+					Hints:   []string{"a formula of rows below the schedule is swept: write there what depends on " + s.plan.Swept.Symbol}})
 				return
 			}
 		}
