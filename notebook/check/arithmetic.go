@@ -189,17 +189,21 @@ func (l *lower) unitsAsFactors(chain []*syntax.Binary) int {
 func (l *lower) unitFactor(x syntax.Expr) string {
 	power := ""
 	if p, ok := x.(*syntax.Binary); ok && p.Op == syntax.Pow {
-		exponent, ok := p.Y.(*syntax.Number)
+		y, sign := p.Y, "^"
+		if u, ok := y.(*syntax.Unary); ok && u.Op == syntax.Neg {
+			y, sign = u.X, "^-"
+		}
+		exponent, ok := y.(*syntax.Number)
 		if !ok || exponent.Pieces[0].HasUnit {
 			return ""
 		}
-		x, power = p.X, "^"+exponent.Pieces[0].Figures
+		x, power = p.X, sign+exponent.Pieces[0].Figures
 	}
 	name, ok := x.(*syntax.Name)
-	if !ok || !units.IsUnitName(name.Text) || l.e.lookup(name.ID) != nil || l.e.c.spaces[name.ID] != nil {
+	if !ok || !units.IsUnitName(name.Text) || l.e.lookup(name.ID) != nil || l.e.c.spaces[name.ID] != nil || l.e.c.lostCases > 0 {
 		return ""
 	}
-	if _, later := l.e.c.later[name.ID]; later {
+	if _, later := l.e.c.later[name.ID]; later || l.e.function(name.ID) != nil || l.e.helper(name.ID) != nil {
 		return ""
 	}
 	return name.Text + power
