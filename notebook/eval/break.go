@@ -98,10 +98,11 @@ func (b *breaks) endless(y []float64, i int, swept *check.Def, at func(i int) in
 				top = k
 			}
 		}
-		lo, hi = x[max(top-1, 0)], x[min(top+1, n)]
-		if n <= 2 {
-			return false // no closer look with so few points
+		from, to := x[max(top-1, 0)], x[min(top+1, n)]
+		if to-from >= hi-lo {
+			return false // no closer look with so few points, or figures
 		}
+		lo, hi = from, to
 	}
 	return false
 }
