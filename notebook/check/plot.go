@@ -159,8 +159,11 @@ func (l *lower) curve(x *syntax.Name, s *sweeper, mustMove bool, out *[]PlotCurv
 	if d := s.e.names[n.Def.ID]; d != nil {
 		swept = d
 	} else if mustMove && n.Def != s.plan.Swept {
-		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s does not depend on %s: there is nothing to plot", x.Text, s.plan.Swept.Symbol),
-			"a value that stays the same is drawn with `limit "+x.Text+"`")
+		hint := "a value that stays the same is drawn with `limit " + x.Text + "`"
+		if s.plan.Swept.Carry != nil {
+			hint = "what was carried from another calc is not computed again: draw it in a plot of that calc"
+		}
+		l.fail(diag.UnknownName, x.At, fmt.Sprintf("%s does not depend on %s: there is nothing to plot", x.Text, s.plan.Swept.Symbol), hint)
 		return
 	}
 	if swept.Failed {
