@@ -17,6 +17,7 @@ type lower struct {
 	e       *env
 	uses    []*Def // by slot; nil where nobody asks
 	where   map[string]*syntax.UnitRef
+	refused map[*syntax.UnitRef]bool // units of a `where` that were reported: a name may stand in many places
 	failed  bool
 	because int
 	// declared tells that the statement declares its unit, so that a unit
@@ -269,6 +270,14 @@ func (l *lower) name(x *syntax.Name) *Node {
 // plainNumber is a name of a `where`: the plain number of a unit.
 func (l *lower) plainNumber(n *Node, u *syntax.UnitRef) *Node {
 	if n.Type.Dim != u.Dim || (n.Type.Kind == Point) != u.Point {
+		if l.refused[u] {
+			l.failed = true
+			return invalid
+		}
+		if l.refused == nil {
+			l.refused = map[*syntax.UnitRef]bool{}
+		}
+		l.refused[u] = true
 		message := fmt.Sprintf("%s is taken in %s, but it is %s", n.Def.ID, l.unitWords(u), l.e.c.describe(n.Type))
 		if difference := map[string]string{"degC": "K", "°C": "K", "degF": "degR", "°F": "degR"}[u.Text]; difference != "" && n.Type.Dim == u.Dim {
 			return l.fail(diag.DimensionMismatch, u.At, message, fmt.Sprintf("a difference is taken in %s: `%s [%s]`", difference, n.Def.Symbol, difference))

@@ -164,6 +164,9 @@ func (l *lower) noRow(x *syntax.AtMark, rows *Rows, mark string) *Node {
 // meant, where it may be looked for, else what marks there are.
 func (r *Rows) NoRow(mark string, look bool) (message, hint string) {
 	message = fmt.Sprintf("%s has no row `%s`", r.Name, mark)
+	if !r.Named {
+		return message, fmt.Sprintf("its rows have no marks but their numbers, 1 to %d; a column that is called `mark`, or holds texts, has marks", r.N())
+	}
 	if look {
 		if near := diag.Nearest(mark, r.Marks); near != "" {
 			return message, "did you mean `" + near + "`?"

@@ -31,6 +31,8 @@ func (p *parser) noValue() {
 		p.syntax(p.start, p.pos, fmt.Sprintf("the power %s has nothing before it", here))
 	case p.tok == tIf && p.prev == tAssign:
 		p.syntax(p.start, p.pos, "a choice has its value before the condition", "as in `k = 0.85 if t <= 25 mm`, further branches on the lines below")
+	case p.tok == tFirst && strings.HasPrefix(strings.TrimLeft(p.s[p.pos:], " \t"), "of"):
+		p.syntax(p.start, p.pos, "`first of … with …` is the whole right side of a definition, outside all brackets", "define the choice on a line of its own, and use its name here")
 	case p.tok >= tIf:
 		p.syntax(p.start, p.pos, fmt.Sprintf("a value is missing before %s, which is a word of the notation and cannot be a name", here))
 	case p.prev == tEnd:
