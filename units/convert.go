@@ -10,7 +10,7 @@ import (
 // rounding: "1 kip = 4.4482216152605 kN", "1 deg = π/180 rad", "x degC = (9/5*x + 32) degF".
 func Convert(x *big.Rat, from, to Unit) (value float64, exact string, err error) {
 	if from.Dim() != to.Dim() {
-		return 0, "", fmt.Errorf("`%s` is %s and `%s` is %s", from, from.Dim().Article(), to, to.Dim().Article())
+		return 0, "", fmt.Errorf("`%s` is %s and `%s` is %s", from, from.article(), to, to.article())
 	}
 	if from.IsPoint() != to.IsPoint() {
 		return 0, "", pointError(from, to)
@@ -55,6 +55,13 @@ func pointError(from, to Unit) error {
 		return fmt.Errorf("`%s` is a point of temperature and `%s` a difference", from, to)
 	}
 	return fmt.Errorf("`%s` is a temperature difference and `%s` a point", from, to)
+}
+
+func (u Unit) article() string {
+	if u.IsPoint() {
+		return "a temperature"
+	}
+	return u.Dim().Article()
 }
 
 // String writes the factor exactly: 0.0254, π/180, 5/9; a root that is no rational is rounded to 17

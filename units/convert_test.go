@@ -47,6 +47,7 @@ func TestConvert(t *testing.T) {
 		{"kN", "MPa", "`kN` is a force and `MPa` is a stress"},
 		{"kN", "%", "`kN` is a force and `%` is a plain number"},
 		{"degC", "K", "`degC` is a point of temperature and `K` a difference"},
+		{"degC", "kN", "`degC` is a temperature and `kN` is a force"},
 		{"degR", "degF", "`degR` is a temperature difference and `degF` a point"},
 	} {
 		_, _, err := Convert(big.NewRat(1, 1), mustParse(row.from), mustParse(row.to))

@@ -95,6 +95,9 @@ func convert(value, unit string) (string, error) {
 	if err != nil {
 		return "", err
 	}
+	if (from.IsPoint() || to.IsPoint()) && from.Dim() == to.Dim() && from.LiteralToSI(x) < -1e-9 {
+		return "", fmt.Errorf("`%s` lies below absolute zero", strings.TrimSpace(value))
+	}
 	if from.IsPoint() != to.IsPoint() && from.Dim() == to.Dim() {
 		return convertPoint(value, x, from, to)
 	}
