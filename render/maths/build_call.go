@@ -45,7 +45,17 @@ func (w *builder) call(c *syntax.Call) (Node, rank) {
 			return n, rankedAtom
 		}
 	case "interpolate":
-		return Call(Word{Text: "interpolate"}, w.args(c)...), rankedAtom
+		// The table stays as its columns, at whatever row it is looked up.
+		args, columns := make([]Node, len(c.Args)), *w
+		columns.values = false
+		for i, a := range c.Args {
+			if i < 2 {
+				args[i] = columns.side(a.Value)
+			} else {
+				args[i] = w.side(a.Value)
+			}
+		}
+		return Call(Word{Text: "interpolate"}, args...), rankedAtom
 	case "log10":
 		return Call(Script{Base: Word{Text: "log"}, Sub: Number{Value: "10"}}, w.args(c)...), rankedAtom
 	}

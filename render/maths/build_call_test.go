@@ -10,6 +10,7 @@ func TestCallsWithinReductions(t *testing.T) {
 	half := "```\n\n```helper half\nx [length]\ny = x/2\ngives y\n```\n\n```calc\n"
 	twice := "```\n\n```helper twice\nx [column of length]\ny = 2*x\ngives y\n```\n\n```calc\n"
 	for _, c := range []struct{ line, put string }{
+		{"e = 2*interpolate(steels.f_y, steels.f_y*2, steels.f_y) + steels.f_y", "2·interpolate(f_y_steels, f_y_steels·2, 355 MPa) + 355 MPa"},
 		{twice + "e = 3*twice(bolts.y) + bolts.x", "3·150.0 mm + 70 mm"},
 		{twice + "e = 3*twice(bolts.x - 10 mm) - bolts.y", "3·(−160.0 mm) − 75 mm"},
 		{twice + "e = max(twice(bolts.y))", "max(150.0 mm, 150.0 mm, …, −152.0 mm)"},
