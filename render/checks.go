@@ -169,7 +169,8 @@ func (c *composer) side(s *eval.Step, side *eval.Side, t check.Type, entry int) 
 	case *syntax.Name:
 		if e.Slot >= 0 && e.Slot < len(s.Uses) && s.Uses[e.Slot] != nil {
 			used := s.Uses[e.Slot]
-			if used.Literal != nil && used.Unit.Equal(side.Unit) {
+			own := used.Literal != nil || at < len(used.Cells) && used.Cells[at] != ""
+			if own && used.Unit.Equal(side.Unit) {
 				return c.maths.Value(used, at)
 			}
 			ref = maths.Ref{Target: c.maths.Anchor(used), Tip: c.maths.Tip(used, at)}

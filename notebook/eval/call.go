@@ -43,7 +43,7 @@ func (m *machine) callFunc(n *check.Node, f *frame, target *check.Type, entry in
 		}
 		m.bindParam(g, p, v)
 		if len(v.Type.Rows) == 0 {
-			m.ownFiguresOf(g.steps[p.Slot], arg, f)
+			m.ownFiguresOf(g.steps[p.Slot], arg, f, target, entry)
 		}
 	}
 	t := inst.Body.Type
@@ -238,7 +238,7 @@ func (m *machine) runHelper(hc *check.HelperCall, f *frame, entry int) (*frame, 
 		m.bindParam(g, p, v)
 		g.steps[p.Slot].Note, g.steps[p.Slot].Source = hc.Helper.Params[i].Note.Text, hc.Helper.Params[i].Note.Source
 		if len(v.Type.Rows) == 0 && (hc.Given[i] || hc.Args[i].Op == check.Const) {
-			m.ownFiguresOf(g.steps[p.Slot], hc.Args[i], f)
+			m.ownFiguresOf(g.steps[p.Slot], hc.Args[i], f, &loop, entry)
 		}
 		if call != nil {
 			call.Args = append(call.Args, g.steps[p.Slot])
@@ -259,8 +259,8 @@ func (m *machine) runHelper(hc *check.HelperCall, f *frame, entry int) (*frame, 
 }
 
 // ownFiguresOf lets a parameter print as its argument does: with the author's
-// figures of a literal or of a given, to which it links.
-func (m *machine) ownFiguresOf(param *Step, arg *check.Node, f *frame) {
+// figures of a literal, of a given, to which it links, or of a cell of a schedule.
+func (m *machine) ownFiguresOf(param *Step, arg *check.Node, f *frame, loop *check.Type, entry int) {
 	switch x := arg.Expr.(type) {
 	case *syntax.Number:
 		param.Literal = x
@@ -274,8 +274,15 @@ func (m *machine) ownFiguresOf(param *Step, arg *check.Node, f *frame) {
 	if arg.Op != check.Load {
 		return
 	}
-	if s := m.stepFor(arg.Def, f); s != nil && len(s.Value.Type.Rows) == 0 {
+	s := m.stepFor(arg.Def, f)
+	switch {
+	case s == nil:
+	case len(s.Value.Type.Rows) == 0:
 		param.Literal, param.Negated, param.Anchor = s.Literal, s.Negated, s.Anchor
+	case m.recording != nil && s.Unit.Equal(param.Unit):
+		if at := loop.Project(entry, s.Value.Type); at >= 0 && at < len(s.Cells) {
+			param.Cells = s.Cells[at : at+1]
+		}
 	}
 }
 

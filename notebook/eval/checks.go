@@ -172,29 +172,36 @@ func (m *machine) utilisation(r *CheckResult, entry int) float64 {
 }
 
 // at is the value of a side for an entry of the check.
-func (r *CheckResult) at(side, entry int) float64 {
-	v := r.Sides[side].Value
-	if k := r.Type.Project(entry, v.Type); k >= 0 && k < len(v.Num) {
+func (r *CheckResult) at(side, entry int) float64 { return r.Sides[side].at(&r.Type, entry) }
+
+func (s *Side) at(t *check.Type, entry int) float64 {
+	v := s.Value
+	if k := t.Project(entry, v.Type); k >= 0 && k < len(v.Num) {
 		return v.Num[k]
 	}
 	return nan
 }
 
 // worst is the entry with the verdict: of the required ones one that fails
-// before one that holds, and of those the largest utilisation.
+// before one that holds, and of those the largest utilisation; where none is
+// required, the one that comes nearest to it.
 func (r *CheckResult) worst() int {
 	best := 0
 	rank := func(e int) (group int, order float64) {
 		switch {
 		case !r.Required[e]:
-			return 0, 0
+			left := leastMargin(r.NeededIf, r.IfOps, &r.Type, e)
+			if !finite(left) {
+				left = math.Inf(-1)
+			}
+			return 0, left
 		case !r.OK[e]:
 			group = 2
 		}
 		if u := r.Ratio[e]; finite(u) {
 			return group + 2, u
 		}
-		return group + 1, -r.margin(e) // without a utilisation the nearest to its limit
+		return group + 1, -leastMargin(r.Sides, r.Ops, &r.Type, e) // without a utilisation the nearest to its limit
 	}
 	bk, bu := rank(0)
 	for e := 1; e < len(r.OK); e++ {
@@ -205,11 +212,14 @@ func (r *CheckResult) worst() int {
 	return best
 }
 
-// margin is what is left between the sides of an entry, the least of a chain's; negative where it fails.
-func (r *CheckResult) margin(entry int) float64 {
+// leastMargin is what is left between the sides of an entry, the least of a chain's; negative where it fails.
+func leastMargin(sides []Side, ops []syntax.Op, t *check.Type, entry int) float64 {
 	out := nan
-	for i, op := range r.Ops {
-		a, b := r.at(i, entry), r.at(i+1, entry)
+	if len(sides) <= len(ops) {
+		return out
+	}
+	for i, op := range ops {
+		a, b := sides[i].at(t, entry), sides[i+1].at(t, entry)
 		if op == syntax.Gt || op == syntax.Ge {
 			a, b = b, a
 		}

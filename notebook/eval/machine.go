@@ -103,7 +103,7 @@ func (m *machine) stepFor(d *check.Def, f *frame) *Step {
 	if d.IsConst {
 		s, ok := m.consts[d]
 		if !ok {
-			s = &Step{Kind: Constant, ID: d.ID, Symbol: d.Symbol, Unit: *d.Unit, Figures: m.figures(),
+			s = &Step{Kind: Constant, ID: d.ID, Symbol: d.Symbol, Unit: m.unitFor(d.Type), Figures: m.figures(),
 				Value: Value{Type: d.Type, Num: []float64{d.Const}}}
 			m.consts[d] = s
 		}

@@ -3,6 +3,7 @@ package eval_test
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 	"testing"
 	"testing/fstest"
@@ -237,6 +238,38 @@ last = 1
 	check := s.Steps[len(s.Steps)-3]
 	if got := check.Check.Type.Mark(check.Check.Governs); got != "B1, LC2" {
 		t.Errorf("the check governs at %q", got)
+	}
+}
+
+// Of a check that no entry needs the nearest to it is told of.
+func TestNearestToRequired(t *testing.T) {
+	for _, c := range []struct{ cond, want string }{
+		{"bolts.x > 500 mm", "B2"},
+		{"bolts.y < -500 mm", "B3"},
+		{"V > 400 kN", "LC2"},
+		{"0.2 m < bolts.x < 0.3 m", "B2"},
+		{"V == 500 kN", "LC2"},
+		{"V > 400 kN and M > 0 kN*m", "LC1"}, // the first: these have no common measure
+	} {
+		s := sound(t, rows+block("check V*bolts.A/(1 mm^2) <= 1 kN if "+c.cond+"\n"))
+		r := s.Steps[len(s.Steps)-1].Check
+		if got := r.Type.Mark(r.Governs); !strings.Contains(got, c.want) {
+			t.Errorf("%s: %s is told of, want %s", c.cond, got, c.want)
+		}
+	}
+}
+
+// A helper's plain parameters print the author's own figures of a schedule's cell.
+func TestOwnFiguresOfCells(t *testing.T) {
+	s := sound(t, rows+"```helper third\na [length]\nb [length]\nt [force] = (a + b)*1 N/mm\ngives t\n```\n"+block("F = third(bolts.x, bolts.x*2)\nbig = max(F)"))
+	var got []string
+	for _, call := range find(s, "F").Calls {
+		for _, arg := range call.Args {
+			got = append(got, eval.PlainText(arg.Printed(0)))
+		}
+	}
+	if want := []string{"70 mm", "140.0 mm"}; !slices.Equal(got, want) {
+		t.Errorf("got %q, want %q", got, want)
 	}
 }
 

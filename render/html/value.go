@@ -76,10 +76,11 @@ func (w *writer) number(n maths.Number) {
 	if len(n.Unit) == 0 {
 		return
 	}
-	switch n.Unit[0].Name {
-	case "°", "′", "″":
-	default:
+	if gap := n.Gap(); gap > 0 {
 		w.raw("\u00a0")
+		if gap > maths.Thin {
+			w.raw("\u202f")
+		}
 		if power != "" { // the longest values part here in the output column, not within the unit
 			w.raw("<wbr>")
 		}

@@ -180,8 +180,16 @@ func (b *breaker) chain(c Chain) {
 		relation, hanging = hang*em, true
 	}
 	var under float64 // where the first right side starts
+	sets := make([][]piece, len(c.Steps))
 	for i, step := range c.Steps {
-		ps := b.pieces(atoms(append(room[:0], Relation(step.Sign)), step.Right), Open)
+		sets[i] = b.pieces(atoms(append(room[:0], Relation(step.Sign)), step.Right), Open)
+	}
+	for i, ps := range sets {
+		if i > 0 && b.full && compares(c.Steps[i]) {
+			if all := compared(c, sets, i); !b.fits(all) && relation+b.alone(all) <= b.width+1e-6 {
+				b.newLine(relation)
+			}
+		}
 		if i == 0 {
 			under = relation + ps[0].width + b.gapBefore(Rel, Ord)
 		}
@@ -203,6 +211,20 @@ func (b *breaker) chain(c Chain) {
 	}
 }
 
+// compares tells a comparison from the next way of writing the same.
+func compares(s Step) bool { return Relation(s.Sign).Sign != "=" }
+
+// compared is a comparison with all the ways of writing its right side, which
+// share a line where they can: a capacity is not parted from its figures while
+// the demand could have the line above to itself.
+func compared(c Chain, sets [][]piece, from int) []piece {
+	all := slices.Clip(sets[from])
+	for i := from + 1; i < len(sets) && !compares(c.Steps[i]); i++ {
+		all = append(all, sets[i]...)
+	}
+	return all
+}
+
 // fill sets pieces from the present place on. Lines that follow start at at, but
 // at start where none of the pieces has found room before.
 func (b *breaker) fill(ps []piece, start, at float64) {
@@ -218,7 +240,7 @@ func (b *breaker) fill(ps []piece, start, at float64) {
 		b.unbroken(ps, start, at)
 		return
 	}
-	from := 0
+	from, broken := 0, false
 	for i := 1; i <= len(ps); i++ {
 		if i < len(ps) && ps[i].rank != rank {
 			continue
@@ -228,9 +250,12 @@ func (b *breaker) fill(ps []piece, start, at float64) {
 			start = at
 		}
 		from = i
-		if !b.fits(chunk) && b.x > start && b.worthALine(chunk, start) {
+		// Behind a chunk that went over lines of its own the next one starts a
+		// line, or its lines would look like those of the one before.
+		if !b.fits(chunk) && b.x > start && (broken || b.worthALine(chunk, start)) {
 			b.newLine(start)
 		}
+		before := len(b.lines)
 		if rank == rankComma && len(chunk) > 1 && chunk[1].rank == rankRelation {
 			chunk[1].rank = rankNone // a name stays with its value, however long
 		}
@@ -239,6 +264,7 @@ func (b *breaker) fill(ps []piece, start, at float64) {
 			within = b.deeper(at)
 		}
 		b.fill(chunk, start, within)
+		broken = len(b.lines) > before
 	}
 }
 
@@ -350,6 +376,7 @@ func (b *breaker) open(p piece) []piece {
 	if !ok {
 		return []piece{p}
 	}
+	f.Body = b.writtenOut(f.Body)
 	mark := len(b.items)
 	body := b.row(f.Body, b.st) // for its size
 	b.items = b.items[:mark]
@@ -369,6 +396,25 @@ func (b *breaker) open(p piece) []piece {
 	}
 	list := append([]piece{open}, inside...)
 	return append(list, piece{part: shut, left: Close, right: p.right, rank: rankNone})
+}
+
+// writtenOut is the body of a bracket, written out where it is one fraction or
+// root that no line has room for: the bracket is to be no taller than its lines.
+func (b *breaker) writtenOut(body Node) Node {
+	list := atoms(nil, body)
+	if len(list) != 1 {
+		return body
+	}
+	switch list[0].(type) {
+	case Fraction, Root:
+		mark := len(b.items)
+		p := b.row(body, b.st)
+		b.items = b.items[:mark]
+		if leastScale*p.width > b.width {
+			return Row(written(list[0]))
+		}
+	}
+	return body
 }
 
 // reduce sets a piece that is wider than a line, from the start of one, and

@@ -1,6 +1,8 @@
 package maths
 
 import (
+	"strings"
+
 	"gusset/notebook/check"
 	"gusset/notebook/eval"
 	"gusset/notebook/syntax"
@@ -96,6 +98,9 @@ func (w *builder) applied(name Node, c *syntax.Call) (Node, rank) {
 	arg := w.side(c.Args[0].Value)
 	switch arg.(type) {
 	case Symbol, Number:
+		if n, ok := arg.(Number); ok && strings.ContainsAny(n.Value, "eE") {
+			break // sin 1.5 × 10⁻⁴ would be taken for a product
+		}
 		if !signed(arg) {
 			return Row{name, arg}, rankedPower
 		}

@@ -309,6 +309,9 @@ func (w *builder) quotient(e *syntax.Binary) (Node, rank) {
 	slices.Reverse(dens)
 	if w.inline > 0 || w.depth > 0 {
 		n := w.part(num, rankedProduct, true)
+		if endsPerUnit(n) {
+			n = Paren(n)
+		}
 		d, r := w.denominator(dens)
 		return w.row(n, slash, bracketed(d, r, rankedPower, false)), rankedSlash
 	}
@@ -317,6 +320,19 @@ func (w *builder) quotient(e *syntax.Binary) (Node, rank) {
 	d, _ := w.denominator(dens)
 	w.depth--
 	return Fraction{n, d}, rankedProduct
+}
+
+// endsPerUnit tells whether a numerator ends in a value whose unit has a division.
+func endsPerUnit(n Node) bool {
+	switch n := n.(type) {
+	case Number:
+		return n.Unit.perUnit()
+	case Row:
+		return len(n) > 0 && endsPerUnit(n[len(n)-1])
+	case Script:
+		return n.Sub == nil && endsPerUnit(n.Base) // a carried value and its mark
+	}
+	return false
 }
 
 // denominator sets the product of what is divided by.

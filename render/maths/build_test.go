@@ -31,6 +31,9 @@ Load = 7
 eps = 6.036e-4
 T_1 = 20 degC
 T_2 = -40 degC
+q = 0.3 N/mm
+phi = 1.5e-4 deg
+kappa = 77.42 1/m
 grade = "S355"
 bearing(F, a, b) [MPa] = F/(a*b)
 `
@@ -106,6 +109,12 @@ func TestExpressions(t *testing.T) {
 		{"a = x*w", "x·w", "2·(1 1/4 in)"},
 		{"a = T_1 - T_2", "T_1 − T_2", "20 °C − (−40 °C)"},
 		{"a = x*5 %", "x·5 %", "2·5 %"},
+		// a unit with a division before a slash, a power of ten behind a function
+		{"a = q/x", "q/x", "(0.3 N/mm)/2"},
+		{"a = P/(1 + q/x/(1 N/mm))", "P/(1 + q/(x·1 N/mm))", "48 kN/(1 + (0.3 N/mm)/(2·1 N/mm))"},
+		{"a = 1/(x*q/n)", "1/(x·q/n)", "1/((2·0.3 N/mm)/4)"},
+		{"a = x*kappa", "x·κ", "2·77.42 1/m"},
+		{"a = sin(phi)", "sin φ", "sin(1.5×10⁻⁴ °)"},
 		// names
 		{"a = f_c'/x", "f_c′/x", "4 ksi/2"},
 		{"a = Load*x", "Load·x", "7·2"},

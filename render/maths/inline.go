@@ -50,7 +50,7 @@ func InlineChain(c Chain) Chain {
 
 func slashed(f Fraction) Row {
 	num := Inline(f.Num)
-	if loosest(atoms(nil, num)) < rankProduct {
+	if loosest(atoms(nil, num)) < rankProduct || endsPerUnit(num) {
 		num = Paren(num)
 	}
 	return Row{num, Slash, grouped(Inline(f.Den))}

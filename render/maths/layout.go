@@ -142,11 +142,7 @@ func (s *setter) number(n Number, st style) part {
 		p = s.join(p, s.attach(ten, scripts{supText: power, link: n.Target, governs: n.Governs}, st), med, 0)
 	}
 	if len(n.Unit) > 0 {
-		space := 0.0
-		if !n.Unit.close() {
-			space = s.mu(int(Thin), st)
-		}
-		p = s.join(p, s.unit(n.Unit, face, st, n.Target), space, 0)
+		p = s.join(p, s.unit(n.Unit, face, st, n.Target), s.mu(int(n.Gap()), st), 0)
 	}
 	p.letter = true
 	return p

@@ -143,6 +143,29 @@ func TestNumberIsTypeset(t *testing.T) {
 	near(t, "the exponent's rise", find(t, b, "−4").Y, -0.477*pt)
 }
 
+// A unit that starts with a figure is told from the figures before it, and a
+// sign of degrees from an exponent.
+func TestUnitsStandClear(t *testing.T) {
+	per, deg := Unit{{Name: "1", Num: 1}, {Sep: "/", Name: "m", Num: 1}}, Unit{{Name: "°", Num: 1}}
+	for _, c := range []struct {
+		n    Number
+		want Space
+	}{
+		{Number{Value: "77.42", Unit: per}, Wide},
+		{Number{Value: "1.2e-5", Unit: per}, Thin},
+		{Number{Value: "77.42", Unit: Unit{mm}}, Thin},
+		{Number{Value: "30", Unit: deg}, 0},
+		{Number{Value: "1.5e-4", Unit: deg}, Thin},
+		{Number{Value: "77.42"}, 0},
+	} {
+		if got := c.n.Gap(); got != c.want {
+			t.Errorf("%s %s: got %d, want %d", c.n.Value, AppendPlain(nil, c.n.Unit), got, c.want)
+		}
+	}
+	figures, unit := one(t, num("77.42")).Width, one(t, per).Width
+	near(t, "whole", one(t, Number{Value: "77.42", Unit: per}).Width, figures+unit+float64(Wide)*pt/18)
+}
+
 func TestBracketsGrow(t *testing.T) {
 	flat := one(t, Paren(sym("a")))
 	for _, it := range flat.Items {

@@ -3,6 +3,7 @@ package maths
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 	"testing"
 
@@ -238,6 +239,57 @@ func TestLongFormulasShowTheirLevels(t *testing.T) {
 		if math.Abs(at[i]-at[2]) > 0.01 || at[i-1] < at[2]+0.9*step*pt || at[i+1] < at[2]+0.9*step*pt {
 			t.Errorf("lines start with %q at %.2f: the terms want to stand under each other, what is in them further in", starts, at)
 		}
+	}
+}
+
+// Behind a numerator that went over several lines the denominator starts a
+// line, further out than what breaks within either.
+func TestLongQuotientsPartAtTheirSlash(t *testing.T) {
+	sum := func(name string) Node {
+		var r Row
+		for i := range 8 {
+			if i > 0 {
+				r = append(r, Plus)
+			}
+			r = append(r, num("180.25", mm), Dot, sym(name))
+		}
+		return r
+	}
+	for _, n := range []Node{Root{Body: Fraction{sum("x"), sum("y")}}, Fraction{sum("x"), sum("y")}} {
+		slash, within := -1.0, 1e9
+		for i, b := range Break(Chain{Left: sym("I"), Steps: []Step{eq(n)}}, pt, column) {
+			switch b.Items[0].Text {
+			case "/":
+				slash = b.Items[0].X
+			case "+":
+				within = min(within, b.Items[0].X)
+			}
+			if b.Ascent+b.Descent > 2*pt {
+				t.Errorf("line %d is %.1f high, as for the fraction that is written out", i+1, b.Ascent+b.Descent)
+			}
+		}
+		if slash < 0 || slash >= within {
+			t.Errorf("the slash at %.2f, sums within at %.2f and on", slash, within)
+		}
+	}
+}
+
+// A comparison goes to the next line with all the ways of writing its right
+// side where they share it, else no sooner than it has to.
+func TestComparisonsKeepTheirRightSides(t *testing.T) {
+	starts := func(capacity Node) (list []string) {
+		chain := Chain{Left: sym("tau"), Steps: []Step{eq(num("48.8925", mm)), {"<=", capacity}, eq(Row{num("0.95"), Dot, num("355.1", mm)}), eq(num("319.55", mm))}}
+		room := one(t, Row{sym("tau"), Relation("="), num("48.8925", mm), Relation("<="), sym("capacityOfThePlateInShear")}).Width
+		for _, b := range Break(chain, pt, room+1) {
+			list = append(list, b.Items[0].Text)
+		}
+		return list
+	}
+	if got := starts(sym("f")); !slices.Equal(got, []string{"tau", "≤"}) {
+		t.Errorf("lines start with %q", got)
+	}
+	if got := starts(sym("capacityOfThePlateInShear")); slices.Contains(got, "≤") {
+		t.Errorf("lines start with %q: the comparison has room on the first", got)
 	}
 }
 

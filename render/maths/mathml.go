@@ -523,8 +523,8 @@ func (w *markup) number(n Number) {
 		w.raw("</mn></msup>")
 	}
 	if len(n.Unit) > 0 {
-		if !n.Unit.close() {
-			w.space(Thin)
+		if gap := n.Gap(); gap > 0 {
+			w.space(gap)
 		}
 		w.unit(n.Unit)
 	}

@@ -28,15 +28,34 @@ func bare(value string) bool {
 	return true
 }
 
-// close reports whether a unit stands right behind its number, as the signs
-// of degrees, minutes and seconds do.
-func (u Unit) close() bool {
-	if len(u) == 0 {
-		return true
+// Gap is the space between a number's figures and its unit. The signs of
+// degrees, minutes and seconds stand right behind figures, but not behind a
+// power of ten, where they would be read as part of the exponent; a unit that
+// starts with a figure, as 1/m does, stands further off from figures, or
+// 77.42 1/m would be read as 77.421/m.
+func (n Number) Gap() Space {
+	if len(n.Unit) == 0 {
+		return 0
 	}
-	switch u[0].Name {
+	if _, power := units.SplitExponent(n.Value); power != "" {
+		return Thin
+	}
+	switch n.Unit[0].Name {
 	case "°", "′", "″":
-		return true
+		return 0
+	case "1":
+		return Wide
+	}
+	return Thin
+}
+
+// perUnit reports whether a unit has a division that a slash behind it would be
+// read together with: the half of 0.3 N/mm is (0.3 N/mm)/2.
+func (u Unit) perUnit() bool {
+	for _, t := range u {
+		if t.Sep == "/" {
+			return true
+		}
 	}
 	return false
 }

@@ -117,7 +117,7 @@ func (w *line) node(n Node) {
 	case Fraction:
 		var room [12]Node
 		num := atoms(room[:0], n.Num)
-		w.part(n.Num, loosest(num) < rankProduct || spaced(num))
+		w.part(n.Num, loosest(num) < rankProduct || spaced(num) || endsPerUnit(n.Num))
 		w.raw("/")
 		d := atoms(room[:0], n.Den)
 		w.part(n.Den, len(d) == 1 && !simple(d[0]) || len(d) > 1 && !called(d))
@@ -201,7 +201,7 @@ func (w *line) symbol(s Symbol) {
 func (w *line) number(n Number) {
 	w.raw(units.Typeset(n.Value))
 	if len(n.Unit) > 0 {
-		if !n.Unit.close() {
+		if n.Gap() > 0 {
 			w.raw(" ")
 		}
 		w.unit(n.Unit)

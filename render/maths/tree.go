@@ -138,10 +138,11 @@ func Relation(sign string) Op {
 type Space int
 
 // Thin stands between figures and what belongs to them, Blank between words,
-// Quad between statements.
+// Wide between figures and a unit that starts with one, Quad between statements.
 const (
 	Thin  Space = 3
 	Blank Space = 5
+	Wide  Space = 7
 	Quad  Space = 18
 )
 

@@ -2,6 +2,7 @@ package pdf
 
 import (
 	"math"
+	"strings"
 
 	"gusset/render"
 	"gusset/render/fonts"
@@ -315,7 +316,19 @@ func (d *document) outputWords(n maths.Node, width float64) *paragraph {
 	}
 	m := maths.Layout(n, outputStyle.size, fonts.SansSemiBold)
 	if m.Width > width {
-		p.write(outputStyle, string(maths.AppendPlain(nil, n)))
+		plain := string(maths.AppendPlain(nil, n))
+		number, ok := n.(maths.Number)
+		if !ok || len(number.Unit) == 0 || !strings.Contains(plain, "^") && outputStyle.width(plain) <= width {
+			p.write(outputStyle, plain)
+			return p
+		}
+		// Too long for a line, the figures stand above their unit.
+		unit := maths.Layout(number.Unit, outputStyle.size, fonts.SansSemiBold)
+		number.Unit = nil
+		m = maths.Layout(number, outputStyle.size, fonts.SansSemiBold)
+		p.place(outputStyle, mathsBox(&m, inkColour))
+		p.blank(outputStyle)
+		p.place(outputStyle, mathsBox(&unit, inkColour))
 		return p
 	}
 	p.place(outputStyle, mathsBox(&m, inkColour))
