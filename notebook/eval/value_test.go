@@ -268,8 +268,21 @@ func TestOwnFiguresOfCells(t *testing.T) {
 			got = append(got, eval.PlainText(arg.Printed(0)))
 		}
 	}
-	if want := []string{"70 mm", "140.0 mm"}; !slices.Equal(got, want) {
+	if want := []string{"-70 mm", "-140.0 mm"}; !slices.Equal(got, want) {
 		t.Errorf("got %q, want %q", got, want)
+	}
+}
+
+// Standard gravity prints in the unit of its file's system.
+func TestGravityInTheSystem(t *testing.T) {
+	for system, want := range map[string]string{"SI": "9.807 m/s²", "US": "32.17 ft/s²"} {
+		root := fstest.MapFS{"t.md": &fstest.MapFile{Data: []byte("---\ncalc: T\nsystem: " + system + "\n---\n" + block("m = 2 kg\nW = m*g_n"))}}
+		s := notebook.Compile(&notebook.Context{FS: root, Panics: true}, "t.md")
+		for _, used := range s.Steps[len(s.Steps)-1].Uses {
+			if got := eval.PlainText(used.Printed(0)); used.ID == "g_n" && got != want {
+				t.Errorf("%s: got %s, want %s", system, got, want)
+			}
+		}
 	}
 }
 
