@@ -471,13 +471,20 @@ func (m *machine) telling(sides []*check.Node, g *frame, t *check.Type, entry in
 	return out
 }
 
-// show is one entry of a node as text: the author's own figures of a literal
-// or a given, else the value in its printed unit.
-func (m *machine) show(n *check.Node, f *frame, target *check.Type, entry int) string {
-	return m.shown(n, f, target, entry, m.figures())
+// tellingIn is the same for all comparisons in an expression.
+func (m *machine) tellingIn(n *check.Node, f *frame, t *check.Type, entry int) int {
+	out := m.figures()
+	if n.Op == check.Compare {
+		return m.telling(n.Args, f, t, entry)
+	}
+	for _, a := range n.Args {
+		out = max(out, m.tellingIn(a, f, t, entry))
+	}
+	return out
 }
 
-// shown is the same to so many figures where they are not the author's own.
+// shown is one entry of a node as text: the author's own figures of a literal or
+// a given, else the value in its printed unit to so many figures.
 func (m *machine) shown(n *check.Node, f *frame, target *check.Type, entry, figures int) string {
 	if lit, ok := n.Expr.(*syntax.Number); ok && n.Op == check.Const && lit.Pieces[0].HasUnit {
 		return PlainText(printLiteral(&Step{Literal: lit}))

@@ -124,11 +124,12 @@ func (m *machine) verdict(n *check.Node, f *frame, t *check.Type, entry int, ok 
 	}
 	for i, op := range n.Cmp {
 		a, b := n.Args[i], n.Args[i+1]
-		left := m.show(a, f, t, entry)
+		figures := m.telling(n.Args[i:i+2], f, t, entry)
+		left, right := m.shown(a, f, t, entry, figures), m.showIn(b, a, f, t, entry, figures)
 		if m.bare(a, f) {
-			left = m.showIn(a, b, f, t, entry)
+			left = m.showIn(a, b, f, t, entry, figures)
 		}
-		text := fmt.Sprintf("%s %s %s", left, sign(op), m.showIn(b, a, f, t, entry))
+		text := fmt.Sprintf("%s %s %s", left, sign(op), right)
 		if ok {
 			if i == len(n.Cmp)-1 {
 				return text
@@ -149,7 +150,7 @@ func (m *machine) verdict(n *check.Node, f *frame, t *check.Type, entry int, ok 
 		xn, _ := x.(float64)
 		yn, _ := y.(float64)
 		if !compare(op, xn, yn) {
-			return fmt.Sprintf("%s %s %s%s", left, sign(turned(op)), m.showIn(b, a, f, t, entry), misses(op, xn, yn, a.Type.Kind))
+			return fmt.Sprintf("%s %s %s%s", left, sign(turned(op)), right, misses(op, xn, yn, a.Type.Kind))
 		}
 	}
 	return ""
@@ -163,10 +164,10 @@ func asText(x any) *string {
 }
 
 // showIn shows a side in the unit of the other, so that both can be compared by eye.
-func (m *machine) showIn(n, other *check.Node, f *frame, t *check.Type, entry int) string {
+func (m *machine) showIn(n, other *check.Node, f *frame, t *check.Type, entry, figures int) string {
 	u := m.nodeUnit(other, f)
 	if _, own := m.namedUnit(n, n.Type, f); own && !m.bare(n, f) || u.Dim() != n.Type.Dim {
-		return m.show(n, f, t, entry)
+		return m.shown(n, f, t, entry, figures)
 	}
 	x, err := m.entry(n, f, t, entry)
 	if err != nil {
@@ -174,7 +175,7 @@ func (m *machine) showIn(n, other *check.Node, f *frame, t *check.Type, entry in
 	}
 	v := Value{Type: check.Type{Kind: n.Type.Kind, Dim: n.Type.Dim}}
 	v.set(x)
-	return PlainText(v.Printed(0, u, m.figures()))
+	return PlainText(v.Printed(0, u, figures))
 }
 
 // misses says by how much a comparison of positive values fails.

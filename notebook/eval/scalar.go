@@ -396,17 +396,23 @@ func (m *machine) explain(err error, f *frame, target *check.Type, entry int) er
 	return out
 }
 
-// valuesIn lists the values that an expression names, as printed.
+// valuesIn lists the values that an expression names, as printed, and with as
+// many figures more as it takes to tell them from what they are compared with.
 func (m *machine) valuesIn(n *check.Node, f *frame, target *check.Type, entry int) string {
 	var parts []string
 	seen := map[*check.Def]bool{}
+	figures := m.tellingIn(n, f, target, entry)
 	var walk func(*check.Node)
 	walk = func(n *check.Node) {
 		if n.Op == check.Load && !seen[n.Def] && !n.Def.IsConst {
 			seen[n.Def] = true
 			if s := m.stepFor(n.Def, f); s != nil {
 				if at := target.Project(entry, s.Value.Type); at >= 0 && at < s.Value.Len() {
-					parts = append(parts, s.Symbol+" = "+PlainText(s.Printed(at)))
+					text := s.Printed(at)
+					if s.Literal == nil && s.Cells == nil && figures > s.Figures {
+						text = s.Value.Printed(at, s.Unit, figures)
+					}
+					parts = append(parts, s.Symbol+" = "+PlainText(text))
 				}
 			}
 		}
