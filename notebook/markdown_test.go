@@ -65,6 +65,7 @@ func TestRemarks(t *testing.T) {
 		{"plain", "> Assumption: Plates are snug.\n", "A1 Assumption: Plates are snug.\n"},
 		{"marked", "> **Hold:** Site survey.\n\n> *Hold*: Steel grade.\n\n> ***Hold:***\n> Bolts.\n", "H1 Hold: Site survey.\nH2 Hold: Steel grade.\nH3 Hold: Bolts.\n"},
 		{"all kinds", "> Note: a\n\n> Caution: b\n\n> Assumption: c\n\n> Hold: d\n", " Note: a\n Caution: b\nA1 Assumption: c\nH1 Hold: d\n"},
+		{"code", "> Assumption: a\n>\n> ```\n> b = 1\n> ```\n> c\n", "A1 Assumption: a b = 1 c\n"},
 		{"paragraphs", "> Assumption: a *b*\n> c\n>\n> d\n", "A1 Assumption: a b c d\n"},
 		{"one below the other", "> Assumption: a\n> Assumption: b\n> c\n> **Hold:** d\n>\n> e\n>\n> Hold: f\n", "A1 Assumption: a\nA2 Assumption: b c\nH1 Hold: d e\nH2 Hold: f\n"},
 		{"in a list", "- x\n\n  > Hold: a\n", "H1 Hold: a\n"},

@@ -110,6 +110,10 @@ func writePlain(b *strings.Builder, n ast.Node, source []byte, value func(index 
 		b.Write(n.Value)
 	case *ast.AutoLink:
 		b.Write(n.Label(source))
+	case *ast.CodeBlock, *ast.FencedCodeBlock:
+		for _, line := range n.Lines().Sliced(0, n.Lines().Len()) {
+			b.Write(line.Value(source))
+		}
 	case *ValueNode:
 		b.WriteString(value(n.Index))
 	}

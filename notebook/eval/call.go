@@ -29,7 +29,7 @@ func (m *machine) callFunc(n *check.Node, f *frame, target *check.Type, entry in
 		switch {
 		case !alone && len(arg.Type.Rows) > 0:
 			v = m.columnValue(arg, f)
-		case !within(arg.Type.Rows, target.Rows): // the body does not use it, so that its rows are not the call's
+		case !within(arg.Type.Rows, inst.Body.Type.Rows): // the body does not use it, so that its rows are not the call's
 			if v, err = m.wholeColumn(arg, f); err != nil {
 				return nil, err
 			}
@@ -131,7 +131,7 @@ func (m *machine) functionFrame(n *check.Node, f *frame) (*frame, error) {
 		return nil, &fault{id: diag.BoundExceeded, at: n.Expr.Span(), message: fmt.Sprintf("calls are nested over %d deep, the bound", maxDepth)}
 	}
 	g := newFrame(n.Func.Scope, f.of(n.Func.Scope.Parent), f.of(n.Func.Scope.Parent).src)
-	g.depth = f.depth + 1
+	g.depth, g.call, g.caller = f.depth+1, n, f
 	return g, nil
 }
 
@@ -148,7 +148,9 @@ func (m *machine) inFunction(err error, n *check.Node, f *frame) error {
 		return err
 	}
 	x := n.Expr.(*syntax.Call)
-	return &fault{id: e.id, at: x.At, message: fmt.Sprintf("in `%s`: %s", x.Fun.Text, e.message), hints: e.hints}
+	out := *e
+	out.at, out.message = x.At, fmt.Sprintf("in `%s`: %s", x.Fun.Text, e.message)
+	return &out
 }
 
 // entrywise tells that a function's body needs no more than one entry of its
@@ -237,7 +239,7 @@ func (m *machine) runHelper(hc *check.HelperCall, f *frame, entry int) (*frame, 
 		}
 		m.bindParam(g, p, v)
 		g.steps[p.Slot].Note, g.steps[p.Slot].Source = hc.Helper.Params[i].Note.Text, hc.Helper.Params[i].Note.Source
-		if len(v.Type.Rows) == 0 && (hc.Given[i] || hc.Args[i].Op == check.Const) {
+		if hc.Given[i] || hc.Args[i].Op == check.Const {
 			m.ownFiguresOf(g.steps[p.Slot], hc.Args[i], f, &loop, entry)
 		}
 		if call != nil {
@@ -277,6 +279,10 @@ func (m *machine) ownFiguresOf(param *Step, arg *check.Node, f *frame, loop *che
 	s := m.stepFor(arg.Def, f)
 	switch {
 	case s == nil:
+	case len(param.Value.Type.Rows) > 0:
+		if len(loop.Rows) == 0 && len(s.Cells) == len(param.Value.Num) && s.Unit.Equal(param.Unit) {
+			param.Cells = s.Cells
+		}
 	case len(s.Value.Type.Rows) == 0:
 		param.Literal, param.Negated, param.Anchor = s.Literal, s.Negated, s.Anchor
 	case m.recording != nil && s.Unit.Equal(param.Unit):

@@ -259,16 +259,21 @@ func TestNearestToRequired(t *testing.T) {
 	}
 }
 
-// A helper's plain parameters print the author's own figures of a schedule's cell.
+// A helper's parameters print the author's own figures of a schedule's cell.
 func TestOwnFiguresOfCells(t *testing.T) {
-	s := sound(t, rows+"```helper third\na [length]\nb [length]\nt [force] = (a + b)*1 N/mm\ngives t\n```\n"+block("F = third(bolts.x, bolts.x*2)\nbig = max(F)"))
+	s := sound(t, rows+"```helper third\na [length]\nb [length]\nt [force] = (a + b)*1 N/mm\ngives t\n```\n"+
+		"```helper middle\nx [column of length]\nm [length] = mean(x)\ngives m\n```\n"+
+		block("F = third(bolts.x, bolts.x*2)\nbig = max(F)\nc = middle(bolts.y)"))
 	var got []string
 	for _, call := range find(s, "F").Calls {
 		for _, arg := range call.Args {
 			got = append(got, eval.PlainText(arg.Printed(0)))
 		}
 	}
-	if want := []string{"-70 mm", "-140.0 mm"}; !slices.Equal(got, want) {
+	for _, call := range find(s, "c").Calls {
+		got = append(got, eval.PlainText(call.Args[0].Printed(2)))
+	}
+	if want := []string{"-70 mm", "-140.0 mm", "-150 mm"}; !slices.Equal(got, want) {
 		t.Errorf("got %q, want %q", got, want)
 	}
 }

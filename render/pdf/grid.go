@@ -209,11 +209,15 @@ func (g *grid) widths(total float64) (widths []float64, gap float64, fits bool) 
 			out[i] = natural[i] + 0.01
 		}
 	case needs < total:
-		for i := range out {
-			out[i] = least[i] + (total-needs)*(natural[i]-least[i])/(wants-needs)
-		}
+		out = g.fewestLines(natural, least, total)
 	case sum(solid) < total:
-		level(out, solid, least, total)
+		// What each needs up to one width for all, and what is solid in any case.
+		level(total, func(most float64) float64 {
+			for i := range out {
+				out[i] = math.Max(solid[i], math.Min(least[i], most))
+			}
+			return sum(out)
+		})
 	default:
 		for i := range out {
 			out[i] = math.Max(total*least[i]/needs, 6)
@@ -225,15 +229,63 @@ func (g *grid) widths(total float64) (widths []float64, gap float64, fits bool) 
 	return out, gap, needs <= total
 }
 
-// level gives each column what it needs up to one width for all, and what is
-// solid in any case, so that they fill the total.
-func level(out, solid, least []float64, total float64) {
-	fill := func(most float64) float64 {
-		for i := range out {
-			out[i] = math.Max(solid[i], math.Min(least[i], most))
+// fewestLines are the widths between the least and the natural ones at which
+// the table has the fewest lines: alike for all columns beyond the least, where
+// short heads and marks stay on a line and a long text breaks, or one column,
+// such as the marks, whole and the others alike, or each by what it lacks.
+func (g *grid) fewestLines(natural, least []float64, total float64) []float64 {
+	var best []float64
+	fewest := math.MaxInt
+	take := func(widths []float64) {
+		if n := g.lines(widths); n < fewest {
+			best, fewest = widths, n
 		}
-		return sum(out)
 	}
+	for whole := -1; whole < len(least); whole++ {
+		out := make([]float64, len(least))
+		fill := func(most float64) float64 {
+			for i := range out {
+				extra := natural[i] - least[i] + 0.01
+				if i != whole {
+					extra = math.Min(extra, most)
+				}
+				out[i] = least[i] + extra
+			}
+			return sum(out)
+		}
+		if fill(0) > total {
+			continue
+		}
+		level(total, fill)
+		take(out)
+	}
+	wants, needs := sum(natural), sum(least)
+	out := make([]float64, len(least))
+	for i := range out {
+		out[i] = least[i] + (total-needs)*(natural[i]-least[i])/(wants-needs)
+	}
+	take(out)
+	return best
+}
+
+// lines is how many lines of text a table has at widths of its columns.
+func (g *grid) lines(widths []float64) int {
+	of := func(r *gridRow) int {
+		most := 0
+		for i, c := range r.cells {
+			most = max(most, c.p.linesAt(widths[i]))
+		}
+		return most
+	}
+	n := of(&g.head)
+	for i := range g.rows {
+		n += of(&g.rows[i])
+	}
+	return n
+}
+
+// level fills columns up to the bound at which they take the total.
+func level(total float64, fill func(most float64) float64) {
 	low, high := 0.0, total
 	for range 40 {
 		if most := (low + high) / 2; fill(most) > total {

@@ -225,6 +225,18 @@ func (p *paragraph) natural() (natural, least float64) {
 	return natural, least
 }
 
+// linesAt is how many lines the paragraph has at a width that no word is wider than.
+func (p *paragraph) linesAt(width float64) int {
+	n, x := 1, 0.0
+	for i, w := range p.words {
+		if x > 0 && x+w.width > width+0.01 || i > 0 && p.words[i-1].ends {
+			n, x = n+1, 0
+		}
+		x += w.width + w.space
+	}
+	return n
+}
+
 // solid is the width of the widest word that shall not be cut: one with a
 // formula in it, or a number, which would read as two.
 func (p *paragraph) solid() float64 {
