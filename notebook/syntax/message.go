@@ -123,6 +123,13 @@ func (p *parser) sideBySide() {
 		if p.tok == tOpen {
 			right = right[1 : len(right)-1]
 		}
+		if start := p.start; p.tok == tNumber { // its unit belongs to it
+			if p.number(); p.failed {
+				return
+			}
+			end = p.last
+			right = p.s[start:end]
+		}
 		p.syntax(from, end, fmt.Sprintf("the arguments of %s stand in brackets", quoted(left)), "write "+quoted(left+"("+right+")"))
 		return
 	}

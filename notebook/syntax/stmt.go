@@ -274,6 +274,9 @@ func (p *parser) check() Stmt {
 			p.syntax(p.start, p.pos, "a check compares with `==`", "write `==`")
 		}
 	}
+	if p.tok == tOpenUnit {
+		p.strayBrackets()
+	}
 	p.needComparison(x)
 	c.Cond = x
 	if p.tok == tIf {
