@@ -500,13 +500,12 @@ func (p *columnProgram) other(op *columnOp, regs [][]float64, dst []float64) {
 			dst[i] = 1
 			for k, o := range n.Cmp {
 				a, b := regs[op.args[k]][i], regs[op.args[k+1]][i]
-				if !finite(a) || !finite(b) {
+				if !finite(a) || !finite(b) { // of a chain each side has to exist
 					dst[i] = nan
 					break
 				}
 				if !compare(o, a, b) {
 					dst[i] = 0
-					break
 				}
 			}
 		}

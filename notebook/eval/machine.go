@@ -3,6 +3,7 @@ package eval
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"github.com/Knetic/govaluate"
 
@@ -24,7 +25,9 @@ type frame struct {
 	steps  []*Step
 	picks  map[int][]int // rows that `first of` picked, by slot
 	depth  int
-	mark   string // inside a helper: the entry it is run for, "" for a plain call
+	mark   string      // inside a helper: the entry it is run for, "" for a plain call
+	call   *check.Node // inside a function: its call, nil elsewhere
+	caller *frame      // where that stands
 }
 
 func newFrame(s *check.Scope, parent *frame, src *diag.Source) *frame {
@@ -192,9 +195,28 @@ func (m *machine) load(n *check.Node, f *frame, target *check.Type, entry int) (
 	}
 	x := v.Num[at]
 	if x != x {
+		if err := m.lostArgument(n.Def, f, at); err != nil {
+			return nil, err
+		}
 		return nil, &fault{id: diag.OutOfRange, at: n.Expr.Span(), message: fmt.Sprintf("%s does not exist here: its helper has no such result for these values", n.Def.Symbol)}
 	}
 	return x, nil
+}
+
+// lostArgument says why a function's parameter has no value at an entry: its
+// argument has none. It is nil for all other values.
+func (m *machine) lostArgument(d *check.Def, f *frame, entry int) error {
+	g := f.of(d.Scope)
+	if g.call == nil {
+		return nil
+	}
+	i := slices.Index(g.call.Func.Params, d)
+	if i < 0 {
+		return nil
+	}
+	arg := g.call.Args[i]
+	_, err := m.number(arg, g.caller, &arg.Type, entry)
+	return err
 }
 
 // reduced reduces, for one entry, the entries of the argument that belong to it.
@@ -262,14 +284,15 @@ func entriesOf(t *check.Type, over []*check.Rows, target *check.Type, entry int)
 	return picks
 }
 
-// atEntry says at which entry a fault arose.
+// atEntry says at which entry a fault arose, where it does not say so already: the
+// innermost knows best.
 func atEntry(err error, t check.Type, entry int) error {
 	e, ok := err.(*fault)
-	if !ok || len(t.Rows) == 0 {
+	if !ok || e.placed || len(t.Rows) == 0 {
 		return err
 	}
 	out := *e
-	out.message = e.message + ", at " + t.Mark(entry)
+	out.message, out.placed = e.message+", at "+t.Mark(entry), true
 	return &out
 }
 

@@ -354,6 +354,7 @@ type fault struct {
 	at      diag.Span
 	message string
 	hints   []string
+	placed  bool // the message says at which entry it arose
 }
 
 func (e *fault) Error() string { return e.message }
