@@ -18,7 +18,7 @@ import (
 // from, and is not asked for one that is part of a cycle. Both drafts and sheets may be
 // shared by many computations.
 func (d *Draft) Compute(find func(path string) *Draft, sheet func(path string) *Sheet) (s *Sheet) {
-	s = &Sheet{Path: d.Path, Source: d.source, Front: d.front, Doc: d.doc, Images: d.images, Files: d.Files, carriedRows: map[*check.Rows]string{}, unreadable: d.missing}
+	s = &Sheet{Path: d.Path, Source: d.source, Front: d.front, Doc: d.doc, Images: d.images, Files: d.Files, unreadable: d.missing}
 	s.Diagnostics = slices.Clone(d.diags)
 	if !d.ctx.Panics {
 		defer func() {
@@ -42,6 +42,7 @@ func (d *Draft) Compute(find func(path string) *Draft, sheet func(path string) *
 		in.Carried = append(in.Carried, c)
 		carried[l.Key] = e
 	}
+	s.carriedRows = check.CarriedRows(in.Carried)
 	program := check.Check(in)
 	result := eval.Run(program, carried)
 	s.Diagnostics = append(s.Diagnostics, result.Diagnostics...)
@@ -102,18 +103,13 @@ func (s *Sheet) carry(d *Draft, l Link, find func(string) *Draft, sheet func(str
 		failed(diag.Warning, diag.CarriedFailed, fmt.Sprintf("`%s` has a check that is NG: %s (line %d)", name, from.checkText(ng), ng.Line))
 	}
 	from.fill(c, e)
-	for name, r := range c.Rows {
-		if _, ok := s.carriedRows[r]; !ok {
-			s.carriedRows[r] = l.Key + "." + name
-		}
-	}
 	return c, e
 }
 
 // fill lists what a sheet hands on: everything that it defines by a name. Sets
 // of rows that it carries itself bear its key too, see carriedSets.
 func (s *Sheet) fill(c *check.Carry, e *eval.Carry) {
-	c.Failed = false
+	c.Failed, c.File = false, s.Source.Name
 	c.Values, c.Rows = map[string]check.Type{}, map[string]*check.Rows{}
 	c.Texts, c.Picked, c.Order = map[string][]string{}, s.picked, s.order
 	e.Steps = map[string]*Step{}

@@ -63,12 +63,8 @@ func (c *checker) rowsName(r *Rows) string {
 			return key
 		}
 	}
-	for _, f := range c.in.Carried {
-		for name, rows := range f.Rows {
-			if rows == r {
-				return f.Key + "." + name
-			}
-		}
+	if name, ok := c.carriedRows[r]; ok {
+		return name
 	}
 	return r.Name
 }

@@ -28,6 +28,7 @@ type Input struct {
 // carries nothing.
 type Carry struct {
 	Key, Path string
+	File      string // as diagnostics show it, see Rows
 	Line      int // of the calc, where the file is named
 	Failed    bool
 	Values    map[string]Type // `P_u`, `bolts.x`, `jnt.F_v_Rk`
@@ -36,6 +37,23 @@ type Carry struct {
 	Shared    map[string][]string // what the sets of a name that several bear are called in Rows
 	Texts     map[string][]string // the entries of texts
 	Picked    map[string]*Rows    // the schedule a `first of` picked a value from
+}
+
+// CarriedRows names the sets of rows that come from other files: by the key of
+// the file that made them where a calc carries from it, else by the first key
+// that hands them on.
+func CarriedRows(carried []*Carry) map[*Rows]string {
+	out := map[*Rows]string{}
+	for _, own := range []bool{true, false} {
+		for _, f := range carried {
+			for name, r := range f.Rows {
+				if _, named := out[r]; !named && (r.File == f.File || !own) {
+					out[r] = f.Key + "." + name
+				}
+			}
+		}
+	}
+	return out
 }
 
 // HelperFile is a file of the author's own helpers under a key. Failed tells
