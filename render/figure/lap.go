@@ -98,9 +98,10 @@ func (s *sketch) lapPlane(y, r, step, lapped float64, n int, count float64) {
 	if count == 1 {
 		words.Text = "1 shear plane,"
 	}
-	s.putAt(s.label(maths.Row{words, maths.Blank, s.circleArea("d")}), Point{lapped / 2, y + 1.8*r + 34}, middle)
+	// Clear of the diameter's name below the first fastener.
+	s.putAt(s.label(maths.Row{words, maths.Blank, s.circleArea("d")}), Point{lapped / 2, y + 1.8*r + 40}, middle)
 	if count > 1 {
 		total := maths.Row{maths.Text{Text: "together"}, maths.Blank, maths.Number{Value: fmt.Sprintf("%.0f", count)}, maths.Dot, s.name("A"), maths.Relation("="), s.area("d", count*math.Pi*d*d/4)}
-		s.putAt(s.label(total), Point{lapped / 2, y + 1.8*r + 46}, middle)
+		s.putAt(s.label(total), Point{lapped / 2, y + 1.8*r + 52}, middle)
 	}
 }

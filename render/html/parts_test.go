@@ -58,3 +58,15 @@ func TestParts(t *testing.T) {
 		}
 	}
 }
+
+// A long result may part from its unit, which itself stays whole; a short one
+// does not.
+func TestLongOutputsPart(t *testing.T) {
+	s := notebook.Compile(&notebook.Context{FS: fstest.MapFS{"t.md": {Data: []byte("---\ncalc: C-1\n---\n```calc\nK = 700 MPa * sqrt(1 mm)\nk = 2*3 1/m\n```\n")}}, Panics: true}, "t.md")
+	page := string(html.Append(nil, render.NewPage(s)))
+	for _, want := range []string{"\u00a0<wbr>kg/(m<sup>1/2</sup>·s²)", "6.000\u00a0\u202f1/m"} {
+		if !strings.Contains(page, want) {
+			t.Errorf("the page lacks %q", want)
+		}
+	}
+}

@@ -81,7 +81,7 @@ func (w *writer) number(n maths.Number) {
 		if gap > maths.Thin {
 			w.raw("\u202f")
 		}
-		if power != "" { // the longest values part here in the output column, not within the unit
+		if power != "" || len(n.Unit) > 2 { // the longest values part here in the output column, not within the unit
 			w.raw("<wbr>")
 		}
 	}

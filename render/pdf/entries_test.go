@@ -4,6 +4,9 @@ import (
 	"fmt"
 	"strings"
 	"testing"
+
+	"gusset/render/maths"
+	"gusset/units"
 )
 
 // texts are the texts of a page with their places, from the top of the sheet.
@@ -99,5 +102,37 @@ func TestFurtherTablesOfResults(t *testing.T) {
 	}
 	if split == 0 {
 		t.Error("no page starts with the second table")
+	}
+}
+
+// A result too long for its column keeps its exponents raised: its figures
+// stand above its unit, or close together on a line.
+func TestLongOutputs(t *testing.T) {
+	unit := func(text string) maths.Unit {
+		u, err := units.Parse(text)
+		if err != nil {
+			t.Fatal(err)
+		}
+		return maths.Unit(u.Terms())
+	}
+	d := newDocument(pageOf(t, front+"```calc\na = 1 mm\n```\n", nil))
+	_, width := d.paper.output()
+	for _, c := range []struct {
+		n     maths.Number
+		words int
+	}{
+		{maths.Number{Value: "384.0", Unit: unit("MPa")}, 1},
+		{maths.Number{Value: "4.589e6", Unit: unit("kg/(m^(1/2)*s^2)")}, 2},
+		{maths.Number{Value: "717381", Unit: unit("kg/(m^(1/2)*s^2)")}, 2},
+	} {
+		p := d.outputWords(c.n, width)
+		if len(p.words) != c.words {
+			t.Errorf("%s has %d parts, want %d", c.n.Value, len(p.words), c.words)
+		}
+		for _, piece := range p.pieces {
+			if strings.Contains(piece.text, "^") {
+				t.Errorf("%s is set as %q", c.n.Value, piece.text)
+			}
+		}
 	}
 }
