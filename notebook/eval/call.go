@@ -28,7 +28,7 @@ func (m *machine) callFunc(n *check.Node, f *frame, target *check.Type, entry in
 		v := Value{Type: p.Type}
 		switch {
 		case !alone && len(arg.Type.Rows) > 0:
-			v = m.columnValue(arg, f)
+			v = m.argumentColumn(arg, f)
 		case !within(arg.Type.Rows, inst.Body.Type.Rows): // the body does not use it, so that its rows are not the call's
 			if v, err = m.wholeColumn(arg, f); err != nil {
 				return nil, err
@@ -81,12 +81,12 @@ func within(rows, among []*check.Rows) bool {
 
 // wholeColumn computes all entries of a value over rows, each of which has to exist.
 func (m *machine) wholeColumn(n *check.Node, f *frame) (Value, error) {
-	v := m.columnValue(n, f)
-	for e, x := range v.Num {
+	v := m.argumentColumn(n, f)
+	for e, x := range v.lost() {
 		if finite(x) {
 			continue
 		}
-		if _, err := m.number(n, f, &n.Type, e); err != nil {
+		if _, err := m.entry(n, f, &n.Type, e); err != nil {
 			return v, atEntry(err, n.Type, e)
 		}
 	}

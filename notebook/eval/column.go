@@ -177,7 +177,7 @@ func (m *machine) source(n *check.Node, f *frame, target *check.Type) source {
 	t := n.Type
 	t.Rows = keep(t.Rows, target.Rows)
 	col := make([]float64, t.Count())
-	if n.Op == check.CallFunc && !anyText(n) {
+	if n.Op == check.CallFunc && n.Type.Kind != check.Text {
 		return lay(m.functionColumn(n, f), &n.Type, target)
 	}
 	for e := range col {
@@ -207,15 +207,6 @@ func keep(rows, among []*check.Rows) []*check.Rows {
 	return out
 }
 
-func anyText(n *check.Node) bool {
-	for _, a := range n.Args {
-		if a.Type.Kind == check.Text {
-			return true
-		}
-	}
-	return n.Type.Kind == check.Text
-}
-
 // functionColumn calls an author's function with whole columns at once.
 func (m *machine) functionColumn(n *check.Node, f *frame) []float64 {
 	count := n.Type.Count()
@@ -233,16 +224,16 @@ func (m *machine) functionColumn(n *check.Node, f *frame) []float64 {
 	t := n.Func.Body.Type
 	var lost []source // arguments without a value at some entries, where the call has none either
 	for i, p := range n.Func.Params {
-		v := m.columnValue(n.Args[i], f)
-		switch {
-		case allFinite(v.Num):
+		v := m.argumentColumn(n.Args[i], f)
+		switch col := v.lost(); {
+		case col == nil:
 		case len(v.Type.Rows) == 0:
 			return fail()
 		case !entrywise(n.Func): // the body may leave out what is wrong
 		case !within(v.Type.Rows, t.Rows):
 			return fail() // the body does not use it: the entry says what is wrong with it
 		default:
-			lost = append(lost, lay(v.Num, &v.Type, &t))
+			lost = append(lost, lay(col, &v.Type, &t))
 		}
 		m.bindParam(g, p, v)
 	}
@@ -265,13 +256,41 @@ func (m *machine) functionColumn(n *check.Node, f *frame) []float64 {
 	return out
 }
 
-func allFinite(col []float64) bool {
-	for _, x := range col {
-		if !finite(x) {
-			return false
+// noText stands for a text that does not exist, as NaN does for a number. No
+// text of a file is this: NUL bytes are refused.
+const noText = "\x00"
+
+// argumentColumn is a function's argument over its own rows: NaN or noText where
+// an entry does not exist.
+func (m *machine) argumentColumn(n *check.Node, f *frame) Value {
+	if n.Type.Kind != check.Text {
+		return m.columnValue(n, f)
+	}
+	v := Value{Type: n.Type, Text: make([]string, n.Type.Count())}
+	for e := range v.Text {
+		x, err := m.entry(n, f, &n.Type, e)
+		if v.Text[e], _ = x.(string); err != nil {
+			v.Text[e] = noText
 		}
 	}
-	return true
+	return v
+}
+
+// lost is a column with NaN at the entries that do not exist, nil where all do.
+func (v *Value) lost() []float64 {
+	if i := slices.Index(v.Text, noText); i >= 0 {
+		out := make([]float64, len(v.Text))
+		for e, x := range v.Text {
+			if x == noText {
+				out[e] = nan
+			}
+		}
+		return out
+	}
+	if slices.ContainsFunc(v.Num, func(x float64) bool { return !finite(x) }) {
+		return v.Num
+	}
+	return nil
 }
 
 // branches computes a choice over rows: the value of the first branch whose condition

@@ -191,6 +191,9 @@ func (m *machine) load(n *check.Node, f *frame, target *check.Type, entry int) (
 		at = target.Project(entry, v.Type)
 	}
 	if v.Type.Kind == check.Text {
+		if v.Text[at] == noText {
+			return nil, m.lostArgument(n.Def, f, at)
+		}
 		return v.Text[at], nil
 	}
 	x := v.Num[at]
@@ -215,7 +218,7 @@ func (m *machine) lostArgument(d *check.Def, f *frame, entry int) error {
 		return nil
 	}
 	arg := g.call.Args[i]
-	_, err := m.number(arg, g.caller, &arg.Type, entry)
+	_, err := m.entry(arg, g.caller, &arg.Type, entry)
 	return err
 }
 

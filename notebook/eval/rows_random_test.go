@@ -36,14 +36,15 @@ const pairTables = "```schedule s\nmark | a | b | g\nR1 | -1 | 2 | S1\nR2 | 3 | 
 	"```helper spread\nx [column of number]\nf [number]\nneeds f*max(x) < 40\nr = f*max(x) - min(x*f)\ngives r\n```\n"
 
 const pairFunctions = "c = 1.5\nchosen(x, y) = x - y if x > y\n  = x/y otherwise\nscaled(x) = x*max(s.a*s.b)\nfixed(x) = 5\n" +
-	"strength(m) = steels.f at m\nmixed(m, x) = steels.f at m if x > 1\n  = x*sum(s.b) otherwise\n"
+	"strength(m) = steels.f at m\nmixed(m, x) = steels.f at m if x > 1\n  = x*sum(s.b) otherwise\n" +
+	"by(m, x) = x/max(s.a) if m == \"A\"\n  = x + min(s.b) if x > 0\n  = 2 otherwise\nkind(m, x) = m if x > 0\n  = steels.k at m otherwise\n"
 
 func pairValue(t *rapid.T, depth int) string {
 	if depth == 0 || rapid.IntRange(0, 4).Draw(t, "leaf") == 0 {
 		return rapid.SampledFrom([]string{"A", "B", "N", "c", "0", "1", "3", "max(s.a)", "sum(s.a*s.b)"}).Draw(t, "value")
 	}
 	sub := func() string { return pairValue(t, depth-1) }
-	switch rapid.IntRange(0, 17).Draw(t, "op") {
+	switch rapid.IntRange(0, 19).Draw(t, "op") {
 	case 0:
 		return "(" + sub() + " + " + sub() + ")"
 	case 1:
@@ -78,6 +79,10 @@ func pairValue(t *rapid.T, depth int) string {
 		return "max(s.a*c)*" + sub()
 	case 16:
 		return "min(s.a/s.b + 1)"
+	case 17:
+		return "by((steels.k at G), " + sub() + ")"
+	case 18:
+		return "by(kind(G, " + sub() + "), " + sub() + ")"
 	}
 	return "ceil(" + sub() + ")"
 }
@@ -95,7 +100,7 @@ func pairCondition(t *rapid.T, depth int) string {
 		sign := rapid.SampledFrom([]string{" <= ", " < "}).Draw(t, "sign")
 		return value() + sign + value() + sign + value()
 	case 3:
-		return rapid.SampledFrom([]string{`G == "S1"`, `G != "S2"`, `(steels.k at G) == "A"`}).Draw(t, "text")
+		return rapid.SampledFrom([]string{`G == "S1"`, `G != "S2"`, `(steels.k at G) == "A"`, `kind(G, B - 1) == "S1"`}).Draw(t, "text")
 	case 4:
 		return "not (" + pairCondition(t, depth-1) + ")"
 	case 5:
