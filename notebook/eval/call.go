@@ -156,9 +156,6 @@ func (m *machine) inFunction(err error, n *check.Node, f *frame) error {
 // entrywise tells that a function's body needs no more than one entry of its
 // arguments at a time: it reduces no rows of theirs and looks nothing up in them.
 func entrywise(inst *check.Function) bool {
-	if inst.Body.FirstOf != nil {
-		return false
-	}
 	for _, b := range inst.Body.Branches {
 		if !elementary(b.Value, inst.Scope) || b.Cond != nil && !elementary(b.Cond, inst.Scope) {
 			return false

@@ -2,6 +2,7 @@ package eval_test
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 	"testing"
 
@@ -48,4 +49,26 @@ func callText(c *eval.Call) string {
 		text += " (" + c.Mark + ")"
 	}
 	return text
+}
+
+// A check over rows keeps the calls of the entry that governs: those that say
+// when it is needed, and where it is, those of its sides.
+func TestCallsOfConditionalCheck(t *testing.T) {
+	s := sound(t, "```helper double\na [length]\nb = 2*a\ngives b\n```\n```helper triple\na [length]\nb = 3*a\ngives b\n```\n"+
+		"```schedule s\nmark | x [mm]\nA | 7\nB | 8\n```\n"+
+		block("x = 8 mm\ncheck triple(x) <= 30 mm if double(x) > 15 mm\ncheck triple(s.x) <= 30 mm if double(s.x) > 15 mm\ncheck triple(s.x) <= 30 mm if double(s.x) > 20 mm"))
+	var got []string
+	for _, step := range s.Steps {
+		if step.Check != nil {
+			var calls []string
+			for _, c := range step.Calls {
+				calls = append(calls, c.Helper.Name.ID+" "+text(c.Args[0], 0)+" "+c.Mark)
+			}
+			got = append(got, strings.Join(calls, ", "))
+		}
+	}
+	want := []string{"double 8 mm , triple 8 mm ", "double 8 mm B, triple 8 mm B", "double 8 mm B"}
+	if !slices.Equal(got, want) {
+		t.Errorf("calls %q, want %q", got, want)
+	}
 }

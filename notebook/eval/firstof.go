@@ -17,7 +17,7 @@ func (m *machine) firstOf(fo *check.FirstOf, f *frame, t *check.Type, entry int,
 	if fo.Column != nil {
 		count = fo.Rows.N()
 		if fo.Column.Type.Kind != check.Text {
-			col = m.column(fo.Column, f, &fo.Column.Type)
+			col = m.ownColumn(fo.Column, f)
 		}
 	}
 	step := &Step{Kind: Constant, ID: fo.Def.ID, Symbol: fo.Def.Symbol, Unit: m.candidateUnit(fo, f), Figures: m.figures()}
@@ -29,10 +29,11 @@ func (m *machine) firstOf(fo *check.FirstOf, f *frame, t *check.Type, entry int,
 		var x any
 		var err error
 		switch {
-		case col != nil:
+		case col != nil && finite(col[k]):
 			x = col[k]
 		case fo.Column != nil:
 			x, err = m.entry(fo.Column, f, &fo.Column.Type, k)
+			err = atEntry(err, fo.Column.Type, k)
 		default:
 			x, err = m.entry(fo.Values[k], f, t, entry)
 		}

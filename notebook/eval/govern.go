@@ -232,13 +232,17 @@ func (k *picking) load(n *check.Node, at place) {
 	}
 }
 
-// firstOf takes the row of the column that was picked for the entry.
+// firstOf takes the row of the column that was picked for the entry, and looks
+// at the condition with the candidate that was.
 func (k *picking) firstOf(fo *check.FirstOf, s *Step, at place) {
 	k.nodes(fo.Values, at)
-	if e := at.t.Project(at.entry, s.Value.Type); fo.Column != nil && e >= 0 && e < len(s.Picks) {
-		k.within = true
-		k.node(fo.Column, place{check.Type{Rows: []*check.Rows{fo.Rows}}, s.Picks[e]})
-		k.within = false
+	if e := at.t.Project(at.entry, s.Value.Type); e >= 0 {
+		k.m.top.vals[fo.Def.Slot] = s.Value.one(e)
+		if fo.Column != nil && e < len(s.Picks) {
+			k.within = true
+			k.node(fo.Column, place{check.Type{Rows: []*check.Rows{fo.Rows}}, s.Picks[e]})
+			k.within = false
+		}
 	}
 	k.node(fo.Cond, at)
 }

@@ -219,10 +219,7 @@ func (m *machine) finish(steps []*Step) {
 		m.recording = &s.Calls
 		switch {
 		case p.Check != nil:
-			holds, err := m.truth(p.Check.Cond, m.top, &p.Check.Type, s.Entry)
-			if r := s.Check; err == nil && r.Required[s.Entry] && holds != r.OK[s.Entry] {
-				m.failStatement(p, s, m.disagree(p.Check.Cond.Expr.Span(), r.Type, s.Entry))
-			}
+			m.checkAlone(p, s)
 		case p.Helper != nil:
 			loop := check.Type{Rows: p.Helper.Loop}
 			at := 0
@@ -239,6 +236,28 @@ func (m *machine) finish(steps []*Step) {
 		m.recording = nil
 	}
 	m.running = nil
+}
+
+// checkAlone computes the entry of a check that governs by govaluate too: when it is
+// needed, and where it is, whether it holds.
+func (m *machine) checkAlone(p *check.Plan, s *Step) {
+	c, r := p.Check, s.Check
+	required, at := true, c.Cond
+	var err error
+	if c.If != nil {
+		required, err = m.truth(c.If, m.top, &r.Type, s.Entry)
+	}
+	agrees := required == r.Required[s.Entry]
+	if !agrees {
+		at = c.If
+	} else if err == nil && required {
+		var holds bool
+		holds, err = m.truth(c.Cond, m.top, &r.Type, s.Entry)
+		agrees = holds == r.OK[s.Entry]
+	}
+	if err == nil && !agrees {
+		m.failStatement(p, s, m.disagree(at.Expr.Span(), r.Type, s.Entry))
+	}
 }
 
 // agree is the relative difference that the two evaluators may have.

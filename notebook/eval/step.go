@@ -27,6 +27,18 @@ func (v Value) Len() int {
 	return len(v.Num)
 }
 
+// one is the plain value of an entry.
+func (v Value) one(entry int) Value {
+	out := Value{Type: v.Type}
+	out.Type.Rows = nil
+	if v.Type.Kind == check.Text {
+		out.Text = v.Text[entry : entry+1]
+	} else {
+		out.Num = v.Num[entry : entry+1]
+	}
+	return out
+}
+
 // StepKind is what a step is.
 type StepKind uint8
 
