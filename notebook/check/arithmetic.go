@@ -103,10 +103,11 @@ func (l *lower) product(x *syntax.Binary) *Node {
 		first = b.X
 	}
 	left, i := invalid, len(chain)-1
-	if run := l.unitsAsFactors(chain); run > 0 {
-		i -= run
-	} else {
+	run := l.unitsAsFactors(chain)
+	if i -= run; run == 0 {
 		left = l.factor(first)
+	} else if l.unitFactor(first) == "" {
+		l.factor(first) // it may have mistakes of its own
 	}
 	for ; i >= 0; i-- {
 		b := chain[i]
