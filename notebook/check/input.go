@@ -29,7 +29,7 @@ type Input struct {
 type Carry struct {
 	Key, Path string
 	File      string // as diagnostics show it, see Rows
-	Line      int // of the calc, where the file is named
+	Line      int    // of the calc, where the file is named
 	Failed    bool
 	Values    map[string]Type // `P_u`, `bolts.x`, `jnt.F_v_Rk`
 	Rows      map[string]*Rows

@@ -45,6 +45,18 @@ func (b *breaks) of(y []float64, swept *check.Def, at func(i int) int) []int {
 	return list
 }
 
+// entries counts what a statement computes: for a helper with several results
+// its lines, each time that it runs.
+func entries(p *check.Plan) int {
+	switch {
+	case p.Helper != nil:
+		return check.Type{Rows: p.Helper.Loop}.Count() * len(p.Helper.Plans)
+	case p.Def != nil:
+		return p.Def.Type.Count()
+	}
+	return 0
+}
+
 // suspect tells that the magnitudes grow towards the place behind point i, and
 // ever faster, from those sides where there are points enough to say so.
 func (b *breaks) suspect(y []float64, i int) bool {
@@ -72,9 +84,7 @@ func (b *breaks) endless(y []float64, i int, swept *check.Def, at func(i int) in
 	n := len(b.x) - 1
 	for hi-lo > width && b.swept < mostSwept {
 		for _, plan := range b.p.Plans {
-			if plan.Def != nil {
-				b.swept += plan.Def.Type.Count()
-			}
+			b.swept += entries(plan)
 		}
 		x := make([]float64, n+1)
 		for k := range x {
