@@ -512,6 +512,10 @@ func (m *machine) warn(s *syntax.Needs, e *fault, g *frame) {
 	if m.running == nil || m.warned[key] {
 		return
 	}
+	if m.muted {
+		m.held = true
+		return
+	}
 	m.warned[key] = true
 	at := m.running.Stmt.Span()
 	name, where := "", ""
@@ -527,6 +531,22 @@ func (m *machine) warn(s *syntax.Needs, e *fault, g *frame) {
 	}
 	m.report(diag.Diagnostic{Severity: diag.Warning, ID: diag.OutOfRange, Source: m.top.src, Span: at,
 		Message: name + e.message + where, Hints: e.hints})
+}
+
+// quietly computes what may be more than is needed, as columns do: entries whose
+// check is not required, branches that are not taken. Where a limit would have
+// warned, only what is needed is computed again, entry by entry, to warn of that.
+func (m *machine) quietly(columns, needed func()) {
+	muted, held := m.muted, m.held
+	m.muted, m.held = true, false
+	columns()
+	again := m.held
+	m.muted, m.held = muted, held || again
+	if again && !muted {
+		m.held = false
+		m.kept.forget()
+		needed()
+	}
 }
 
 func (m *machine) report(d diag.Diagnostic) { m.out.Diagnostics = append(m.out.Diagnostics, d) }

@@ -31,7 +31,10 @@ func (m *machine) verdicts(p *check.Plan, f *frame) (*CheckResult, error) {
 	for i := range flags {
 		flags[i] = true
 	}
-	needed, holding := m.verdictColumn(c.If, f, &c.Type), m.verdictColumn(c.Cond, f, &c.Type)
+	var needed, holding []float64
+	m.quietly(func() {
+		needed, holding = m.verdictColumn(c.If, f, &c.Type), m.verdictColumn(c.Cond, f, &c.Type)
+	}, func() { needed, holding = nil, nil })
 	for e := range r.OK {
 		required, holds := true, true
 		var err error
@@ -73,7 +76,7 @@ func (m *machine) complete(r *CheckResult, p *check.Plan, f *frame) {
 	c := p.Check
 	outer := m.recording
 	m.recording = nil // the calls in it are recorded
-	r.Sides, r.NeededIf = m.sides(c.Sides, f), m.sides(c.IfSides, f)
+	m.quietly(func() { r.Sides, r.NeededIf = m.sides(c.Sides, f), m.sides(c.IfSides, f) }, func() {})
 	m.recording = outer
 	r.Ratio = m.slabs.floats.Take(len(r.OK), 4*chunk)
 	for e := range r.Ratio {

@@ -296,6 +296,18 @@ func (m *machine) branches(ch check.Choice, f *frame, t *check.Type) ([]float64,
 	if len(ch.Branches) == 1 && ch.Branches[0].Cond == nil {
 		return m.column(ch.Branches[0].Value, f, t), nil
 	}
+	var out []float64
+	var taken []int
+	m.quietly(func() { out, taken = m.masked(ch, f, t) }, func() {
+		for e := range out {
+			m.choice(ch, f, t, e)
+		}
+	})
+	return out, taken
+}
+
+// masked computes the branches one by one for all entries.
+func (m *machine) masked(ch check.Choice, f *frame, t *check.Type) ([]float64, []int) {
 	count := t.Count()
 	out, taken := make([]float64, count), make([]int, count)
 	for e := range out {

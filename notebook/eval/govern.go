@@ -33,10 +33,12 @@ func (m *machine) govern(steps []*Step) {
 		}
 	}
 	sort.SliceStable(checks, func(a, b int) bool { return worse(steps[checks[a]].Check, steps[checks[b]].Check) })
-	for _, i := range checks {
-		r := steps[i].Check
-		g.spread(i, place{r.Type, r.Governs})
-	}
+	m.quietly(func() {
+		for _, i := range checks {
+			r := steps[i].Check
+			g.spread(i, place{r.Type, r.Governs})
+		}
+	}, func() {})
 	m.running = nil
 }
 
@@ -165,10 +167,7 @@ func (m *machine) pickedFrom(p *check.Plan, s *Step, at place) map[*Step]place {
 	case p.Choice.FirstOf != nil:
 		picks.firstOf(p.Choice.FirstOf, s, at)
 	default:
-		for _, b := range p.Choice.Branches {
-			picks.node(b.Value, at)
-			picks.node(b.Cond, at)
-		}
+		picks.branches(p.Choice.Branches, s, at)
 	}
 	for u := range picks.direct {
 		delete(picks.out, u)
@@ -228,6 +227,21 @@ func (k *picking) load(n *check.Node, at place) {
 				k.out = map[*Step]place{}
 			}
 			k.out[u] = at
+		}
+	}
+}
+
+// branches goes through the conditions up to the branch that was taken for the
+// entry, and its value.
+func (k *picking) branches(branches []check.Branch, s *Step, at place) {
+	taken := len(branches) - 1
+	if e := at.t.Project(at.entry, s.Value.Type); e >= 0 && e < len(s.Taken) {
+		taken = s.Taken[e]
+	}
+	for i, b := range branches {
+		if k.node(b.Cond, at); i == taken {
+			k.node(b.Value, at)
+			return
 		}
 	}
 }

@@ -70,6 +70,7 @@ type machine struct {
 	// recording collects the helper calls of the statement being printed.
 	recording   *[]*Call
 	warned      map[warning]bool
+	muted, held bool      // warnings are held back, and one was: see quietly
 	table       []float64 // read by interpolate last, and whether it is steady
 	tableSteady bool
 	looks       diag.Looks  // at marks, for messages
