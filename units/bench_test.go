@@ -46,7 +46,7 @@ func BenchmarkFormat(b *testing.B) {
 }
 
 func BenchmarkToSI(b *testing.B) {
-	u := mustParse("ksi")
+	u := MustParse("ksi")
 	for b.Loop() {
 		u.ToSI(48.8888)
 	}

@@ -33,10 +33,10 @@ func TestConvert(t *testing.T) {
 		x, _ := new(big.Rat).SetString(row.x)
 		var from, to Unit
 		if row.from != "" {
-			from = mustParse(row.from)
+			from = MustParse(row.from)
 		}
 		if row.to != "" {
-			to = mustParse(row.to)
+			to = MustParse(row.to)
 		}
 		value, exact, err := Convert(x, from, to)
 		if err != nil || value != row.value || exact != row.exact {
@@ -50,7 +50,7 @@ func TestConvert(t *testing.T) {
 		{"degC", "kN", "`degC` is a temperature and `kN` is a force"},
 		{"degR", "degF", "`degR` is a temperature difference and `degF` a point"},
 	} {
-		_, _, err := Convert(big.NewRat(1, 1), mustParse(row.from), mustParse(row.to))
+		_, _, err := Convert(big.NewRat(1, 1), MustParse(row.from), MustParse(row.to))
 		if err == nil || !strings.Contains(err.Error(), row.message) {
 			t.Errorf("%s in %s: %v", row.from, row.to, err)
 		}

@@ -31,7 +31,7 @@ func TestDecimalToSI(t *testing.T) {
 			t.Fatalf("%d e%d %s: got %g, want %g", mant, exp, u, got, want)
 		}
 	})
-	if got, ok := mustParse("mm").DecimalToSI(25, 0); !ok || got != 0.025 {
+	if got, ok := MustParse("mm").DecimalToSI(25, 0); !ok || got != 0.025 {
 		t.Errorf("25 mm: %g %v", got, ok)
 	}
 }

@@ -12,7 +12,7 @@ func dimOf(unit string) Dimension {
 	if unit == "" {
 		return Dimension{}
 	}
-	return mustParse(unit).Dim()
+	return MustParse(unit).Dim()
 }
 
 func TestDimensionWords(t *testing.T) {

@@ -137,7 +137,7 @@ var nistFactors = []struct {
 
 func TestNIST(t *testing.T) {
 	for _, row := range nistFactors {
-		from, to := mustParse(row.unit), mustParse(row.si)
+		from, to := MustParse(row.unit), MustParse(row.si)
 		if from.Dim() != to.Dim() {
 			t.Errorf("%s is %s, %s is %s", row.unit, from.Dim().Words(), row.si, to.Dim().Words())
 			continue
@@ -170,7 +170,7 @@ func TestNIST(t *testing.T) {
 func TestNISTCoversCatalogue(t *testing.T) {
 	covered := map[string]bool{}
 	for _, row := range nistFactors {
-		for _, u := range []Unit{mustParse(row.unit), mustParse(row.si)} {
+		for _, u := range []Unit{MustParse(row.unit), MustParse(row.si)} {
 			for _, n := range u.Names() {
 				covered[n.Name] = true
 			}
@@ -204,7 +204,7 @@ func TestTemperaturePoints(t *testing.T) {
 		{"20.1", "degC", 293.25, 20.1, "degC"},
 		{"98.6", "degF", 310.15, 37, "degC"},
 	} {
-		u := mustParse(row.unit)
+		u := MustParse(row.unit)
 		exact, _ := new(big.Rat).SetString(row.value)
 		if got := u.LiteralToSI(exact); got != row.kelvin {
 			t.Errorf("%s %s is %v K, want %v", row.value, row.unit, got, row.kelvin)
@@ -212,7 +212,7 @@ func TestTemperaturePoints(t *testing.T) {
 		if got := u.ToSI(ratFloat(exact)); math.Abs(got-row.kelvin) > 1e-13 {
 			t.Errorf("%s %s is %v K, want %v", row.value, row.unit, got, row.kelvin)
 		}
-		if got := mustParse(row.backUnit).FromSI(row.kelvin); got != row.back {
+		if got := MustParse(row.backUnit).FromSI(row.kelvin); got != row.back {
 			t.Errorf("%v K is %v %s, want %v", row.kelvin, got, row.backUnit, row.back)
 		}
 	}

@@ -230,7 +230,7 @@ func TestUnitFlags(t *testing.T) {
 		{"kN/m*(m*s)", false, false, true},
 		{"kN/kip-ft", false, false, false},
 	} {
-		u := mustParse(row.text)
+		u := MustParse(row.text)
 		if u.IsPoint() != row.point || u.IsAngular() != row.angular || u.StarAfterSlash() != row.starred {
 			t.Errorf("%s: point %v, angular %v, star after slash %v", row.text, u.IsPoint(), u.IsAngular(), u.StarAfterSlash())
 		}
@@ -238,7 +238,7 @@ func TestUnitFlags(t *testing.T) {
 }
 
 func TestTermsAndNames(t *testing.T) {
-	u := mustParse("kN*µm/(s^2*°C)")
+	u := MustParse("kN*µm/(s^2*°C)")
 	wantTerms := []Term{
 		{"", false, false, "kN", 1, 1}, {"·", false, false, "µm", 1, 1},
 		{"/", true, false, "s", 2, 1}, {"·", false, true, "°C", 1, 1},
@@ -250,10 +250,10 @@ func TestTermsAndNames(t *testing.T) {
 	if diff := cmp.Diff(wantNames, u.Names()); diff != "" {
 		t.Error(diff)
 	}
-	if diff := cmp.Diff([]Term{{"", false, false, "1", 1, 1}, {"/", false, false, "K", -1, 2}}, mustParse("1/K^(-1/2)").Terms()); diff != "" {
+	if diff := cmp.Diff([]Term{{"", false, false, "1", 1, 1}, {"/", false, false, "K", -1, 2}}, MustParse("1/K^(-1/2)").Terms()); diff != "" {
 		t.Error(diff)
 	}
-	if diff := cmp.Diff([]NameAt{{"kip", 2, 5, "/"}, {"ft", 6, 8, "-"}}, mustParse("1/kip-ft").Names()); diff != "" {
+	if diff := cmp.Diff([]NameAt{{"kip", 2, 5, "/"}, {"ft", 6, 8, "-"}}, MustParse("1/kip-ft").Names()); diff != "" {
 		t.Error(diff)
 	}
 	if terms, names := (Unit{}).Terms(), (Unit{}).Names(); len(terms) != 0 || len(names) != 0 {
@@ -352,7 +352,7 @@ func TestConversionRoundsOnce(t *testing.T) {
 
 func TestPointsComeBack(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
-		u := mustParse(rapid.SampledFrom([]string{"degC", "degF"}).Draw(t, "unit"))
+		u := MustParse(rapid.SampledFrom([]string{"degC", "degF"}).Draw(t, "unit"))
 		tenths := rapid.IntRange(-2000, 20000).Draw(t, "tenths")
 		x := float64(tenths) / 10
 		if got := u.FromSI(u.ToSI(x)); got != x {
@@ -367,7 +367,7 @@ func TestPointsComeBack(t *testing.T) {
 // Figures that an author writes come back as written.
 func TestAuthorsFiguresComeBack(t *testing.T) {
 	for _, text := range []string{"mm", "mm^2", "mm^4", "kN", "kN*m", "kN/m", "MPa", "GPa", "N/mm^2", "cm", "kg/m^3", "%", "ustrain"} {
-		u := mustParse(text)
+		u := MustParse(text)
 		for tenths := int64(1); tenths < 5000; tenths++ {
 			x := float64(tenths) / 10
 			if got := u.FromSI(u.LiteralToSI(big.NewRat(tenths, 10))); math.Abs(got-x) > 2.3e-16*x {
@@ -375,17 +375,17 @@ func TestAuthorsFiguresComeBack(t *testing.T) {
 			}
 		}
 	}
-	if got := mustParse("mm").ToSI(25); got != 0.025 {
+	if got := MustParse("mm").ToSI(25); got != 0.025 {
 		t.Errorf("25 mm is %v m", got)
 	}
-	if got := mustParse("mm").FromSI(0.025); got != 25 {
+	if got := MustParse("mm").FromSI(0.025); got != 25 {
 		t.Errorf("0.025 m is %v mm", got)
 	}
 }
 
 func TestExtremes(t *testing.T) {
 	for _, text := range []string{"in", "deg", "mm", "degC", "degF"} {
-		u := mustParse(text)
+		u := MustParse(text)
 		for _, x := range []float64{math.Inf(1), math.Inf(-1)} {
 			if u.ToSI(x) != x || u.FromSI(x) != x {
 				t.Errorf("%v %s is %v, and back %v", x, text, u.ToSI(x), u.FromSI(x))
@@ -395,7 +395,7 @@ func TestExtremes(t *testing.T) {
 			t.Errorf("not a number in %s is %v", text, u.ToSI(math.NaN()))
 		}
 	}
-	if got := mustParse("mm").LiteralToSI(new(big.Rat).SetInt(new(big.Int).Exp(big.NewInt(10), big.NewInt(400), nil))); !math.IsInf(got, 1) {
+	if got := MustParse("mm").LiteralToSI(new(big.Rat).SetInt(new(big.Int).Exp(big.NewInt(10), big.NewInt(400), nil))); !math.IsInf(got, 1) {
 		t.Errorf("1e400 mm is %v", got)
 	}
 }

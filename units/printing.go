@@ -47,22 +47,22 @@ var defaults = [...][2]string{
 
 var (
 	defaultUnits  = indexDefaults()
-	defaultPoints = [2]Unit{mustParse("degC"), mustParse("degF")}
+	defaultPoints = [2]Unit{MustParse("degC"), MustParse("degF")}
 )
 
 func indexDefaults() [2]map[Dimension]Unit {
 	index := [2]map[Dimension]Unit{{}, {}}
 	for _, row := range defaults {
 		for system, text := range row {
-			u := mustParse(text)
+			u := MustParse(text)
 			index[system][u.Dim()] = u
 		}
 	}
 	return index
 }
 
-// mustParse reads a unit of the program's own tables.
-func mustParse(text string) Unit {
+// MustParse reads a unit that the program itself names, and panics where it is none.
+func MustParse(text string) Unit {
 	u, err := Parse(text)
 	if err != nil {
 		panic(err)

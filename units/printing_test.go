@@ -55,7 +55,7 @@ func TestPreferredUnits(t *testing.T) {
 	list := func(texts ...string) []Unit {
 		var units []Unit
 		for _, text := range texts {
-			units = append(units, mustParse(text))
+			units = append(units, MustParse(text))
 		}
 		return units
 	}

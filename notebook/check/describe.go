@@ -14,10 +14,7 @@ import (
 )
 
 func mustDim(unit string) units.Dimension {
-	u, err := units.Parse(unit)
-	if err != nil {
-		panic(err)
-	}
+	u := units.MustParse(unit)
 	return u.Dim()
 }
 
@@ -63,7 +60,7 @@ func (c *checker) rowsName(r *Rows) string {
 			return key
 		}
 	}
-	if name, ok := c.carriedRows[r]; ok {
+	if name, ok := c.prog.CarriedRows[r]; ok {
 		return name
 	}
 	return r.Name

@@ -144,15 +144,7 @@ func (m *machine) unitFor(t check.Type) units.Unit {
 	return u
 }
 
-var radiansPerSecond, hertz = unit("rad/s"), unit("Hz")
-
-func unit(text string) units.Unit {
-	u, err := units.Parse(text)
-	if err != nil {
-		panic(err) // the text is the program's own
-	}
-	return u
-}
+var radiansPerSecond, hertz = units.MustParse("rad/s"), units.MustParse("Hz")
 
 // leaf computes one entry of what govaluate takes as a parameter.
 func (m *machine) leaf(n *check.Node, f *frame, target *check.Type, entry int) (any, error) {
