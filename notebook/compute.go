@@ -42,11 +42,10 @@ func (d *Draft) Compute(find func(path string) *Draft, sheet func(path string) *
 		in.Carried = append(in.Carried, c)
 		carried[l.Key] = e
 	}
-	s.carriedRows = check.CarriedRows(in.Carried)
 	program := check.Check(in)
 	result := eval.Run(program, carried)
 	s.Diagnostics = append(s.Diagnostics, result.Diagnostics...)
-	s.picked, s.order = pickedFrom(program), program.Order
+	s.picked, s.order, s.carriedRows = pickedFrom(program), program.Order, program.CarriedRows
 	s.assemble(d, result)
 	s.Diagnostics = inSourceOrder(s.Diagnostics, s.Source)
 	return s

@@ -24,9 +24,7 @@ type checker struct {
 	spaces map[string]*space // names that stand before a dot
 	order  map[*Rows]int     // the order in which the file meets its sets of rows
 	shared map[[2]*Rows]string
-	// carriedRows names the sets of rows that come from other files.
-	carriedRows map[*Rows]string
-	later       map[string]int // line at which each name of the file is defined first
+	later  map[string]int // line at which each name of the file is defined first
 	// later functions and helpers, for the message that one is not yet defined.
 	laterFuncs map[string]int
 	block      int
@@ -47,17 +45,16 @@ type checker struct {
 // what failed is marked, with all that depends on it.
 func Check(in *Input) *Program {
 	c := &checker{
-		in:          in,
-		consts:      constants(),
-		prog:        &Program{In: in, Scope: &Scope{}, BlockRows: make([]*Rows, len(in.Blocks)), Plots: map[int]*PlotPlan{}, Figures: map[int]*FigurePlan{}},
-		spaces:      map[string]*space{},
-		order:       map[*Rows]int{},
-		shared:      map[[2]*Rows]string{},
-		carriedRows: CarriedRows(in.Carried),
-		later:       map[string]int{},
-		laterFuncs:  map[string]int{},
-		expanding:   map[*syntax.Helper]bool{},
-		caseMarks:   map[string]bool{},
+		in:         in,
+		consts:     constants(),
+		prog:       &Program{In: in, Scope: &Scope{}, CarriedRows: carriedRows(in.Carried), BlockRows: make([]*Rows, len(in.Blocks)), Plots: map[int]*PlotPlan{}, Figures: map[int]*FigurePlan{}},
+		spaces:     map[string]*space{},
+		order:      map[*Rows]int{},
+		shared:     map[[2]*Rows]string{},
+		later:      map[string]int{},
+		laterFuncs: map[string]int{},
+		expanding:  map[*syntax.Helper]bool{},
+		caseMarks:  map[string]bool{},
 	}
 	c.top = &env{c: c, src: in.Source, scope: c.prog.Scope, names: map[string]*Def{}, funcs: map[string]*function{}, helpers: newHelperSet()}
 	c.keys()

@@ -39,10 +39,10 @@ type Carry struct {
 	Picked    map[string]*Rows    // the schedule a `first of` picked a value from
 }
 
-// CarriedRows names the sets of rows that come from other files: by the key of
+// carriedRows names the sets of rows that come from other files: by the key of
 // the file that made them where a calc carries from it, else by the first key
 // that hands them on.
-func CarriedRows(carried []*Carry) map[*Rows]string {
+func carriedRows(carried []*Carry) map[*Rows]string {
 	out := map[*Rows]string{}
 	for _, own := range []bool{true, false} {
 		for _, f := range carried {

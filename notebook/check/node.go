@@ -211,9 +211,10 @@ type ColumnPlan struct {
 type Program struct {
 	In          *Input
 	Scope       *Scope
-	Plans       []*Plan // in order of the statements; schedules give one for each column
-	BlockRows   []*Rows // by block, nil where it has none
-	Order       []*Rows // all sets of rows that it has met, as their axes stand in values
+	Plans       []*Plan          // in order of the statements; schedules give one for each column
+	BlockRows   []*Rows          // by block, nil where it has none
+	Order       []*Rows          // all sets of rows that it has met, as their axes stand in values
+	CarriedRows map[*Rows]string // the names of those that come from other files
 	Refs        []RefPlan
 	Plots       map[int]*PlotPlan // by block
 	Figures     map[int]*FigurePlan
