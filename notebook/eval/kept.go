@@ -1,6 +1,11 @@
 package eval
 
-import "gusset/notebook/check"
+import (
+	"maps"
+	"slices"
+
+	"gusset/notebook/check"
+)
 
 // A reduction, a table that is interpolated and a column handed to a helper are
 // wanted again for each entry of the statement that holds them. What they came
@@ -44,39 +49,19 @@ func (k *kept) forget() {
 // forgetOf drops what was made of a candidate of `first of`, which gets its next
 // value.
 func (k *kept) forgetOf(d *check.Def) {
-	for n := range k.columns {
-		if mentions(n, d) {
-			delete(k.columns, n)
-		}
-	}
-	for n := range k.results {
-		if mentions(n, d) {
-			delete(k.results, n)
-		}
-	}
-	for n := range k.runs {
-		if mentions(n, d) {
-			delete(k.runs, n)
-		}
-	}
+	forgetOf(k.columns, d)
+	forgetOf(k.results, d)
+	forgetOf(k.runs, d)
 }
 
+func forgetOf[T any](kept map[*check.Node]T, d *check.Def) {
+	maps.DeleteFunc(kept, func(n *check.Node, _ T) bool { return mentions(n, d) })
+}
+
+// mentions tells whether an expression loads a value.
 func mentions(n *check.Node, d *check.Def) bool {
-	if n.Def == d {
-		return true
-	}
-	lists := [][]*check.Node{n.Args}
-	if n.Help != nil {
-		lists = append(lists, n.Help.Args)
-	}
-	for _, list := range lists {
-		for _, a := range list {
-			if mentions(a, d) {
-				return true
-			}
-		}
-	}
-	return false
+	in := func(a *check.Node) bool { return mentions(a, d) }
+	return n.Def == d || slices.ContainsFunc(n.Args, in) || n.Help != nil && slices.ContainsFunc(n.Help.Args, in)
 }
 
 // run runs a helper that is called inside an expression, once for all entries
