@@ -81,11 +81,21 @@ type object struct {
 	plain                  bool
 }
 
-// pack compresses the plain streams, on all processors.
+// streamsEach is how many streams are worth a compressor, which takes more than
+// a megabyte.
+const streamsEach = 16
+
+// pack compresses the plain streams, many on all processors.
 func pack(objects []object) error {
+	streams := 0
+	for i := range objects {
+		if objects[i].plain {
+			streams++
+		}
+	}
 	var next atomic.Int64
 	var work errgroup.Group
-	for range runtime.GOMAXPROCS(0) {
+	for range min(runtime.GOMAXPROCS(0), 1+streams/streamsEach) {
 		work.Go(func() error {
 			var packed bytes.Buffer
 			z, err := zlib.NewWriterLevel(&packed, zlib.BestSpeed)
