@@ -29,15 +29,9 @@ func expression(t *rapid.T, depth int, exact bool) string {
 	if exact {
 		most = 4
 	}
-	switch rapid.IntRange(0, most).Draw(t, "op") {
-	case 0:
-		return "(" + sub() + " + " + sub() + ")"
-	case 1:
-		return "(" + sub() + " - " + sub() + ")"
-	case 2:
-		return sub() + "*" + sub()
-	case 3:
-		return "(" + sub() + ")/(" + sub() + ")"
+	switch op := rapid.IntRange(0, most).Draw(t, "op"); op {
+	case 0, 1, 2, 3:
+		return arithmetic(op, sub)
 	case 4:
 		return "-(" + sub() + ")"
 	case 5:
@@ -238,3 +232,16 @@ func (p *oracle) unary() (*big.Float, float64) {
 }
 
 func float(x *big.Float) float64 { f, _ := x.Float64(); return f }
+
+// arithmetic joins two random expressions by one of the four operations.
+func arithmetic(op int, sub func() string) string {
+	switch op {
+	case 0:
+		return "(" + sub() + " + " + sub() + ")"
+	case 1:
+		return "(" + sub() + " - " + sub() + ")"
+	case 2:
+		return sub() + "*" + sub()
+	}
+	return "(" + sub() + ")/(" + sub() + ")"
+}

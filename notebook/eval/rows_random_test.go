@@ -44,15 +44,9 @@ func pairValue(t *rapid.T, depth int) string {
 		return rapid.SampledFrom([]string{"A", "B", "N", "c", "0", "1", "3", "max(s.a)", "sum(s.a*s.b)"}).Draw(t, "value")
 	}
 	sub := func() string { return pairValue(t, depth-1) }
-	switch rapid.IntRange(0, 19).Draw(t, "op") {
-	case 0:
-		return "(" + sub() + " + " + sub() + ")"
-	case 1:
-		return "(" + sub() + " - " + sub() + ")"
-	case 2:
-		return sub() + "*" + sub()
-	case 3:
-		return "(" + sub() + ")/(" + sub() + ")"
+	switch op := rapid.IntRange(0, 19).Draw(t, "op"); op {
+	case 0, 1, 2, 3:
+		return arithmetic(op, sub)
 	case 4:
 		return "sqrt(" + sub() + ")"
 	case 5:

@@ -18,11 +18,13 @@ import (
 	"gusset/testdata/longcalc"
 )
 
-func compileBytes(b *testing.B, text []byte) *notebook.Sheet {
+// compileBytes compiles a calc that stands alone and has no errors.
+func compileBytes(t testing.TB, text []byte) *notebook.Sheet {
+	t.Helper()
 	root := fstest.MapFS{"calc.md": &fstest.MapFile{Data: text}}
 	s := notebook.Compile(&notebook.Context{FS: root, Panics: true}, "calc.md")
 	if s.Failed() {
-		b.Fatal(s.Diagnostics[0].Text())
+		t.Fatal(s.Diagnostics[0].Text())
 	}
 	return s
 }

@@ -6,9 +6,7 @@ import (
 	"runtime"
 	"strings"
 	"testing"
-	"testing/fstest"
 
-	"gusset/notebook"
 	"gusset/render"
 	"gusset/render/html"
 )
@@ -41,10 +39,7 @@ func uneven(tables int) string {
 func TestParts(t *testing.T) {
 	defer runtime.GOMAXPROCS(runtime.GOMAXPROCS(0))
 	for tables := range 9 {
-		s := notebook.Compile(&notebook.Context{FS: fstest.MapFS{"t.md": {Data: []byte(uneven(tables))}}, Panics: true}, "t.md")
-		if s.Failed() {
-			t.Fatal(s.Diagnostics)
-		}
+		s := compileBytes(t, []byte(uneven(tables)))
 		var want []byte
 		for _, processors := range []int{1, 2, 3, 8} {
 			runtime.GOMAXPROCS(processors)
@@ -62,7 +57,7 @@ func TestParts(t *testing.T) {
 // A long result may part from its unit, which itself stays whole; a short one
 // does not.
 func TestLongOutputsPart(t *testing.T) {
-	s := notebook.Compile(&notebook.Context{FS: fstest.MapFS{"t.md": {Data: []byte("---\ncalc: C-1\n---\n```calc\nK = 700 MPa * sqrt(1 mm)\nk = 2*3 1/m\n```\n")}}, Panics: true}, "t.md")
+	s := compileBytes(t, []byte("---\ncalc: C-1\n---\n```calc\nK = 700 MPa * sqrt(1 mm)\nk = 2*3 1/m\n```\n"))
 	page := string(html.Append(nil, render.NewPage(s)))
 	for _, want := range []string{"\u00a0<wbr>kg/(m<sup>1/2</sup>·s²)", "6.000\u00a0\u202f1/m"} {
 		if !strings.Contains(page, want) {

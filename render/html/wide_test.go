@@ -18,10 +18,7 @@ const wide = "---\ncalc: T\nfigures: 5\n---\n\n```cases\ncase | x [MPa] | y [MPa
 // The heads of a wide table put their units below their symbols before columns
 // are hidden, and a long value parts before its unit, not within it.
 func TestWide(t *testing.T) {
-	s := notebook.Compile(&notebook.Context{FS: fstest.MapFS{"t.md": {Data: []byte(wide)}}, Panics: true}, "t.md")
-	if s.Failed() {
-		t.Fatal(s.Diagnostics[0].Text())
-	}
+	s := compileBytes(t, []byte(wide))
 	page := html.Append(nil, render.NewPage(s))
 	if want := "10<sup>6</sup>\u00a0<wbr>mm⁴"; !strings.Contains(string(page), want) {
 		t.Errorf("there is no %q", want)
@@ -66,10 +63,7 @@ func TestNarrow(t *testing.T) {
 func TestManyColumns(t *testing.T) {
 	const table = "---\ncalc: T\n---\n\n| bolt | x [mm] | y [mm] | N [kN] | V_y [kN] | V_z [kN] | F_v [kN] | F_t [kN] | util. | where |\n" +
 		"|---|--:|--:|--:|--:|--:|--:|--:|--:|---|\n| B-101 upper left | -170.5 | 75.25 | 112.5 | 64.25 | 12.75 | 65.5 | 112.5 | 0.92 | drawing S-12 |\n"
-	s := notebook.Compile(&notebook.Context{FS: fstest.MapFS{"t.md": {Data: []byte(table)}}, Panics: true}, "t.md")
-	if s.Failed() {
-		t.Fatal(s.Diagnostics[0].Text())
-	}
+	s := compileBytes(t, []byte(table))
 	ctx := browser(t)
 	open(t, ctx, html.Append(nil, render.NewPage(s)), 1280)
 	printed(t, ctx)
